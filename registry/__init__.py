@@ -1,0 +1,32 @@
+"""rangebook: a versioned registry of pure-compound temperature correlations.
+
+Public names are resolved on first use, so that importing one numeric module
+loads no database code.
+"""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from registry.answers import Answer, Batch, Refusal
+    from registry.errors import RangebookError, Refused
+    from registry.library import Library, open_library, start_library
+
+__version__ = "0.1.0"
+
+__all__ = ["Answer", "Batch", "Library", "RangebookError", "Refusal", "Refused", "open_library", "start_library"]
+
+_HOMES = {
+    "Answer": "answers", "Batch": "answers", "Refusal": "answers",
+    "RangebookError": "errors", "Refused": "errors",
+    "Library": "library", "open_library": "library", "start_library": "library",
+}  # fmt: skip
+
+
+def __getattr__(name: str) -> Any:
+    if name not in _HOMES:
+        raise AttributeError(f"module 'registry' has no attribute {name!r}")
+    from importlib import import_module
+
+    return getattr(import_module(f"registry.{_HOMES[name]}"), name)

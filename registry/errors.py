@@ -1,0 +1,208 @@
+"""What can go wrong, as one small tree.
+
+::
+
+    RangebookError
+    |-- BadInput (ValueError)          what was given cannot be used
+    |   |-- BadQuantity                a number with a unit that cannot be read
+    |   |   `-- GaugePressure          a gauge unit without the local atmosphere
+    |   |-- InvalidRecord              a record that breaks its invariants
+    |   |-- InvalidPackage             a package with bad cells or bad files
+    |   `-- UnknownKey (LookupError)   no record under that key or name
+    |-- Refused (LookupError)          no correlation may answer
+    |-- LibraryBusy (TimeoutError)     another writer holds the library
+    `-- LibraryUnreadable (OSError)    there is no library that can be read
+        |-- NoLibrary                  nothing is there
+        |-- NotALibrary                a file, but no library, or damaged
+        |-- NewerLibrary               made by a newer program
+        `-- OlderLibrary               must be upgraded first
+
+Every class carries its facts as fields; the text says what was given, what is
+allowed and what to do next.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from registry.answers import Refusal
+
+
+def quote(text: object, limit: int = 60) -> str:
+    """Text as given, quoted and shortened so that no message floods a screen."""
+    shown = repr(str(text))
+    return shown if len(shown) <= limit else f"{shown[:limit]}... ({len(str(text))} characters)"
+
+
+class RangebookError(Exception):
+    """Anything the program says no to."""
+
+
+class BadInput(RangebookError, ValueError):
+    """What was given cannot be used."""
+
+
+class BadQuantity(BadInput):
+    """A number with a unit that cannot be read.
+
+    Attributes
+    ----------
+    given : str
+        The text as given.
+    allowed : str
+        What would have been understood.
+    """
+
+    def __init__(self, given: str, allowed: str) -> None:
+        self.given = given
+        self.allowed = allowed
+        super().__init__(f"{quote(given)} cannot be read: {allowed}")
+
+
+class GaugePressure(BadQuantity):
+    """A gauge unit, which means nothing without the local atmosphere."""
+
+    def __init__(self, given: str) -> None:
+        super().__init__(
+            given,
+            "it is a gauge unit, and only absolute pressures are kept here. "
+            "Use the absolute unit, or state the local atmosphere (--atmosphere 101.325kPa).",
+        )
+
+
+@dataclass(frozen=True)
+class Problem:
+    """One thing wrong with one field of a record."""
+
+    field: str
+    given: str
+    allowed: str
+
+    def __str__(self) -> str:
+        return f"{self.field}: {quote(self.given)} given; {self.allowed}"
+
+
+class InvalidRecord(BadInput):
+    """A record that breaks its invariants; all its problems at once."""
+
+    def __init__(self, kind: str, key: str, problems: Sequence[Problem]) -> None:
+        self.kind = kind
+        self.key = key
+        self.problems = tuple(problems)
+        listed = " ".join(f"{problem}" for problem in self.problems)
+        super().__init__(f"The {kind} {quote(key)} cannot be recorded. {listed}")
+
+
+@dataclass(frozen=True)
+class CellProblem:
+    """One bad place in a package: file, line (1 is the header), column."""
+
+    file: str
+    line: int
+    column: str
+    given: str
+    allowed: str
+
+    def __str__(self) -> str:
+        place = self.file + (f", line {self.line}" if self.line else "")
+        if self.column:
+            place += f", column {self.column}"
+        given = f"{quote(self.given)} given; " if self.given else ""
+        return f"{place}: {given}{self.allowed}"
+
+
+class InvalidPackage(BadInput):
+    """A package that cannot be loaded; every bad place at once."""
+
+    def __init__(self, place: str, problems: Sequence[CellProblem]) -> None:
+        self.place = place
+        self.problems = tuple(problems)
+        count = len(self.problems)
+        head = f"{place} cannot be loaded: {count} problem{'s' if count != 1 else ''}; nothing was changed."
+        super().__init__("\n".join([head, *(f"  {problem}" for problem in self.problems)]))
+
+
+class UnknownKey(BadInput, LookupError):
+    """No record under that key or name, or several."""
+
+    def __init__(self, kind: str, given: str, nearest: Sequence[str] = (), several: Sequence[str] = ()) -> None:
+        self.kind = kind
+        self.given = given
+        self.nearest = tuple(nearest)
+        self.several = tuple(several)
+        if self.several:
+            text = f"{quote(given)} may mean {' or '.join(self.several)}. Use one of these keys."
+        elif self.nearest:
+            text = f"There is no {kind} {quote(given)}. Nearest: {', '.join(self.nearest)}."
+        else:
+            text = f"There is no {kind} {quote(given)}. `rangebook list` shows what there is."
+        super().__init__(text)
+
+
+class Refused(RangebookError, LookupError):
+    """No correlation may answer; carries the refusal with the reason."""
+
+    def __init__(self, refusal: Refusal) -> None:
+        self.refusal = refusal
+        super().__init__(refusal.explanation)
+
+
+class LibraryBusy(RangebookError, TimeoutError):
+    """Another writer holds the library for longer than this one waits."""
+
+    def __init__(self, place: str) -> None:
+        self.place = place
+        super().__init__(f"{place} is being written by another process. Nothing was changed; try again.")
+
+
+class LibraryUnreadable(RangebookError, OSError):
+    """There is no library here that this program can read."""
+
+    def __init__(self, place: str, text: str) -> None:
+        self.place = place
+        super().__init__(text)
+
+
+class NoLibrary(LibraryUnreadable):
+    """Nothing is there."""
+
+    def __init__(self, place: str) -> None:
+        super().__init__(place, f"There is no library at {place}. Make one with `rangebook start --library {place}`.")
+
+
+class NotALibrary(LibraryUnreadable):
+    """A file that is no library, or a damaged one."""
+
+    def __init__(self, place: str, why: str) -> None:
+        self.why = why
+        super().__init__(place, f"{place} cannot be read as a library: {why}. Nothing was changed.")
+
+
+class NewerLibrary(LibraryUnreadable):
+    """Made by a newer program."""
+
+    def __init__(self, place: str, found: int, known: int) -> None:
+        self.found = found
+        self.known = known
+        super().__init__(
+            place,
+            f"{place} has schema {found}, made by a newer rangebook; this one reads up to {known}. "
+            "Install a newer rangebook; nothing was changed.",
+        )
+
+
+class OlderLibrary(LibraryUnreadable):
+    """Made by an older program; it is upgraded only when asked."""
+
+    def __init__(self, place: str, found: int, known: int) -> None:
+        self.found = found
+        self.known = known
+        super().__init__(
+            place,
+            f"{place} has schema {found}; this rangebook needs {known}. "
+            "`rangebook upgrade` brings it up to date, after a backup.",
+        )

@@ -1,0 +1,1 @@
+"""Equation forms: how printed coefficients become numbers."""

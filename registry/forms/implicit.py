@@ -1,0 +1,91 @@
+"""Vapour-pressure forms that must be solved for the pressure."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+import numpy as np
+
+from registry.forms.elementary import Expression
+from registry.forms.form import Array, Coefficients, Folded, Form, Units
+from registry.forms.roots import solve_bracketed, solve_rising_concave
+
+__all__ = ["FORMS"]
+
+Parameters = tuple[Any, ...]
+
+
+def _thodos_log(t: Array, p: Parameters) -> Array:
+    """ln p: the lower root of y = A - B/T + C ln T + (D/T^2) e^y."""
+    a, b, c, d = p
+    explicit = a - b / t + c * np.log(t)
+    k = d / (t * t)
+    return solve_rising_concave(lambda y: y - explicit - k * np.exp(y), lambda y: 1.0 - k * np.exp(y), explicit)
+
+
+def _thodos_value(t: Array, p: Parameters) -> Array:
+    return np.exp(_thodos_log(t, p))
+
+
+def _thodos_slope(t: Array, p: Parameters) -> Array:
+    _, b, c, d = p
+    value = _thodos_value(t, p)
+    k = d / (t * t)
+    explicit_rate = b / (t * t) + c / t - 2.0 * d * value / (t * t * t)
+    return value * explicit_rate / (1.0 - k * value)
+
+
+THODOS = Expression(_thodos_value, _thodos_slope)
+
+
+def _helium_temperature(x: Array, a: tuple[float, ...]) -> tuple[Array, Array]:
+    value, slope = np.full_like(x, a[-1]), np.zeros_like(x)
+    for coefficient in a[-2::-1]:
+        slope = slope * x + value
+        value = value * x + coefficient
+    return value, slope
+
+
+def _helium_argument(t: Array, p: Parameters) -> Array:
+    """x = (ln p - B)/C at which the ITS-90 equation gives T."""
+    a, _, _ = p
+    return solve_bracketed(
+        lambda x: _helium_temperature(x, a)[0] - t, lambda x: _helium_temperature(x, a)[1], -1.05, 1.05, t
+    )
+
+
+def _helium_value(t: Array, p: Parameters) -> Array:
+    _, b, c = p
+    return np.exp(b + c * _helium_argument(t, p))
+
+
+def _helium_slope(t: Array, p: Parameters) -> Array:
+    a, b, c = p
+    x = _helium_argument(t, p)
+    return np.exp(b + c * x) * c / _helium_temperature(x, a)[1]
+
+
+HELIUM = Expression(_helium_value, _helium_slope)
+
+
+def _fold_thodos(c: Mapping[str, float], units: Units) -> Folded:
+    return Folded(THODOS, (c["A"], c["B"], c["C"], c["D"]))
+
+
+def _fold_helium(c: Mapping[str, float], units: Units) -> Folded:
+    return Folded(HELIUM, (tuple(c[f"A{i}"] for i in range(10)), c["B"], c["C"]))
+
+
+FORMS = (
+    Form(
+        "frost-kalkwarf-thodos", "Frost-Kalkwarf-Thodos", "ln p = A - B/T + C ln T + D p/T^2 (lower root)",
+        Coefficients(("A", "B", "C", "D")), _fold_thodos, ("vapor-pressure",),
+        "A. A. Frost, D. R. Kalkwarf, J. Chem. Phys. 21, 264 (1953); G. Thodos et al. (from memory)",
+    ),
+    Form(
+        "helium-its90", "ITS-90 helium vapour pressure", "T = A0 + sum A_i [(ln p - B)/C]^i, p in Pa",
+        Coefficients((*(f"A{i}" for i in range(10)), "B", "C")), _fold_helium, ("vapor-pressure",),
+        "H. Preston-Thomas, Metrologia 27, 3 (1990), Table 3", value_unit="Pa",
+    ),
+)  # fmt: skip

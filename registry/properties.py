@@ -1,0 +1,60 @@
+"""The properties a correlation can be for, as rows of one table."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+__all__ = ["PROPERTIES", "Property"]
+
+
+@dataclass(frozen=True)
+class Property:
+    """What is correlated with temperature.
+
+    Attributes
+    ----------
+    name : str
+        The word used in records and commands.
+    title : str
+        The name in a sentence.
+    dimension : str
+        Dimension of its units (see `registry.quantities`).
+    unit : str
+        The SI unit, in which values are returned.
+    phase : str
+        ``liquid``, or ``solid`` for any solid phase (solid, ice Ih ...).
+    lower, upper : str
+        The fixed point that bounds the curve's phase, whatever the printed
+        window says; empty where there is none.
+    """
+
+    name: str
+    title: str
+    dimension: str
+    unit: str
+    phase: str
+    lower: str = ""
+    upper: str = ""
+
+
+_ROWS = (
+    Property(
+        "vapor-pressure", "vapour pressure", "pressure", "Pa", "liquid",
+        "triple-point-temperature", "critical-temperature",
+    ),
+    Property(
+        "sublimation-pressure", "sublimation pressure", "pressure", "Pa", "solid",
+        "", "triple-point-temperature",
+    ),
+    Property("melting-pressure", "melting pressure", "pressure", "Pa", "solid"),
+    Property(
+        "enthalpy-of-vaporization", "enthalpy of vaporization", "molar-energy", "J/mol", "liquid",
+        "triple-point-temperature", "critical-temperature",
+    ),
+    Property(
+        "saturated-liquid-density", "saturated liquid density", "density", "kg/m3", "liquid",
+        "triple-point-temperature", "critical-temperature",
+    ),
+)  # fmt: skip
+
+PROPERTIES: dict[str, Property] = {row.name: row for row in _ROWS}

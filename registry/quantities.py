@@ -1,0 +1,357 @@
+"""Units and numbers with units, by exact definition.
+
+Every factor is an exact fraction of the SI unit, so a conversion rounds once.
+A value in a unit becomes SI as ``(value + shift) * factor``.
+"""
+
+from __future__ import annotations
+
+import difflib
+import re
+from collections.abc import Iterable
+from dataclasses import dataclass, replace
+from fractions import Fraction
+
+from registry.errors import BadQuantity, GaugePressure
+from registry.numerals import parse_number
+
+__all__ = [
+    "UNITS",
+    "Unit",
+    "convert",
+    "find_unit",
+    "format_number",
+    "format_plain",
+    "gauge_unit",
+    "parse_pressure",
+    "parse_temperature",
+    "suit_unit",
+    "unit_names",
+]
+
+
+@dataclass(frozen=True)
+class Unit:
+    """A unit of one dimension.
+
+    Attributes
+    ----------
+    name : str
+        The spelling used in records and output.
+    dimension : str
+        ``temperature``, ``pressure``, ``molar-energy``, ``density`` ...
+    factor, shift : fractions.Fraction
+        ``SI = (value + shift) * factor``.
+    definition : str
+        The definition in words.
+    aliases : tuple of str
+        Other spellings that are understood.
+    per_molar_mass : bool
+        True if the SI value also needs the molar mass in g/mol as a factor
+        (J/g to J/mol, mol/dm3 to kg/m3).
+    """
+
+    name: str
+    dimension: str
+    factor: Fraction
+    definition: str
+    aliases: tuple[str, ...] = ()
+    shift: Fraction = Fraction(0)
+    per_molar_mass: bool = False
+
+    def to_si(self, value: Fraction) -> Fraction:
+        """The exact SI value of an exact value in this unit."""
+        return (value + self.shift) * self.factor
+
+    def from_si(self, value: float) -> float:
+        """The value in this unit of an SI value, rounded once."""
+        return float(Fraction(value) / self.factor - self.shift)
+
+
+_KGF = Fraction("9.80665")
+_LBF = Fraction("0.45359237") * _KGF
+_INCH2 = Fraction("0.0254") ** 2
+_MMHG = Fraction("13595.1") * _KGF / 1000
+
+_ROWS = (
+    Unit("K", "temperature", Fraction(1), "kelvin", ("kelvin",)),
+    Unit("degC", "temperature", Fraction(1), "T/K - 273.15", ("C", "°C", "celsius"), Fraction("273.15")),
+    Unit("degF", "temperature", Fraction(5, 9), "9/5 T/K - 459.67", ("F", "°F", "fahrenheit"), Fraction("459.67")),
+    Unit("degR", "temperature", Fraction(5, 9), "9/5 T/K", ("R", "°R", "rankine")),
+    Unit("Pa", "pressure", Fraction(1), "pascal"),
+    Unit("hPa", "pressure", Fraction(100), "100 Pa"),
+    Unit("kPa", "pressure", Fraction(1000), "1000 Pa"),
+    Unit("MPa", "pressure", Fraction(10**6), "1e6 Pa"),
+    Unit("GPa", "pressure", Fraction(10**9), "1e9 Pa"),
+    Unit("bar", "pressure", Fraction(10**5), "100000 Pa", ("bara",)),
+    Unit("mbar", "pressure", Fraction(100), "100 Pa"),
+    Unit("atm", "pressure", Fraction(101325), "101325 Pa"),
+    Unit("mmHg", "pressure", _MMHG, "13595.1 kg/m3 x 9.80665 m/s2 x 1 mm", ("mm Hg",)),
+    Unit("cmHg", "pressure", 10 * _MMHG, "10 mmHg"),
+    Unit("Torr", "pressure", Fraction(101325, 760), "101325/760 Pa", ("torr",)),
+    Unit("inHg", "pressure", Fraction("25.4") * _MMHG, "25.4 mmHg"),
+    Unit("psi", "pressure", _LBF / _INCH2, "lbf/in2", ("psia", "lbf/in2")),
+    Unit("kgf/cm2", "pressure", _KGF * 10**4, "9.80665 N/cm2", ("at", "kgf/cm²", "kg/cm2")),
+    Unit("J/mol", "molar-energy", Fraction(1), "joule per mole"),
+    Unit("kJ/mol", "molar-energy", Fraction(1000), "1000 J/mol"),
+    Unit("cal/mol", "molar-energy", Fraction("4.184"), "4.184 J/mol (thermochemical)"),
+    Unit("kcal/mol", "molar-energy", Fraction(4184), "4184 J/mol (thermochemical)"),
+    Unit("J/g", "molar-energy", Fraction(1), "joule per gram", ("kJ/kg",), per_molar_mass=True),
+    Unit("kg/m3", "density", Fraction(1), "kilogram per cubic metre", ("kg/m³", "g/L")),
+    Unit("g/cm3", "density", Fraction(1000), "1000 kg/m3", ("g/cm³", "g/mL", "kg/L", "kg/dm3")),
+    Unit("lb/ft3", "density", Fraction("0.45359237") / Fraction("0.3048") ** 3, "pound per cubic foot"),
+    Unit("mol/dm3", "density", Fraction(1), "mole per cubic decimetre", ("mol/L", "kmol/m3"), per_molar_mass=True),
+    Unit("mol/m3", "density", Fraction(1, 1000), "mole per cubic metre", per_molar_mass=True),
+    Unit("g/mol", "molar-mass", Fraction(1), "gram per mole", ("kg/kmol",)),
+    Unit("1", "number", Fraction(1), "a pure number"),
+)
+
+UNITS: dict[str, Unit] = {unit.name: unit for unit in _ROWS}
+_SPELLINGS = {spelling: unit for unit in _ROWS for spelling in (unit.name, *unit.aliases)}
+_GAUGE = re.compile(r"(.+?)\s*(?:\(g\)|\(gauge\)|\s+gauge|\s*g|-g|_g)", re.ASCII)
+_QUANTITY = re.compile(r"\s*([+-]?[0-9.][0-9.eE+-]*?)\s*((?:[^0-9.\s+-].*)?)\s*", re.DOTALL)
+
+
+def unit_names(dimension: str) -> list[str]:
+    """The names of all units of one dimension, in the order of the table.
+
+    Examples
+    --------
+    >>> unit_names("temperature")
+    ['K', 'degC', 'degF', 'degR']
+    """
+    return [unit.name for unit in _ROWS if unit.dimension == dimension]
+
+
+def find_unit(text: str, dimension: str) -> Unit:
+    """The unit with this spelling.
+
+    Parameters
+    ----------
+    text : str
+        A unit name or one of its other spellings.
+    dimension : str
+        The dimension it must have.
+
+    Returns
+    -------
+    Unit
+        The row of the table.
+
+    Raises
+    ------
+    BadQuantity
+        If there is no such unit, or it is of another dimension.
+    GaugePressure
+        If it is a gauge unit.
+
+    Examples
+    --------
+    >>> float(find_unit("mmHg", "pressure").factor)
+    133.322387415
+    """
+    unit = _SPELLINGS.get(text.strip())
+    if unit is not None and unit.dimension == dimension:
+        return unit
+    if dimension == "pressure" and _gauge_base(text):
+        raise GaugePressure(text)
+    names = unit_names(dimension)
+    allowed = f"a {dimension} unit is one of {', '.join(names)}."
+    if unit is None and (near := _nearest_spelling(text, dimension)):
+        allowed += f" Did you mean {near}?"
+    raise BadQuantity(text, allowed)
+
+
+def _nearest_spelling(text: str, dimension: str) -> str:
+    known = {s.lower(): u.name for s, u in _SPELLINGS.items() if u.dimension == dimension}
+    near = difflib.get_close_matches(text.strip().lower()[:40], known, n=1, cutoff=0.6)
+    return known[near[0]] if near else ""
+
+
+def _gauge_base(text: str) -> Unit | None:
+    """The absolute unit behind a gauge spelling such as barg or psi(g)."""
+    match = _GAUGE.fullmatch(text.strip()[:40])
+    unit = _SPELLINGS.get(match[1]) if match else None
+    return unit if unit is not None and unit.dimension == "pressure" else None
+
+
+def gauge_unit(text: str, atmosphere_pa: Fraction) -> Unit:
+    """A gauge pressure unit against a stated local atmosphere.
+
+    Parameters
+    ----------
+    text : str
+        A gauge spelling such as ``barg``, ``psig`` or ``kPa(g)``, or an
+        absolute unit, which is returned as it is.
+    atmosphere_pa : fractions.Fraction
+        The local atmospheric pressure, Pa.
+
+    Returns
+    -------
+    Unit
+        The unit, shifted by the atmosphere.
+
+    Examples
+    --------
+    >>> gauge_unit("barg", Fraction(100000)).from_si(350000.0)
+    2.5
+    """
+    base = _gauge_base(text)
+    if base is None:
+        return find_unit(text, "pressure")
+    return replace(base, name=f"{base.name}(g)", shift=atmosphere_pa / base.factor)
+
+
+def _split_quantity(text: str, dimension: str, example: str) -> tuple[Fraction, Unit]:
+    plain = text.replace("\u2212", "-").strip()
+    match = _QUANTITY.fullmatch(plain) if len(plain) <= 100 else None
+    if match is None:
+        raise BadQuantity(text, f"a {dimension} is a number with a unit, such as {example}.")
+    if not match[2]:
+        listed = ", ".join(unit_names(dimension))
+        raise BadQuantity(text, f"a {dimension} needs its unit ({listed}), such as {example}.")
+    unit = find_unit(match[2], dimension)
+    try:
+        return parse_number(match[1]), unit
+    except ValueError as error:
+        raise BadQuantity(text, f"{error}; a {dimension} looks like {example}.") from None
+
+
+def parse_temperature(text: str) -> float:
+    """A temperature with its unit, in kelvin.
+
+    Parameters
+    ----------
+    text : str
+        Such as ``298.15K``, ``25degC``, ``25 °C``, ``25C``, ``77F`` or
+        ``536.67R``; ``-`` and the minus sign U+2212 both do.
+
+    Returns
+    -------
+    float
+        The temperature, K: the double nearest to the exact value.
+
+    Raises
+    ------
+    BadQuantity
+        If the unit is missing or unknown, the number is none, or the
+        temperature is not above absolute zero.
+
+    Examples
+    --------
+    >>> parse_temperature("25 °C")
+    298.15
+    >>> parse_temperature("77F")
+    298.15
+    >>> parse_temperature("-40C")
+    233.15
+    """
+    number, unit = _split_quantity(text, "temperature", "298.15K or 25C")
+    kelvin = unit.to_si(number)
+    if kelvin <= 0:
+        raise BadQuantity(text, "a temperature lies above absolute zero, 0 K.")
+    return float(kelvin)
+
+
+def parse_pressure(text: str) -> Fraction:
+    """An absolute pressure with its unit, in pascal, exact.
+
+    Examples
+    --------
+    >>> parse_pressure("1 atm")
+    Fraction(101325, 1)
+    """
+    number, unit = _split_quantity(text, "pressure", "101.325kPa")
+    return unit.to_si(number)
+
+
+def convert(value: float, source: Unit, target: Unit, molar_mass: float | None = None) -> float:
+    """A value in another unit of the same dimension.
+
+    Parameters
+    ----------
+    value : float
+        The value in `source`.
+    source, target : Unit
+        Units of one dimension.
+    molar_mass : float, optional
+        Molar mass, g/mol; needed between a molar and a mass basis.
+
+    Returns
+    -------
+    float
+        The value in `target`, rounded once.
+
+    Raises
+    ------
+    BadQuantity
+        If the dimensions differ, or the molar mass is needed and not given.
+
+    Examples
+    --------
+    >>> convert(1.0, UNITS["atm"], UNITS["mmHg"])
+    759.9998917256113
+    """
+    if source.dimension != target.dimension:
+        raise BadQuantity(
+            target.name, f"a {source.dimension} unit is one of {', '.join(unit_names(source.dimension))}."
+        )
+    exact = source.to_si(Fraction(value))
+    if source.per_molar_mass != target.per_molar_mass:
+        if molar_mass is None:
+            raise BadQuantity(target.name, f"it needs the molar mass when the value is in {source.name}.")
+        mass = Fraction(molar_mass)
+        exact = exact * mass if source.per_molar_mass else exact / mass
+    return float(exact / target.factor - target.shift)
+
+
+def format_number(value: float, digits: int = 6) -> str:
+    """A number to `digits` significant digits, plainly where that is readable.
+
+    Examples
+    --------
+    >>> format_number(3.169929)
+    '3.16993'
+    >>> format_number(0.0000123456789)
+    '1.23457e-05'
+    """
+    return f"{value:#.{digits}g}".rstrip(".") if value else "0"
+
+
+def format_plain(value: float) -> str:
+    """A temperature or bound with the digits it has, at most nine.
+
+    Examples
+    --------
+    >>> format_plain(273.16000000000003), format_plain(500.0)
+    ('273.16', '500')
+    """
+    return f"{value:.9g}"
+
+
+def suit_unit(value: float, si: Unit) -> Unit:
+    """The unit in which a value in SI is shown if none is asked for.
+
+    Pressures in kPa, below 100 Pa in Pa, above 10 MPa in MPa; molar energies
+    in kJ/mol; anything else in SI.
+
+    Examples
+    --------
+    >>> suit_unit(3169.9, UNITS["Pa"]).name, suit_unit(2e7, UNITS["Pa"]).name
+    ('kPa', 'MPa')
+    """
+    if si.dimension == "pressure":
+        return UNITS["Pa" if abs(value) < 100.0 else "MPa" if abs(value) > 1e7 else "kPa"]
+    return UNITS["kJ/mol"] if si.dimension == "molar-energy" else si
+
+
+def join_names(names: Iterable[str]) -> str:
+    """Names as a sentence lists them.
+
+    Examples
+    --------
+    >>> join_names(["a", "b", "c"])
+    'a, b or c'
+    """
+    *rest, last = list(names)
+    return f"{', '.join(rest)} or {last}" if rest else last
