@@ -1,0 +1,37 @@
+"""Molar mass of a formula, from a maintained table of atomic weights."""
+
+from __future__ import annotations
+
+__all__ = ["formula_mass"]
+
+
+def formula_mass(formula: str) -> float:
+    """The molar mass that a formula makes, g/mol.
+
+    Parameters
+    ----------
+    formula : str
+        Element symbols and counts; ``D`` is deuterium, an isotope is written
+        ``[3He]``.
+
+    Returns
+    -------
+    float
+        Molar mass, g/mol, from standard atomic weights (package `molmass`).
+
+    Raises
+    ------
+    ValueError
+        If a symbol is no element.
+
+    Examples
+    --------
+    >>> round(formula_mass("H2O"), 3)
+    18.015
+    """
+    import molmass
+
+    try:
+        return float(molmass.Formula(formula).mass)
+    except molmass.FormulaError as error:
+        raise ValueError(f"{str(error).splitlines()[0]}; element symbols and counts are allowed.") from None

@@ -1,0 +1,106 @@
+"""Stated uncertainties: pieces over temperature, as the source words them.
+
+The text is a list of pieces in rising temperature, parted by semicolons; all
+but the last say up to where they hold::
+
+    0.025 % up to 373 K; 0.1 %
+    not stated up to 185 K; 250 Pa
+"""
+
+from __future__ import annotations
+
+import math
+import re
+from dataclasses import dataclass
+
+from registry.errors import BadQuantity
+from registry.numerals import parse_number
+from registry.quantities import find_unit, parse_temperature
+
+__all__ = ["Piece", "parse_uncertainty", "piece_at"]
+
+_PIECE = re.compile(r"(not stated|(\S+) (%|\S+))(?: up to (.+))?")
+
+
+@dataclass(frozen=True)
+class Piece:
+    """One stretch of a stated uncertainty.
+
+    Attributes
+    ----------
+    upper : float
+        Temperature up to which it holds, K; infinity for the last.
+    percent : float or None
+        The uncertainty in percent of the value.
+    absolute : float or None
+        The uncertainty in SI units. Both None: not stated.
+    """
+
+    upper: float
+    percent: float | None = None
+    absolute: float | None = None
+
+    def percent_of(self, value: float) -> float | None:
+        """The uncertainty as a percent of a value in SI."""
+        if self.absolute is None:
+            return self.percent
+        return 100.0 * self.absolute / abs(value) if value else None
+
+
+def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
+    """The pieces of a stated uncertainty.
+
+    Parameters
+    ----------
+    text : str
+        As described in the module; empty for not stated.
+    dimension : str
+        The dimension of absolute uncertainties.
+
+    Returns
+    -------
+    tuple of Piece
+        In rising temperature; empty if nothing is stated.
+
+    Raises
+    ------
+    ValueError
+        If the text cannot be read; says what is allowed.
+
+    Examples
+    --------
+    >>> parse_uncertainty("not stated up to 185 K; 250 Pa", "pressure")[1]
+    Piece(upper=inf, percent=None, absolute=250.0)
+    """
+    if not text:
+        return ()
+    pieces: list[Piece] = []
+    parts = text.split("; ")
+    for index, part in enumerate(parts):
+        match = _PIECE.fullmatch(part)
+        if match is None or (match[4] is None) != (index == len(parts) - 1):
+            raise ValueError("pieces such as '0.025 % up to 373 K; 0.1 %' are allowed.")
+        upper = parse_temperature(match[4]) if match[4] else math.inf
+        if pieces and upper <= pieces[-1].upper:
+            raise ValueError("the pieces of an uncertainty must rise in temperature.")
+        pieces.append(_read_piece(match, upper, dimension))
+    return tuple(pieces)
+
+
+def _read_piece(match: re.Match[str], upper: float, dimension: str) -> Piece:
+    if match[1] == "not stated":
+        return Piece(upper)
+    amount = parse_number(match[2])
+    if amount <= 0:
+        raise ValueError("an uncertainty is greater than zero; leave it empty if none is stated.")
+    if match[3] == "%":
+        return Piece(upper, percent=float(amount))
+    try:
+        return Piece(upper, absolute=float(amount * find_unit(match[3], dimension).factor))
+    except BadQuantity as error:
+        raise ValueError(f"{match[3]!r}: {error.allowed}") from None
+
+
+def piece_at(pieces: tuple[Piece, ...], kelvin: float) -> Piece | None:
+    """The piece that holds at a temperature, K."""
+    return next((piece for piece in pieces if kelvin <= piece.upper), None)
