@@ -1,0 +1,29 @@
+"""Canonical JSON and digests.
+
+What is digested holds text, integers, lists and objects with ASCII keys, so
+that plain sorted compact JSON equals RFC 8785.
+"""
+
+from __future__ import annotations
+
+import hashlib
+import json
+from typing import Any
+
+__all__ = ["digest", "encode"]
+
+
+def encode(content: Any) -> bytes:
+    """The canonical JSON of content without floats.
+
+    Examples
+    --------
+    >>> encode({"B": "1730.63", "A": "8.07131"})
+    b'{"A":"8.07131","B":"1730.63"}'
+    """
+    return json.dumps(content, sort_keys=True, separators=(",", ":"), ensure_ascii=False, allow_nan=False).encode()
+
+
+def digest(data: bytes) -> str:
+    """SHA-256 in hexadecimal."""
+    return hashlib.sha256(data).hexdigest()

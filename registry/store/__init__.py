@@ -1,0 +1,1 @@
+"""The database behind a library: append-only history, portable SQL."""

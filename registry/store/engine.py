@@ -1,0 +1,87 @@
+"""Connections to a library's SQLite file.
+
+Readers open the file read-only; a writer takes the write lock at once (BEGIN
+IMMEDIATE), for a deferred lock that must be upgraded fails whatever the
+timeout. The journal is a rollback journal with synchronous=EXTRA unless
+SQLite is free of the WAL-reset bug (versions 3.7.0 to 3.51.2 but for the
+fixed 3.44.6 and 3.50.7 lines), in which WAL can lose committed writes.
+"""
+
+from __future__ import annotations
+
+import sqlite3
+from pathlib import Path
+from typing import Any
+from urllib.parse import quote
+
+from sqlalchemy import Engine, create_engine, event
+from sqlalchemy.pool import StaticPool
+
+from registry.errors import NotALibrary
+
+__all__ = ["BUSY_SECONDS", "open_engine", "wal_is_safe"]
+
+BUSY_SECONDS = 30
+"""How long a writer waits for another one."""
+
+
+def wal_is_safe(version: tuple[int, int, int]) -> bool:
+    """True for a SQLite version without the WAL-reset bug.
+
+    Examples
+    --------
+    >>> wal_is_safe((3, 40, 1)), wal_is_safe((3, 50, 7)), wal_is_safe((3, 51, 3))
+    (False, True, True)
+    """
+    return version >= (3, 51, 3) or (3, 50, 7) <= version < (3, 51, 0) or (3, 44, 6) <= version < (3, 45, 0)
+
+
+def open_engine(path: Path, *, write: bool = False, create: bool = False) -> Engine:
+    """An engine with one connection on a library file.
+
+    Parameters
+    ----------
+    path : Path
+        The file.
+    write : bool
+        Open for writing; every transaction then takes the write lock.
+    create : bool
+        Make the file if it is missing.
+
+    Returns
+    -------
+    sqlalchemy.Engine
+        Its connections have the pragmas that a library needs.
+    """
+    mode = "rwc" if create else "rw" if write else "ro"
+    engine = create_engine(
+        f"sqlite:///file:{quote(str(path))}?mode={mode}&uri=true",
+        connect_args={"timeout": BUSY_SECONDS, "check_same_thread": False},
+        poolclass=StaticPool,
+    )
+
+    @event.listens_for(engine, "connect")
+    def prepare(connection: Any, _: Any) -> None:
+        connection.isolation_level = None
+        _set_pragmas(connection, path, write or create)
+
+    @event.listens_for(engine, "begin")
+    def begin(connection: Any) -> None:
+        connection.exec_driver_sql("BEGIN IMMEDIATE" if write or create else "BEGIN")
+
+    return engine
+
+
+def _set_pragmas(connection: sqlite3.Connection, path: Path, write: bool) -> None:
+    wanted = {"foreign_keys": 1, "recursive_triggers": 1, "trusted_schema": 0, "cell_size_check": 1}
+    if write:
+        mode = "wal" if wal_is_safe(sqlite3.sqlite_version_info[:3]) else "delete"
+        found = connection.execute(f"PRAGMA journal_mode={mode}").fetchone()[0]
+        if found != mode:
+            raise NotALibrary(str(path), f"SQLite keeps journal mode {found}, not {mode}")
+        wanted["synchronous"] = 2 if mode == "wal" else 3
+    for name, value in wanted.items():
+        connection.execute(f"PRAGMA {name}={value}")
+        found = connection.execute(f"PRAGMA {name}").fetchone()[0]
+        if found != value:
+            raise NotALibrary(str(path), f"SQLite does not take {name}={value}")

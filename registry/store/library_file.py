@@ -1,0 +1,173 @@
+"""An open library file: read transactions, write transactions, a change stamp."""
+
+from __future__ import annotations
+
+import os
+import sqlite3
+from collections.abc import Callable, Iterable, Iterator, Sequence
+from contextlib import contextmanager
+from pathlib import Path
+
+from sqlalchemy import Connection, Engine
+from sqlalchemy.exc import DatabaseError, OperationalError
+
+from registry.errors import BadInput, LibraryBusy, NotALibrary
+from registry.store import reading
+from registry.store.engine import open_engine
+from registry.store.history import Change, Draft, append_change
+from registry.store.reading import Row
+from registry.store.schema import check_file, create_file
+
+__all__ = ["LibraryFile", "View", "locate"]
+
+Append = Callable[[str, str, str, Sequence[Draft]], Change]
+
+
+def locate(place: str | os.PathLike[str]) -> Path:
+    """The file that a path or URL names.
+
+    Examples
+    --------
+    >>> locate("sqlite:///team.db").name
+    'team.db'
+    """
+    text = os.fspath(place)
+    if text.startswith("sqlite:///"):
+        return Path(text.removeprefix("sqlite:///"))
+    if "://" in text:
+        raise BadInput(f"{text.split('://')[0]} libraries are not supported yet. Give a path or a sqlite:/// URL.")
+    if not text or "\x00" in text:
+        raise BadInput("The place of a library is empty. Give a path or a sqlite:/// URL.")
+    return Path(text)
+
+
+class View:
+    """Reading within one transaction, at one position."""
+
+    def __init__(self, connection: Connection, position: int) -> None:
+        self._connection = connection
+        self.position = position
+
+    def kind(self, kind: str) -> list[Row]:
+        """Every record of a kind, by key."""
+        return reading.read_kind(self._connection, kind, self.position)
+
+    def current(self, kind: str, keys: Iterable[str]) -> list[Row]:
+        """The records of a kind under some keys."""
+        return reading.read_current(self._connection, kind, keys, self.position)
+
+    def linked(self, kind: str, key: str) -> list[Row]:
+        """Every revision of the records that refer to one record."""
+        return reading.read_linked(self._connection, kind, key, self.position)
+
+    def find_term(self, text: str) -> list[Row]:
+        """The records that a person finds under a text."""
+        return reading.find_term(self._connection, text, self.position)
+
+    def terms(self) -> Sequence[str]:
+        """Every text by which something is found."""
+        return reading.read_terms(self._connection, self.position)
+
+    def changes(self) -> list[Change]:
+        """The headers of all changes."""
+        return reading.read_changes(self._connection)
+
+
+class LibraryFile:
+    """One library file, open."""
+
+    def __init__(self, path: Path, connection: Connection | None = None) -> None:
+        self.path = path
+        self._inside = connection
+        self._reader: Engine | None = None
+        self._raw: sqlite3.Cursor | None = None
+
+    @classmethod
+    def open(cls, path: Path) -> LibraryFile:
+        """Open an existing library; refuse what is none."""
+        check_file(path)
+        return cls(path)
+
+    @classmethod
+    def create(cls, path: Path, name: str, now: str, fill: Callable[[LibraryFile], None]) -> None:
+        """Make a library whose first content `fill` appends."""
+        try:
+            create_file(path, name, now, lambda connection: fill(cls(path, connection)))
+        except FileExistsError:
+            raise
+        except (OSError, OperationalError) as error:
+            why = error.strerror if isinstance(error, OSError) else error.orig
+            raise BadInput(f"No library can be made at {path}: {why}. Nothing was left behind.") from error
+
+    def close(self) -> None:
+        """Release the file."""
+        if self._raw is not None:
+            self._raw.close()
+            self._raw = None
+        if self._reader is not None:
+            self._reader.dispose()
+            self._reader = None
+
+    def read_stamp(self) -> int:
+        """A number that changes whenever another connection has changed the file."""
+        if self._raw is None:
+            self._raw = self._driver_cursor()
+        return self._raw.execute("PRAGMA data_version").fetchone()[0]
+
+    def read_position(self) -> int:
+        """The number of the last change."""
+        with self.reading() as view:
+            return view.position
+
+    def _engine(self) -> Engine:
+        if self._reader is None:
+            self._reader = open_engine(self.path)
+        return self._reader
+
+    def _driver_cursor(self) -> sqlite3.Cursor:
+        # the driver's own connection: a statement costs a tenth of one through the engine
+        with self._guard():
+            driver: sqlite3.Connection = self._engine().raw_connection().driver_connection  # type: ignore[assignment]
+            return driver.cursor()
+
+    @contextmanager
+    def _guard(self) -> Iterator[None]:
+        """Database errors as what they mean to a user."""
+        try:
+            yield
+        except DatabaseError as error:
+            text = str(error.orig)
+            if "locked" in text or "busy" in text:
+                raise LibraryBusy(str(self.path)) from error
+            if isinstance(error, OperationalError) and ("readonly" in text or "full" in text or "I/O" in text):
+                raise BadInput(f"{self.path} cannot be written: {text}. Nothing was changed.") from error
+            raise NotALibrary(str(self.path), f"SQLite says {text}") from error
+
+    @contextmanager
+    def reading(self) -> Iterator[View]:
+        """A read transaction at the newest position."""
+        if self._inside is not None:
+            yield View(self._inside, reading.read_position(self._inside))
+            return
+        with self._guard(), self._engine().begin() as connection:
+            yield View(connection, reading.read_position(connection))
+
+    @contextmanager
+    def writing(self) -> Iterator[tuple[View, Append]]:
+        """A write transaction: what it appends is there whole, or not at all."""
+        if self._inside is not None:
+            yield self._write_with(self._inside)
+            return
+        engine = open_engine(self.path, write=True)
+        try:
+            with self._guard(), engine.begin() as connection:
+                yield self._write_with(connection)
+        finally:
+            engine.dispose()
+
+    @staticmethod
+    def _write_with(connection: Connection) -> tuple[View, Append]:
+        def append(author: str, reason: str, now: str, drafts: Sequence[Draft]) -> Change:
+            return append_change(connection, author, reason, now, drafts)
+
+        return View(connection, reading.read_position(connection)), append

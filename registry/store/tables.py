@@ -1,0 +1,136 @@
+"""The tables of a library, schema 1.
+
+One mechanism holds every kind of record: a key with revisions 1..n, each
+belonging to exactly one change. Content is canonical JSON; whatever else a
+row holds is derived from it, to find records by.
+
+===========  ===================================================================
+library      one row: which library this is
+change       the header of each change, with the Merkle root over its records
+node         complete nodes of the Merkle tree over change headers
+record       every revision of every record
+link         what a record refers to
+term         texts by which a person finds a record
+===========  ===================================================================
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+
+from sqlalchemy import CheckConstraint, Column, ForeignKey, Index, Integer, MetaData, Table, Text, UniqueConstraint
+
+__all__ = ["APPLICATION_ID", "METADATA", "SCHEMA", "change", "library", "link", "node", "record", "term"]
+
+SCHEMA = 1
+"""Version of the schema, kept in SQLite's user_version."""
+
+APPLICATION_ID = 0x52474B31
+"""Kept in SQLite's application_id; "RGK1" in ASCII."""
+
+METADATA = MetaData(
+    naming_convention={
+        "ix": "ix_%(table_name)s_%(column_0_N_name)s",
+        "uq": "uq_%(table_name)s_%(column_0_N_name)s",
+        "ck": "ck_%(table_name)s_%(constraint_name)s",
+        "fk": "fk_%(table_name)s_%(column_0_N_name)s_%(referred_table_name)s",
+        "pk": "pk_%(table_name)s",
+    }
+)
+
+library = Table(
+    "library", METADATA,
+    Column("id", Integer, primary_key=True, autoincrement=False),
+    Column("name", Text, nullable=False),
+    Column("started_at", Text, nullable=False),
+    CheckConstraint("id = 1", name="one_row"),
+    sqlite_strict=True,
+)  # fmt: skip
+
+change = Table(
+    "change", METADATA,
+    Column("number", Integer, primary_key=True, autoincrement=False),
+    Column("author", Text, nullable=False),
+    Column("reason", Text, nullable=False),
+    Column("recorded_at", Text, nullable=False),
+    Column("records", Integer, nullable=False),
+    Column("records_root", Text, nullable=False),
+    Column("header", Text, nullable=False),
+    CheckConstraint("number >= 1", name="number_from_one"),
+    CheckConstraint("author <> ''", name="author_given"),
+    CheckConstraint("reason <> ''", name="reason_given"),
+    CheckConstraint("length(records_root) = 64", name="root_length"),
+    sqlite_strict=True,
+)  # fmt: skip
+
+node = Table(
+    "node", METADATA,
+    Column("level", Integer, primary_key=True, autoincrement=False),
+    Column("place", Integer, primary_key=True, autoincrement=False),
+    Column("hash", Text, nullable=False),
+    CheckConstraint("length(hash) = 64", name="hash_length"),
+    sqlite_strict=True,
+)  # fmt: skip
+
+record = Table(
+    "record", METADATA,
+    Column("id", Integer, primary_key=True, autoincrement=False),
+    Column("change", Integer, ForeignKey("change.number"), nullable=False),
+    Column("place", Integer, nullable=False),
+    Column("kind", Text, nullable=False),
+    Column("key", Text, nullable=False),
+    Column("revision", Integer, nullable=False),
+    Column("content", Text, nullable=False),
+    Column("digest", Text, nullable=False),
+    UniqueConstraint("kind", "key", "revision"),
+    UniqueConstraint("change", "place"),
+    CheckConstraint("revision >= 1", name="revision_from_one"),
+    CheckConstraint("length(digest) = 64", name="digest_length"),
+    sqlite_strict=True,
+)  # fmt: skip
+
+link = Table(
+    "link", METADATA,
+    Column("record", Integer, ForeignKey("record.id"), primary_key=True, autoincrement=False),
+    Column("role", Text, primary_key=True),
+    Column("kind", Text, nullable=False),
+    Column("key", Text, nullable=False),
+    Index(None, "kind", "key", "record"),
+    sqlite_strict=True,
+)  # fmt: skip
+
+term = Table(
+    "term", METADATA,
+    Column("record", Integer, ForeignKey("record.id"), primary_key=True, autoincrement=False),
+    Column("text", Text, primary_key=True),
+    Index(None, "text", "record"),
+    sqlite_strict=True,
+)  # fmt: skip
+
+_KEYS = {
+    "library": ("id",), "change": ("number",), "node": ("level", "place"), "record": ("id",),
+    "link": ("record", "role"), "term": ("record", "text"),
+}  # fmt: skip
+
+
+def trigger_statements() -> Iterator[str]:
+    """The triggers that let rows only ever be added, as SQLite statements.
+
+    INSERT OR REPLACE deletes without firing a delete trigger unless
+    recursive triggers are on, so an insert over an existing key is stopped
+    as well.
+    """
+    for table, keys in _KEYS.items():
+        same = " AND ".join(f"{key} = NEW.{key}" for key in keys)
+        if table == "record":
+            same = f"({same}) OR (kind = NEW.kind AND key = NEW.key AND revision = NEW.revision)"
+        for event in ("UPDATE", "DELETE"):
+            yield (
+                f"CREATE TRIGGER {table}_no_{event.lower()} BEFORE {event} ON {table} "
+                f"BEGIN SELECT RAISE(ABORT, 'history is only appended to: {table}'); END"
+            )
+        yield (
+            f"CREATE TRIGGER {table}_no_replace BEFORE INSERT ON {table} "
+            f"WHEN EXISTS (SELECT 1 FROM {table} WHERE {same}) "
+            f"BEGIN SELECT RAISE(ABORT, 'history is only appended to: {table}'); END"
+        )
