@@ -1,0 +1,1 @@
+"""Loading and dumping libraries in open formats."""

@@ -1,0 +1,81 @@
+"""Records to a package: the same content gives the same bytes."""
+
+from __future__ import annotations
+
+import dataclasses
+import json
+from collections.abc import Iterable, Iterator
+from pathlib import Path
+from typing import Any
+
+from registry.exchange.layout import FILES, File, descriptor
+from registry.exchange.package import DESCRIPTOR, write_package
+from registry.exchange.rows import write_rows
+from registry.records import Correlation, Dataset, Record
+
+__all__ = ["build_files", "dump_items"]
+
+Standing = tuple[str, str]
+
+
+def build_files(items: Iterable[tuple[Record, Standing]]) -> dict[str, bytes]:
+    """The files of a package.
+
+    Parameters
+    ----------
+    items : iterable of (Record, (standing, note))
+        What to write; sorted here, so that the order does not matter.
+
+    Returns
+    -------
+    dict of str to bytes
+        File name to content, the descriptor first.
+    """
+    entries = sorted(items, key=lambda item: item[0].key)
+    tables = {name: list(_rows(file, entries)) for name, file in FILES.items()}
+    present = [name for name, rows in tables.items() if rows]
+    text = json.dumps(descriptor(present), indent=2, ensure_ascii=False) + "\n"
+    return {DESCRIPTOR: text.encode(), **{name: write_rows(FILES[name], tables[name]) for name in present}}
+
+
+def dump_items(path: Path, items: Iterable[tuple[Record, Standing]]) -> dict[str, int]:
+    """Write a package; gives the number of rows a file."""
+    files = build_files(items)
+    write_package(path, files)
+    return {name: data.count(b"\n") - 1 for name, data in files.items() if name != DESCRIPTOR}
+
+
+def _rows(file: File, entries: list[tuple[Record, Standing]]) -> Iterator[dict[str, str]]:
+    if file.name == "points.csv":
+        for record, _ in entries:
+            if isinstance(record, Dataset):
+                yield from ({"dataset": record.key, **dataclasses.asdict(point)} for point in record.points)
+        return
+    for record, (standing, note) in entries:
+        if type(record) is file.record:
+            row = {column.name: _text(record, column.name) for column in file.columns}
+            if file.reviewed:
+                row |= {"standing": standing, "standing_note": note}
+            yield row
+
+
+def _text(record: Record, name: str) -> str:
+    value: Any = getattr(record, name, "")
+    if name == "coefficients" and isinstance(record, Correlation):
+        return "; ".join(f"{key}={text}" for key, text in ordered_coefficients(record))
+    return str(value)
+
+
+def ordered_coefficients(record: Correlation) -> list[tuple[str, str]]:
+    """Coefficients in the order in which the form takes them, series by number."""
+    from registry.forms.catalogue import FORMS
+
+    spec = FORMS[record.form].coefficients
+    names = [name for name in (*spec.required, *spec.optional) if name in record.coefficients]
+    for stem in spec.series:
+        number = 1
+        while f"{stem}{number}" in record.coefficients:
+            if f"{stem}{number}" not in names:
+                names.append(f"{stem}{number}")
+            number += 1
+    return [(name, record.coefficients[name]) for name in names]

@@ -1,0 +1,224 @@
+"""A package to records: all bad cells at once, or everything."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator, Mapping
+from dataclasses import dataclass
+from pathlib import Path
+
+from registry.cells import complain
+from registry.errors import CellProblem, InvalidPackage, InvalidRecord
+from registry.exchange.layout import FILES, File
+from registry.exchange.package import read_package
+from registry.exchange.rows import Row, parse_rows
+from registry.properties import PROPERTIES
+from registry.quantities import UNITS
+from registry.records import Correlation, Dataset, Point, Preference, PrintedValue, Record
+
+__all__ = ["Item", "find_cycle", "read_items"]
+
+Known = Callable[[str, str], Record | None]
+
+
+@dataclass(frozen=True)
+class Item:
+    """A record of a package, with its standing where it has one."""
+
+    record: Record
+    standing: str
+    standing_note: str
+    file: str
+    line: int
+
+
+def read_items(path: Path, known: Known) -> list[Item]:
+    """The records of a package.
+
+    Parameters
+    ----------
+    path : Path
+        A folder or .zip.
+    known : callable
+        ``known(kind, key)`` gives a record that the library has already.
+
+    Returns
+    -------
+    list of Item
+        In the order of files and lines.
+
+    Raises
+    ------
+    InvalidPackage
+        With every bad place: file, line, column, what was given and what is
+        allowed.
+    """
+    problems: list[CellProblem] = []
+    files = read_package(path)
+    rows = {name: parse_rows(FILES[name], data, problems) for name, data in files.items()}
+    items = list(_build_items(rows, problems))
+    by_key = {(item.record.kind, item.record.key): item for item in items}
+    unread = {(FILES[p.file].record.kind) for p in problems if p.file in FILES and p.file != "points.csv"}  # type: ignore[union-attr]
+    # a reference into a file that could not be read is not reported on top
+    problems += _check_references(items, by_key, known, unread)
+    problems += _check_against_known(items, known)
+    if problems:
+        problems.sort(key=lambda p: (list(FILES).index(p.file) if p.file in FILES else -1, p.line))
+        raise InvalidPackage(str(path), problems)
+    return items
+
+
+def _build_items(rows: Mapping[str, list[Row]], problems: list[CellProblem]) -> Iterator[Item]:
+    points = _group_points(rows.get("points.csv", []), problems)
+    for name, file in FILES.items():
+        if name == "points.csv" or name not in rows:
+            continue
+        seen: dict[tuple[str, ...], int] = {}
+        for row in rows[name]:
+            if key_problem := _check_key(file, row, seen):
+                problems.append(key_problem)
+                continue
+            item = _build_item(file, row, points, problems)
+            if item is not None:
+                yield item
+    problems += [
+        CellProblem("points.csv", line, "dataset", key, "there is no such dataset in datasets.csv.")
+        for key, entries in points.items()
+        for line, _ in entries
+    ]
+
+
+def _check_key(file: File, row: Row, seen: dict[tuple[str, ...], int]) -> CellProblem | None:
+    key = tuple(row.cells[name].casefold() for name in file.key)
+    if key in seen:
+        shown = ", ".join(row.cells[name] for name in file.key)
+        return CellProblem(file.name, row.line, file.key[-1], shown, f"line {seen[key]} has the same key.")
+    seen[key] = row.line
+    return None
+
+
+def _group_points(rows: list[Row], problems: list[CellProblem]) -> dict[str, list[tuple[int, Point]]]:
+    grouped: dict[str, list[tuple[int, Point]]] = {}
+    columns = FILES["points.csv"].columns
+    for row in rows:
+        bad = [
+            CellProblem("points.csv", row.line, column.name, text, why)
+            for column in columns
+            if (why := complain(column.cell, text := row.cells.get(column.name, ""), column.required))
+        ]
+        problems += bad
+        if not bad:
+            cells = dict(row.cells)
+            grouped.setdefault(cells.pop("dataset"), []).append((row.line, Point(**cells)))
+    return grouped
+
+
+def _build_item(
+    file: File, row: Row, points: dict[str, list[tuple[int, Point]]], problems: list[CellProblem]
+) -> Item | None:
+    before = len(problems)
+    fields: dict[str, object] = dict(row.cells)
+    standing, note = str(fields.pop("standing", "")), str(fields.pop("standing_note", ""))
+    for column in file.columns:
+        text = {"standing": standing, "standing_note": note}.get(column.name)
+        if text is not None and (why := complain(column.cell, text, column.required)):
+            problems.append(CellProblem(file.name, row.line, column.name, text, why))
+    if file.record is Correlation:
+        fields["coefficients"] = _parse_coefficients(file, row, problems)
+    if file.record is Dataset:
+        fields["points"] = tuple(point for _, point in points.pop(row.cells["key"], []))
+    if len(problems) > before and file.record is Correlation and not fields["coefficients"]:
+        return None
+    try:
+        record = file.record(**fields)  # type: ignore[arg-type]
+    except InvalidRecord as error:
+        problems += [CellProblem(file.name, row.line, p.field, p.given, p.allowed) for p in error.problems]
+        return None
+    assert isinstance(record, Record)
+    return Item(record, standing, note, file.name, row.line) if len(problems) == before else None
+
+
+def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> dict[str, str]:
+    """A=8.07131; B=1730.63 as names and texts; empty if it cannot be read."""
+    text = row.cells["coefficients"]
+    found: dict[str, str] = {}
+    for part in text.split(";"):
+        name, equals, value = part.strip().partition("=")
+        if not equals or not name or not value or name in found:
+            why = "coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed, each once."
+            problems.append(CellProblem(file.name, row.line, "coefficients", text, why))
+            return {}
+        found[name] = value
+    return found
+
+
+def _check_references(
+    items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known, unread: set[str]
+) -> Iterator[CellProblem]:
+    for item in items:
+        for role, kind, key in item.record.references():
+            if (kind, key) not in by_key and kind not in unread and known(kind, key) is None:
+                why = f"there is no {kind} with this key, neither in the package nor in the library."
+                yield CellProblem(item.file, item.line, role, key, why)
+    yield from _check_printed_units(items, by_key, known)
+    cycle = find_cycle(
+        (i.record.correlation, i.record.over)
+        for i in items
+        if isinstance(i.record, Preference) and i.standing in ("accepted", "draft")
+    )
+    if cycle:
+        why = f"the preferences go round in a circle: {' over '.join(cycle)}."
+        yield CellProblem("preferences.csv", 0, "", "", why)
+
+
+def _check_printed_units(
+    items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known
+) -> Iterator[CellProblem]:
+    for item in items:
+        if isinstance(item.record, PrintedValue):
+            key = item.record.correlation
+            owner = by_key.get(("correlation", key))
+            of = owner.record if owner else known("correlation", key)
+            if isinstance(of, Correlation):
+                dimension = PROPERTIES[of.property].dimension
+                if UNITS[item.record.value_unit].dimension != dimension:
+                    why = f"{of.property} is in a {dimension} unit."
+                    yield CellProblem(item.file, item.line, "value_unit", item.record.value_unit, why)
+
+
+def find_cycle(pairs: Iterator[tuple[str, str]]) -> list[str]:
+    """A chain of preferences that comes back to its start, or an empty list.
+
+    Examples
+    --------
+    >>> find_cycle(iter([("a", "b"), ("b", "c"), ("c", "a")]))
+    ['a', 'b', 'c', 'a']
+    """
+    below: dict[str, list[str]] = {}
+    for key, over in pairs:
+        below.setdefault(key, []).append(over)
+    done: set[str] = set()
+    for start in below:
+        trail, stack = [start], [iter(below[start])]
+        while stack:
+            nxt = next(stack[-1], None)
+            if nxt is None:
+                done.add(trail.pop())
+                stack.pop()
+            elif nxt in trail:
+                return [*trail[trail.index(nxt) :], nxt]
+            elif nxt not in done:
+                trail.append(nxt)
+                stack.append(iter(below.get(nxt, ())))
+    return []
+
+
+def _check_against_known(items: list[Item], known: Known) -> Iterator[CellProblem]:
+    """A key keeps its compound: another substance needs another key."""
+    for item in items:
+        compound = getattr(item.record, "compound", "")
+        if compound:
+            before = known(item.record.kind, item.record.key)
+            owner = getattr(before, "compound", compound)
+            if owner != compound:
+                why = f"the key is recorded for {owner}; another compound needs another key."
+                yield CellProblem(item.file, item.line, "compound", compound, why)
