@@ -1,0 +1,129 @@
+"""A correlation as a candidate for an answer: its curve, reach and rank."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+from registry import rules
+from registry.confirmation import Counted, count_correlation
+from registry.curve import Curve
+from registry.dossier import Dossier, Entry
+from registry.limits import Limits, best_fixed_point
+from registry.properties import PROPERTIES
+from registry.quantities import parse_temperature
+from registry.records import Correlation
+from registry.uncertainty import Piece, parse_uncertainty, piece_at
+
+__all__ = ["Candidate", "build_candidate"]
+
+
+@dataclass(frozen=True)
+class Candidate:
+    """One correlation that could answer.
+
+    Attributes
+    ----------
+    entry : Entry
+        The record with its revision and standing.
+    curve : Curve
+        The record made evaluable.
+    reach : tuple of float
+        Where it may answer, K: its window cut to its phase. Empty (lower
+        above upper) if the two do not meet.
+    counted : Counted
+        The evidence it ranks by.
+    pieces : tuple of Piece
+        Its stated uncertainty, with the rank of each piece in percent.
+    year : int
+        Year of its source, 0 if not stated.
+    """
+
+    entry: Entry[Correlation]
+    curve: Curve
+    reach: tuple[float, float]
+    counted: Counted
+    pieces: tuple[tuple[Piece, float], ...]
+    year: int
+
+    @property
+    def key(self) -> str:
+        """The key of the correlation."""
+        return self.entry.key
+
+    @property
+    def record(self) -> Correlation:
+        """The correlation."""
+        return self.entry.record
+
+    @property
+    def width(self) -> float:
+        """The width of its reach, K."""
+        return max(self.reach[1] - self.reach[0], 0.0)
+
+    def covers(self, kelvin: float) -> bool:
+        """True if it may answer there, its standing aside."""
+        return self.reach[0] - rules.BOUND_TOLERANCE <= kelvin <= self.reach[1] + rules.BOUND_TOLERANCE
+
+    def distance(self, kelvin: float) -> float:
+        """How far a temperature lies outside its reach, K."""
+        return max(self.reach[0] - kelvin, kelvin - self.reach[1], 0.0)
+
+    def ranked_uncertainty(self, kelvin: float) -> float:
+        """The stated uncertainty it ranks by there, percent; infinity if none."""
+        return next((percent for piece, percent in self.pieces if kelvin <= piece.upper), math.inf)
+
+    def stated_percent(self, kelvin: float, value: float) -> float | None:
+        """The stated uncertainty as a percent of a value there, or None."""
+        piece = piece_at(tuple(piece for piece, _ in self.pieces), kelvin)
+        return piece.percent_of(value) if piece else None
+
+
+def build_candidate(
+    entry: Entry[Correlation], dossier: Dossier, limits: Limits, *, metastable: bool = False
+) -> Candidate:
+    """A correlation made a candidate.
+
+    Parameters
+    ----------
+    entry : Entry
+        The correlation.
+    dossier : Dossier
+        All that is recorded about its compound.
+    limits : Limits
+        Phase limits of its property.
+    metastable : bool
+        Let it answer over the metastable range that its record states.
+
+    Returns
+    -------
+    Candidate
+        With its reach and what it ranks by.
+    """
+    record = entry.record
+    curve = Curve.of(record, dossier.compound.record.grams_per_mole())
+    reach = _find_reach(record, curve, limits, metastable)
+    triple = best_fixed_point(dossier, "triple-point-temperature")
+    counted = count_correlation(entry, curve, dossier, triple.record.value_si() if triple else None)
+    pieces = parse_uncertainty(record.uncertainty, PROPERTIES[record.property].dimension)
+    ranked = tuple((piece, _rank_piece(pieces, i, curve, reach)) for i, piece in enumerate(pieces))
+    return Candidate(entry, curve, reach, counted, ranked, dossier.year(record.source))
+
+
+def _find_reach(record: Correlation, curve: Curve, limits: Limits, metastable: bool) -> tuple[float, float]:
+    low, high = curve.window
+    stated = metastable and record.metastable_below and parse_temperature(record.metastable_below) >= limits.lower
+    if limits.lower and not stated:
+        low = max(low, limits.lower - rules.TRIPLE_MARGIN)
+    return low, min(high, limits.upper)
+
+
+def _rank_piece(pieces: tuple[Piece, ...], index: int, curve: Curve, reach: tuple[float, float]) -> float:
+    """The percent a piece ranks by: an absolute one at its worst, where the value is least."""
+    piece = pieces[index]
+    if piece.absolute is None:
+        return math.inf if piece.percent is None else piece.percent
+    low = max(reach[0], pieces[index - 1].upper if index else reach[0])
+    high = min(reach[1], piece.upper)
+    percents = [piece.percent_of(curve.value(t)) for t in (low, high)]
+    return max((p for p in percents if p is not None and math.isfinite(p)), default=math.inf)

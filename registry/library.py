@@ -1,0 +1,495 @@
+"""The facade: every verb of the job is one method of `Library`.
+
+The only place where the database and the numeric side meet.
+"""
+
+from __future__ import annotations
+
+import os
+import secrets
+import threading
+from collections.abc import Iterator
+from datetime import UTC, datetime
+from pathlib import Path
+from typing import Any, Self, overload
+
+import numpy as np
+from numpy.typing import ArrayLike
+
+from registry.answers import Answer, Batch
+from registry.coverage import Coverage, build_coverage
+from registry.dossier import Dossier, Entry
+from registry.errors import BadInput, Refused, UnknownKey
+from registry.properties import PROPERTIES
+from registry.records import KINDS, REVIEWED, Compound, Correlation, Record
+from registry.searching import nearest_names
+from registry.store.library_file import LibraryFile, locate
+from registry.store.reading import Row
+from registry.verdicts import Refusal, refuse
+
+__all__ = ["Library", "default_place", "open_library", "start_library"]
+
+SHELVES = ("published", "scenario", "none")
+
+
+def default_place() -> str:
+    """Where the library is if none is named: RANGEBOOK_LIBRARY, else the user's data folder."""
+    import platformdirs
+
+    named = os.environ.get("RANGEBOOK_LIBRARY")
+    return named or str(Path(platformdirs.user_data_dir("rangebook", appauthor=False)) / "library.db")
+
+
+def open_library(place: str | os.PathLike[str] | None = None) -> Library:
+    """Open a library for reading and recording.
+
+    Parameters
+    ----------
+    place : path or URL, optional
+        A SQLite file or a ``sqlite:///`` URL. By default the one named by the
+        environment variable RANGEBOOK_LIBRARY, else the one in the user's
+        data folder, which is made with the published shelf on first use.
+
+    Returns
+    -------
+    Library
+        A context manager; closing it releases the file.
+
+    Raises
+    ------
+    LibraryUnreadable
+        If there is none, it is damaged, or made by another version.
+
+    Examples
+    --------
+    >>> with open_library("shelf.db") as library:
+    ...     answer = library.lookup("water", 298.15)
+    >>> round(answer.value, 1), answer.unit, answer.correlation.key
+    (3169.7, 'Pa', 'water-if97')
+    """
+    if place is None:
+        place = default_place()
+        if not os.environ.get("RANGEBOOK_LIBRARY") and not locate(place).exists():
+            try:
+                return start_library(place)
+            except FileExistsError:  # another process was first
+                pass
+    return Library(LibraryFile.open(locate(place)))
+
+
+def start_library(place: str | os.PathLike[str], shelf: str = "published", author: str = "rangebook") -> Library:
+    """Make a new library, with a shelf or empty.
+
+    Parameters
+    ----------
+    place : path or URL
+        Where; nothing may be there.
+    shelf : {'published', 'scenario', 'none'}
+        The published shelf (accepted as it stands), the invented
+        demonstration scenario, or nothing.
+    author : str
+        Who starts it.
+
+    Returns
+    -------
+    Library
+        The new library, open.
+
+    Raises
+    ------
+    BadInput
+        If the shelf is unknown, or the folder cannot be written.
+    FileExistsError
+        If something is there already.
+    """
+    if shelf not in SHELVES:
+        raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(SHELVES)}.")
+    path = locate(place)
+    name = secrets.token_hex(16)
+
+    def fill(library: Library) -> None:
+        if shelf != "none":
+            from registry.shelves import find_shelf
+
+            reason = "The published shelf, accepted as it stands." if shelf == "published" else "The invented scenario."
+            library.load(find_shelf(shelf), author=author, reason=reason)
+
+    LibraryFile.create(path, name, now_utc(), lambda file: fill(Library(file)))
+    return Library(LibraryFile.open(path))
+
+
+def upgrade_library(place: str | os.PathLike[str]) -> Path | None:
+    """Bring a library of an older program up to date, after a backup.
+
+    Parameters
+    ----------
+    place : path or URL
+        The library.
+
+    Returns
+    -------
+    Path or None
+        The backup; None if the library was up to date.
+    """
+    from registry.store.schema import upgrade_file
+
+    return upgrade_file(locate(place))
+
+
+def now_utc() -> str:
+    """The time now, UTC, ISO 8601 with microseconds."""
+    return datetime.now(UTC).strftime("%Y-%m-%dT%H:%M:%S.%fZ")
+
+
+class Library:
+    """A library at its newest position; sees other processes' changes.
+
+    Parameters
+    ----------
+    file : LibraryFile
+        The open database.
+    """
+
+    def __init__(self, file: LibraryFile) -> None:
+        self._file = file
+        self._lock = threading.RLock()
+        self._stamp = -1
+        self._coverages: dict[tuple[str, str, str, bool], Coverage] = {}
+        self._dossiers: dict[str, Dossier] = {}
+
+    def __enter__(self) -> Self:
+        return self
+
+    def __exit__(self, *_: object) -> None:
+        self.close()
+
+    def close(self) -> None:
+        """Release the file."""
+        self._file.close()
+
+    @property
+    def place(self) -> str:
+        """Where the library is."""
+        return str(self._file.path)
+
+    @property
+    def position(self) -> int:
+        """The number of the last change."""
+        return self._file.read_position()
+
+    @overload
+    def lookup(
+        self, compound: str, temperature: float, *, property: str = ..., phase: str | None = ..., metastable: bool = ...
+    ) -> Answer: ...
+
+    @overload
+    def lookup(
+        self, compound: str, temperature: ArrayLike, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ...,
+    ) -> Batch: ...  # fmt: skip
+
+    def lookup(
+        self, compound: str, temperature: Any, *, property: str = "vapor-pressure", phase: str | None = None,
+        metastable: bool = False,
+    ) -> Answer | Batch:  # fmt: skip
+        """The value of a property at one temperature, or at many.
+
+        Parameters
+        ----------
+        compound : str
+            Key, name, synonym, CAS number or formula, case aside.
+        temperature : float or array_like of float
+            Temperature on ITS-90, K.
+        property : str
+            What is asked for.
+        phase : str, optional
+            The phase; needed only where several cover a temperature.
+        metastable : bool
+            Let the metastable ranges answer that records state.
+
+        Returns
+        -------
+        Answer or Batch
+            An answer for one temperature. For an array a batch, whose
+            `values` are NaN where nothing may answer.
+
+        Raises
+        ------
+        Refused
+            For one temperature where no correlation may answer; carries the
+            refusal.
+        UnknownKey
+            If the compound is unknown or ambiguous.
+        BadInput
+            If the property is unknown or a temperature is not above 0 K.
+
+        Examples
+        --------
+        >>> library = open_library("shelf.db")
+        >>> library.lookup("ammonia", [200.0, 300.0, 500.0]).values.round(1)
+        array([   8610.9, 1061291.3,       nan])
+        >>> library.lookup("water", 700.0)
+        Traceback (most recent call last):
+        ...
+        registry.errors.Refused: 700 K lies above the critical temperature of water, ...
+        """
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable)
+        if isinstance(temperature, (float, int)):
+            return _answer_one(coverage, float(temperature))
+        kelvin = np.asarray(temperature, dtype=float)
+        if kelvin.ndim == 0:
+            return _answer_one(coverage, float(kelvin))
+        values, places = coverage.evaluate(kelvin)
+        return Batch(kelvin, values, places, coverage)
+
+    def coverage(
+        self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False
+    ) -> Coverage:
+        """The map from temperature to the correlation that answers there.
+
+        Parameters
+        ----------
+        compound, property, phase, metastable
+            As for `lookup`.
+
+        Returns
+        -------
+        Coverage
+            Its stretches tile the axis above 0 K.
+
+        Examples
+        --------
+        >>> library = open_library("shelf.db")
+        >>> [seam.temperature for seam in library.coverage("helium-4").seams]
+        [2.1768]
+        """
+        stamp = self._file.read_stamp()
+        if stamp != self._stamp:
+            self._forget(stamp)
+        request = (compound, property, phase or "", metastable)
+        found = self._coverages.get(request)
+        if found is None:
+            found = self._coverages[request] = self._build_coverage(*request)
+        return found
+
+    def _forget(self, stamp: int) -> None:
+        with self._lock:
+            self._coverages, self._dossiers, self._stamp = {}, {}, stamp
+
+    def _build_coverage(self, compound: str, prop: str, phase: str, metastable: bool) -> Coverage:
+        if prop not in PROPERTIES:
+            raise UnknownKey("property", prop, nearest=list(PROPERTIES))
+        dossier = self.dossier(compound)
+        phases = sorted({entry.record.phase for entry in dossier.for_property(prop)})
+        if phase and phases and phase not in phases:
+            raise UnknownKey(f"phase with a {prop} of {dossier.compound.key}", phase, nearest=phases)
+        return build_coverage(dossier, prop, phase, metastable=metastable)
+
+    def find_compound(self, text: str) -> str:
+        """The key of a compound, by key, name, synonym, CAS number or formula.
+
+        Examples
+        --------
+        >>> open_library("shelf.db").find_compound("7664-41-7")
+        'ammonia'
+        """
+        with self._lock, self._file.reading() as view:
+            if view.current("compound", [text]):
+                return text
+            found = {str(row.content.get("compound", row.key)) for row in view.find_term(text)}
+            # a key in other case, before names
+            if len(found) != 1 and view.current("compound", [text.casefold()]):
+                return text.casefold()
+            if len(found) == 1:
+                return found.pop()
+            if found:
+                raise UnknownKey("compound", text, several=sorted(found))
+            keys = [row.key for row in view.kind("compound")]
+            raise UnknownKey("compound", text, nearest=nearest_names(text, [*keys, *view.terms()]))
+
+    def dossier(self, compound: str) -> Dossier:
+        """Everything recorded about a compound, by any of its names."""
+        key = self.find_compound(compound)
+        if key not in self._dossiers:
+            with self._lock, self._file.reading() as view:
+                self._dossiers[key] = _read_dossier(view, key)
+        return self._dossiers[key]
+
+    def compounds(self) -> list[Entry[Compound]]:
+        """Every compound, by key."""
+        with self._lock, self._file.reading() as view:
+            return [_entry(row) for row in view.kind("compound")]
+
+    def correlations(self) -> list[Entry[Correlation]]:
+        """Every correlation, by key, in its newest revision."""
+        with self._lock, self._file.reading() as view:
+            return _with_standing(view, view.kind("correlation"))
+
+    def entry(self, key: str) -> Entry[Any]:
+        """The record under a key, of whatever kind; a compound by any name.
+
+        Raises
+        ------
+        UnknownKey
+            If there is none; carries the nearest keys.
+        """
+        with self._lock, self._file.reading() as view:
+            for kind in KINDS:
+                rows = view.current(kind, [key])
+                if rows:
+                    return _with_standing(view, rows)[0]
+        try:
+            return self.dossier(key).compound
+        except UnknownKey as error:
+            if error.several:
+                raise
+        with self._lock, self._file.reading() as view:
+            keys = [row.key for kind in KINDS if kind not in ("name", "review") for row in view.kind(kind)]
+            raise UnknownKey("record", key, nearest=nearest_names(key, [*keys, *view.terms()]))
+
+    def referring(self, kind: str, key: str) -> list[Entry[Any]]:
+        """The records that refer to one record, by kind and key."""
+        with self._lock, self._file.reading() as view:
+            return _with_standing(view, [row for row in view.linked(kind, key) if row.kind != "review"])
+
+    def source_citation(self, key: str) -> str:
+        """The citation of a source, or its key if it is not recorded."""
+        with self._lock, self._file.reading() as view:
+            rows = view.current("source", [key])
+        return str(rows[0].content["citation"]) if rows else key
+
+    def changes(self) -> list[Any]:
+        """The headers of all changes, in order."""
+        with self._lock, self._file.reading() as view:
+            return view.changes()
+
+    def load(
+        self, path: str | os.PathLike[str], *, author: str, reason: str = "", dry_run: bool = False
+    ) -> dict[str, int]:
+        """Load a package in one change: all of it or nothing.
+
+        Parameters
+        ----------
+        path : path
+            A folder or .zip in the exchange format.
+        author : str
+            Who loads it.
+        reason : str
+            Why; the name of the package if empty.
+        dry_run : bool
+            Check everything and record nothing.
+
+        Returns
+        -------
+        dict of str to int
+            ``added``, ``revised``, ``reviewed`` and ``unchanged`` records, and
+            the number of the ``change`` (0 if there was nothing to record).
+
+        Raises
+        ------
+        InvalidPackage
+            With every bad cell.
+        LibraryBusy
+            If another process writes for too long.
+        """
+        from registry.recording import plan_load
+
+        package = Path(path)
+        with self._lock, self._file.writing() as (view, append):
+            plan = plan_load(view, package)
+            counts = {**plan.counts, "change": 0}
+            if plan.drafts and not dry_run:
+                counts["change"] = append(author, reason or f"Loaded {package.name}", now_utc(), plan.drafts).number
+        return counts
+
+    def dump(self, path: str | os.PathLike[str]) -> dict[str, int]:
+        """Write everything as a package; gives the number of rows a file.
+
+        Parameters
+        ----------
+        path : path
+            A folder that does not exist yet, or a name ending in .zip.
+        """
+        from registry.exchange.dumping import dump_items
+
+        with self._lock, self._file.reading() as view:
+            items = [
+                (entry.record, (entry.standing, entry.standing_note))
+                for kind in KINDS
+                if kind != "review"
+                for entry in _with_standing(view, view.kind(kind))
+            ]
+        return dump_items(Path(path), items)
+
+
+def _answer_one(coverage: Coverage, kelvin: float) -> Answer:
+    candidate = coverage.stretch_at(kelvin).candidate
+    if candidate is not None:
+        value = candidate.curve.value(kelvin)
+        if abs(value) < np.inf:
+            return Answer(kelvin, value, candidate, coverage)
+    raise Refused(refuse_one(coverage, kelvin))
+
+
+def refuse_one(coverage: Coverage, kelvin: float) -> Refusal:
+    """The refusal at one temperature, which must be a temperature."""
+    if not 0.0 < kelvin < np.inf:
+        raise BadInput(f"{kelvin} K is no temperature; a finite number of kelvin above 0 is allowed.")
+    return refuse(coverage, kelvin)
+
+
+def _entry(row: Row, standing: str = "", note: str = "") -> Entry[Any]:
+    record: Record = KINDS[row.kind].restore(row.key, row.content)
+    return Entry(record, row.revision, row.change, standing, note)
+
+
+def _with_standing(view: Any, rows: list[Row]) -> list[Entry[Any]]:
+    """Entries with the standing that reviews give them; a draft where none does."""
+    from registry.records import Review
+
+    keys = {(row.kind, row.key, row.revision): Review.key_for(row.kind, row.key, row.revision) for row in rows}
+    wanted = [key for (kind, _, _), key in keys.items() if kind in REVIEWED]
+    reviews = {row.key: row.content for row in view.current("review", wanted)}
+
+    def enter(row: Row) -> Entry[Any]:
+        if row.kind not in REVIEWED:
+            return _entry(row)
+        review = reviews.get(keys[row.kind, row.key, row.revision], {})
+        return _entry(row, review.get("standing", "draft"), review.get("note", ""))
+
+    return [enter(row) for row in rows]
+
+
+def _in_force(entries: list[Entry[Any]]) -> Iterator[Entry[Any]]:
+    """For each key the revision that counts.
+
+    The newest accepted one stays in force while a newer draft waits or was
+    declined; a withdrawal ends it.
+    """
+    by_key: dict[tuple[str, str], list[Entry[Any]]] = {}
+    for entry in entries:
+        by_key.setdefault((entry.record.kind, entry.key), []).append(entry)
+    for revisions in by_key.values():
+        revisions.sort(key=lambda entry: entry.revision, reverse=True)
+        decided = (entry for entry in revisions if entry.standing in ("accepted", "withdrawn", ""))
+        yield next(decided, revisions[0])
+
+
+def _read_dossier(view: Any, key: str) -> Dossier:
+    compound = _entry(view.current("compound", [key])[0])
+    entries = list(_in_force(_with_standing(view, view.linked("compound", key))))
+    of_kind: dict[str, list[Any]] = {kind: [] for kind in KINDS}
+    for entry in entries:
+        of_kind[entry.record.kind].append(entry)
+    keys = {entry.key for entry in of_kind["correlation"]}
+    preferences = [
+        entry
+        for entry in _in_force(_with_standing(view, view.kind("preference")))
+        if {entry.record.correlation, entry.record.over} & keys
+    ]
+    cited = {entry.record.source for kind in ("correlation", "fixed-point", "dataset") for entry in of_kind[kind]}
+    sources = {row.key: KINDS["source"].restore(row.key, row.content) for row in view.current("source", cited)}
+    return Dossier(
+        compound, tuple(of_kind["correlation"]), tuple(of_kind["fixed-point"]), tuple(of_kind["dataset"]),
+        tuple(preferences), sources, view.position,  # type: ignore[arg-type]
+    )  # fmt: skip

@@ -1,0 +1,91 @@
+"""Which of two covering correlations is better, and the sentence that says why.
+
+Among the accepted correlations that cover a temperature for a phase:
+
+1. every one over which a covering one is preferred by a steward is dropped;
+2. the better evidence wins: standard, evaluated, measured, compiled,
+   estimated; a record from memory counts as compiled at most until
+   independent values confirm it;
+3. then the smaller stated uncertainty, not stated last (the scatter of a fit
+   is not an uncertainty);
+4. then the wider reach, which makes fewer seams;
+5. then the newer source;
+6. then the key, in alphabetical order.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable, Sequence
+
+from registry.candidate import Candidate
+from registry.records import EVIDENCE
+
+__all__ = ["choose_best", "explain_order", "explain_preference"]
+
+Pairs = frozenset[tuple[str, str]]
+
+
+def _rank(candidate: Candidate, kelvin: float) -> tuple[int, float, float, int, str]:
+    return (
+        EVIDENCE.index(candidate.counted.evidence),
+        candidate.ranked_uncertainty(kelvin),
+        -candidate.width,
+        -candidate.year,
+        candidate.key,
+    )
+
+
+def choose_best(covering: Sequence[Candidate], kelvin: float, preferred: Pairs) -> Candidate:
+    """The candidate that answers at a temperature.
+
+    Parameters
+    ----------
+    covering : sequence of Candidate
+        The accepted candidates that cover the temperature; at least one.
+    kelvin : float
+        The temperature, K.
+    preferred : frozenset of (str, str)
+        Pairs (key, key it is preferred over), without a cycle.
+
+    Returns
+    -------
+    Candidate
+        The best one.
+    """
+    keys = {candidate.key for candidate in covering}
+    dropped = {over for key, over in preferred if key in keys}
+    left = [candidate for candidate in covering if candidate.key not in dropped]
+    return min(left, key=lambda candidate: _rank(candidate, kelvin))
+
+
+def explain_preference(other: Candidate, covering: Iterable[Candidate], preferred: Pairs) -> str:
+    """Which covering candidate a steward prefers over this one; empty if none."""
+    above = [c.key for c in covering if (c.key, other.key) in preferred]
+    return f"A steward prefers {above[0]} over it." if above else ""
+
+
+def explain_order(best: Candidate, other: Candidate, kelvin: float) -> str:
+    """Why one candidate ranks before another, in a sentence.
+
+    The first rule in which they differ decides.
+    """
+    first, second = _rank(best, kelvin), _rank(other, kelvin)
+    if first[0] != second[0]:
+        return f"{_evidence(best).capitalize()} evidence ranks before {_evidence(other)}."
+    if first[1] != second[1]:
+        return f"Equal evidence; its stated uncertainty is {_percent(first[1])}, here {_percent(second[1])}."
+    if first[2] != second[2]:
+        return f"Equal evidence and uncertainty; it answers over {best.width:.6g} K, this one over {other.width:.6g} K."
+    if first[3] != second[3]:
+        return f"Equal so far; its source is newer ({best.year} against {other.year or 'no year'})."
+    return "Equal in all else; the keys decide, in alphabetical order."
+
+
+def _percent(value: float) -> str:
+    return "not stated" if math.isinf(value) else f"{value:g} %"
+
+
+def _evidence(candidate: Candidate) -> str:
+    recorded, counted = candidate.record.evidence, candidate.counted.evidence
+    return counted if recorded == counted else f"{counted} ({recorded} from memory, unconfirmed)"

@@ -1,0 +1,23 @@
+"""The names nearest to one that was not found."""
+
+from __future__ import annotations
+
+import difflib
+from collections.abc import Iterable
+
+__all__ = ["nearest_names"]
+
+
+def nearest_names(text: str, names: Iterable[str], count: int = 3) -> list[str]:
+    """Up to `count` names that look like a text, best first, case aside.
+
+    Examples
+    --------
+    >>> nearest_names("amonia", ["ammonia", "argon", "Water"])
+    ['ammonia']
+    """
+    folded = {name.casefold(): name for name in names}
+    given = text.casefold()[:60]
+    near = difflib.get_close_matches(given, folded, n=count, cutoff=0.6)
+    starts = [name for name in folded if len(given) >= 3 and name.startswith(given)]
+    return [folded[name] for name in dict.fromkeys([*near, *sorted(starts)])][:count]
