@@ -1,0 +1,83 @@
+"""Answers as a person reads them."""
+
+from __future__ import annotations
+
+from registry.answers import Answer, Refusal
+from registry.cli.documents import value_in
+from registry.cli.screen import CAUTION, emphasize, print_facts, print_table, say, wrap
+from registry.cli.temperatures import Asked
+from registry.coverage import Coverage
+from registry.forms.catalogue import FORMS
+from registry.properties import PROPERTIES
+from registry.quantities import Unit, format_number, format_plain
+
+__all__ = ["print_answers"]
+
+_BASIS = {"printed": "as printed", "assumed": "assumed, not printed", "memory": "from memory"}
+_OBTAINED = {"seen": "seen", "memory": "from memory"}
+
+
+def print_answers(coverage: Coverage, found: list[tuple[Asked, Answer | Refusal]], to: Unit | None, why: bool) -> None:
+    """A table of values, then what stands behind them, once for each correlation."""
+    answers = [(asked, result) for asked, result in found if isinstance(result, Answer)]
+    if not answers:
+        return
+    name = coverage.dossier.compound.record.name
+    say(emphasize(f"{name}: {PROPERTIES[coverage.property].title}"))
+    say()
+    _print_values(answers, to)
+    stories: dict[str, list[tuple[Asked, Answer]]] = {}
+    for asked, answer in answers:
+        stories.setdefault(answer.correlation.key, []).append((asked, answer))
+    for told in stories.values():
+        say()
+        _print_story(told)
+    if why:
+        _print_verdicts(answers)
+    say()
+    say(wrap(CAUTION, 0))
+
+
+def _print_values(answers: list[tuple[Asked, Answer]], to: Unit | None) -> None:
+    rows = []
+    for asked, answer in answers:
+        value, unit = value_in(answer, to)
+        stated = answer.uncertainty_percent
+        rows.append([
+            asked.text, f"{format_plain(answer.temperature)} K", format_number(value), unit.name,
+            f"{stated:.3g} %" if stated is not None else "not stated",
+            f"{answer.percent_per_kelvin:+.3g} %", f"x {answer.factor_per_10_kelvin:.4g}",
+            _OBTAINED[answer.correlation.obtained], answer.correlation.key,
+        ])  # fmt: skip
+    headers = ["asked", "is", "value", "", "uncertainty", "per K", "per 10 K", "obtained", "answered by"]
+    print_table(headers, rows, right=(True, True, True, False, True, True, True))
+
+
+def _print_story(told: list[tuple[Asked, Answer]]) -> None:
+    """One correlation, with why it was chosen at the first of its temperatures."""
+    first, answer = told[0]
+    record = answer.correlation
+    low, high = answer.window
+    chosen = answer.chosen_because + (f" (At {first.text}; --why tells the others.)" if len(told) > 1 else "")
+    cautions = dict.fromkeys(caution for _, each in told for caution in each.cautions)
+    locator = record.locator if record.locator != "not recorded" else "the place in it is not recorded"
+    say(f"  {emphasize(record.key)}, revision {answer.revision}, {answer.standing}")
+    print_facts(
+        (
+            ("form", FORMS[record.form].title),
+            ("window", f"{format_plain(low)} to {format_plain(high)} K, {_BASIS[record.window_basis]}"),
+            ("evidence", f"{record.evidence}, {_OBTAINED[record.obtained]}"),
+            ("source", f"{answer.citation}; {locator}"),
+            ("chosen", chosen),
+            *(("caution", caution) for caution in cautions),
+        ),
+        indent=4,
+    )
+
+
+def _print_verdicts(answers: list[tuple[Asked, Answer]]) -> None:
+    for asked, answer in answers:
+        say()
+        say(f"  {emphasize('Candidates')} at {asked.text}")
+        rows = [(v.verdict, f"{v.correlation} r{v.revision}", v.because) for v in answer.candidates]
+        print_table(("verdict", "correlation", "because"), rows, indent=4)

@@ -1,0 +1,105 @@
+"""The command `rangebook`: its commands, its one error boundary, its exit codes.
+
+====  ======================================================================
+0     done
+1     the thing asked about does not hold
+2     bad usage or bad input
+3     refused: no correlation may answer
+4     the library changed under you or is busy
+5     the library cannot be read: damaged, no library, or of a newer program
+70    a fault in the program itself
+====  ======================================================================
+"""
+
+from __future__ import annotations
+
+import os
+import re
+import sys
+from typing import Annotated
+
+import typer
+
+from registry.cli.browsing import coverage, list_records, show
+from registry.cli.keeping import dump, load, start, upgrade
+from registry.cli.looking import REFUSED, lookup
+from registry.cli.screen import complain, print_json
+from registry.errors import LibraryBusy, LibraryUnreadable, RangebookError, Refused
+
+__all__ = ["main"]
+
+EXIT_CODES = ((Refused, REFUSED), (LibraryBusy, 4), (LibraryUnreadable, 5), (RangebookError, 2))
+FAULT = 70
+
+app = typer.Typer(
+    name="rangebook",
+    no_args_is_help=True,
+    rich_markup_mode=None,
+    pretty_exceptions_enable=False,
+    add_completion=True,
+    context_settings={"help_option_names": ["-h", "--help"]},
+)
+for command, name in (
+    (lookup, "lookup"), (coverage, "coverage"), (list_records, "list"), (show, "show"),
+    (start, "start"), (load, "load"), (dump, "dump"), (upgrade, "upgrade"),
+):  # fmt: skip
+    app.command(name)(command)
+
+
+def _print_version(wanted: bool) -> None:
+    if wanted:
+        from registry import __version__
+        from registry.rules import VERSION
+        from registry.store.tables import SCHEMA
+
+        print(f"rangebook {__version__}, rules {VERSION}, schema {SCHEMA}")
+        raise typer.Exit
+
+
+@app.callback()
+def rangebook(
+    version: Annotated[
+        bool, typer.Option("--version", callback=_print_version, is_eager=True, help="Show the version and exit.")
+    ] = False,
+    traceback: Annotated[bool, typer.Option("--traceback", help="Show where an error came from.")] = False,
+) -> None:
+    """A versioned registry of pure-compound temperature correlations.
+
+    Looks up vapour pressures and other properties by the published correlation that covers a temperature, says where
+    each number comes from, and refuses where nothing covers it.
+    """
+
+
+def protect_minus(arguments: list[str]) -> list[str]:
+    """Negative numbers unquoted: -40C is a temperature, not an option.
+
+    Examples
+    --------
+    >>> protect_minus(["lookup", "ammonia", "-40C", "-u", "bar"])
+    ['lookup', 'ammonia', '−40C', '-u', 'bar']
+    """
+    return [f"\u2212{word[1:]}" if re.match(r"-[0-9.]", word) else word for word in arguments]
+
+
+def main(arguments: list[str] | None = None) -> None:
+    """Run the command line; never returns."""
+    given = sys.argv[1:] if arguments is None else arguments
+    try:
+        app(args=protect_minus(given), prog_name="rangebook")
+    except RangebookError as error:
+        if "--traceback" in given:
+            raise
+        code = next(code for kind, code in EXIT_CODES if isinstance(error, kind))
+        if "--json" in given:
+            print_json({"error": {"kind": type(error).__name__, "message": str(error), "exit_code": code}})
+        complain(str(error))
+        sys.exit(code)
+    except BrokenPipeError:
+        # the reader has gone: nothing more to say, and nothing to flush at exit
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        sys.exit(0)
+    except Exception as error:
+        if "--traceback" in given:
+            raise
+        complain(f"rangebook failed: {type(error).__name__}: {error}. `rangebook --traceback ...` shows where.")
+        sys.exit(FAULT)

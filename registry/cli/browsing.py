@@ -1,0 +1,109 @@
+"""`list`, `show` and `coverage`: what is in the library."""
+
+from __future__ import annotations
+
+from collections import Counter
+from typing import Annotated, Any
+
+import typer
+
+from registry.cli.options import (
+    JsonOption,
+    LibraryOption,
+    MetastableOption,
+    PhaseOption,
+    PropertyOption,
+    open_chosen,
+)
+
+
+def list_records(
+    search: Annotated[str, typer.Argument(metavar="[TEXT]", help="Only compounds with this in a name.")] = "",
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """List the compounds and what is recorded for each.
+
+    Example: rangebook list
+    """
+    from registry.cli.screen import emphasize, print_json, print_table, say
+    from registry.properties import PROPERTIES
+
+    with open_chosen(library) as book:
+        wanted = search.casefold()
+        compounds = [
+            entry.record
+            for entry in book.compounds()
+            if any(wanted in text.casefold() for text in (entry.key, *entry.record.terms()))
+        ]
+        counts = Counter((e.record.compound, e.record.property) for e in book.correlations() if e.accepted)
+        place, position = book.place, book.position
+    if as_json:
+        rows: list[dict[str, Any]] = [
+            {
+                "key": c.key, "name": c.name, "formula": c.formula, "cas": c.cas or None,
+                "molar_mass_g_per_mol": c.grams_per_mole(),
+                "correlations": {prop: counts[c.key, prop] for prop in PROPERTIES if counts[c.key, prop]},
+            }
+            for c in compounds
+        ]  # fmt: skip
+        print_json({"library": place, "position": position, "compounds": rows})
+        return
+    short = ("vapour", "sublim.", "melting", "enthalpy", "density")
+    say(f"{emphasize(str(len(compounds)))} compounds in {place}, position {position}; accepted correlations for each.")
+    say()
+    table = [
+        [c.key, c.formula, c.cas, f"{c.grams_per_mole():.4f}", *(str(counts[c.key, p] or "") for p in PROPERTIES)]
+        for c in compounds
+    ]
+    print_table(("compound", "formula", "CAS", "g/mol", *short), table, right=(False, False, True, *([True] * 6)))
+
+
+def show(
+    key: Annotated[str, typer.Argument(help="Key of a compound, source, correlation, dataset or fixed point.")],
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """Show everything recorded under a key, as printed in its source.
+
+    Example: rangebook show water-if97
+    """
+    from registry.cli.documents import describe_entry
+    from registry.cli.record_text import print_record
+    from registry.cli.screen import print_json
+
+    with open_chosen(library) as book:
+        entry = book.entry(key)
+        related = book.referring(entry.record.kind, entry.key)
+        changes = {change.number: change for change in book.changes()}
+        change = changes[entry.change]
+        if as_json:
+            header = {"author": change.author, "reason": change.reason, "recorded_at": change.recorded_at}
+            document = {**describe_entry(entry), "recorded": header}
+            print_json({**document, "referred_to_by": [describe_entry(other) for other in related]})
+            return
+        print_record(book, entry, related, change)
+
+
+def coverage(
+    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    prop: PropertyOption = "vapor-pressure",
+    phase: PhaseOption = "",
+    metastable: MetastableOption = False,
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """Map temperature to the correlation that answers there, with gaps and seams.
+
+    Example: rangebook coverage ethanol
+    """
+    from registry.cli.coverage_text import print_coverage
+    from registry.cli.documents import describe_coverage
+    from registry.cli.screen import print_json
+
+    with open_chosen(library) as book:
+        found = book.coverage(compound, property=prop, phase=phase or None, metastable=metastable)
+        if as_json:
+            print_json(describe_coverage(found))
+        else:
+            print_coverage(found)

@@ -1,0 +1,107 @@
+"""What the commands print with --json."""
+
+from __future__ import annotations
+
+import dataclasses
+import math
+from typing import Any
+
+from registry.answers import Answer, Refusal
+from registry.coverage import Coverage, Stretch
+from registry.dossier import Entry
+from registry.limits import Limits
+from registry.quantities import UNITS, Unit, convert, suit_unit
+
+__all__ = ["describe_answer", "describe_coverage", "describe_entry", "describe_refusal", "value_in"]
+
+
+def value_in(answer: Answer, to: Unit | None) -> tuple[float, Unit]:
+    """The value of an answer in the unit asked for, or in the one that suits it."""
+    unit = to or suit_unit(answer.value, UNITS[answer.unit])
+    return convert(answer.value, UNITS[answer.unit], unit, answer.grams_per_mole), unit
+
+
+def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:
+    """One answer."""
+    value, unit = value_in(answer, to)
+    record = answer.correlation
+    return {
+        "temperature_K": answer.temperature,
+        "value": value,
+        "unit": unit.name,
+        "value_SI": answer.value,
+        "correlation": record.key,
+        "revision": answer.revision,
+        "phase": record.phase,
+        "window_K": list(answer.window),
+        "evidence": record.evidence,
+        "standing": answer.standing,
+        "obtained": record.obtained,
+        "uncertainty_percent": answer.uncertainty_percent,
+        "percent_per_kelvin": answer.percent_per_kelvin,
+        "factor_per_10_K": answer.factor_per_10_kelvin,
+        "source": {"key": record.source, "citation": answer.citation, "locator": record.locator},
+        "chosen_because": answer.chosen_because,
+        "candidates": [dataclasses.asdict(verdict) for verdict in answer.candidates],
+        "cautions": list(answer.cautions),
+    }
+
+
+def describe_refusal(refusal: Refusal) -> dict[str, Any]:
+    """One refusal."""
+    return {
+        "temperature_K": refusal.temperature,
+        "reason": refusal.reason,
+        "explanation": refusal.explanation,
+        "nearest": [
+            {"correlation": n.correlation, "window_K": list(n.window), "distance_K": n.distance}
+            for n in refusal.nearest
+        ],
+    }
+
+
+def describe_coverage(coverage: Coverage) -> dict[str, Any]:
+    """The map of one property of a compound."""
+    return {
+        "compound": coverage.dossier.compound.key,
+        "property": coverage.property,
+        "phase": coverage.phase or None,
+        "limits": _describe_limits(coverage.limits),
+        "stretches": [_describe_stretch(stretch) for stretch in coverage.stretches if stretch.candidate],
+        "gaps_K": [[gap.low, gap.high] for gap in coverage.gaps],
+        "seams": [
+            {"temperature_K": s.temperature, "below": s.below, "above": s.above, "jump_percent": s.jump_percent}
+            for s in coverage.seams
+        ],
+        "candidates": [
+            {
+                "correlation": c.key, "revision": c.entry.revision, "standing": c.entry.standing,
+                "phase": c.record.phase, "window_K": list(c.record.window_kelvin()), "reach_K": list(c.reach),
+                "evidence": c.record.evidence, "counts_as": c.counted.evidence, "obtained": c.record.obtained,
+            }
+            for c in coverage.candidates
+        ],
+    }  # fmt: skip
+
+
+def _describe_limits(limits: Limits) -> dict[str, Any]:
+    return {
+        "lower_K": limits.lower or None,
+        "lower_point": limits.lower_point.key if limits.lower_point else None,
+        "upper_K": limits.upper if math.isfinite(limits.upper) else None,
+        "upper_point": limits.upper_point.key if limits.upper_point else None,
+        "not_recorded": list(limits.unchecked),
+    }
+
+
+def _describe_stretch(stretch: Stretch) -> dict[str, Any]:
+    assert stretch.candidate is not None
+    entry = stretch.candidate.entry
+    return {"from_K": stretch.low, "to_K": stretch.high, "correlation": entry.key, "revision": entry.revision}
+
+
+def describe_entry(entry: Entry[Any]) -> dict[str, Any]:
+    """A record with its revision, standing and change."""
+    content = {"kind": entry.record.kind, "key": entry.key, **entry.record.content()}
+    standing = {"standing": entry.standing, "standing_note": entry.standing_note} if entry.standing else {}
+    return {**content, "revision": entry.revision, "change": entry.change, **standing}

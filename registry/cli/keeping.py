@@ -1,0 +1,103 @@
+"""`start`, `load`, `dump` and `upgrade`: a library as a whole."""
+
+from __future__ import annotations
+
+from pathlib import Path
+from typing import Annotated
+
+import typer
+
+from registry.cli.options import AuthorOption, JsonOption, LibraryOption, name_author, open_chosen
+
+
+def start(
+    shelf: Annotated[
+        str, typer.Option("--shelf", metavar="published|scenario|none", help="What it begins with.")
+    ] = "published",
+    author: AuthorOption = "",
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """Start a new library: with the published shelf, the invented scenario, or empty.
+
+    Example: rangebook start --shelf none --library team.db
+    """
+    from registry.cli.screen import print_json, say
+    from registry.errors import BadInput
+    from registry.library import default_place, start_library
+
+    place = library or default_place()
+    try:
+        with start_library(place, shelf, name_author(author)) as book:
+            compounds, position = len(book.compounds()), book.position
+    except FileExistsError:
+        raise BadInput(f"Something is at {place} already; it was left as it is. Give another --library.") from None
+    if as_json:
+        print_json({"library": str(place), "shelf": shelf, "compounds": compounds, "position": position})
+    else:
+        say(f"Started {place} with {compounds} compounds, position {position}.")
+
+
+def load(
+    package: Annotated[Path, typer.Argument(help="A folder or .zip with datapackage.json.")],
+    dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Check everything, record nothing.")] = False,
+    note: Annotated[str, typer.Option("--note", help="Why it is loaded.", show_default=False)] = "",
+    author: AuthorOption = "",
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """Load a package in one change: all of it or nothing.
+
+    Example: rangebook load handbook-2026.zip --dry-run
+    """
+    from registry.cli.screen import print_json, say
+
+    with open_chosen(library) as book:
+        counts = book.load(package, author=name_author(author), reason=note, dry_run=dry_run)
+    if as_json:
+        print_json({"package": str(package), "dry_run": dry_run, **counts})
+        return
+    told = ", ".join(f"{counts[word]} {word}" for word in ("added", "revised", "reviewed", "unchanged"))
+    if dry_run:
+        say(f"{package} can be loaded: {told}. Nothing was recorded (--dry-run).")
+    elif counts["change"]:
+        say(f"Loaded {package} as change {counts['change']}: {told}.")
+    else:
+        say(f"Everything in {package} is there already ({told}); nothing was recorded.")
+
+
+def dump(
+    package: Annotated[Path, typer.Argument(help="A new folder, or a new name ending in .zip.")],
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """Write the whole library as an open Tabular Data Package.
+
+    Example: rangebook dump library.zip
+    """
+    from registry.cli.screen import print_json, say
+
+    with open_chosen(library) as book:
+        rows = book.dump(package)
+    if as_json:
+        print_json({"package": str(package), "rows": rows})
+    else:
+        say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
+
+
+def upgrade(library: LibraryOption = "", as_json: JsonOption = False) -> None:
+    """Bring a library of an older program up to date, after a backup beside it.
+
+    Example: rangebook upgrade --library team.db
+    """
+    from registry.cli.screen import print_json, say
+    from registry.library import default_place, upgrade_library
+
+    place = library or default_place()
+    backup = upgrade_library(place)
+    if as_json:
+        print_json({"library": str(place), "upgraded": backup is not None, "backup": str(backup) if backup else None})
+    elif backup is None:
+        say(f"{place} is up to date.")
+    else:
+        say(f"Upgraded {place}; the library as it was is kept at {backup}.")

@@ -1,0 +1,105 @@
+"""`lookup`: the value at a temperature, or why there is none."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, Annotated, Any
+
+import typer
+
+from registry.cli.options import (
+    JsonOption,
+    LibraryOption,
+    MetastableOption,
+    PhaseOption,
+    PropertyOption,
+    open_chosen,
+)
+
+if TYPE_CHECKING:
+    from registry.answers import Answer, Refusal
+    from registry.cli.temperatures import Asked
+
+Found = "list[tuple[Asked, Answer | Refusal]]"
+
+REFUSED = 3
+"""Exit code when a temperature was refused."""
+
+
+def lookup(
+    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    temperatures: Annotated[
+        list[str], typer.Argument(metavar="TEMPERATURE...", help="298.15K, 25C, 77F, 536.67R; - reads stdin.")
+    ],
+    prop: PropertyOption = "vapor-pressure",
+    phase: PhaseOption = "",
+    unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the value.", show_default=False)] = "",
+    atmosphere: Annotated[
+        str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
+    ] = "",
+    metastable: MetastableOption = False,
+    why: Annotated[bool, typer.Option("--why", help="Every candidate with its verdict.")] = False,
+    library: LibraryOption = "",
+    as_json: JsonOption = False,
+) -> None:
+    """Look up a value at one or more temperatures.
+
+    The correlation that covers each temperature best answers; where none may, the refusal says why (exit code 3).
+
+    Example: rangebook lookup water 25C 100C --unit mmHg
+    """
+    from registry.answers import Answer
+    from registry.cli.answer_text import print_answers
+    from registry.cli.screen import complain, print_json
+    from registry.cli.temperatures import read_temperatures
+
+    asked = read_temperatures(temperatures)
+    with open_chosen(library) as book:
+        to = _choose_unit(unit, atmosphere, prop)
+        coverage = book.coverage(compound, property=prop, phase=phase or None, metastable=metastable)
+        found = [(one, _answer(book, coverage, one, metastable)) for one in asked]
+        refusals = [result for _, result in found if not isinstance(result, Answer)]
+        if as_json:
+            print_json(_describe(coverage.dossier.compound.key, prop, found, to))
+        else:
+            print_answers(coverage, found, to, why)
+            for refusal in refusals:
+                complain(f"Refused ({refusal.reason}): {refusal.explanation}")
+    if refusals:
+        raise typer.Exit(REFUSED)
+
+
+def _answer(book: Any, coverage: Any, asked: Asked, metastable: bool) -> Answer | Refusal:
+    from registry.errors import Refused
+
+    try:
+        return book.lookup(
+            coverage.dossier.compound.key, asked.kelvin, property=coverage.property, phase=coverage.phase or None,
+            metastable=metastable,
+        )  # fmt: skip
+    except Refused as error:
+        return error.refusal
+
+
+def _choose_unit(unit: str, atmosphere: str, prop: str) -> Any:
+    """The unit asked for, or None for the one that suits each value."""
+    from registry.answers import find_target_unit
+    from registry.errors import UnknownKey
+    from registry.properties import PROPERTIES
+    from registry.quantities import parse_pressure
+
+    if prop not in PROPERTIES:
+        raise UnknownKey("property", prop, nearest=list(PROPERTIES))
+    local = float(parse_pressure(atmosphere)) if atmosphere else None
+    return find_target_unit(unit, PROPERTIES[prop].dimension, local) if unit else None
+
+
+def _describe(compound: str, prop: str, found: list[tuple[Asked, Answer | Refusal]], to: Any) -> dict[str, Any]:
+    from registry.answers import Answer
+    from registry.cli.documents import describe_answer, describe_refusal
+
+    return {
+        "compound": compound,
+        "property": prop,
+        "answers": [describe_answer(result, to) for _, result in found if isinstance(result, Answer)],
+        "refusals": [describe_refusal(result) for _, result in found if not isinstance(result, Answer)],
+    }

@@ -1,0 +1,121 @@
+"""Records as a person reads them: everything recorded, as printed."""
+
+from __future__ import annotations
+
+import dataclasses
+from typing import Any
+
+from registry.cli.screen import emphasize, print_facts, print_table, say
+from registry.dossier import Entry
+from registry.exchange.dumping import ordered_coefficients
+from registry.forms.catalogue import FORMS
+from registry.library import Library
+from registry.records import Compound, Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
+
+__all__ = ["print_record"]
+
+
+def print_record(book: Library, entry: Entry[Any], related: list[Entry[Any]], change: Any) -> None:
+    """A record, who recorded it, and what refers to it."""
+    record = entry.record
+    standing = f", {entry.standing}" if entry.standing else ""
+    say(f"{emphasize(record.key)}: {record.kind}, revision {entry.revision}{standing}")
+    source = getattr(record, "source", "")
+    print_facts(
+        [
+            *_facts(record),
+            ("citation", book.source_citation(source) if source else ""),
+            ("review", entry.standing_note),
+            ("recorded", f"change {change.number} by {change.author}, {change.recorded_at}: {change.reason}"),
+        ]
+    )
+    if isinstance(record, Dataset):
+        _print_points(record)
+    _print_related(record, related)
+
+
+def _facts(record: Record) -> list[tuple[str, str]]:
+    """Field by field, as recorded; a correlation shows its equation too."""
+    if isinstance(record, Correlation):
+        return _correlation_facts(record)
+    skipped = {"key", "points"}
+    fields = [field.name for field in dataclasses.fields(record) if field.name not in skipped]  # type: ignore[arg-type]
+    return [(name.replace("_", " "), str(getattr(record, name))) for name in fields]
+
+
+def _correlation_facts(record: Correlation) -> list[tuple[str, str]]:
+    form = FORMS[record.form]
+    return [
+        ("compound", record.compound),
+        ("property", f"{record.property}, {record.phase}"),
+        ("form", f"{form.name} ({form.title})"),
+        ("equation", form.equation),
+        ("coefficients", "; ".join(f"{name}={text}" for name, text in ordered_coefficients(record))),
+        ("units", f"T in {record.temperature_unit}, value in {record.value_unit}"),
+        ("window", f"{record.window_min} to {record.window_max} {record.window_unit} ({record.window_basis})"),
+        ("metastable", f"below {record.metastable_below}" if record.metastable_below else ""),
+        ("scale", record.temperature_scale),
+        ("evidence", record.evidence),
+        ("uncertainty", record.uncertainty or "not stated"),
+        ("source", record.source),
+        ("locator", record.locator),
+        ("obtained", record.obtained),
+        ("note", record.note),
+        ("form by", form.reference),
+    ]
+
+
+def _print_points(record: Dataset) -> None:
+    say()
+    rows = [(point.temperature, point.value, point.value_uncertainty, point.note) for point in record.points]
+    headers = (record.temperature_unit, record.value_unit, "+/-", "note")
+    print_table(headers, rows, right=(True, True, True))
+
+
+def _print_related(record: Record, related: list[Entry[Any]]) -> None:
+    kinds = ("name", "correlation", "fixed-point", "printed-value", "dataset", "preference", "compound")
+    for kind in kinds:
+        rows = [_related_row(record, entry) for entry in related if entry.record.kind == kind]
+        if rows:
+            say()
+            say(f"  {emphasize(_PLURAL[kind])}")
+            print_table(*_layout(kind, rows), indent=4)
+
+
+_PLURAL = {
+    "name": "Also called", "correlation": "Correlations", "fixed-point": "Fixed points", "dataset": "Datasets",
+    "printed-value": "Values the source prints for it", "preference": "Preferences", "compound": "Molar masses",
+}  # fmt: skip
+
+
+def _related_row(record: Record, entry: Entry[Any]) -> tuple[str, ...]:
+    other = entry.record
+    if isinstance(other, Correlation):
+        window = f"{other.window_min} to {other.window_max} {other.window_unit}"
+        what = other.compound if isinstance(record, Source) else other.property
+        return (other.key, what, window, other.evidence, other.obtained, entry.standing)
+    if isinstance(other, FixedPoint):
+        text = f"{other.value} {other.unit}" if other.unit != "1" else other.value
+        return (other.quantity, text, other.source if isinstance(record, Compound) else other.compound,
+                other.obtained, " ".join(t for t in (entry.standing, other.qualifier) if t))  # fmt: skip
+    if isinstance(other, PrintedValue):
+        return (f"{other.temperature} {other.temperature_unit}", f"{other.value} {other.value_unit}", other.obtained,
+                other.locator)  # fmt: skip
+    if isinstance(other, Dataset):
+        return (other.key, other.property, str(len(other.points)), other.evidence, entry.standing)
+    if other.kind == "preference":
+        return (f"{other.correlation} over {other.over}", entry.standing, other.reason)
+    return (other.name,)
+
+
+def _layout(kind: str, rows: list[tuple[str, ...]]) -> tuple[tuple[str, ...], list[tuple[str, ...]]]:
+    headers = {
+        "correlation": ("key", "for", "window", "evidence", "obtained", "standing"),
+        "fixed-point": ("quantity", "value", "source or compound", "obtained", "standing"),
+        "printed-value": ("at", "value", "obtained", "where"),
+        "dataset": ("key", "property", "points", "evidence", "standing"),
+        "preference": ("preferred", "standing", "reason"),
+        "name": ("name",),
+        "compound": ("compound",),
+    }
+    return headers[kind], rows

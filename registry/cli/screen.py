@@ -1,0 +1,96 @@
+"""Printing for people and for programs.
+
+Results go to stdout, messages to stderr; colour only on a terminal that has
+not asked for none.
+"""
+
+from __future__ import annotations
+
+import json
+import math
+import os
+import shutil
+import sys
+import textwrap
+from collections.abc import Iterable, Mapping, Sequence
+from typing import Any
+
+__all__ = ["CAUTION", "complain", "emphasize", "print_facts", "print_json", "print_table", "say", "width", "wrap"]
+
+CAUTION = (
+    "Check the source and measured data before decisions on relief, storage, transport or exposure; "
+    "local codes and licensed practice come first."
+)
+
+
+def width() -> int:
+    """Columns to use: the terminal's, between 60 and 110; 100 off a terminal."""
+    if not sys.stdout.isatty() and "COLUMNS" not in os.environ:
+        return 100
+    return max(60, min(110, shutil.get_terminal_size((100, 24)).columns))
+
+
+def emphasize(text: str, code: str = "1") -> str:
+    """Text in bold or a colour, where that is wanted."""
+    plain = os.environ.get("NO_COLOR") or os.environ.get("TERM") == "dumb" or not sys.stdout.isatty()
+    return text if plain else f"\x1b[{code}m{text}\x1b[0m"
+
+
+def say(text: str = "") -> None:
+    """A line of a result."""
+    try:
+        print(text)
+    except UnicodeEncodeError:  # a terminal that knows only ASCII
+        print(text.encode("ascii", "replace").decode())
+
+
+def complain(text: str) -> None:
+    """A message, on stderr."""
+    stream = sys.stderr
+    print(text.encode(stream.encoding or "utf-8", "backslashreplace").decode(stream.encoding or "utf-8"), file=stream)
+
+
+def print_json(content: Any) -> None:
+    """One JSON object; numbers that JSON cannot hold become null."""
+    print(json.dumps(_finite(content), ensure_ascii=False, indent=2, allow_nan=False))
+
+
+def _finite(content: Any) -> Any:
+    if isinstance(content, float):
+        return content if math.isfinite(content) else None
+    if isinstance(content, Mapping):
+        return {key: _finite(value) for key, value in content.items()}
+    if isinstance(content, (list, tuple)):
+        return [_finite(value) for value in content]
+    return content
+
+
+def wrap(text: str, indent: int, total: int | None = None) -> str:
+    """Text broken to the screen, every line after the first indented."""
+    room = max(30, (total or width()) - indent)
+    lines = textwrap.wrap(text, room, break_long_words=False, break_on_hyphens=False) or [""]
+    return ("\n" + " " * indent).join(lines)
+
+
+def print_facts(facts: Iterable[tuple[str, str]], indent: int = 2) -> None:
+    """Labels and texts in two columns; empty texts are left out."""
+    rows = [(label, text) for label, text in facts if text]
+    margin = indent + max((len(label) for label, _ in rows), default=0) + 2
+    for label, text in rows:
+        say(f"{' ' * indent}{label.ljust(margin - indent)}{wrap(text, margin)}")
+
+
+def print_table(
+    headers: Sequence[str], rows: Sequence[Sequence[str]], right: Sequence[bool] = (), indent: int = 2
+) -> None:
+    """A table with columns as wide as they need; the last one wraps."""
+    sides = [*right, *([False] * (len(headers) - len(right)))]
+    widths = [max(len(str(row[i])) for row in (headers, *rows)) for i in range(len(headers))]
+    margin = indent + sum(widths[:-1]) + 2 * (len(headers) - 1)
+    for number, row in enumerate((headers, *rows)):
+        cells = [
+            cell.rjust(size) if side else cell.ljust(size) for cell, size, side in zip(row, widths, sides, strict=True)
+        ]
+        last = wrap(row[-1], margin) if margin + len(row[-1]) > width() and not sides[-1] else cells[-1]
+        line = (" " * indent + "  ".join([*cells[:-1], last])).rstrip()
+        say(emphasize(line, "2") if number == 0 else line)
