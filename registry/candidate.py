@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 from dataclasses import dataclass
 
 from registry import rules
-from registry.confirmation import Counted, count_correlation
+from registry.confirmation import Counted, Value, count_correlation
 from registry.curve import Curve
 from registry.dossier import Dossier, Entry
-from registry.limits import Limits, best_fixed_point
+from registry.limits import Limits
 from registry.properties import PROPERTIES
 from registry.quantities import parse_temperature
 from registry.records import Correlation
@@ -80,7 +81,7 @@ class Candidate:
 
 
 def build_candidate(
-    entry: Entry[Correlation], dossier: Dossier, limits: Limits, *, metastable: bool = False
+    entry: Entry[Correlation], dossier: Dossier, limits: Limits, values: Sequence[Value], *, metastable: bool = False
 ) -> Candidate:
     """A correlation made a candidate.
 
@@ -92,6 +93,8 @@ def build_candidate(
         All that is recorded about its compound.
     limits : Limits
         Phase limits of its property.
+    values : sequence of Value
+        Independent values that may confirm it.
     metastable : bool
         Let it answer over the metastable range that its record states.
 
@@ -103,8 +106,7 @@ def build_candidate(
     record = entry.record
     curve = Curve.of(record, dossier.compound.record.grams_per_mole())
     reach = _find_reach(record, curve, limits, metastable)
-    triple = best_fixed_point(dossier, "triple-point-temperature")
-    counted = count_correlation(entry, curve, dossier, triple.record.value_si() if triple else None)
+    counted = count_correlation(record, curve, values)
     pieces = parse_uncertainty(record.uncertainty, PROPERTIES[record.property].dimension)
     ranked = tuple((piece, _rank_piece(pieces, i, curve, reach)) for i, piece in enumerate(pieces))
     return Candidate(entry, curve, reach, counted, ranked, dossier.year(record.source))

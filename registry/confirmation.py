@@ -6,9 +6,11 @@ values, seen in other sources, agree with it.
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+
+import numpy as np
 
 from registry import rules
 from registry.curve import Curve
@@ -17,7 +19,7 @@ from registry.numerals import last_digit_unit, parse_number
 from registry.quantities import UNITS
 from registry.records import EVIDENCE, Correlation, Dataset, FixedPoint
 
-__all__ = ["Counted", "count_correlation", "count_fixed_point"]
+__all__ = ["Counted", "Value", "count_correlation", "count_fixed_point", "gather_values"]
 
 
 @dataclass(frozen=True)
@@ -39,9 +41,11 @@ class Counted:
 
 
 @dataclass(frozen=True)
-class _Value:
-    """An independent value with the half units of its last digits, in SI."""
+class Value:
+    """A value seen in some source, with the half units of its last digits, in SI."""
 
+    source: str
+    phase: str
     kelvin: float
     value: float
     half_kelvin: float
@@ -53,20 +57,46 @@ def needs_confirmation(evidence: str, obtained: str) -> bool:
     return obtained == "memory" and EVIDENCE.index(evidence) < EVIDENCE.index("compiled")
 
 
-def count_correlation(entry: Entry[Correlation], curve: Curve, dossier: Dossier, triple: float | None) -> Counted:
+def gather_values(dossier: Dossier, prop: str, triple: float | None) -> tuple[Value, ...]:
+    """Every value by which correlations for a property can be confirmed.
+
+    Parameters
+    ----------
+    dossier : Dossier
+        All that is recorded about the compound.
+    prop : str
+        The property.
+    triple : float or None
+        The triple temperature, K, if one is known.
+
+    Returns
+    -------
+    tuple of Value
+        The points of accepted datasets and the accepted fixed points that were
+        seen in their source.
+    """
+    values: list[Value] = []
+    for entry in dossier.datasets:
+        data = entry.record
+        if entry.accepted and data.property == prop and data.obtained == "seen":
+            values += _dataset_values(data, dossier.compound.record.grams_per_mole())
+    for point in dossier.fixed_points:
+        if point.accepted and point.record.obtained == "seen":
+            values += _fixed_point_value(point.record, prop, triple)
+    return tuple(values)
+
+
+def count_correlation(record: Correlation, curve: Curve, values: Sequence[Value]) -> Counted:
     """The evidence a correlation counts as.
 
     Parameters
     ----------
-    entry : Entry
+    record : Correlation
         The correlation.
     curve : Curve
         Its curve.
-    dossier : Dossier
-        Where independent values are looked for: accepted datasets and fixed
-        points of other sources, seen there.
-    triple : float or None
-        The triple temperature, K, if one is known.
+    values : sequence of Value
+        What `gather_values` found; those of its own source are left out.
 
     Returns
     -------
@@ -75,41 +105,37 @@ def count_correlation(entry: Entry[Correlation], curve: Curve, dossier: Dossier,
         inside its window agree within 1 % and no more disagree than agree;
         else compiled at most.
     """
-    record = entry.record
     if not needs_confirmation(record.evidence, record.obtained):
         return Counted(record.evidence)
     low, high = curve.window
-    values = [v for v in _independent_values(record, dossier, triple) if low <= v.kelvin <= high]
-    agreeing = sum(_agrees(curve, v) for v in values)
-    holds = agreeing >= rules.CONFIRMING_VALUES and 2 * agreeing >= len(values)
-    return Counted(record.evidence if holds else "compiled", agreeing, len(values))
+    independent = [
+        v for v in values if v.source != record.source and v.phase in ("", record.phase) and low <= v.kelvin <= high
+    ]
+    agreeing = _count_agreeing(curve, independent) if independent else 0
+    holds = agreeing >= rules.CONFIRMING_VALUES and 2 * agreeing >= len(independent)
+    return Counted(record.evidence if holds else "compiled", agreeing, len(independent))
 
 
-def _agrees(curve: Curve, v: _Value) -> bool:
-    found = curve.value(v.kelvin)
-    if not found > 0.0:
-        return False
-    digits = v.half_value / v.value + abs(curve.log_rate(v.kelvin)) * v.half_kelvin
-    return abs(found / v.value - 1.0) <= rules.CONFIRMING_PERCENT / 100.0 + digits
+def _count_agreeing(curve: Curve, values: Sequence[Value]) -> int:
+    """How many values lie within 1 % and the digits they are printed with."""
+    kelvin = np.array([v.kelvin for v in values])
+    expected = np.array([v.value for v in values])
+    found = curve.values(kelvin)
+    with np.errstate(all="ignore"):
+        steepness = np.abs(curve.rates(kelvin) / found)
+        digits = np.array([v.half_value for v in values]) / expected
+        digits += steepness * np.array([v.half_kelvin for v in values])
+        agrees = np.abs(found / expected - 1.0) <= rules.CONFIRMING_PERCENT / 100.0 + digits
+    return int(np.count_nonzero(agrees & (found > 0.0)))
 
 
-def _independent_values(record: Correlation, dossier: Dossier, triple: float | None) -> Iterator[_Value]:
-    for entry in dossier.datasets:
-        data = entry.record
-        same = data.property == record.property and data.phase == record.phase
-        if entry.accepted and same and data.obtained == "seen" and data.source != record.source:
-            yield from _dataset_values(data, dossier.compound.record.grams_per_mole())
-    for point in dossier.fixed_points:
-        fixed = point.record
-        if point.accepted and fixed.obtained == "seen" and fixed.source != record.source:
-            yield from _fixed_point_value(fixed, record.property, triple)
-
-
-def _dataset_values(data: Dataset, molar_mass: float) -> Iterator[_Value]:
+def _dataset_values(data: Dataset, molar_mass: float) -> Iterator[Value]:
     temperature, unit = UNITS[data.temperature_unit], UNITS[data.value_unit]
     factor = unit.factor * (Fraction(molar_mass) if unit.per_molar_mass else 1)
     for point in data.points:
-        yield _Value(
+        yield Value(
+            data.source,
+            data.phase,
             float(temperature.to_si(parse_number(point.temperature))),
             float(parse_number(point.value) * factor),
             float(last_digit_unit(point.temperature) * temperature.factor / 2),
@@ -123,13 +149,13 @@ _AT_ONE_ATMOSPHERE = {
 }
 
 
-def _fixed_point_value(fixed: FixedPoint, prop: str, triple: float | None) -> Iterator[_Value]:
+def _fixed_point_value(fixed: FixedPoint, prop: str, triple: float | None) -> Iterator[Value]:
     """A boiling or triple point as a point of a pressure curve."""
     half = float(last_digit_unit(fixed.value) * UNITS[fixed.unit].factor / 2)
     if _AT_ONE_ATMOSPHERE.get(fixed.quantity) == prop:
-        yield _Value(fixed.value_si(), rules.STANDARD_ATMOSPHERE, half, 0.0)
+        yield Value(fixed.source, "", fixed.value_si(), rules.STANDARD_ATMOSPHERE, half, 0.0)
     elif fixed.quantity == "triple-point-pressure" and prop in ("vapor-pressure", "sublimation-pressure") and triple:
-        yield _Value(triple, fixed.value_si(), 0.0, half)
+        yield Value(fixed.source, "", triple, fixed.value_si(), 0.0, half)
 
 
 def count_fixed_point(entry: Entry[FixedPoint], dossier: Dossier) -> Counted:

@@ -19,9 +19,10 @@ from numpy.typing import NDArray
 
 from registry import rules
 from registry.candidate import Candidate, build_candidate
+from registry.confirmation import gather_values
 from registry.dossier import Dossier
 from registry.evaluation import Evaluator
-from registry.limits import Limits, find_limits
+from registry.limits import Limits, best_fixed_point, find_limits
 from registry.ranking import choose_best
 
 __all__ = ["Coverage", "Seam", "Stretch", "build_coverage"]
@@ -192,8 +193,10 @@ def build_coverage(dossier: Dossier, prop: str, phase: str = "", *, metastable: 
         Its stretches tile the axis above 0 K.
     """
     limits = find_limits(dossier, prop)
+    triple = best_fixed_point(dossier, "triple-point-temperature")
+    values = gather_values(dossier, prop, triple.record.value_si() if triple else None)
     candidates = tuple(
-        build_candidate(entry, dossier, limits, metastable=metastable)
+        build_candidate(entry, dossier, limits, values, metastable=metastable)
         for entry in dossier.for_property(prop)
         if phase in ("", entry.record.phase)
     )

@@ -6,7 +6,6 @@ The only place where the database and the numeric side meet.
 from __future__ import annotations
 
 import os
-import secrets
 import threading
 from collections.abc import Iterator
 from datetime import UTC, datetime
@@ -34,10 +33,12 @@ SHELVES = ("published", "scenario", "none")
 
 def default_place() -> str:
     """Where the library is if none is named: RANGEBOOK_LIBRARY, else the user's data folder."""
+    named = os.environ.get("RANGEBOOK_LIBRARY")
+    if named:
+        return named
     import platformdirs
 
-    named = os.environ.get("RANGEBOOK_LIBRARY")
-    return named or str(Path(platformdirs.user_data_dir("rangebook", appauthor=False)) / "library.db")
+    return str(Path(platformdirs.user_data_dir("rangebook", appauthor=False)) / "library.db")
 
 
 def open_library(place: str | os.PathLike[str] | None = None) -> Library:
@@ -105,7 +106,7 @@ def start_library(place: str | os.PathLike[str], shelf: str = "published", autho
     if shelf not in SHELVES:
         raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(SHELVES)}.")
     path = locate(place)
-    name = secrets.token_hex(16)
+    name = os.urandom(16).hex()
 
     def fill(library: Library) -> None:
         if shelf != "none":

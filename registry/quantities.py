@@ -6,7 +6,6 @@ A value in a unit becomes SI as ``(value + shift) * factor``.
 
 from __future__ import annotations
 
-import difflib
 import re
 from collections.abc import Iterable
 from dataclasses import dataclass, replace
@@ -163,6 +162,8 @@ def find_unit(text: str, dimension: str) -> Unit:
 
 
 def _nearest_spelling(text: str, dimension: str) -> str:
+    import difflib
+
     known = {s.lower(): u.name for s, u in _SPELLINGS.items() if u.dimension == dimension}
     near = difflib.get_close_matches(text.strip().lower()[:40], known, n=1, cutoff=0.6)
     return known[near[0]] if near else ""

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import difflib
 from collections.abc import Iterable
 
 __all__ = ["nearest_names"]
@@ -16,6 +15,8 @@ def nearest_names(text: str, names: Iterable[str], count: int = 3) -> list[str]:
     >>> nearest_names("amonia", ["ammonia", "argon", "Water"])
     ['ammonia']
     """
+    import difflib
+
     folded = {name.casefold(): name for name in names}
     given = text.casefold()[:60]
     near = difflib.get_close_matches(given, folded, n=count, cutoff=0.6)

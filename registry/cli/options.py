@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import getpass
 import os
 from typing import TYPE_CHECKING, Annotated
 
@@ -51,6 +50,8 @@ def name_author(given: str) -> str:
     name = given or os.environ.get("RANGEBOOK_AUTHOR", "")
     if name:
         return name
+    import getpass
+
     try:
         return getpass.getuser()
     except (KeyError, OSError):

@@ -22,6 +22,12 @@ from registry.store.tables import APPLICATION_ID, METADATA, SCHEMA, library, tri
 
 __all__ = ["check_file", "create_file", "find_migrations", "upgrade_file"]
 
+_MIGRATION_TABLE = (
+    "CREATE TABLE alembic_version (version_num VARCHAR(32) NOT NULL, "
+    "CONSTRAINT alembic_version_pkc PRIMARY KEY (version_num))"
+)
+"""As Alembic makes it, so that a new library equals an upgraded one."""
+
 _MAGIC = b"SQLite format 3\x00"
 
 
@@ -141,7 +147,7 @@ def create_schema(connection: Connection) -> None:
     METADATA.create_all(connection)
     for statement in trigger_statements():
         connection.execute(text(statement))
-    connection.execute(text("CREATE TABLE alembic_version (version_num VARCHAR(32) NOT NULL PRIMARY KEY)"))
+    connection.execute(text(_MIGRATION_TABLE))
     connection.execute(text("INSERT INTO alembic_version VALUES (:head)"), {"head": f"{SCHEMA:04d}"})
     stamp_version(connection, SCHEMA)
 

@@ -123,7 +123,8 @@ def trigger_statements() -> Iterator[str]:
     for table, keys in _KEYS.items():
         same = " AND ".join(f"{key} = NEW.{key}" for key in keys)
         if table == "record":
-            same = f"({same}) OR (kind = NEW.kind AND key = NEW.key AND revision = NEW.revision)"
+            same += " OR (kind = NEW.kind AND key = NEW.key AND revision = NEW.revision)"
+            same += " OR (change = NEW.change AND place = NEW.place)"
         for event in ("UPDATE", "DELETE"):
             yield (
                 f"CREATE TRIGGER {table}_no_{event.lower()} BEFORE {event} ON {table} "
