@@ -1,0 +1,401 @@
+"""The history: appended to and never changed, digested and rooted as the standards say."""
+
+from __future__ import annotations
+
+import hashlib
+import json
+import re
+import shutil
+import sqlite3
+import subprocess
+import sys
+from contextlib import closing
+from pathlib import Path
+
+import pytest
+import rfc8785
+from hypothesis import given, settings
+from hypothesis import strategies as st
+from sqlalchemy import insert
+
+from registry.canonical import encode
+from registry.errors import BadInput, NewerLibrary, NotALibrary, OlderLibrary
+from registry.library import Library, open_library, start_library
+from registry.merkle import hash_leaf, new_nodes, root_from_nodes, root_of
+from registry.store import schema
+from registry.store.engine import open_engine, wal_is_safe
+from registry.store.history import Draft, append_change
+from registry.store.library_file import LibraryFile
+from registry.store.tables import METADATA, SCHEMA
+
+STRAY = Draft("source", "stray", {"citation": "invented"})
+TABLES = sorted(table.name for table in METADATA.sorted_tables)
+
+# Leaves and roots of the certificate-transparency Merkle test data (RFC 6962/9162 hashing), from memory; they
+# close against the definition in RFC 9162, section 2.1.1, computed below.
+LEAVES = [bytes.fromhex(t) for t in ("", "00", "10", "2021", "3031", "40414243", "5051525354555657")]
+LEAVES.append(bytes.fromhex("606162636465666768696a6b6c6d6e6f"))
+ROOTS = [
+    "6e340b9cffb37a989ca544e6bb780a2c78901d3fb33738768511a30617afa01d",
+    "fac54203e7cc696cf0dfcb42c92a1d9dbaf70ad9e621f4bd8d98662f00e3c125",
+    "aeb6bcfe274b70a14fb067a5e5578264db0fa9b51af5e0ba159158f329e06e77",
+    "d37ee418976dd95753c1c73862b9398fa2a2cf9b4ff0fdfe8b30cd95209614b7",
+    "4e3bbb1f7b478dcfe71fb631631519a3bca12c9aefca1612bfce4c13a86264d4",
+    "76e67dadbcdf1e10e1b74ddc608abd2f98dfb16fbce75277b5232a127f2087ef",
+    "ddb89be403809e325750d3d263cd78929c2942b7942a34b77e122c9594a74c8c",
+    "5dc9da79a70659a9ad559cb701ded9a2ab9d823aad2f4960cfe370eff4604328",
+]
+
+
+def _root_by_definition(data: list[bytes]) -> bytes:
+    """MTH of RFC 9162, section 2.1.1, word for word."""
+    if not data:
+        return hashlib.sha256(b"").digest()
+    if len(data) == 1:
+        return hashlib.sha256(b"\x00" + data[0]).digest()
+    k = 1
+    while 2 * k < len(data):
+        k *= 2
+    return hashlib.sha256(b"\x01" + _root_by_definition(data[:k]) + _root_by_definition(data[k:])).digest()
+
+
+@pytest.mark.parametrize("size", range(1, 9))
+def test_merkle_roots_are_the_published_ones(size):
+    """Roots over 1 to 8 leaves equal the published test vectors."""
+    assert root_of([hash_leaf(d) for d in LEAVES[:size]]).hex() == ROOTS[size - 1]
+
+
+@settings(max_examples=60)
+@given(st.lists(st.binary(max_size=8), max_size=70))
+def test_merkle_tree_grows_node_by_node(data):
+    """Appending leaf by leaf through stored nodes gives the root of RFC 9162 at every size."""
+    nodes: dict[tuple[int, int], bytes] = {}
+    for size, leaf in enumerate(data):
+        for level, place, value in new_nodes(size, hash_leaf(leaf), lambda level, place: nodes[level, place]):
+            assert (level, place) not in nodes
+            nodes[level, place] = value
+    root = root_from_nodes(len(data), lambda level, place: nodes[level, place])
+    assert root == _root_by_definition(data) == root_of([hash_leaf(d) for d in data])
+
+
+texts = st.text(st.characters(exclude_categories=("Cs",)), max_size=30)
+
+
+@settings(max_examples=200)
+@given(st.recursive(texts | st.integers(-(2**53) + 1, 2**53 - 1), lambda inner: st.lists(inner, max_size=4)
+       | st.dictionaries(st.text("abcdefghijklmnopqrstuvwxyz_ABC019", max_size=6), inner, max_size=4)))  # fmt: skip
+def test_canonical_json_is_rfc_8785(content):
+    """Sorted compact JSON of text and integers equals RFC 8785, by an independent implementation."""
+    assert encode(content) == rfc8785.dumps(content)
+
+
+def test_recorded_digests_and_roots_follow_from_the_records(published_path):
+    """Every digest, change root, header and stored node can be recomputed from what is stored."""
+    with closing(sqlite3.connect(published_path)) as db:
+        rows = db.execute("SELECT change, kind, key, revision, content, digest FROM record ORDER BY change, place")
+        by_change: dict[int, list[bytes]] = {}
+        for change, kind, key, revision, content, digest in rows:
+            envelope = {"kind": kind, "key": key, "revision": revision, "content": json.loads(content)}
+            assert hashlib.sha256(rfc8785.dumps(envelope)).hexdigest() == digest
+            assert rfc8785.dumps(json.loads(content)).decode() == content
+            by_change.setdefault(change, []).append(bytes.fromhex(digest))
+        headers = []
+        for number, root, records, header in db.execute("SELECT number, records_root, records, header FROM change"):
+            assert _root_by_definition(by_change[number]).hex() == root
+            assert len(by_change[number]) == records
+            assert json.loads(header)["records_root"] == root
+            headers.append(header.encode())
+        nodes = {(level, place): bytes.fromhex(h) for level, place, h in db.execute("SELECT * FROM node")}
+        found = root_from_nodes(len(headers), lambda level, place: nodes[level, place])
+        assert found == _root_by_definition(headers)
+
+
+CHANGES_TO_HISTORY = (
+    "UPDATE {t} SET rowid = rowid + 1000",
+    "DELETE FROM {t}",
+    "INSERT OR REPLACE INTO {t} SELECT * FROM {t}",
+    "REPLACE INTO {t} SELECT * FROM {t}",
+    "INSERT INTO {t} SELECT * FROM {t} WHERE true ON CONFLICT DO NOTHING",
+)
+
+
+@pytest.mark.parametrize("table", TABLES)
+@pytest.mark.parametrize("statement", CHANGES_TO_HISTORY)
+def test_the_database_itself_forbids_changes(table, statement, own_path):
+    """UPDATE, DELETE and REPLACE on any table are stopped by triggers, with any client and default settings."""
+    with closing(sqlite3.connect(own_path)) as db:
+        if table == "library":
+            db.execute("SELECT 1")
+        before = db.execute(f"SELECT * FROM {table} ORDER BY 1, 2").fetchall()
+        assert before
+        with pytest.raises(sqlite3.IntegrityError, match="history is only appended to"):
+            db.execute(statement.format(t=table))
+        db.rollback()
+        assert db.execute(f"SELECT * FROM {table} ORDER BY 1, 2").fetchall() == before
+
+
+def test_replacing_by_another_unique_key_is_stopped_too(own_path):
+    """INSERT OR REPLACE under a new id, but the same key and revision or the same place, is stopped."""
+    with closing(sqlite3.connect(own_path)) as db:
+        for columns in ("99999, 1, 77777, kind, key, revision", "99999, change, place, 'x', 'y', 1"):
+            with pytest.raises(sqlite3.IntegrityError, match="history is only appended to"):
+                db.execute(f"INSERT OR REPLACE INTO record SELECT {columns}, content, digest FROM record WHERE id = 5")
+
+
+def _schema_of(path: Path) -> list[tuple[str, str, str]]:
+    with closing(sqlite3.connect(path)) as db:
+        rows = db.execute("SELECT type, name, sql FROM sqlite_master WHERE sql IS NOT NULL ORDER BY type, name")
+        return [
+            (kind, name, re.sub(r"\s*([(),])\s*", r"\1", " ".join(sql.replace('"', "").split())))
+            for kind, name, sql in rows
+        ]
+
+
+def test_migrating_from_nothing_equals_creating(tmp_path):
+    """Tables, checks, indexes and triggers are the same whether a library is made or migrated to the newest schema."""
+    made, migrated = tmp_path / "made.db", tmp_path / "migrated.db"
+    start_library(made, "none").close()
+    migrated.touch()
+    engine = open_engine(migrated, write=True)
+    with engine.begin() as connection:
+        _run_migrations(connection, schema.find_migrations())
+        schema.stamp_version(connection, SCHEMA)
+    engine.dispose()
+    assert _schema_of(migrated) == _schema_of(made)
+    assert all("STRICT" in sql for kind, name, sql in _schema_of(made) if kind == "table" and name in TABLES)
+    with open_library(migrated) as library:
+        assert library.position == 0
+
+
+def _run_migrations(connection, folder: Path) -> None:
+    from alembic import command
+    from alembic.config import Config
+
+    config = Config()
+    config.set_main_option("script_location", str(folder))
+    config.attributes["connection"] = connection
+    command.upgrade(config, "head")
+
+
+NEXT_MIGRATION = '''
+"""A migration as a later version may bring it."""
+from alembic import op
+import sqlalchemy as sa
+revision = "0002"
+down_revision = "0001"
+def upgrade():
+    op.create_table("later", sa.Column("id", sa.Integer, primary_key=True), sqlite_strict=True)
+    op.add_column("change", sa.Column("later", sa.Text))
+    {extra}
+def downgrade():
+    raise NotImplementedError
+'''
+
+
+def _next_migrations(tmp_path: Path, extra: str = "") -> Path:
+    folder = Path(shutil.copytree(schema.find_migrations(), tmp_path / "migrations"))
+    (folder / "versions" / "0002_later.py").write_text(NEXT_MIGRATION.format(extra=extra))
+    return folder
+
+
+def _all_rows(path: Path) -> dict[str, list[tuple]]:
+    with closing(sqlite3.connect(path)) as db:
+        return {t: db.execute(f"SELECT * FROM {t} ORDER BY 1, 2").fetchall() for t in TABLES}
+
+
+def test_upgrade_keeps_every_row_and_leaves_a_backup(own_path, tmp_path):
+    """An upgrade with rows in the library changes none, keeps the triggers, and leaves a backup that opens."""
+    before = _all_rows(own_path)
+    backup = schema.upgrade_file(own_path, _next_migrations(tmp_path))
+    assert schema.read_version(own_path) == SCHEMA + 1
+    after = _all_rows(own_path)
+    assert {t: [row[: len(before[t][0])] for row in rows] for t, rows in after.items()} == before
+    assert _all_rows(backup) == before
+    with open_library(backup) as library:
+        assert library.lookup("water", 300.0).value > 0.0
+    with closing(sqlite3.connect(own_path)) as db, pytest.raises(sqlite3.IntegrityError):
+        db.execute("DELETE FROM record")
+
+
+def test_an_upgrade_that_fails_half_way_changes_nothing(own_path, tmp_path):
+    """A migration that raises after its first table leaves the library as it was."""
+    folder = _next_migrations(tmp_path, 'raise RuntimeError("invented failure")')
+    before, shape = _all_rows(own_path), _schema_of(own_path)
+    with pytest.raises(RuntimeError, match="invented failure"):
+        schema.upgrade_file(own_path, folder)
+    assert (_all_rows(own_path), _schema_of(own_path)) == (before, shape)
+    assert schema.read_version(own_path) == SCHEMA
+
+
+def test_an_up_to_date_library_is_not_touched(own_path):
+    """Upgrading what is up to date makes no backup and changes no byte."""
+    before = own_path.read_bytes()
+    assert schema.upgrade_file(own_path) is None
+    assert own_path.read_bytes() == before
+    assert sorted(p.name for p in own_path.parent.iterdir()) == ["own.db"]
+
+
+@pytest.mark.parametrize(("version", "error"), [(SCHEMA + 1, NewerLibrary), (SCHEMA - 1, OlderLibrary)])
+def test_other_schemas_are_told_apart(version, error, own_path):
+    """A newer library is refused, and an older one is upgraded only when asked."""
+    with closing(sqlite3.connect(own_path)) as db:
+        db.execute(f"PRAGMA user_version={version}")
+    with pytest.raises(error) as caught:
+        open_library(own_path)
+    assert caught.value.found == version
+    assert caught.value.known == SCHEMA
+
+
+def test_a_file_that_is_no_library_is_not_changed(tmp_path):
+    """Another program's database, a text file and an empty file are refused and left as they are."""
+    other, text, empty = tmp_path / "other.db", tmp_path / "text.db", tmp_path / "empty.db"
+    with closing(sqlite3.connect(other)) as db:
+        db.execute("CREATE TABLE change (number INTEGER)")
+        db.commit()
+    text.write_text("not a database")
+    empty.touch()
+    for path in (other, text, empty):
+        before = path.read_bytes()
+        with pytest.raises(NotALibrary):
+            open_library(path)
+        assert path.read_bytes() == before
+
+
+# sqlite.org, "The WAL-reset bug": fixed in 3.51.3, with backports 3.50.7 and 3.44.6
+WAL_VERSIONS = {
+    (3, 40, 1): False, (3, 44, 5): False, (3, 44, 6): True, (3, 45, 0): False, (3, 50, 6): False, (3, 50, 7): True,
+    (3, 51, 2): False, (3, 51, 3): True, (3, 52, 0): True,
+}  # fmt: skip
+
+
+def test_write_ahead_logging_only_where_sqlite_is_free_of_its_bug(own_path):
+    """WAL is used only by versions without the WAL-reset bug; else the rollback journal with EXTRA flushes."""
+    assert {version: wal_is_safe(version) for version in WAL_VERSIONS} == WAL_VERSIONS
+    engine = open_engine(own_path, write=True)
+    with engine.connect() as connection:
+        pragma = {
+            name: connection.exec_driver_sql(f"PRAGMA {name}").scalar()
+            for name in ("journal_mode", "synchronous", "foreign_keys", "recursive_triggers", "trusted_schema")
+        }
+    engine.dispose()
+    safe = wal_is_safe(sqlite3.sqlite_version_info[:3])
+    assert (pragma.pop("journal_mode"), pragma.pop("synchronous")) == (("wal", 2) if safe else ("delete", 3))
+    assert pragma == {"foreign_keys": 1, "recursive_triggers": 1, "trusted_schema": 0}
+
+
+def test_a_reader_cannot_write(own_path):
+    """The connection that reads is read-only."""
+    from sqlalchemy.exc import OperationalError
+
+    engine = open_engine(own_path)
+    with engine.connect() as connection, pytest.raises(OperationalError, match="readonly"):
+        connection.exec_driver_sql("CREATE TABLE stray (id INTEGER)")
+    engine.dispose()
+
+
+def test_a_change_is_whole_or_absent(own_path):
+    """When an append fails after its records, nothing of the change stays."""
+    before = _all_rows(own_path)
+    with open_library(own_path) as library:
+        file: LibraryFile = library._file
+        with pytest.raises(RuntimeError), file.writing() as (_, append):
+            append("somebody", "a change that fails", "2030-01-01T00:00:00.000000Z", [STRAY])
+            raise RuntimeError("invented failure")
+    assert _all_rows(own_path) == before
+
+
+def test_recorded_times_never_decrease(own_path):
+    """A change recorded by a clock that runs behind takes the time of the one before it."""
+    with open_library(own_path) as library:
+        last = library.changes()[-1].recorded_at
+        with library._file.writing() as (_, append):
+            change = append(
+                "somebody", "an early clock", "1999-01-01T00:00:00.000000Z", [Draft("source", "s", {"a": "b"})]
+            )
+        assert change.recorded_at == last
+
+
+def test_a_position_reads_the_newest_revision_up_to_it(own_path):
+    """Revisions are numbered 1, 2, ... under a key, and each position sees the newest up to it."""
+    with open_library(own_path) as library:
+        for text in ("first", "second"):
+            with library._file.writing() as (_, append):
+                append("somebody", text, "2030-01-01T00:00:00.000000Z", [Draft("source", "twice", {"citation": text})])
+        with library._file.reading() as view:
+            row = view.current("source", ["twice"])[0]
+            assert (row.revision, row.content["citation"], row.change) == (2, "second", 3)
+            view.position = 2
+            row = view.current("source", ["twice"])[0]
+            assert (row.revision, row.content["citation"]) == (1, "first")
+            view.position = 1
+            assert view.current("source", ["twice"]) == []
+
+
+def test_a_lookup_sees_another_process_change(own_path, tmp_path):
+    """A library that is open answers by what another process has recorded since."""
+    package = tmp_path / "package"
+    script = (
+        "import sys; from registry.library import open_library\n"
+        "with open_library(sys.argv[1]) as library: library.load(sys.argv[2], author='another process')\n"
+    )
+    with open_library(own_path) as library:
+        before = library.lookup("water", 300.0)
+        assert before.correlation.key == "water-if97"
+        library.dump(package)
+        table = package / "correlations.csv"
+        rows = table.read_text(encoding="utf-8").splitlines(keepends=True)
+        changed = [r.replace(",accepted,", ",withdrawn,") if r.startswith("water-if97,") else r for r in rows]
+        table.write_text("".join(changed), encoding="utf-8")
+        subprocess.run([sys.executable, "-c", script, str(own_path), str(package)], check=True, timeout=60)
+        after = library.lookup("water", 300.0)
+        assert after.correlation.key == "water-sr1-86"
+        assert after.position == before.position + 1
+
+
+def test_starting_never_writes_over_something(tmp_path):
+    """A file that is there stays, byte for byte, and no scratch file is left."""
+    path = tmp_path / "there.db"
+    path.write_bytes(b"something of somebody")
+    with pytest.raises(FileExistsError):
+        start_library(path, "none")
+    assert path.read_bytes() == b"something of somebody"
+    assert [p.name for p in tmp_path.iterdir()] == ["there.db"]
+
+
+def test_a_start_that_fails_leaves_nothing(tmp_path, monkeypatch):
+    """When the shelf cannot be loaded, neither a library nor a scratch file stays."""
+
+    def fail(*_: object, **__: object) -> dict[str, int]:
+        raise BadInput("invented failure")
+
+    monkeypatch.setattr(Library, "load", fail)
+    with pytest.raises(BadInput, match="invented failure"):
+        start_library(tmp_path / "new.db", "published")
+    assert list(tmp_path.iterdir()) == []
+
+
+def test_a_large_import_is_one_leaf(tmp_path):
+    """A change with 20,000 records is one leaf: the tree over changes grows with their number alone."""
+    path = tmp_path / "large.db"
+    start_library(path, "none").close()
+    engine = open_engine(path, write=True)
+    drafts = [Draft("source", f"s{i}", {"citation": f"invented {i}"}) for i in range(20_000)]
+    with engine.begin() as connection:
+        append_change(connection, "somebody", "a large import", "2030-01-01T00:00:00.000000Z", drafts)
+    with engine.begin() as connection:
+        append_change(connection, "somebody", "a small one", "2030-01-01T00:00:00.000000Z", drafts[:1])
+    engine.dispose()
+    with closing(sqlite3.connect(path)) as db:
+        assert db.execute("SELECT count(*) FROM node").fetchone()[0] == 3
+        assert db.execute("SELECT max(revision) FROM record").fetchone()[0] == 2
+
+
+def test_foreign_keys_are_on(own_path):
+    """A link to a record that is not there is refused by the database."""
+    from sqlalchemy.exc import IntegrityError
+
+    engine = open_engine(own_path, write=True)
+    with pytest.raises(IntegrityError, match="FOREIGN KEY"), engine.begin() as connection:
+        row = {"record": 10**9, "role": "source", "kind": "source", "key": "x"}
+        connection.execute(insert(METADATA.tables["link"]), row)
+    engine.dispose()
