@@ -11,7 +11,8 @@ from typing import TYPE_CHECKING, Any
 if TYPE_CHECKING:
     from registry.answers import Answer, Batch, Refusal
     from registry.errors import RangebookError, Refused
-    from registry.library import Library, open_library, start_library
+    from registry.library import Library
+    from registry.opening import open_library, start_library
 
 __version__ = "0.1.0"
 
@@ -20,7 +21,7 @@ __all__ = ["Answer", "Batch", "Library", "RangebookError", "Refusal", "Refused",
 _HOMES = {
     "Answer": "answers", "Batch": "answers", "Refusal": "answers",
     "RangebookError": "errors", "Refused": "errors",
-    "Library": "library", "open_library": "library", "start_library": "library",
+    "Library": "library", "open_library": "opening", "start_library": "opening",
 }  # fmt: skip
 
 

@@ -7,7 +7,6 @@ from __future__ import annotations
 
 import os
 import threading
-from collections.abc import Iterator
 from datetime import UTC, datetime
 from pathlib import Path
 from typing import Any, Self, overload
@@ -18,123 +17,15 @@ from numpy.typing import ArrayLike
 from registry.answers import Answer, Batch
 from registry.coverage import Coverage, build_coverage
 from registry.dossier import Dossier, Entry
+from registry.entries import entry_of, read_dossier, with_standing
 from registry.errors import BadInput, Refused, UnknownKey
 from registry.properties import PROPERTIES
-from registry.records import KINDS, REVIEWED, Compound, Correlation, Record
+from registry.records import KINDS, Compound, Correlation
 from registry.searching import nearest_names
-from registry.store.library_file import LibraryFile, locate
-from registry.store.reading import Row
+from registry.store.library_file import LibraryFile
 from registry.verdicts import Refusal, refuse
 
-__all__ = ["Library", "default_place", "open_library", "start_library"]
-
-SHELVES = ("published", "scenario", "none")
-
-
-def default_place() -> str:
-    """Where the library is if none is named: RANGEBOOK_LIBRARY, else the user's data folder."""
-    named = os.environ.get("RANGEBOOK_LIBRARY")
-    if named:
-        return named
-    import platformdirs
-
-    return str(Path(platformdirs.user_data_dir("rangebook", appauthor=False)) / "library.db")
-
-
-def open_library(place: str | os.PathLike[str] | None = None) -> Library:
-    """Open a library for reading and recording.
-
-    Parameters
-    ----------
-    place : path or URL, optional
-        A SQLite file or a ``sqlite:///`` URL. By default the one named by the
-        environment variable RANGEBOOK_LIBRARY, else the one in the user's
-        data folder, which is made with the published shelf on first use.
-
-    Returns
-    -------
-    Library
-        A context manager; closing it releases the file.
-
-    Raises
-    ------
-    LibraryUnreadable
-        If there is none, it is damaged, or made by another version.
-
-    Examples
-    --------
-    >>> with open_library("shelf.db") as library:
-    ...     answer = library.lookup("water", 298.15)
-    >>> round(answer.value, 1), answer.unit, answer.correlation.key
-    (3169.7, 'Pa', 'water-if97')
-    """
-    if place is None:
-        place = default_place()
-        if not os.environ.get("RANGEBOOK_LIBRARY") and not locate(place).exists():
-            try:
-                return start_library(place)
-            except FileExistsError:  # another process was first
-                pass
-    return Library(LibraryFile.open(locate(place)))
-
-
-def start_library(place: str | os.PathLike[str], shelf: str = "published", author: str = "rangebook") -> Library:
-    """Make a new library, with a shelf or empty.
-
-    Parameters
-    ----------
-    place : path or URL
-        Where; nothing may be there.
-    shelf : {'published', 'scenario', 'none'}
-        The published shelf (accepted as it stands), the invented
-        demonstration scenario, or nothing.
-    author : str
-        Who starts it.
-
-    Returns
-    -------
-    Library
-        The new library, open.
-
-    Raises
-    ------
-    BadInput
-        If the shelf is unknown, or the folder cannot be written.
-    FileExistsError
-        If something is there already.
-    """
-    if shelf not in SHELVES:
-        raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(SHELVES)}.")
-    path = locate(place)
-    name = os.urandom(16).hex()
-
-    def fill(library: Library) -> None:
-        if shelf != "none":
-            from registry.shelves import find_shelf
-
-            reason = "The published shelf, accepted as it stands." if shelf == "published" else "The invented scenario."
-            library.load(find_shelf(shelf), author=author, reason=reason)
-
-    LibraryFile.create(path, name, now_utc(), lambda file: fill(Library(file)))
-    return Library(LibraryFile.open(path))
-
-
-def upgrade_library(place: str | os.PathLike[str]) -> Path | None:
-    """Bring a library of an older program up to date, after a backup.
-
-    Parameters
-    ----------
-    place : path or URL
-        The library.
-
-    Returns
-    -------
-    Path or None
-        The backup; None if the library was up to date.
-    """
-    from registry.store.schema import upgrade_file
-
-    return upgrade_file(locate(place))
+__all__ = ["Library"]
 
 
 def now_utc() -> str:
@@ -226,7 +117,8 @@ class Library:
 
         Examples
         --------
-        >>> library = open_library("shelf.db")
+        >>> import registry
+        >>> library = registry.open_library("shelf.db")
         >>> library.lookup("ammonia", [200.0, 300.0, 500.0]).values.round(1)
         array([   8610.9, 1061291.3,       nan])
         >>> library.lookup("water", 700.0)
@@ -260,7 +152,8 @@ class Library:
 
         Examples
         --------
-        >>> library = open_library("shelf.db")
+        >>> import registry
+        >>> library = registry.open_library("shelf.db")
         >>> [seam.temperature for seam in library.coverage("helium-4").seams]
         [2.1768]
         """
@@ -291,7 +184,8 @@ class Library:
 
         Examples
         --------
-        >>> open_library("shelf.db").find_compound("7664-41-7")
+        >>> import registry
+        >>> registry.open_library("shelf.db").find_compound("7664-41-7")
         'ammonia'
         """
         with self._lock, self._file.reading() as view:
@@ -313,18 +207,18 @@ class Library:
         key = self.find_compound(compound)
         if key not in self._dossiers:
             with self._lock, self._file.reading() as view:
-                self._dossiers[key] = _read_dossier(view, key)
+                self._dossiers[key] = read_dossier(view, key)
         return self._dossiers[key]
 
     def compounds(self) -> list[Entry[Compound]]:
         """Every compound, by key."""
         with self._lock, self._file.reading() as view:
-            return [_entry(row) for row in view.kind("compound")]
+            return [entry_of(row) for row in view.kind("compound")]
 
     def correlations(self) -> list[Entry[Correlation]]:
         """Every correlation, by key, in its newest revision."""
         with self._lock, self._file.reading() as view:
-            return _with_standing(view, view.kind("correlation"))
+            return with_standing(view, view.kind("correlation"))
 
     def entry(self, key: str) -> Entry[Any]:
         """The record under a key, of whatever kind; a compound by any name.
@@ -338,7 +232,7 @@ class Library:
             for kind in KINDS:
                 rows = view.current(kind, [key])
                 if rows:
-                    return _with_standing(view, rows)[0]
+                    return with_standing(view, rows)[0]
         try:
             return self.dossier(key).compound
         except UnknownKey as error:
@@ -351,7 +245,7 @@ class Library:
     def referring(self, kind: str, key: str) -> list[Entry[Any]]:
         """The records that refer to one record, by kind and key."""
         with self._lock, self._file.reading() as view:
-            return _with_standing(view, [row for row in view.linked(kind, key) if row.kind != "review"])
+            return with_standing(view, [row for row in view.linked(kind, key) if row.kind != "review"])
 
     def source_citation(self, key: str) -> str:
         """The citation of a source, or its key if it is not recorded."""
@@ -418,7 +312,7 @@ class Library:
                 (entry.record, (entry.standing, entry.standing_note))
                 for kind in KINDS
                 if kind != "review"
-                for entry in _with_standing(view, view.kind(kind))
+                for entry in with_standing(view, view.kind(kind))
             ]
         return dump_items(Path(path), items)
 
@@ -437,60 +331,3 @@ def refuse_one(coverage: Coverage, kelvin: float) -> Refusal:
     if not 0.0 < kelvin < np.inf:
         raise BadInput(f"{kelvin} K is no temperature; a finite number of kelvin above 0 is allowed.")
     return refuse(coverage, kelvin)
-
-
-def _entry(row: Row, standing: str = "", note: str = "") -> Entry[Any]:
-    record: Record = KINDS[row.kind].restore(row.key, row.content)
-    return Entry(record, row.revision, row.change, standing, note)
-
-
-def _with_standing(view: Any, rows: list[Row]) -> list[Entry[Any]]:
-    """Entries with the standing that reviews give them; a draft where none does."""
-    from registry.records import Review
-
-    keys = {(row.kind, row.key, row.revision): Review.key_for(row.kind, row.key, row.revision) for row in rows}
-    wanted = [key for (kind, _, _), key in keys.items() if kind in REVIEWED]
-    reviews = {row.key: row.content for row in view.current("review", wanted)}
-
-    def enter(row: Row) -> Entry[Any]:
-        if row.kind not in REVIEWED:
-            return _entry(row)
-        review = reviews.get(keys[row.kind, row.key, row.revision], {})
-        return _entry(row, review.get("standing", "draft"), review.get("note", ""))
-
-    return [enter(row) for row in rows]
-
-
-def _in_force(entries: list[Entry[Any]]) -> Iterator[Entry[Any]]:
-    """For each key the revision that counts.
-
-    The newest accepted one stays in force while a newer draft waits or was
-    declined; a withdrawal ends it.
-    """
-    by_key: dict[tuple[str, str], list[Entry[Any]]] = {}
-    for entry in entries:
-        by_key.setdefault((entry.record.kind, entry.key), []).append(entry)
-    for revisions in by_key.values():
-        revisions.sort(key=lambda entry: entry.revision, reverse=True)
-        decided = (entry for entry in revisions if entry.standing in ("accepted", "withdrawn", ""))
-        yield next(decided, revisions[0])
-
-
-def _read_dossier(view: Any, key: str) -> Dossier:
-    compound = _entry(view.current("compound", [key])[0])
-    entries = list(_in_force(_with_standing(view, view.linked("compound", key))))
-    of_kind: dict[str, list[Any]] = {kind: [] for kind in KINDS}
-    for entry in entries:
-        of_kind[entry.record.kind].append(entry)
-    keys = {entry.key for entry in of_kind["correlation"]}
-    preferences = [
-        entry
-        for entry in _in_force(_with_standing(view, view.kind("preference")))
-        if {entry.record.correlation, entry.record.over} & keys
-    ]
-    cited = {entry.record.source for kind in ("correlation", "fixed-point", "dataset") for entry in of_kind[kind]}
-    sources = {row.key: KINDS["source"].restore(row.key, row.content) for row in view.current("source", cited)}
-    return Dossier(
-        compound, tuple(of_kind["correlation"]), tuple(of_kind["fixed-point"]), tuple(of_kind["dataset"]),
-        tuple(preferences), sources, view.position,  # type: ignore[arg-type]
-    )  # fmt: skip

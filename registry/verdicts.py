@@ -8,8 +8,8 @@ from dataclasses import dataclass
 from registry import rules
 from registry.candidate import Candidate
 from registry.coverage import Coverage
+from registry.display import join_names
 from registry.properties import PROPERTIES
-from registry.quantities import join_names
 from registry.ranking import explain_order, explain_preference
 
 __all__ = ["Nearest", "Refusal", "Verdict", "explain_choice", "judge_candidates", "refuse", "refuse_property"]

@@ -8,7 +8,7 @@ from pathlib import Path
 import pytest
 from hypothesis import settings
 
-from registry.library import open_library, start_library
+from registry.opening import open_library, start_library
 
 settings.register_profile("suite", derandomize=True, deadline=None, print_blob=True)
 settings.load_profile("suite")

@@ -10,12 +10,10 @@ from pathlib import Path
 import pytest
 
 import registry
-from registry.library import start_library
+from registry.opening import start_library
 
 MODULES = sorted(
-    module.name
-    for module in pkgutil.walk_packages(registry.__path__, "registry.")
-    if "._shipped" not in module.name
+    module.name for module in pkgutil.walk_packages(registry.__path__, "registry.") if "._shipped" not in module.name
 )
 
 

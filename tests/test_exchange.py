@@ -18,7 +18,7 @@ from hypothesis import strategies as st
 from registry.errors import InvalidPackage
 from registry.exchange.dumping import build_files
 from registry.exchange.layout import FILES, descriptor
-from registry.library import open_library, start_library
+from registry.opening import open_library, start_library
 from registry.records import KINDS, Correlation, Source
 from registry.shelves import find_shelf
 

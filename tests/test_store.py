@@ -20,7 +20,8 @@ from sqlalchemy import insert
 
 from registry.canonical import encode
 from registry.errors import BadInput, NewerLibrary, NotALibrary, OlderLibrary
-from registry.library import Library, open_library, start_library
+from registry.library import Library
+from registry.opening import open_library, start_library
 from registry.merkle import hash_leaf, new_nodes, root_from_nodes, root_of
 from registry.store import schema
 from registry.store.engine import open_engine, wal_is_safe
@@ -335,7 +336,7 @@ def test_a_lookup_sees_another_process_change(own_path, tmp_path):
     """A library that is open answers by what another process has recorded since."""
     package = tmp_path / "package"
     script = (
-        "import sys; from registry.library import open_library\n"
+        "import sys; from registry.opening import open_library\n"
         "with open_library(sys.argv[1]) as library: library.load(sys.argv[2], author='another process')\n"
     )
     with open_library(own_path) as library:

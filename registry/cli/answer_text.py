@@ -7,9 +7,10 @@ from registry.cli.documents import value_in
 from registry.cli.screen import CAUTION, emphasize, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
+from registry.display import format_number, format_plain
 from registry.forms.catalogue import FORMS
 from registry.properties import PROPERTIES
-from registry.quantities import Unit, format_number, format_plain
+from registry.quantities import Unit
 
 __all__ = ["print_answers"]
 

@@ -8,8 +8,8 @@ import sys
 from registry.candidate import Candidate
 from registry.cli.screen import emphasize, print_table, say, width
 from registry.coverage import Coverage
+from registry.display import format_plain
 from registry.properties import PROPERTIES
-from registry.quantities import format_plain
 
 __all__ = ["print_coverage"]
 

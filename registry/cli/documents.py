@@ -8,9 +8,10 @@ from typing import Any
 
 from registry.answers import Answer, Refusal
 from registry.coverage import Coverage, Stretch
+from registry.display import suit_unit
 from registry.dossier import Entry
 from registry.limits import Limits
-from registry.quantities import UNITS, Unit, convert, suit_unit
+from registry.quantities import UNITS, Unit, convert
 
 __all__ = ["describe_answer", "describe_coverage", "describe_entry", "describe_refusal", "value_in"]
 

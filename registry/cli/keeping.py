@@ -24,7 +24,7 @@ def start(
     """
     from registry.cli.screen import print_json, say
     from registry.errors import BadInput
-    from registry.library import default_place, start_library
+    from registry.opening import default_place, start_library
 
     place = library or default_place()
     try:
@@ -91,7 +91,7 @@ def upgrade(library: LibraryOption = "", as_json: JsonOption = False) -> None:
     Example: rangebook upgrade --library team.db
     """
     from registry.cli.screen import print_json, say
-    from registry.library import default_place, upgrade_library
+    from registry.opening import default_place, upgrade_library
 
     place = library or default_place()
     backup = upgrade_library(place)

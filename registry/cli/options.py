@@ -40,7 +40,7 @@ AuthorOption = Annotated[
 
 def open_chosen(place: str) -> Library:
     """The library that the options name."""
-    from registry.library import open_library
+    from registry.opening import open_library
 
     return open_library(place or None)
 

@@ -1,0 +1,61 @@
+"""Numbers, units and names as a person reads them."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+
+from registry.quantities import UNITS, Unit
+
+__all__ = ["format_number", "format_plain", "join_names", "suit_unit"]
+
+
+def format_number(value: float, digits: int = 6) -> str:
+    """A number to `digits` significant digits, plainly where that is readable.
+
+    Examples
+    --------
+    >>> format_number(3.169929)
+    '3.16993'
+    >>> format_number(0.0000123456789)
+    '1.23457e-05'
+    """
+    return f"{value:#.{digits}g}".rstrip(".") if value else "0"
+
+
+def format_plain(value: float) -> str:
+    """A temperature or bound with the digits it has, at most nine.
+
+    Examples
+    --------
+    >>> format_plain(273.16000000000003), format_plain(500.0)
+    ('273.16', '500')
+    """
+    return f"{value:.9g}"
+
+
+def suit_unit(value: float, si: Unit) -> Unit:
+    """The unit in which a value in SI is shown if none is asked for.
+
+    Pressures in kPa, below 100 Pa in Pa, above 10 MPa in MPa; molar energies
+    in kJ/mol; anything else in SI.
+
+    Examples
+    --------
+    >>> suit_unit(3169.9, UNITS["Pa"]).name, suit_unit(2e7, UNITS["Pa"]).name
+    ('kPa', 'MPa')
+    """
+    if si.dimension == "pressure":
+        return UNITS["Pa" if abs(value) < 100.0 else "MPa" if abs(value) > 1e7 else "kPa"]
+    return UNITS["kJ/mol"] if si.dimension == "molar-energy" else si
+
+
+def join_names(names: Iterable[str]) -> str:
+    """Names as a sentence lists them.
+
+    Examples
+    --------
+    >>> join_names(["a", "b", "c"])
+    'a, b or c'
+    """
+    *rest, last = list(names)
+    return f"{', '.join(rest)} or {last}" if rest else last

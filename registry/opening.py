@@ -1,0 +1,120 @@
+"""Opening, starting and upgrading libraries by their place."""
+
+from __future__ import annotations
+
+import os
+from pathlib import Path
+
+from registry.errors import BadInput
+from registry.library import Library, now_utc
+from registry.store.library_file import LibraryFile, locate
+
+__all__ = ["default_place", "open_library", "start_library", "upgrade_library"]
+
+SHELVES = ("published", "scenario", "none")
+
+
+def default_place() -> str:
+    """Where the library is if none is named: RANGEBOOK_LIBRARY, else the user's data folder."""
+    named = os.environ.get("RANGEBOOK_LIBRARY")
+    if named:
+        return named
+    import platformdirs
+
+    return str(Path(platformdirs.user_data_dir("rangebook", appauthor=False)) / "library.db")
+
+
+def open_library(place: str | os.PathLike[str] | None = None) -> Library:
+    """Open a library for reading and recording.
+
+    Parameters
+    ----------
+    place : path or URL, optional
+        A SQLite file or a ``sqlite:///`` URL. By default the one named by the
+        environment variable RANGEBOOK_LIBRARY, else the one in the user's
+        data folder, which is made with the published shelf on first use.
+
+    Returns
+    -------
+    Library
+        A context manager; closing it releases the file.
+
+    Raises
+    ------
+    LibraryUnreadable
+        If there is none, it is damaged, or made by another version.
+
+    Examples
+    --------
+    >>> with open_library("shelf.db") as library:
+    ...     answer = library.lookup("water", 298.15)
+    >>> round(answer.value, 1), answer.unit, answer.correlation.key
+    (3169.7, 'Pa', 'water-if97')
+    """
+    if place is None:
+        place = default_place()
+        if not os.environ.get("RANGEBOOK_LIBRARY") and not locate(place).exists():
+            try:
+                return start_library(place)
+            except FileExistsError:  # another process was first
+                pass
+    return Library(LibraryFile.open(locate(place)))
+
+
+def start_library(place: str | os.PathLike[str], shelf: str = "published", author: str = "rangebook") -> Library:
+    """Make a new library, with a shelf or empty.
+
+    Parameters
+    ----------
+    place : path or URL
+        Where; nothing may be there.
+    shelf : {'published', 'scenario', 'none'}
+        The published shelf (accepted as it stands), the invented
+        demonstration scenario, or nothing.
+    author : str
+        Who starts it.
+
+    Returns
+    -------
+    Library
+        The new library, open.
+
+    Raises
+    ------
+    BadInput
+        If the shelf is unknown, or the folder cannot be written.
+    FileExistsError
+        If something is there already.
+    """
+    if shelf not in SHELVES:
+        raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(SHELVES)}.")
+    path = locate(place)
+    name = os.urandom(16).hex()
+
+    def fill(library: Library) -> None:
+        if shelf != "none":
+            from registry.shelves import find_shelf
+
+            reason = "The published shelf, accepted as it stands." if shelf == "published" else "The invented scenario."
+            library.load(find_shelf(shelf), author=author, reason=reason)
+
+    LibraryFile.create(path, name, now_utc(), lambda file: fill(Library(file)))
+    return Library(LibraryFile.open(path))
+
+
+def upgrade_library(place: str | os.PathLike[str]) -> Path | None:
+    """Bring a library of an older program up to date, after a backup.
+
+    Parameters
+    ----------
+    place : path or URL
+        The library.
+
+    Returns
+    -------
+    Path or None
+        The backup; None if the library was up to date.
+    """
+    from registry.store.schema import upgrade_file
+
+    return upgrade_file(locate(place))

@@ -1,0 +1,135 @@
+"""What correlations are held against: fixed points, printed values, datasets."""
+
+from __future__ import annotations
+
+import dataclasses
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+from typing import Any, ClassVar, Self
+
+from registry import cells
+from registry.cells import choice
+from registry.errors import Problem
+from registry.numerals import parse_number
+from registry.properties import PROPERTIES
+from registry.quantities import UNITS
+from registry.records.record import (
+    EVIDENCE_WORD,
+    OBTAINED_WORD,
+    SCALE,
+    TEMPERATURE_UNIT,
+    UNIT,
+    Record,
+    entry,
+    phase_problems,
+    uncertainty_problems,
+    value_unit_problems,
+)
+
+QUANTITIES = {
+    "triple-point-temperature": "temperature", "triple-point-pressure": "pressure",
+    "normal-boiling-temperature": "temperature", "normal-sublimation-temperature": "temperature",
+    "critical-temperature": "temperature", "critical-pressure": "pressure",
+    "lambda-point-temperature": "temperature", "lambda-point-pressure": "pressure",
+    "acentric-factor": "number", "molar-mass": "molar-mass",
+}  # fmt: skip
+
+
+@dataclass(frozen=True)
+class FixedPoint(Record):
+    """A triple point, boiling point, critical point or acentric factor, with its own source."""
+
+    kind: ClassVar[str] = "fixed-point"
+    key: str = entry(cells.KEY)
+    compound: str = entry(cells.KEY)
+    quantity: str = entry(choice(*QUANTITIES))
+    value: str = entry(cells.NUMBER)
+    unit: str = entry(UNIT)
+    temperature_scale: str = entry(SCALE, required=False)
+    qualifier: str = entry(choice("defining", "rounded", "table-bound"), required=False)
+    evidence: str = entry(EVIDENCE_WORD)
+    uncertainty: str = entry(cells.TEXT, required=False)
+    source: str = entry(cells.KEY)
+    locator: str = entry(cells.TEXT)
+    obtained: str = entry(OBTAINED_WORD)
+    note: str = entry(cells.LONG, required=False)
+
+    def _problems(self) -> Iterator[Problem]:
+        dimension = QUANTITIES[self.quantity]
+        unit = UNITS[self.unit]
+        if unit.dimension != dimension:
+            names = ", ".join(u.name for u in UNITS.values() if u.dimension == dimension)
+            yield Problem("unit", self.unit, f"{self.quantity} is in one of {names}.")
+        elif dimension != "number" and self.value_si() <= 0.0:
+            yield Problem("value", self.value, f"a {self.quantity} is above zero.")
+        yield from uncertainty_problems(self.uncertainty, dimension)
+
+    def value_si(self) -> float:
+        """The value in SI units (K, Pa, g/mol for a molar mass)."""
+        return float(UNITS[self.unit].to_si(parse_number(self.value)))
+
+
+@dataclass(frozen=True)
+class PrintedValue(Record):
+    """A value that a source prints for its own correlation: proves the transcription."""
+
+    kind: ClassVar[str] = "printed-value"
+    key: str = entry(cells.KEY)
+    correlation: str = entry(cells.KEY)
+    temperature: str = entry(cells.NUMBER)
+    temperature_unit: str = entry(TEMPERATURE_UNIT)
+    value: str = entry(cells.NUMBER)
+    value_unit: str = entry(UNIT)
+    locator: str = entry(cells.TEXT)
+    obtained: str = entry(OBTAINED_WORD)
+    note: str = entry(cells.LONG, required=False)
+
+
+@dataclass(frozen=True)
+class Point:
+    """One point of a dataset, as printed, in the dataset's units."""
+
+    temperature: str = entry(cells.NUMBER)
+    value: str = entry(cells.NUMBER)
+    temperature_uncertainty: str = entry(cells.NUMBER, required=False)
+    value_uncertainty: str = entry(cells.NUMBER, required=False)
+    note: str = entry(cells.LONG, required=False)
+
+
+@dataclass(frozen=True)
+class Dataset(Record):
+    """Points from one source: measurements, or an independent table."""
+
+    kind: ClassVar[str] = "dataset"
+    key: str = entry(cells.KEY)
+    compound: str = entry(cells.KEY)
+    property: str = entry(choice(*PROPERTIES))
+    phase: str = entry(cells.PHASE)
+    temperature_unit: str = entry(TEMPERATURE_UNIT)
+    value_unit: str = entry(UNIT)
+    temperature_scale: str = entry(SCALE)
+    evidence: str = entry(EVIDENCE_WORD)
+    uncertainty: str = entry(cells.TEXT, required=False)
+    source: str = entry(cells.KEY)
+    locator: str = entry(cells.TEXT)
+    obtained: str = entry(OBTAINED_WORD)
+    note: str = entry(cells.LONG, required=False)
+    points: tuple[Point, ...] = ()
+
+    def _problems(self) -> Iterator[Problem]:
+        dimension = PROPERTIES[self.property].dimension
+        yield from phase_problems(self.property, self.phase)
+        yield from value_unit_problems(self.value_unit, dimension)
+        yield from uncertainty_problems(self.uncertainty, dimension)
+        if not self.points:
+            yield Problem("points", "", "a dataset has at least one point.")
+
+    def content(self) -> dict[str, Any]:
+        rows = [{f.name: v for f in dataclasses.fields(p) if (v := getattr(p, f.name))} for p in self.points]
+        return {**super().content(), "points": rows}
+
+    @classmethod
+    def restore(cls, key: str, content: Mapping[str, Any]) -> Self:
+        record = super().restore(key, content)
+        object.__setattr__(record, "points", tuple(Point(**row) for row in content["points"]))
+        return record

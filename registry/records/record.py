@@ -1,0 +1,108 @@
+"""What all records share, and the words that their fields may hold."""
+
+from __future__ import annotations
+
+import dataclasses
+from collections.abc import Iterator, Mapping
+from typing import Any, ClassVar, NamedTuple, Self
+
+from registry.cells import Cell, choice, complain
+from registry.errors import InvalidRecord, Problem
+from registry.properties import PROPERTIES
+from registry.quantities import UNITS
+from registry.scales import SCALES
+from registry.uncertainty import parse_uncertainty
+
+EVIDENCE = ("standard", "evaluated", "measured", "compiled", "estimated")
+"""How good the ground is, best first."""
+STANDINGS = ("draft", "accepted", "declined", "withdrawn")
+OBTAINED = ("seen", "memory")
+
+UNIT = choice(*UNITS)
+TEMPERATURE_UNIT = choice(*(unit.name for unit in UNITS.values() if unit.dimension == "temperature"))
+SCALE = choice(*SCALES)
+EVIDENCE_WORD = choice(*EVIDENCE)
+OBTAINED_WORD = choice(*OBTAINED)
+
+
+class Reference(NamedTuple):
+    """What a record refers to: the field, and the record meant."""
+
+    role: str
+    kind: str
+    key: str
+
+
+def entry(cell: Cell, required: bool = True) -> Any:
+    return dataclasses.field(default="", metadata={"cell": cell, "required": required})
+
+
+class Record:
+    """What all records share: a key, text fields, references to other records."""
+
+    kind: ClassVar[str]
+    key: str
+
+    def __post_init__(self) -> None:
+        problems = list(self._cell_problems())
+        if not problems:
+            problems = list(self._problems())
+        if problems:
+            raise InvalidRecord(self.kind, self.key, problems)
+
+    def _cell_problems(self) -> Iterator[Problem]:
+        for field in dataclasses.fields(self):  # type: ignore[arg-type]
+            if "cell" in field.metadata:
+                text = getattr(self, field.name)
+                if why := complain(field.metadata["cell"], text, field.metadata["required"]):
+                    yield Problem(field.name, text, why)
+
+    def _problems(self) -> Iterator[Problem]:
+        return iter(())
+
+    def content(self) -> dict[str, Any]:
+        """What is recorded and digested: every field that is not empty, but the key."""
+        fields = dataclasses.fields(self)  # type: ignore[arg-type]
+        return {f.name: value for f in fields if f.name != "key" and (value := getattr(self, f.name))}
+
+    @classmethod
+    def restore(cls, key: str, content: Mapping[str, Any]) -> Self:
+        """The record behind content that was checked when it was recorded."""
+        record = object.__new__(cls)
+        for field in dataclasses.fields(cls):  # type: ignore[arg-type]
+            default: Any = {} if field.name == "coefficients" else () if field.name == "points" else ""
+            object.__setattr__(record, field.name, content.get(field.name, default))
+        object.__setattr__(record, "key", key)
+        return record
+
+    def references(self) -> tuple[Reference, ...]:
+        """The records this one refers to, which must exist in the library."""
+        names = {"compound": "compound", "source": "source", "correlation": "correlation", "over": "correlation"}
+        pairs = ((role, kind, getattr(self, role, "")) for role, kind in names.items())
+        return tuple(Reference(role, kind, key) for role, kind, key in pairs if key)
+
+    def terms(self) -> tuple[str, ...]:
+        """Texts under which a person looks for the record, besides its key."""
+        return ()
+
+
+def phase_problems(prop: str, phase: str) -> Iterator[Problem]:
+    """A property belongs to a liquid or to a solid."""
+    expected = PROPERTIES[prop].phase
+    if (phase == "liquid") != (expected == "liquid"):
+        yield Problem("phase", phase, f"{prop} belongs to a {expected}.")
+
+
+def value_unit_problems(name: str, dimension: str) -> Iterator[Problem]:
+    """A value is in a unit of its property's dimension."""
+    if UNITS[name].dimension != dimension:
+        names = ", ".join(unit.name for unit in UNITS.values() if unit.dimension == dimension)
+        yield Problem("value_unit", name, f"one of {names} is allowed.")
+
+
+def uncertainty_problems(text: str, dimension: str) -> Iterator[Problem]:
+    """A stated uncertainty can be read."""
+    try:
+        parse_uncertainty(text, dimension)
+    except ValueError as error:
+        yield Problem("uncertainty", text, str(error))
