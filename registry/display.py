@@ -49,7 +49,7 @@ def suit_unit(value: float, si: Unit) -> Unit:
     return UNITS["kJ/mol"] if si.dimension == "molar-energy" else si
 
 
-def join_names(names: Iterable[str]) -> str:
+def join_names(names: Iterable[str], word: str = "or") -> str:
     """Names as a sentence lists them.
 
     Examples
@@ -58,4 +58,4 @@ def join_names(names: Iterable[str]) -> str:
     'a, b or c'
     """
     *rest, last = list(names)
-    return f"{', '.join(rest)} or {last}" if rest else last
+    return f"{', '.join(rest)} {word} {last}" if rest else last

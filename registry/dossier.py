@@ -83,7 +83,11 @@ class Dossier:
 
     def preferred(self) -> frozenset[tuple[str, str]]:
         """Pairs (preferred key, key it is preferred over) that are accepted."""
-        return frozenset((e.record.correlation, e.record.over) for e in self.preferences if e.accepted)
+        return frozenset(self.preference_reasons())
+
+    def preference_reasons(self) -> dict[tuple[str, str], str]:
+        """The reason of each accepted preference, by its pair of keys."""
+        return {(e.record.correlation, e.record.over): e.record.reason for e in self.preferences if e.accepted}
 
     def year(self, source: str) -> int:
         """The year of a source, 0 if it states none."""

@@ -16,12 +16,12 @@ Among the accepted correlations that cover a temperature for a phase:
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Sequence
+from collections.abc import Sequence
 
 from registry.candidate import Candidate
 from registry.records import EVIDENCE
 
-__all__ = ["choose_best", "explain_order", "explain_preference"]
+__all__ = ["choose_best", "explain_order"]
 
 Pairs = frozenset[tuple[str, str]]
 
@@ -57,12 +57,6 @@ def choose_best(covering: Sequence[Candidate], kelvin: float, preferred: Pairs) 
     dropped = {over for key, over in preferred if key in keys}
     left = [candidate for candidate in covering if candidate.key not in dropped]
     return min(left, key=lambda candidate: _rank(candidate, kelvin))
-
-
-def explain_preference(other: Candidate, covering: Iterable[Candidate], preferred: Pairs) -> str:
-    """Which covering candidate a steward prefers over this one; empty if none."""
-    above = [c.key for c in covering if (c.key, other.key) in preferred]
-    return f"A steward prefers {above[0]} over it." if above else ""
 
 
 def explain_order(best: Candidate, other: Candidate, kelvin: float) -> str:

@@ -10,7 +10,7 @@ from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.display import join_names
 from registry.properties import PROPERTIES
-from registry.ranking import explain_order, explain_preference
+from registry.ranking import explain_order
 
 __all__ = ["Nearest", "Refusal", "Verdict", "explain_choice", "judge_candidates", "refuse", "refuse_property"]
 
@@ -126,8 +126,15 @@ def _judge(
         return give("passed-over", "It covers the temperature, but no phase was named.")
     if candidate is best:
         return give("chosen", explain_choice(coverage, kelvin))
-    preference = explain_preference(candidate, covering, coverage.dossier.preferred())
+    preference = _preference_over(coverage, candidate, covering)
     return give("passed-over", preference or explain_order(best, candidate, kelvin))
+
+
+def _preference_over(coverage: Coverage, other: Candidate, covering: Sequence[Candidate]) -> str:
+    """Which covering candidate a steward prefers over this one, and why; empty if none."""
+    reasons = coverage.dossier.preference_reasons()
+    above = [(c.key, reasons[c.key, other.key]) for c in covering if (c.key, other.key) in reasons]
+    return f"A steward prefers {above[0][0]} over it: {above[0][1]}" if above else ""
 
 
 def _standing(candidate: Candidate) -> str:
@@ -139,17 +146,19 @@ def explain_choice(coverage: Coverage, kelvin: float) -> str:
     """Why the answering correlation was chosen, in a sentence."""
     best = coverage.stretch_at(kelvin).candidate
     assert best is not None
-    others = [c for c in coverage.covering(kelvin) if c is not best]
+    covering = coverage.covering(kelvin)
+    others = [c for c in covering if c is not best]
     if not others:
         return "It is the only accepted correlation that covers this temperature."
-    preferred = coverage.dossier.preferred()
-    dropped = [c for c in others if explain_preference(c, coverage.covering(kelvin), preferred)]
+    dropped = [c for c in others if _preference_over(coverage, c, covering)]
     left = [c for c in others if c not in dropped]
+    set_aside = join_names((c.key for c in dropped), "and") if dropped else ""
+    aside = f" A steward's preference sets {set_aside} aside." if dropped else ""
     if not left:
-        return f"A steward's preference sets the other {_count(len(dropped))} aside."
+        return aside.strip()
     closest = min(left, key=lambda c: (_first_difference(best, c, kelvin), c.key))
-    sentence = f"Of {len(others) + 1} that cover this temperature it ranks first; next comes {closest.key}: "
-    return sentence + explain_order(best, closest, kelvin)
+    first = f"Of {len(others) + 1} that cover this temperature it ranks first; next comes {closest.key}: "
+    return first + explain_order(best, closest, kelvin) + aside
 
 
 def _first_difference(best: Candidate, other: Candidate, kelvin: float) -> int:
@@ -161,10 +170,6 @@ def _first_difference(best: Candidate, other: Candidate, kelvin: float) -> int:
         best.year == other.year,
     )
     return -next((i for i, equal in enumerate(same) if not equal), len(same))
-
-
-def _count(number: int) -> str:
-    return "one" if number == 1 else str(number)
 
 
 def _why_not_covering(coverage: Coverage, candidate: Candidate, kelvin: float) -> str:
