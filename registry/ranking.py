@@ -68,16 +68,19 @@ def explain_order(best: Candidate, other: Candidate, kelvin: float) -> str:
     if first[0] != second[0]:
         return f"{_evidence(best).capitalize()} evidence ranks before {_evidence(other)}."
     if first[1] != second[1]:
-        return f"Equal evidence; its stated uncertainty is {_percent(first[1])}, here {_percent(second[1])}."
+        stated = f"{best.key} states {_percent(first[1])}, {other.key} {_percent(second[1])}"
+        return f"Equal evidence; as uncertainty {stated}."
     if first[2] != second[2]:
-        return f"Equal evidence and uncertainty; it answers over {best.width:.6g} K, this one over {other.width:.6g} K."
+        reach = f"{best.key} answers over {best.width:.6g} K, {other.key} over {other.width:.6g} K"
+        return f"Equal evidence and uncertainty; {reach}."
     if first[3] != second[3]:
-        return f"Equal so far; its source is newer ({best.year} against {other.year or 'no year'})."
-    return "Equal in all else; the keys decide, in alphabetical order."
+        years = f"{best.key} of {best.year}, {other.key} of {other.year or 'no stated year'}"
+        return f"Equal so far; the newer source counts, {years}."
+    return f"Equal in all else; the keys decide, {best.key} before {other.key}."
 
 
 def _percent(value: float) -> str:
-    return "not stated" if math.isinf(value) else f"{value:g} %"
+    return "none" if math.isinf(value) else f"{value:g} %"
 
 
 def _evidence(candidate: Candidate) -> str:

@@ -1,0 +1,246 @@
+"""The command line: JSON as promised, exit codes, streams, and the ways people type temperatures."""
+
+from __future__ import annotations
+
+import json
+import subprocess
+import sys
+
+import pytest
+
+from registry.cli.app import app, main
+
+ANSWER_KEYS = {
+    "temperature_K", "value", "unit", "value_SI", "correlation", "revision", "phase", "window_K", "evidence",
+    "standing", "obtained", "uncertainty_percent", "percent_per_kelvin", "factor_per_10_K", "source", "chosen_because",
+    "candidates", "cautions",
+}  # fmt: skip
+
+
+@pytest.fixture
+def run(published_path, capsys, monkeypatch):
+    """Run a command on the published shelf: exit code, stdout, stderr."""
+    monkeypatch.setenv("RANGEBOOK_LIBRARY", str(published_path))
+
+    def call(*words: str) -> tuple[int, str, str]:
+        with pytest.raises(SystemExit) as stopped:
+            main(list(words))
+        captured = capsys.readouterr()
+        return int(stopped.value.code or 0), captured.out, captured.err
+
+    return call
+
+
+def _shell(*words: str, stdin: str = "", **environment: str) -> subprocess.CompletedProcess[str]:
+    code = "from registry.cli.entry import main; main()"
+    return subprocess.run(
+        [sys.executable, "-c", code, *words], input=stdin, capture_output=True, text=True, timeout=60,
+        env={"PATH": "/usr/bin:/bin", **environment},
+    )  # fmt: skip
+
+
+def test_lookup_json_has_the_promised_shape(run):
+    """Answers and refusals stand each in the order asked, with every promised field."""
+    code, out, err = run("lookup", "water", "300K", "700K", "25C", "--json")
+    document = json.loads(out)
+    assert code == 3
+    assert err == ""
+    assert list(document) == ["compound", "property", "answers", "refusals"]
+    assert [a["temperature_K"] for a in document["answers"]] == [300.0, 298.15]
+    for answer in document["answers"]:
+        assert set(answer) == ANSWER_KEYS
+        assert answer["standing"] == "accepted"
+        assert answer["obtained"] in ("seen", "memory")
+        low, high = answer["window_K"]
+        assert low <= answer["temperature_K"] <= high
+        assert set(answer["source"]) == {"key", "citation", "locator"}
+        verdicts = [c["verdict"] for c in answer["candidates"]]
+        assert verdicts.count("chosen") == 1
+        assert set(verdicts) <= {"chosen", "passed-over", "not-covering", "not-accepted"}
+        assert answer["value_SI"] == pytest.approx(answer["value"] * 1000.0, rel=1e-15)
+    (refusal,) = document["refusals"]
+    assert set(refusal) == {"temperature_K", "reason", "explanation", "nearest"}
+    assert refusal["reason"] == "above-critical"
+    assert set(refusal["nearest"][0]) == {"correlation", "window_K", "distance_K"}
+
+
+def test_steepness_is_the_slope_of_the_curve(run, published):
+    """percent_per_kelvin is the central difference of the answers around it; the factor is its exponential."""
+    import math
+
+    _, out, _ = run("lookup", "ammonia", "300K", "--json")
+    (answer,) = json.loads(out)["answers"]
+    above, below = (published.lookup("ammonia", 300.0 + d).value for d in (0.01, -0.01))
+    difference = 100.0 * math.log(above / below) / 0.02
+    assert answer["percent_per_kelvin"] == pytest.approx(difference, rel=1e-6)
+    assert answer["factor_per_10_K"] == pytest.approx(math.exp(0.1 * difference), rel=1e-6)
+
+
+@pytest.mark.parametrize(
+    ("words", "kelvin"),
+    [
+        (("-40C",), [233.15]),
+        (("-40", "C"), [233.15]),
+        (("\u221240C",), [233.15]),
+        (("25 °C",), [298.15]),
+        (("25", "°C", "77F"), [298.15, 298.15]),
+        (("536.67R", "298.15K", "25degC"), [298.15, 298.15, 298.15]),
+    ],
+)
+def test_temperatures_as_people_type_them(words, kelvin, run):
+    """Negative temperatures work unquoted, and a unit may be a word of its own."""
+    code, out, _ = run("lookup", "ammonia", *words, "--json")
+    assert code == 0
+    assert [a["temperature_K"] for a in json.loads(out)["answers"]] == kelvin
+
+
+def test_temperatures_come_from_stdin(published_path):
+    """`-` reads one temperature a line and passes over empty lines."""
+    done = _shell(
+        "lookup", "water", "20C", "-", "--json", stdin="25C\n\n 300 K\n", RANGEBOOK_LIBRARY=str(published_path)
+    )
+    assert [a["temperature_K"] for a in json.loads(done.stdout)["answers"]] == [293.15, 298.15, 300.0]
+
+
+@pytest.mark.parametrize(
+    ("words", "unit"),
+    [
+        (("water", "25C"), "kPa"),
+        (("water", "273.16K"), "kPa"),
+        (("mercury", "300K"), "Pa"),
+        (("water", "600K"), "MPa"),
+        (("benzene", "300K", "-p", "enthalpy-of-vaporization"), "kJ/mol"),
+        (("water", "300K", "-p", "saturated-liquid-density"), "kg/m3"),
+        (("water", "300K", "-u", "psi"), "psi"),
+        (("water", "120C", "-u", "barg", "--atmosphere", "1atm"), "bar(g)"),
+        (("benzene", "300K", "-p", "enthalpy-of-vaporization", "-u", "J/g"), "J/g"),
+    ],
+)
+def test_the_unit_suits_the_value_or_is_the_one_asked_for(words, unit, run):
+    """kPa, but Pa below 100 Pa and MPa above 10 MPa; kJ/mol; kg/m3; else as asked."""
+    code, out, _ = run("lookup", *words, "--json")
+    assert code == 0
+    assert json.loads(out)["answers"][0]["unit"] == unit
+
+
+@pytest.mark.parametrize("name", ["water", "WATER", "Water", "7732-18-5", "h2o", "r-718"])
+def test_a_compound_is_found_by_any_of_its_names(name, run):
+    """Key, name, synonym, CAS number and formula do, case aside."""
+    code, out, _ = run("lookup", name, "25C", "--json")
+    assert code == 0
+    assert json.loads(out)["compound"] == "water"
+
+
+READING = [
+    ("list",), ("list", "methyl"), ("show", "ammonia"), ("show", "water-if97"), ("show", "perry-8"),
+    ("show", "water-vapor-pressure-crc-73"), ("show", "ammonia-triple-point-temperature-gao-2023"),
+    ("show", "water-hardy-1998-at-0-degc"), ("coverage", "water"), ("coverage", "water", "-p", "melting-pressure"),
+    ("coverage", "neon"), ("lookup", "water", "25C", "--why"),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize("words", READING, ids=" ".join)
+def test_every_reading_command_prints_one_json_object(words, run):
+    """With --json there is one object on stdout and nothing else; without, plain lines no wider than the screen."""
+    code, out, err = run(*words, "--json")
+    assert (code, err) == (0, "")
+    assert isinstance(json.loads(out), dict)
+    code, out, err = run(*words)
+    assert (code, err) == (0, "")
+    assert out.strip()
+    assert "\x1b" not in out
+    assert max(len(line) for line in out.splitlines()) <= 130
+
+
+def test_show_tells_a_record_as_printed(run):
+    """A correlation shows its coefficients, units and bounds as its source prints them, and who recorded it."""
+    _, out, _ = run("show", "water-antoine-273-333")
+    for text in (
+        "A=7.2326; B=1750.286; C=38.1",
+        "log10 p = A - B/(T - C)",
+        "273 to 333 K (printed)",
+        "seen",
+        "change 1",
+    ):
+        assert text in out
+    _, out, _ = run("show", "water-antoine-273-333", "--json")
+    assert json.loads(out)["coefficients"] == {"A": "7.2326", "B": "1750.286", "C": "38.1"}
+
+
+def test_coverage_json_tiles_between_its_ends(run):
+    """Stretches, gaps and seams of the JSON fit together."""
+    _, out, _ = run("coverage", "helium-4", "--json")
+    document = json.loads(out)
+    first, second = document["stretches"]
+    assert first["to_K"] == second["from_K"]
+    assert document["seams"][0]["temperature_K"] == 2.1768
+    assert abs(document["seams"][0]["jump_percent"]) < 0.01
+    assert document["limits"]["not_recorded"] == ["triple-point-temperature"]
+
+
+def test_a_closed_pipe_is_no_error(published_path):
+    """`rangebook list | head -1` ends quietly."""
+    code = "from registry.cli.entry import main; main()"
+    line = f"{sys.executable} -c '{code}' list | head -1"
+    done = subprocess.run(
+        ["bash", "-c", line], capture_output=True, text=True, timeout=60, env={
+            "PATH": "/usr/bin:/bin", "RANGEBOOK_LIBRARY": str(published_path),
+        },
+    )  # fmt: skip
+    assert done.stderr == ""
+    assert "compounds" in done.stdout
+
+
+def test_a_terminal_without_unicode_gets_plain_marks(published_path):
+    """Where the output is ASCII, bars and messages still print."""
+    environment = {"RANGEBOOK_LIBRARY": str(published_path), "PYTHONIOENCODING": "ascii", "LC_ALL": "C"}
+    done = _shell("coverage", "ethanol", **environment)
+    assert (done.returncode, done.stderr) == (0, "")
+    assert "#" in done.stdout
+    assert done.stdout.isascii()
+
+
+def test_the_first_lookup_makes_the_default_library(tmp_path):
+    """In an empty home the first lookup makes the library with the published shelf; the next one uses it."""
+    environment = {"HOME": str(tmp_path), "XDG_DATA_HOME": str(tmp_path / "data")}
+    first = _shell("lookup", "water", "25C", **environment)
+    path = tmp_path / "data" / "rangebook" / "library.db"
+    assert first.returncode == 0
+    assert "3.16975" in first.stdout
+    assert path.exists()
+    before = path.read_bytes()
+    second = _shell("lookup", "water", "25C", **environment)
+    assert second.stdout == first.stdout
+    assert path.read_bytes() == before
+
+
+def test_two_first_lookups_at_once_make_one_library(tmp_path):
+    """Two processes that start together both answer, and leave one library and nothing else."""
+    environment = {"PATH": "/usr/bin:/bin", "HOME": str(tmp_path), "XDG_DATA_HOME": str(tmp_path / "data")}
+    code = "from registry.cli.entry import main; main()"
+    words = [sys.executable, "-c", code, "lookup", "water", "25C", "--json"]
+    both = [subprocess.Popen(words, env=environment, stdout=subprocess.PIPE, stderr=subprocess.PIPE) for _ in range(3)]
+    results = [process.communicate(timeout=120) for process in both]
+    assert [process.returncode for process in both] == [0, 0, 0], results
+    assert len({out for out, _ in results}) == 1
+    assert [p.name for p in (tmp_path / "data" / "rangebook").iterdir()] == ["library.db"]
+
+
+def test_an_explicit_library_must_exist(tmp_path):
+    """A path given by --library or by the environment is never made by a lookup."""
+    missing = tmp_path / "missing.db"
+    for words, environment in (
+        (("lookup", "water", "25C", "--library", str(missing)), {}),
+        (("lookup", "water", "25C"), {"RANGEBOOK_LIBRARY": str(missing)}),
+    ):
+        done = _shell(*words, **environment, HOME=str(tmp_path))
+        assert done.returncode == 5
+        assert done.stdout == ""
+        assert str(missing) in done.stderr
+        assert list(tmp_path.iterdir()) == []
+
+
+def test_commands_are_the_ones_of_the_job():
+    """No command is missing, and none is there that nobody asked for."""
+    names = {command.name for command in app.registered_commands}
+    assert names == {"lookup", "coverage", "list", "show", "start", "load", "dump", "upgrade"}

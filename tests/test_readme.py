@@ -1,0 +1,97 @@
+"""The README: what it shows is what the program prints, and it knows every command."""
+
+from __future__ import annotations
+
+import re
+import shlex
+import sys
+from pathlib import Path
+
+import pytest
+
+from registry.cli.app import app, main
+from registry.opening import start_library
+
+ROOT = Path(__file__).parents[1]
+README = (ROOT / "README.md").read_text(encoding="utf-8")
+BLOCKS = re.findall(r"```console\n(.*?)```", README, flags=re.DOTALL)
+SESSIONS = [block for block in BLOCKS if block.startswith("$ rangebook")]
+COMMANDS = sorted(command.name for command in app.registered_commands)
+TIME = re.compile(r"\d{4}-\d\d-\d\dT[\d:.]+Z")
+
+
+def _split(block: str) -> list[tuple[str, str]]:
+    """Commands and outputs of a session."""
+    parts = re.split(r"^\$ ", block, flags=re.MULTILINE)[1:]
+    return [(part.split("\n", 1)[0], part.split("\n", 1)[1].strip("\n")) for part in parts]
+
+
+@pytest.fixture(scope="module")
+def folder(tmp_path_factory):
+    """A folder as the tour has it: the published shelf as the default library, the scenario beside it."""
+    root = tmp_path_factory.mktemp("tour")
+    start_library(root / "default.db", "published").close()
+    return root
+
+
+@pytest.fixture
+def tour(folder, monkeypatch):
+    """The surroundings of the tour."""
+    monkeypatch.chdir(folder)
+    monkeypatch.setenv("RANGEBOOK_LIBRARY", "default.db")
+    monkeypatch.delenv("COLUMNS", raising=False)
+    monkeypatch.setenv("RANGEBOOK_AUTHOR", "steward")
+    return folder
+
+
+@pytest.mark.parametrize("block", SESSIONS, ids=[_split(block)[0][0][:40] for block in SESSIONS])
+def test_the_tour_shows_real_output(block, tour, capsys, monkeypatch):
+    """Each command of the tour prints what the README shows, messages and exit codes included."""
+    for line, expected in _split(block):
+        words = shlex.split(line)
+        code = "0"
+        if "&&" in words or "|" in words or words[0] != "rangebook":
+            pytest.fail(f"the tour keeps to plain commands: {line}")
+        echo = words[-3:] if words[-3:-1] == [";", "echo"] else []
+        with pytest.raises(SystemExit) as stopped:
+            main(words[1 : len(words) - len(echo)])
+        code = str(stopped.value.code or 0)
+        captured = capsys.readouterr()
+        shown = captured.out + captured.err + (f"{code}\n" if echo else "")
+        assert TIME.sub("TIME", shown.strip("\n")) == TIME.sub("TIME", expected)
+
+
+@pytest.mark.parametrize("command", COMMANDS)
+def test_every_command_is_in_the_readme_and_has_help(command, capsys):
+    """Each command is shown in the README; its help has a sentence and an example."""
+    assert f"rangebook {command}" in README
+    with pytest.raises(SystemExit):
+        main([command, "--help"])
+    text = capsys.readouterr().out
+    assert f"rangebook {command}" in text
+    assert "Example: rangebook" in text
+    assert "--json" in text
+
+
+def test_the_two_commands_are_one_line_each():
+    """The README's first two commands install and answer, then test; the check runs them as they stand."""
+    first, second = re.findall(r"```sh\n(.*?)\n```", README, flags=re.DOTALL)[:2]
+    assert "\n" not in first + second
+    assert first.endswith("rangebook lookup water 25C")
+    assert "[test]" in second
+
+
+def test_the_caution_is_in_the_readme():
+    """Relief, storage, transport and exposure decisions, and who comes first, are named."""
+    for words in ("relief", "storage", "transport", "exposure", "local codes", "licensed"):
+        assert words in README.lower()
+
+
+def test_the_python_example_runs(tour, capsys):
+    """The Python block of the README runs and prints what its comments say."""
+    block = re.search(r"```python\n(.*?)```", README, flags=re.DOTALL)[1]
+    expected = re.findall(r"# -> (.*)", block)
+    exec(compile(block, "README.md", "exec"), {})
+    assert capsys.readouterr().out.splitlines() == expected
+    assert len(expected) >= 4
+    assert sys.version_info >= (3, 11)
