@@ -1,8 +1,8 @@
-"""Molar mass of a formula, from a maintained table of atomic weights."""
+"""What a formula says: molar mass and Hill order, from a maintained table of atomic weights."""
 
 from __future__ import annotations
 
-__all__ = ["formula_mass"]
+__all__ = ["formula_mass", "hill_formula"]
 
 
 def formula_mass(formula: str) -> float:
@@ -35,3 +35,16 @@ def formula_mass(formula: str) -> float:
         return float(molmass.Formula(formula).mass)
     except molmass.FormulaError as error:
         raise ValueError(f"{str(error).splitlines()[0]}; element symbols and counts are allowed.") from None
+
+
+def hill_formula(formula: str) -> str:
+    """The formula in Hill order, under which a person may look for a compound.
+
+    Examples
+    --------
+    >>> hill_formula("C2H5OH")
+    'C2H6O'
+    """
+    import molmass
+
+    return str(molmass.Formula(formula).formula)

@@ -34,7 +34,10 @@ def list_records(
         compounds = [
             entry.record
             for entry in book.compounds()
-            if any(wanted in text.casefold() for text in (entry.key, *entry.record.terms()))
+            if any(
+                wanted in text.casefold()
+                for text in (entry.key, entry.record.name, entry.record.formula, entry.record.cas)
+            )
         ]
         counts = Counter((e.record.compound, e.record.property) for e in book.correlations() if e.accepted)
         place, position = book.place, book.position

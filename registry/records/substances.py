@@ -67,7 +67,9 @@ class Compound(Record):
         return to_float(self.molar_mass) if self.molar_mass else formula_mass(self.formula)
 
     def terms(self) -> tuple[str, ...]:
-        return tuple(term for term in (self.name, self.formula, self.cas) if term)
+        from registry.masses import hill_formula
+
+        return tuple(term for term in (self.name, self.formula, hill_formula(self.formula), self.cas) if term)
 
 
 @dataclass(frozen=True)
