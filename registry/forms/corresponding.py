@@ -69,7 +69,7 @@ RACKETT = Expression(_rackett_value, _rackett_slope, _below_critical)
 
 def _fold_rackett(c: Mapping[str, float], units: Units) -> Folded:
     # pc/(R Tc): MPa over J/mol is 1e6 mol/m3, 1e3 mol/dm3
-    density = 1e3 * c["pc"] / (GAS_CONSTANT * c["Tc"])
+    density = 1e3 * c["pc"] / (GAS_CONSTANT * c["Tc"] / units.ratio)
     return Folded(RACKETT, (c["Tc"], density, math.log(c["ZRA"])))
 
 

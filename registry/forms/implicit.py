@@ -15,6 +15,9 @@ __all__ = ["FORMS"]
 
 Parameters = tuple[Any, ...]
 
+_BRACKET = 1.05
+"""|x| up to which the ITS-90 helium equations are solved; their ranges lie within |x| = 1.01."""
+
 
 def _thodos_log(t: Array, p: Parameters) -> Array:
     """ln p: the lower root of y = A - B/T + C ln T + (D/T^2) e^y."""
@@ -51,7 +54,7 @@ def _helium_argument(t: Array, p: Parameters) -> Array:
     """x = (ln p - B)/C at which the ITS-90 equation gives T."""
     a, _, _ = p
     return solve_bracketed(
-        lambda x: _helium_temperature(x, a)[0] - t, lambda x: _helium_temperature(x, a)[1], -1.05, 1.05, t
+        lambda x: _helium_temperature(x, a)[0] - t, lambda x: _helium_temperature(x, a)[1], -_BRACKET, _BRACKET, t
     )
 
 
@@ -66,7 +69,13 @@ def _helium_slope(t: Array, p: Parameters) -> Array:
     return np.exp(b + c * x) * c / _helium_temperature(x, a)[1]
 
 
-HELIUM = Expression(_helium_value, _helium_slope)
+def _helium_bounds(p: Parameters) -> tuple[float, float]:
+    """The temperatures at the ends of the bracket: beyond them the equation is not solved."""
+    low, high = _helium_temperature(np.array([-_BRACKET, _BRACKET]), p[0])[0].tolist()
+    return low, high
+
+
+HELIUM = Expression(_helium_value, _helium_slope, _helium_bounds)
 
 
 def _fold_thodos(c: Mapping[str, float], units: Units) -> Folded:

@@ -153,7 +153,9 @@ def _kechin_bounds(p: Parameters) -> tuple[float, float]:
     if c <= 0.0:
         return math.nextafter(t0, 0.0), math.inf
     top = b / c - a
-    return math.nextafter(t0, 0.0), t0 * math.exp(b * math.log1p(top / a) - c * top)
+    highest = t0 * math.exp(b * math.log1p(top / a) - c * top)
+    # the maximum itself is a double root: stop a little before it, where the branch still rises
+    return math.nextafter(t0, 0.0), highest * (1.0 - 1e-12)
 
 
 KECHIN = Expression(_kechin_value, _kechin_slope, _kechin_bounds)

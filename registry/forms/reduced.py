@@ -49,12 +49,14 @@ def _fill_series(tau: Array, terms: tuple[tuple[float, float], ...], out: Array,
 
 def _series_and_rate(tau: Array, terms: tuple[tuple[float, float], ...]) -> tuple[Array, Array]:
     """The sum and its derivative with respect to tau."""
-    value, rate = np.zeros_like(tau), np.zeros_like(tau)
-    with np.errstate(divide="ignore", invalid="ignore"):
-        for n, e in terms:
-            value = value + n * np.power(tau, e)
-            rate = rate + n * e * np.power(tau, e - 1.0)
-    return value, rate
+    lowest = terms[0][1]
+    value, inner = np.zeros_like(tau), np.zeros_like(tau)
+    for n, e in terms:
+        value = value + n * np.power(tau, e)
+        inner = inner + n * e * np.power(tau, e - lowest)
+    # the lowest power outside: at tau = 0 the derivative is infinite with the right sign, not inf - inf
+    with np.errstate(divide="ignore"):
+        return value, inner * np.power(tau, lowest - 1.0)
 
 
 class ReducedExponential:
