@@ -230,8 +230,11 @@ class Batch:
     @cached_property
     def chosen(self) -> NDArray[np.int16]:
         """Index into `correlations` for each temperature, -1 where refused."""
-        chosen = np.asarray(np.take(self.coverage.owners, self._places))
-        chosen[np.isnan(self.values)] = -1
+        chosen = np.empty(self.values.shape, dtype=np.int16)
+        np.take(self.coverage.owners, self._places, out=chosen, mode="wrap")
+        refused = self.refused
+        if refused.any():
+            chosen[refused] = -1
         return chosen
 
     @property
@@ -255,5 +258,16 @@ class Batch:
         return PROPERTIES[self.coverage.property].unit
 
     def refusal(self, index: int | tuple[int, ...]) -> Refusal:
-        """Why the temperature at an index was refused."""
+        """Why the temperature at an index was refused.
+
+        Parameters
+        ----------
+        index : int or tuple of int
+            Where in the array.
+
+        Returns
+        -------
+        Refusal
+            With reason, explanation and nearest windows.
+        """
         return refuse(self.coverage, float(self.temperatures[index]))

@@ -7,6 +7,7 @@ coefficients gathered per point; the others by the points they own.
 
 from __future__ import annotations
 
+import threading
 from collections.abc import Sequence
 from typing import Any
 
@@ -32,6 +33,9 @@ _FLAG, _INDEX, _GATHER = 8, 9, 10
 """Working arrays beyond those that kernels use."""
 
 
+_threads = threading.local()
+
+
 class Evaluator:
     """Curves with the intervals they own.
 
@@ -53,6 +57,10 @@ class Evaluator:
         self._stacked = stacked if len(stacked) > 1 else set()
         self._single = [i for i, owner in enumerate(owners) if owner >= 0 and owner not in self._stacked]
         self._columns = self._build_columns()
+        # exp(a - b/(T + c)) is monotone: finite at both ends of its window, it is finite between
+        self._bounded = [
+            curve.stacks and bool(np.isfinite(curve.values(np.array(curve.window))).all()) for curve in curves
+        ]
 
     def _build_columns(self) -> tuple[Array, ...]:
         """The coefficients of the shared kernel for each interval, NaN where it does not answer."""
@@ -78,29 +86,35 @@ class Evaluator:
         few = len(self._edges) <= _FEW_EDGES
         values = np.empty(flat.size)
         intervals: Intervals = np.empty(flat.size, dtype=np.int8 if few else np.int16)
-        scratch = Scratch(min(BLOCK, max(flat.size, 1)))
+        scratch = _thread_scratch()
         with np.errstate(all="ignore"):
-            if _is_sorted(flat):
-                self._evaluate_sorted(flat, values, intervals, scratch)
-                return values, intervals
             for start in range(0, flat.size, BLOCK):
                 part = slice(start, min(start + BLOCK, flat.size))
-                self._locate(flat[part], intervals[part], scratch)
-                self._fill_block(flat[part], intervals[part], values[part], scratch)
+                t = flat[part]
+                if _is_sorted(t, scratch):
+                    self._fill_runs(t, intervals[part], values[part], scratch)
+                else:
+                    self._locate(t, intervals[part], scratch)
+                    self._fill_mixed(t, intervals[part], values[part], scratch)
         return values, intervals
 
-    def _evaluate_sorted(self, flat: Array, values: Array, intervals: Intervals, scratch: Scratch) -> None:
-        bounds = [0, *np.searchsorted(flat, self._edges, side="left").tolist(), flat.size]
+    def _fill_runs(self, t: Array, intervals: Intervals, out: Array, scratch: Scratch) -> None:
+        """A block in rising order: each curve takes one run of points."""
+        bounds = [0, *np.searchsorted(t, self._edges, side="left").tolist(), t.size]
         for index, owner in enumerate(self._owners):
-            first, last = bounds[index], bounds[index + 1]
-            intervals[first:last] = index
-            if owner < 0:
-                values[first:last] = np.nan
+            run = slice(bounds[index], bounds[index + 1])
+            if run.start == run.stop:
                 continue
-            for start in range(first, last, BLOCK):
-                part = slice(start, min(start + BLOCK, last))
-                self._curves[owner].fill(flat[part], values[part], scratch)
-                _refuse_infinite(values[part])
+            intervals[run] = index
+            if owner < 0:
+                out[run] = np.nan
+            else:
+                self._fill_curve(owner, t[run], out[run], scratch)
+
+    def _fill_curve(self, owner: int, t: Array, out: Array, scratch: Scratch) -> None:
+        self._curves[owner].fill(t, out, scratch)
+        if not self._bounded[owner]:
+            _refuse_infinite(out)
 
     def _locate(self, t: Array, intervals: Intervals, scratch: Scratch) -> None:
         """The interval of each point: how many edges lie at or below it."""
@@ -114,7 +128,7 @@ class Evaluator:
             np.greater_equal(t, edge, out=flag)
             np.add(intervals, ones, out=intervals)
 
-    def _fill_block(self, t: Array, intervals: Intervals, out: Array, scratch: Scratch) -> None:
+    def _fill_mixed(self, t: Array, intervals: Intervals, out: Array, scratch: Scratch) -> None:
         if self._stacked:
             where = scratch.take(_INDEX, t).view(np.intp)
             np.copyto(where, intervals)
@@ -131,14 +145,26 @@ class Evaluator:
             if mine.size:
                 at = np.take(t, mine, out=scratch.take(_INDEX, mine), mode="wrap")
                 found = scratch.take(_GATHER, mine)
-                self._curves[self._owners[index]].fill(at, found, scratch)
+                self._fill_curve(self._owners[index], at, found, scratch)
                 out[mine] = found
-        _refuse_infinite(out)
+        if not all(self._bounded[owner] for owner in self._stacked):
+            _refuse_infinite(out)
 
 
-def _is_sorted(flat: Array) -> bool:
-    head = flat[:256]
-    return bool((head[1:] >= head[:-1]).all()) and bool((flat[1:] >= flat[:-1]).all())
+def _thread_scratch() -> Scratch:
+    """The working arrays of this thread, kept from call to call: fresh memory costs more than the arithmetic."""
+    if not hasattr(_threads, "scratch"):
+        _threads.scratch = Scratch(BLOCK)
+    found: Scratch = _threads.scratch
+    return found
+
+
+def _is_sorted(t: Array, scratch: Scratch) -> bool:
+    head = t[:64]
+    if not (head[1:] >= head[:-1]).all():
+        return False
+    flag = scratch.take(_FLAG, t).view(np.bool_)[: t.size - 1]
+    return bool(np.greater_equal(t[1:], t[:-1], out=flag).all())
 
 
 def _refuse_infinite(values: Array) -> None:

@@ -182,6 +182,22 @@ class Library:
     def find_compound(self, text: str) -> str:
         """The key of a compound, by key, name, synonym, CAS number or formula.
 
+        Parameters
+        ----------
+        text : str
+            What a person types; case and runs of blanks do not matter.
+
+        Returns
+        -------
+        str
+            The key.
+
+        Raises
+        ------
+        UnknownKey
+            If nothing or more than one compound is meant; carries the nearest
+            names or the keys.
+
         Examples
         --------
         >>> import registry
@@ -203,7 +219,18 @@ class Library:
             raise UnknownKey("compound", text, nearest=nearest_names(text, [*keys, *view.terms()]))
 
     def dossier(self, compound: str) -> Dossier:
-        """Everything recorded about a compound, by any of its names."""
+        """Everything recorded about a compound.
+
+        Parameters
+        ----------
+        compound : str
+            Any of its names.
+
+        Returns
+        -------
+        Dossier
+            Records of every standing, at the newest position.
+        """
         key = self.find_compound(compound)
         if key not in self._dossiers:
             with self._lock, self._file.reading() as view:
@@ -222,6 +249,16 @@ class Library:
 
     def entry(self, key: str) -> Entry[Any]:
         """The record under a key, of whatever kind; a compound by any name.
+
+        Parameters
+        ----------
+        key : str
+            The key of a record, or a name of a compound.
+
+        Returns
+        -------
+        Entry
+            The newest revision, with its standing.
 
         Raises
         ------
@@ -243,12 +280,34 @@ class Library:
             raise UnknownKey("record", key, nearest=nearest_names(key, [*keys, *view.terms()]))
 
     def referring(self, kind: str, key: str) -> list[Entry[Any]]:
-        """The records that refer to one record, by kind and key."""
+        """The records that refer to one record.
+
+        Parameters
+        ----------
+        kind, key : str
+            The record referred to.
+
+        Returns
+        -------
+        list of Entry
+            By kind and key; every revision that refers to it.
+        """
         with self._lock, self._file.reading() as view:
             return with_standing(view, [row for row in view.linked(kind, key) if row.kind != "review"])
 
     def source_citation(self, key: str) -> str:
-        """The citation of a source, or its key if it is not recorded."""
+        """The citation of a source.
+
+        Parameters
+        ----------
+        key : str
+            The key of the source.
+
+        Returns
+        -------
+        str
+            Its line of text, or the key if no such source is recorded.
+        """
         with self._lock, self._file.reading() as view:
             rows = view.current("source", [key])
         return str(rows[0].content["citation"]) if rows else key
@@ -298,12 +357,17 @@ class Library:
         return counts
 
     def dump(self, path: str | os.PathLike[str]) -> dict[str, int]:
-        """Write everything as a package; gives the number of rows a file.
+        """Write everything as a package.
 
         Parameters
         ----------
         path : path
             A folder that does not exist yet, or a name ending in .zip.
+
+        Returns
+        -------
+        dict of str to int
+            The number of rows of each file.
         """
         from registry.exchange.dumping import dump_items
 

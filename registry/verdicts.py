@@ -134,7 +134,7 @@ def _preference_over(coverage: Coverage, other: Candidate, covering: Sequence[Ca
     """Which covering candidate a steward prefers over this one, and why; empty if none."""
     reasons = coverage.dossier.preference_reasons()
     above = [(c.key, reasons[c.key, other.key]) for c in covering if (c.key, other.key) in reasons]
-    return f"A steward prefers {above[0][0]} over it: {above[0][1]}" if above else ""
+    return f"A steward prefers {above[0][0]} over it: {above[0][1].rstrip('.')}." if above else ""
 
 
 def _standing(candidate: Candidate) -> str:

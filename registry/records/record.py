@@ -34,6 +34,7 @@ class Reference(NamedTuple):
 
 
 def entry(cell: Cell, required: bool = True) -> Any:
+    """A field of a record: what it may hold, and whether it must be filled."""
     return dataclasses.field(default="", metadata={"cell": cell, "required": required})
 
 
