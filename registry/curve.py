@@ -27,8 +27,9 @@ class Curve:
         The arithmetic of its form, in the units the form takes.
     factor : float
         SI units in one unit of the kernel's value.
-    ratio, shift : float
-        The kernel's temperature is ``ratio * T - shift``, T in kelvin.
+    ratio : float
+        The kernel's temperature is ``ratio * T``, T in kelvin; forms that may
+        count from another zero carry their units in their parameters.
     scale : Scale
         The temperature scale it stands on.
     window : tuple of float
@@ -40,7 +41,6 @@ class Curve:
     parameters: tuple[Any, ...]
     factor: float
     ratio: float
-    shift: float
     scale: Scale
     window: tuple[float, float]
 
@@ -81,19 +81,19 @@ class Curve:
         domain = folded.kernel.domain(folded.parameters)
         if folded.absorbed:
             factor, units = 1.0, Units()
-        low, high = ((bound + units.shift) / units.ratio for bound in domain)
+        low, high = (bound / units.ratio for bound in domain)
         printed = correlation.window_kelvin()
         # the domain is open at its lower end: a pole or absolute zero
         window = (max(printed[0], float(np.nextafter(low, np.inf))), min(printed[1], high))
         return cls(
-            folded.kernel, folded.parameters, factor, units.ratio, units.shift,
+            folded.kernel, folded.parameters, factor, units.ratio,
             SCALES[correlation.temperature_scale], window,
         )  # fmt: skip
 
     @property
     def stacks(self) -> bool:
         """True if points of this and other such curves can be evaluated together."""
-        return self.kernel.stacks and not self.scale.shifts and self.factor == self.ratio == 1.0 and not self.shift
+        return self.kernel.stacks and not self.scale.shifts and self.factor == self.ratio == 1.0
 
     def fill(self, kelvin: Array, out: Array, scratch: Scratch) -> None:
         """Write the SI values at temperatures (K, one-dimensional) into `out`."""
@@ -136,6 +136,4 @@ class Curve:
             t = t + self.scale.shift(t)[0]
         if self.ratio != 1.0:
             t = t * self.ratio
-        if self.shift:
-            t = t - self.shift
         return t

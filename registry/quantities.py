@@ -104,7 +104,7 @@ _ROWS = (
 UNITS: dict[str, Unit] = {unit.name: unit for unit in _ROWS}
 _SPELLINGS = {spelling: unit for unit in _ROWS for spelling in (unit.name, *unit.aliases)}
 _GAUGE = re.compile(r"(.+?)\s*(?:\(g\)|\(gauge\)|\s+gauge|\s*g|-g|_g)", re.ASCII)
-_QUANTITY = re.compile(r"\s*([+-]?[0-9.][0-9.eE+-]*?)\s*((?:[^0-9.\s+-].*)?)\s*", re.DOTALL)
+_QUANTITY = re.compile(r"([+-]?[0-9.]+(?:[eE][+-]?[0-9]+)?)\s*((?:[^0-9.\s+-].*)?)", re.DOTALL)
 
 
 def unit_names(dimension: str) -> list[str]:
@@ -259,6 +259,8 @@ def parse_pressure(text: str) -> Fraction:
     Fraction(101325, 1)
     """
     number, unit = _split_quantity(text, "pressure", "101.325kPa")
+    if number <= 0:
+        raise BadQuantity(text, "an absolute pressure is greater than zero.")
     return unit.to_si(number)
 
 

@@ -149,8 +149,8 @@ class Scale:
         >>> round(float(SCALES["IPTS-68"].shift(np.array([373.15]))[0][0]), 4)
         0.0256
         """
-        value = np.zeros_like(kelvin)
-        rate = np.zeros_like(kelvin)
+        kelvin = np.asarray(kelvin, dtype=float)
+        value, rate = np.zeros_like(kelvin), np.zeros_like(kelvin)
         for lower, upper, branch in self.branches:
             inside = (kelvin >= lower) & (kelvin < upper)
             if inside.any():
