@@ -49,7 +49,7 @@ def complain(cell: Cell, text: str, required: bool) -> str:
     Examples
     --------
     >>> complain(NUMBER, "12,5", required=True)
-    'a number with a decimal point, such as 8.07131, is allowed.'
+    'a number with a decimal point, such as 8.07131, below 1e300, is allowed.'
     >>> complain(NUMBER, "12.5", required=True)
     ''
     """
@@ -65,6 +65,9 @@ def complain(cell: Cell, text: str, required: bool) -> str:
         return f"it starts with {text[0]}, which a spreadsheet would run as a formula."
     if unicodedata.normalize("NFC", text) != text:
         return "it is not in Unicode normal form C."
+    unseen = next((c for c in text if unicodedata.category(c) == "Cf"), "")
+    if unseen:
+        return f"it holds a character that is not seen (U+{ord(unseen):04X}); plain text is allowed."
     return "" if cell.accepts(text) else cell.allowed
 
 
@@ -111,17 +114,19 @@ def isbn_digit_holds(text: str) -> bool:
     return False
 
 
-def _pattern(allowed: str, expression: str) -> Cell:
+def _pattern(allowed: str, expression: str, limit: int = 200) -> Cell:
     compiled = re.compile(expression, re.ASCII)
-    return Cell(allowed, lambda text: compiled.fullmatch(text) is not None)
+    return Cell(allowed, lambda text: compiled.fullmatch(text) is not None, limit)
 
 
 KEY = _pattern(
-    "a key of lower-case letters, digits, '-' and '.' is allowed, such as water-sr1-86.", r"[a-z0-9][a-z0-9.-]{0,79}"
+    "a key of lower-case letters, digits, '-' and '.' is allowed, such as water-sr1-86.",
+    r"[a-z0-9][a-z0-9.-]*",
+    limit=80,
 )
 TEXT = Cell("text is allowed.", prose=True)
 LONG = Cell("text is allowed.", limit=4000, prose=True)
-NUMBER = Cell("a number with a decimal point, such as 8.07131, is allowed.", _is_number, limit=60)
+NUMBER = Cell("a number with a decimal point, such as 8.07131, below 1e300, is allowed.", _is_number, limit=60)
 YEAR = _pattern("a year of four digits is allowed.", r"[12]\d{3}")
 DOI = _pattern("a DOI such as 10.1063/1.555926 is allowed.", r"10\.\d{4,9}/\S+")
 URL = _pattern("an http or https address is allowed.", r"https?://[!-~]+")

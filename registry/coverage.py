@@ -23,6 +23,7 @@ from registry.confirmation import gather_values
 from registry.dossier import Dossier
 from registry.evaluation import Evaluator
 from registry.limits import Limits, best_fixed_point, find_limits
+from registry.properties import PROPERTIES
 from registry.ranking import choose_best
 
 __all__ = ["Coverage", "Seam", "Stretch", "build_coverage"]
@@ -99,6 +100,7 @@ class Coverage:
         self.candidates = candidates
         self.stretches = stretches
         self._edges = [stretch.low for stretch in stretches[1:]]
+        self._least = 0.0 if PROPERTIES[prop].positive else -math.inf
 
     @property
     def accepted(self) -> tuple[Candidate, ...]:
@@ -135,6 +137,15 @@ class Coverage:
             return ()
         return tuple(s for s in self.stretches[covered[0] : covered[-1]] if s.candidate is None)
 
+    def value_at(self, kelvin: float) -> tuple[float, Candidate | None]:
+        """The value in SI at one temperature, K, and who gives it; NaN and None where nothing answers."""
+        candidate = self.stretch_at(kelvin).candidate
+        if candidate is not None:
+            value = candidate.curve.value(kelvin)
+            if self._least < value < math.inf:
+                return value, candidate
+        return math.nan, None
+
     def stretch_at(self, kelvin: float) -> Stretch:
         """The stretch that holds a temperature, K."""
         return self.stretches[bisect.bisect_right(self._edges, kelvin)]
@@ -151,7 +162,8 @@ class Coverage:
 
     @cached_property
     def _evaluator(self) -> Evaluator:
-        return Evaluator(self._edges, self.owners.tolist(), [candidate.curve for candidate in self.answering])
+        curves = [candidate.curve for candidate in self.answering]
+        return Evaluator(self._edges, self.owners.tolist(), curves, positive=PROPERTIES[self.property].positive)
 
     def evaluate(self, kelvin: NDArray[np.float64]) -> tuple[NDArray[np.float64], NDArray[np.signedinteger[Any]]]:
         """Values and stretches for an array of temperatures.

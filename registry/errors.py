@@ -115,6 +115,10 @@ class CellProblem:
         return f"{place}: {given}{self.allowed}"
 
 
+SHOWN_PROBLEMS = 100
+"""Bad places that a message lists; the rest are counted."""
+
+
 class InvalidPackage(BadInput):
     """A package that cannot be loaded; every bad place at once."""
 
@@ -123,7 +127,9 @@ class InvalidPackage(BadInput):
         self.problems = tuple(problems)
         count = len(self.problems)
         head = f"{place} cannot be loaded: {count} problem{'s' if count != 1 else ''}; nothing was changed."
-        super().__init__("\n".join([head, *(f"  {problem}" for problem in self.problems)]))
+        shown = [f"  {problem}" for problem in self.problems[:SHOWN_PROBLEMS]]
+        more = [f"  ... and {count - SHOWN_PROBLEMS} more"] if count > SHOWN_PROBLEMS else []
+        super().__init__("\n".join([head, *shown, *more]))
 
 
 class UnknownKey(BadInput, LookupError):

@@ -47,9 +47,14 @@ class Evaluator:
         For each interval the index of its curve, -1 for none.
     curves : sequence of Curve
         The curves.
+    positive : bool
+        True if a value that is not above zero is none.
     """
 
-    def __init__(self, edges: Sequence[float], owners: Sequence[int], curves: Sequence[Curve]) -> None:
+    def __init__(
+        self, edges: Sequence[float], owners: Sequence[int], curves: Sequence[Curve], *, positive: bool = False
+    ) -> None:
+        self._positive = positive
         self._edges = np.array(edges, dtype=float)
         self._owners = tuple(owners)
         self._curves = tuple(curves)
@@ -57,10 +62,13 @@ class Evaluator:
         self._stacked = stacked if len(stacked) > 1 else set()
         self._single = [i for i, owner in enumerate(owners) if owner >= 0 and owner not in self._stacked]
         self._columns = self._build_columns()
-        # exp(a - b/(T + c)) is monotone: finite at both ends of its window, it is finite between
-        self._bounded = [
-            curve.stacks and bool(np.isfinite(curve.values(np.array(curve.window))).all()) for curve in curves
-        ]
+        self._bounded = [curve.stacks and self._is_bounded(curve) for curve in curves]
+
+    def _is_bounded(self, curve: Curve) -> bool:
+        """exp(a - b/(T + c)) is monotone: usable at both ends of its window, it is usable between."""
+        with np.errstate(all="ignore"):
+            ends = curve.values(np.array(curve.window))
+        return bool((np.isfinite(ends) & (ends > 0.0)).all())
 
     def _build_columns(self) -> tuple[Array, ...]:
         """The coefficients of the shared kernel for each interval, NaN where it does not answer."""
@@ -114,7 +122,7 @@ class Evaluator:
     def _fill_curve(self, owner: int, t: Array, out: Array, scratch: Scratch) -> None:
         self._curves[owner].fill(t, out, scratch)
         if not self._bounded[owner]:
-            _refuse_infinite(out)
+            self._refuse_unusable(out)
 
     def _locate(self, t: Array, intervals: Intervals, scratch: Scratch) -> None:
         """The interval of each point: how many edges lie at or below it."""
@@ -148,7 +156,15 @@ class Evaluator:
                 self._fill_curve(self._owners[index], at, found, scratch)
                 out[mine] = found
         if not all(self._bounded[owner] for owner in self._stacked):
-            _refuse_infinite(out)
+            self._refuse_unusable(out)
+
+    def _refuse_unusable(self, values: Array) -> None:
+        """A curve that gives no finite number, or none that can be, does not answer."""
+        usable = np.isfinite(values)
+        if self._positive:
+            usable &= values > 0.0
+        if not usable.all():
+            values[~usable] = np.nan
 
 
 def _thread_scratch() -> Scratch:
@@ -165,9 +181,3 @@ def _is_sorted(t: Array, scratch: Scratch) -> bool:
         return False
     flag = scratch.take(_FLAG, t).view(np.bool_)[: t.size - 1]
     return bool(np.greater_equal(t[1:], t[:-1], out=flag).all())
-
-
-def _refuse_infinite(values: Array) -> None:
-    """A curve that gives no finite number does not answer."""
-    if not np.isfinite(values).all():
-        values[~np.isfinite(values)] = np.nan

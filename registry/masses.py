@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 __all__ = ["formula_mass", "hill_formula"]
 
 
@@ -32,7 +34,7 @@ def formula_mass(formula: str) -> float:
     import molmass
 
     try:
-        return float(molmass.Formula(formula).mass)
+        return float(_parse(formula).mass)
     except molmass.FormulaError as error:
         raise ValueError(f"{str(error).splitlines()[0]}; element symbols and counts are allowed.") from None
 
@@ -45,6 +47,11 @@ def hill_formula(formula: str) -> str:
     >>> hill_formula("C2H5OH")
     'C2H6O'
     """
+    return str(_parse(formula).formula)
+
+
+def _parse(formula: str) -> Any:
+    """The formula as elements alone: no groups such as Me, no peptides."""
     import molmass
 
-    return str(molmass.Formula(formula).formula)
+    return molmass.Formula(formula, parse_groups=False, parse_oligos=False)

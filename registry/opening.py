@@ -6,7 +6,7 @@ import os
 from pathlib import Path
 
 from registry.errors import BadInput
-from registry.library import Library, now_utc
+from registry.library import Library, check_signature, now_utc
 from registry.store.library_file import LibraryFile, locate
 
 __all__ = ["default_place", "open_library", "start_library", "upgrade_library"]
@@ -88,6 +88,7 @@ def start_library(place: str | os.PathLike[str], shelf: str = "published", autho
     """
     if shelf not in SHELVES:
         raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(SHELVES)}.")
+    check_signature(author, "start")
     path = locate(place)
     name = os.urandom(16).hex()
 

@@ -26,6 +26,9 @@ class Property:
     lower, upper : str
         The fixed point that bounds the curve's phase, whatever the printed
         window says; empty where there is none.
+    positive : bool
+        True if a value is above zero by nature: a form that gives another one
+        there does not answer.
     """
 
     name: str
@@ -35,16 +38,17 @@ class Property:
     phase: str
     lower: str = ""
     upper: str = ""
+    positive: bool = False
 
 
 _ROWS = (
     Property(
         "vapor-pressure", "vapour pressure", "pressure", "Pa", "liquid",
-        "triple-point-temperature", "critical-temperature",
+        "triple-point-temperature", "critical-temperature", positive=True,
     ),
     Property(
         "sublimation-pressure", "sublimation pressure", "pressure", "Pa", "solid",
-        "", "triple-point-temperature",
+        "", "triple-point-temperature", positive=True,
     ),
     Property("melting-pressure", "melting pressure", "pressure", "Pa", "solid"),
     Property(
@@ -53,7 +57,7 @@ _ROWS = (
     ),
     Property(
         "saturated-liquid-density", "saturated liquid density", "density", "kg/m3", "liquid",
-        "triple-point-temperature", "critical-temperature",
+        "triple-point-temperature", "critical-temperature", positive=True,
     ),
 )  # fmt: skip
 

@@ -104,7 +104,7 @@ _ROWS = (
 UNITS: dict[str, Unit] = {unit.name: unit for unit in _ROWS}
 _SPELLINGS = {spelling: unit for unit in _ROWS for spelling in (unit.name, *unit.aliases)}
 _GAUGE = re.compile(r"(.+?)\s*(?:\(g\)|\(gauge\)|\s+gauge|\s*g|-g|_g)", re.ASCII)
-_QUANTITY = re.compile(r"([+-]?[0-9.]+(?:[eE][+-]?[0-9]+)?)\s*((?:[^0-9.\s+-].*)?)", re.DOTALL)
+_QUANTITY = re.compile(r"([+-]?[0-9.,_]+(?:[eE][+-]?[0-9]+)?)\s*((?:[^0-9.,_\s+-].*)?)", re.DOTALL)
 
 
 def unit_names(dimension: str) -> list[str]:

@@ -19,6 +19,7 @@ from registry.quantities import find_unit, parse_temperature
 
 __all__ = ["Piece", "parse_uncertainty", "piece_at"]
 
+_ALLOWED = "pieces such as '0.025 % up to 373 K; 0.1 %' are allowed."
 _PIECE = re.compile(r"(not stated|(\S+) (%|\S+))(?: up to (.+))?")
 
 
@@ -79,7 +80,7 @@ def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
     for index, part in enumerate(parts):
         match = _PIECE.fullmatch(part)
         if match is None or (match[4] is None) != (index == len(parts) - 1):
-            raise ValueError("pieces such as '0.025 % up to 373 K; 0.1 %' are allowed.")
+            raise ValueError(_ALLOWED)
         upper = parse_temperature(match[4]) if match[4] else math.inf
         if pieces and upper <= pieces[-1].upper:
             raise ValueError("the pieces of an uncertainty must rise in temperature.")
@@ -90,7 +91,10 @@ def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
 def _read_piece(match: re.Match[str], upper: float, dimension: str) -> Piece:
     if match[1] == "not stated":
         return Piece(upper)
-    amount = parse_number(match[2])
+    try:
+        amount = parse_number(match[2])
+    except ValueError:
+        raise ValueError(_ALLOWED) from None
     if amount <= 0:
         raise ValueError("an uncertainty is greater than zero; leave it empty if none is stated.")
     if match[3] == "%":

@@ -192,7 +192,7 @@ def refuse_property(coverage: Coverage, kelvin: float, known: Sequence[str]) -> 
     """The refusal where nothing is recorded for a property at all."""
     name = coverage.dossier.compound.key
     phase = f" of {coverage.phase}" if coverage.phase else ""
-    have = f"It has {join_names(known)}." if known else "It has no correlation at all."
+    have = f"It has {join_names(known, 'and')}." if known else "It has no correlation at all."
     text = f"{name} has no correlation for {coverage.property}{phase}. {have} `rangebook show {name}` lists them."
     return Refusal(kelvin, "no-correlation", text)
 
@@ -218,6 +218,8 @@ def refuse(coverage: Coverage, kelvin: float) -> Refusal:
         return refuse_property(coverage, kelvin, known)
     nearest = _find_nearest(coverage, kelvin)
     reason, sentence, advice = _find_reason(coverage, kelvin)
+    if reason == "several-phases":
+        nearest = ()
     near = "; ".join(f"{n.correlation} ({_range(*n.window)}) is {n.distance:.6g} K away" for n in nearest)
     parts = [sentence, f"Nearest: {near}." if near else "", advice]
     return Refusal(kelvin, reason, " ".join(part for part in parts if part), nearest)
@@ -241,7 +243,11 @@ def _find_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
         phases = join_names(stretch.phases)
         return "several-phases", f"At {at} several phases of {name} have a {prop}.", f"Name one with --phase: {phases}."
     if stretch.candidate is not None:
-        return "no-value", f"{stretch.candidate.key} covers {at} but gives no finite number there.", ""
+        return (
+            "no-value",
+            (f"{stretch.candidate.key} covers {at} but gives no usable number there."),
+            "Look at its coefficients: `rangebook show` tells them.",
+        )
     unaccepted = [c for c in coverage.candidates if not c.entry.accepted and c.covers(kelvin)]
     if unaccepted:
         listed = "; ".join(_describe_unaccepted(c) for c in unaccepted)
@@ -263,7 +269,7 @@ def _find_phase_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str
         source = f"{limits.upper:.9g} K ({point.record.source})"
         if prop.upper == "critical-temperature":
             text = f"{_kelvin(kelvin)} lies above the critical temperature of {name}, {source}: there is no liquid."
-            return "above-critical", text, "Above it a gas has no vapour pressure."
+            return "above-critical", text, ""
         text = f"{_kelvin(kelvin)} lies above the triple temperature of {name}, {source}: the solid has melted."
         return "above-triple", text, "Ask for the vapour pressure: --property vapor-pressure."
     if kelvin < limits.lower:
@@ -294,5 +300,6 @@ def _find_window_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, st
     if any(gap.low <= kelvin < gap.high for gap in coverage.gaps):
         text = f"{_kelvin(kelvin)} falls into a gap between two windows for {prop} of {name}."
         return "gap", text, advice
-    text = f"{_kelvin(kelvin)} lies outside every window for {prop} of {name}."
+    phase = f", {coverage.phase}" if coverage.phase else ""
+    text = f"{_kelvin(kelvin)} lies outside every window for {prop} of {name}{phase}."
     return "outside-windows", text, advice

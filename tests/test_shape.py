@@ -35,6 +35,7 @@ LAYERS = (
     {"answers"},
     {"store", "exchange"},
     {"recording", "entries"},
+    {"reader"},
     {"library"},
     {"opening"},
     {"cli"},

@@ -13,10 +13,9 @@
 
 from __future__ import annotations
 
-import os
 import re
 import sys
-from typing import Annotated
+from typing import Annotated, NoReturn
 
 import typer
 
@@ -24,7 +23,7 @@ from registry.cli.browsing import coverage, list_records, show
 from registry.cli.keeping import dump, load, start, upgrade
 from registry.cli.looking import REFUSED, lookup
 from registry.cli.screen import complain, print_json
-from registry.errors import LibraryBusy, LibraryUnreadable, RangebookError, Refused
+from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, quote
 
 __all__ = ["main"]
 
@@ -71,13 +70,15 @@ def rangebook(
 
 
 def protect_minus(arguments: list[str]) -> list[str]:
-    """Negative numbers unquoted: -40C is a temperature, not an option.
+    """Negative temperatures of a lookup unquoted: -40C is no option.
 
     Examples
     --------
     >>> protect_minus(["lookup", "ammonia", "-40C", "-u", "bar"])
     ['lookup', 'ammonia', '−40C', '-u', 'bar']
     """
+    if "lookup" not in arguments:
+        return arguments
     return [f"\u2212{word[1:]}" if re.match(r"-[0-9.]", word) else word for word in arguments]
 
 
@@ -85,21 +86,37 @@ def main(arguments: list[str] | None = None) -> None:
     """Run the command line; never returns."""
     given = sys.argv[1:] if arguments is None else arguments
     try:
+        _refuse_surrogates(given)
         app(args=protect_minus(given), prog_name="rangebook")
     except RangebookError as error:
-        if "--traceback" in given:
-            raise
-        code = next(code for kind, code in EXIT_CODES if isinstance(error, kind))
-        if "--json" in given:
-            print_json({"error": {"kind": type(error).__name__, "message": str(error), "exit_code": code}})
-        complain(str(error))
-        sys.exit(code)
-    except BrokenPipeError:
-        # the reader has gone: nothing more to say, and nothing to flush at exit
-        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
-        sys.exit(0)
+        _stop(given, error, next(code for kind, code in EXIT_CODES if isinstance(error, kind)), str(error))
+    except OSError as error:
+        place = f"{error.filename} cannot be used" if error.filename else "Reading or writing failed"
+        _stop(given, error, 2, f"{quote(place, 200)[1:-1]}: {error.strerror}.")
+    except SystemExit as stop:
+        if stop.code == 2 and "--json" in given:
+            print_json(_describe_error("Usage", "The words of the command are off; stderr says which.", 2))
+        raise
     except Exception as error:
-        if "--traceback" in given:
-            raise
-        complain(f"rangebook failed: {type(error).__name__}: {error}. `rangebook --traceback ...` shows where.")
-        sys.exit(FAULT)
+        text = f"rangebook failed: {type(error).__name__}: {error}. `rangebook --traceback ...` shows where."
+        _stop(given, error, FAULT, text)
+
+
+def _refuse_surrogates(arguments: list[str]) -> None:
+    for word in arguments:
+        if not word.isprintable() and any("\ud800" <= c <= "\udfff" for c in word):
+            raise BadInput(f"{quote(word)} is no text in UTF-8. Type it again, or set the terminal to UTF-8.")
+
+
+def _describe_error(kind: str, message: str, code: int) -> dict[str, dict[str, object]]:
+    return {"error": {"kind": kind, "message": message, "exit_code": code}}
+
+
+def _stop(given: list[str], error: Exception, code: int, message: str) -> NoReturn:
+    """Say what went wrong and leave with its code."""
+    if "--traceback" in given:
+        raise error
+    if "--json" in given:
+        print_json(_describe_error(type(error).__name__, message, code))
+    complain(message)
+    sys.exit(code)

@@ -19,7 +19,7 @@ from registry.cli.options import (
 
 def list_records(
     search: Annotated[str, typer.Argument(metavar="[TEXT]", help="Only compounds with this in a name.")] = "",
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """List the compounds and what is recorded for each.
@@ -64,7 +64,7 @@ def list_records(
 
 def show(
     key: Annotated[str, typer.Argument(help="Key of a compound, source, correlation, dataset or fixed point.")],
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Show everything recorded under a key, as printed in its source.
@@ -93,7 +93,7 @@ def coverage(
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
     metastable: MetastableOption = False,
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Map temperature to the correlation that answers there, with gaps and seams.

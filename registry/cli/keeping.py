@@ -15,7 +15,7 @@ def start(
         str, typer.Option("--shelf", metavar="published|scenario|none", help="What it begins with.")
     ] = "published",
     author: AuthorOption = "",
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Start a new library: with the published shelf, the invented scenario, or empty.
@@ -26,7 +26,7 @@ def start(
     from registry.errors import BadInput
     from registry.opening import default_place, start_library
 
-    place = library or default_place()
+    place = default_place() if library is None else library
     try:
         with start_library(place, shelf, name_author(author)) as book:
             compounds, position = len(book.compounds()), book.position
@@ -43,7 +43,7 @@ def load(
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Check everything, record nothing.")] = False,
     note: Annotated[str, typer.Option("--note", help="Why it is loaded.", show_default=False)] = "",
     author: AuthorOption = "",
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Load a package in one change: all of it or nothing.
@@ -68,7 +68,7 @@ def load(
 
 def dump(
     package: Annotated[Path, typer.Argument(help="A new folder, or a new name ending in .zip.")],
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Write the whole library as an open Tabular Data Package.
@@ -79,13 +79,16 @@ def dump(
 
     with open_chosen(library) as book:
         rows = book.dump(package)
+    waiting = rows.pop("waiting", 0)
     if as_json:
-        print_json({"package": str(package), "rows": rows})
-    else:
-        say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
+        print_json({"package": str(package), "rows": rows, "waiting": waiting})
+        return
+    say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
+    if waiting:
+        say(f"{waiting} drafts that wait over an accepted revision stayed behind.")
 
 
-def upgrade(library: LibraryOption = "", as_json: JsonOption = False) -> None:
+def upgrade(library: LibraryOption = None, as_json: JsonOption = False) -> None:
     """Bring a library of an older program up to date, after a backup beside it.
 
     Example: rangebook upgrade --library team.db
@@ -93,7 +96,7 @@ def upgrade(library: LibraryOption = "", as_json: JsonOption = False) -> None:
     from registry.cli.screen import print_json, say
     from registry.opening import default_place, upgrade_library
 
-    place = library or default_place()
+    place = default_place() if library is None else library
     backup = upgrade_library(place)
     if as_json:
         print_json({"library": str(place), "upgraded": backup is not None, "backup": str(backup) if backup else None})

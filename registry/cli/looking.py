@@ -38,7 +38,7 @@ def lookup(
     ] = "",
     metastable: MetastableOption = False,
     why: Annotated[bool, typer.Option("--why", help="Every candidate with its verdict.")] = False,
-    library: LibraryOption = "",
+    library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Look up a value at one or more temperatures.
@@ -83,14 +83,22 @@ def _answer(book: Any, coverage: Any, asked: Asked, metastable: bool) -> Answer 
 def _choose_unit(unit: str, atmosphere: str, prop: str) -> Any:
     """The unit asked for, or None for the one that suits each value."""
     from registry.answers import find_target_unit
-    from registry.errors import UnknownKey
     from registry.properties import PROPERTIES
-    from registry.quantities import parse_pressure
 
     if prop not in PROPERTIES:
-        raise UnknownKey("property", prop, nearest=list(PROPERTIES))
-    local = float(parse_pressure(atmosphere)) if atmosphere else None
+        return None  # the library says what there is
+    local = float(_read_atmosphere(atmosphere)) if atmosphere else None
     return find_target_unit(unit, PROPERTIES[prop].dimension, local) if unit else None
+
+
+def _read_atmosphere(text: str) -> Any:
+    from registry.errors import BadQuantity, GaugePressure
+    from registry.quantities import parse_pressure
+
+    try:
+        return parse_pressure(text)
+    except GaugePressure:
+        raise BadQuantity(text, "the local atmosphere is an absolute pressure, such as 101.325kPa.") from None
 
 
 def _describe(compound: str, prop: str, found: list[tuple[Asked, Answer | Refusal]], to: Any) -> dict[str, Any]:

@@ -11,7 +11,7 @@ if TYPE_CHECKING:
     from registry.library import Library
 
 LibraryOption = Annotated[
-    str,
+    str | None,
     typer.Option(
         "--library",
         metavar="PATH-or-URL",
@@ -38,11 +38,11 @@ AuthorOption = Annotated[
 ]
 
 
-def open_chosen(place: str) -> Library:
+def open_chosen(place: str | None) -> Library:
     """The library that the options name."""
     from registry.opening import open_library
 
-    return open_library(place or None)
+    return open_library(place)
 
 
 def name_author(given: str) -> str:

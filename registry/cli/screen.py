@@ -39,9 +39,13 @@ def emphasize(text: str, code: str = "1") -> str:
 def say(text: str = "") -> None:
     """A line of a result."""
     try:
-        print(text)
+        print(text, flush=True)
     except UnicodeEncodeError:  # a terminal that knows only ASCII
         print(text.encode("ascii", "replace").decode())
+    except BrokenPipeError:
+        # the reader has gone: nothing more to say, and nothing to flush at exit
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
+        raise SystemExit(0) from None
 
 
 def complain(text: str) -> None:
@@ -52,7 +56,7 @@ def complain(text: str) -> None:
 
 def print_json(content: Any) -> None:
     """One JSON object; numbers that JSON cannot hold become null."""
-    print(json.dumps(_finite(content), ensure_ascii=False, indent=2, allow_nan=False))
+    say(json.dumps(_finite(content), ensure_ascii=False, indent=2, allow_nan=False))
 
 
 def _finite(content: Any) -> Any:

@@ -26,7 +26,8 @@ def read_temperatures(words: Sequence[str]) -> list[Asked]:
         if word == "-":
             asked += _read_stdin()
         else:
-            asked.append(Asked(word.replace("\u2212", "-"), parse_temperature(word)))
+            plain = word.replace("\u2212", "-")
+            asked.append(Asked(plain, parse_temperature(plain)))
     if not asked:
         raise BadInput("No temperature was given. Give one or more, such as 298.15K, 25C or 77F, or - for stdin.")
     return asked
@@ -51,8 +52,10 @@ def _is_unit(word: str) -> bool:
 
 
 def _read_stdin() -> Iterator[Asked]:
+    if sys.stdin is None:
+        return
     try:
-        lines = sys.stdin.read().splitlines()
+        lines = sys.stdin.read().removeprefix("\ufeff").splitlines()
     except UnicodeDecodeError as error:
         raise BadInput(f"stdin is no UTF-8 text ({error.reason}).") from None
     for number, line in enumerate(lines, 1):

@@ -7,17 +7,19 @@ from dataclasses import dataclass
 from pathlib import Path
 
 from registry.cells import complain
-from registry.errors import CellProblem, InvalidPackage, InvalidRecord
+from registry.errors import CellProblem, InvalidPackage, InvalidRecord, Problem
 from registry.exchange.layout import FILES, File
 from registry.exchange.package import read_package
 from registry.exchange.rows import Row, parse_rows
-from registry.properties import PROPERTIES
+from registry.numerals import parse_number
+from registry.properties import PROPERTIES, Property
 from registry.quantities import UNITS
 from registry.records import Correlation, Dataset, Point, Preference, PrintedValue, Record
 
 __all__ = ["Item", "find_cycle", "read_items"]
 
 Known = Callable[[str, str], Record | None]
+Points = dict[str, list[tuple[int, Point | None]]]
 
 
 @dataclass(frozen=True)
@@ -80,9 +82,13 @@ def _build_items(rows: Mapping[str, list[Row]], problems: list[CellProblem]) -> 
             item = _build_item(file, row, points, problems)
             if item is not None:
                 yield item
+    if any(p.file == "datasets.csv" and p.line <= 1 for p in problems):
+        return  # a file that could not be read has no rows to belong to
+    known = {row.cells.get("key") for row in rows.get("datasets.csv", [])}
     problems += [
         CellProblem("points.csv", line, "dataset", key, "there is no such dataset in datasets.csv.")
         for key, entries in points.items()
+        if key not in known
         for line, _ in entries
     ]
 
@@ -96,8 +102,9 @@ def _check_key(file: File, row: Row, seen: dict[tuple[str, ...], int]) -> CellPr
     return None
 
 
-def _group_points(rows: list[Row], problems: list[CellProblem]) -> dict[str, list[tuple[int, Point]]]:
-    grouped: dict[str, list[tuple[int, Point]]] = {}
+def _group_points(rows: list[Row], problems: list[CellProblem]) -> Points:
+    """The points of each dataset with their lines; None for a point with a bad cell."""
+    grouped: Points = {}
     columns = FILES["points.csv"].columns
     for row in rows:
         bad = [
@@ -106,15 +113,13 @@ def _group_points(rows: list[Row], problems: list[CellProblem]) -> dict[str, lis
             if (why := complain(column.cell, text := row.cells.get(column.name, ""), column.required))
         ]
         problems += bad
-        if not bad:
-            cells = dict(row.cells)
-            grouped.setdefault(cells.pop("dataset"), []).append((row.line, Point(**cells)))
+        cells = dict(row.cells)
+        dataset = cells.pop("dataset")
+        grouped.setdefault(dataset, []).append((row.line, None if bad else Point(**cells)))
     return grouped
 
 
-def _build_item(
-    file: File, row: Row, points: dict[str, list[tuple[int, Point]]], problems: list[CellProblem]
-) -> Item | None:
+def _build_item(file: File, row: Row, points: Points, problems: list[CellProblem]) -> Item | None:
     before = len(problems)
     fields: dict[str, object] = dict(row.cells)
     standing, note = str(fields.pop("standing", "")), str(fields.pop("standing_note", ""))
@@ -124,17 +129,30 @@ def _build_item(
             problems.append(CellProblem(file.name, row.line, column.name, text, why))
     if file.record is Correlation:
         fields["coefficients"] = _parse_coefficients(file, row, problems)
+    lines: list[int] = []
     if file.record is Dataset:
-        fields["points"] = tuple(point for _, point in points.pop(row.cells["key"], []))
+        of_dataset = points.get(row.cells["key"], [])
+        if any(point is None for _, point in of_dataset):
+            return None
+        lines = [line for line, _ in of_dataset]
+        fields["points"] = tuple(point for _, point in of_dataset)
     if len(problems) > before and file.record is Correlation and not fields["coefficients"]:
         return None
     try:
         record = file.record(**fields)  # type: ignore[arg-type]
     except InvalidRecord as error:
-        problems += [CellProblem(file.name, row.line, p.field, p.given, p.allowed) for p in error.problems]
+        problems += [_place_problem(file, row, lines, problem) for problem in error.problems]
         return None
     assert isinstance(record, Record)
     return Item(record, standing, note, file.name, row.line) if len(problems) == before else None
+
+
+def _place_problem(file: File, row: Row, lines: list[int], problem: Problem) -> CellProblem:
+    """Where a problem of a record stands: in its own row, or in that of one of its points."""
+    if problem.field.startswith("points."):
+        _, number, column = problem.field.split(".")
+        return CellProblem("points.csv", lines[int(number)], column, problem.given, problem.allowed)
+    return CellProblem(file.name, row.line, problem.field, problem.given, problem.allowed)
 
 
 def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> dict[str, str]:
@@ -142,8 +160,8 @@ def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> di
     text = row.cells["coefficients"]
     found: dict[str, str] = {}
     for part in text.split(";"):
-        name, equals, value = part.strip().partition("=")
-        if not equals or not name or not value or name in found:
+        name, equals, value = (word.strip() for word in part.partition("="))
+        if not equals or not name or not value or name in found or "," in value:
             why = "coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed, each once."
             problems.append(CellProblem(file.name, row.line, "coefficients", text, why))
             return {}
@@ -159,7 +177,7 @@ def _check_references(
             if (kind, key) not in by_key and kind not in unread and known(kind, key) is None:
                 why = f"there is no {kind} with this key, neither in the package nor in the library."
                 yield CellProblem(item.file, item.line, role, key, why)
-    yield from _check_printed_units(items, by_key, known)
+    yield from _check_kinship(items, by_key, known)
     cycle = find_cycle(
         (i.record.correlation, i.record.over)
         for i in items
@@ -170,19 +188,38 @@ def _check_references(
         yield CellProblem("preferences.csv", 0, "", "", why)
 
 
-def _check_printed_units(
-    items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known
-) -> Iterator[CellProblem]:
+def _check_kinship(items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known) -> Iterator[CellProblem]:
+    """What must fit the correlations that a record names: units, signs, one compound and property."""
+
+    def find(key: str) -> Correlation | None:
+        item = by_key.get(("correlation", key))
+        record = item.record if item else known("correlation", key)
+        return record if isinstance(record, Correlation) else None
+
     for item in items:
-        if isinstance(item.record, PrintedValue):
-            key = item.record.correlation
-            owner = by_key.get(("correlation", key))
-            of = owner.record if owner else known("correlation", key)
-            if isinstance(of, Correlation):
-                dimension = PROPERTIES[of.property].dimension
-                if UNITS[item.record.value_unit].dimension != dimension:
-                    why = f"{of.property} is in a {dimension} unit."
-                    yield CellProblem(item.file, item.line, "value_unit", item.record.value_unit, why)
+        record = item.record
+        if isinstance(record, PrintedValue) and (of := find(record.correlation)):
+            yield from _check_printed_value(item, record, PROPERTIES[of.property])
+        elif isinstance(record, Preference) and (one := find(record.correlation)) and (two := find(record.over)):
+            yield from _check_preference(item, one, two)
+
+
+def _check_preference(item: Item, one: Correlation, two: Correlation) -> Iterator[CellProblem]:
+    if (one.compound, one.property, one.phase) == (two.compound, two.property, two.phase):
+        return
+    why = (
+        f"it is for {two.property} of {two.compound}, {one.key} for {one.property} of {one.compound}; "
+        "a preference is between correlations of one compound, property and phase."
+    )
+    yield CellProblem(item.file, item.line, "over", two.key, why)
+
+
+def _check_printed_value(item: Item, record: PrintedValue, prop: Property) -> Iterator[CellProblem]:
+    if UNITS[record.value_unit].dimension != prop.dimension:
+        why = f"{prop.name} is in a {prop.dimension} unit."
+        yield CellProblem(item.file, item.line, "value_unit", record.value_unit, why)
+    elif prop.positive and parse_number(record.value) <= 0:
+        yield CellProblem(item.file, item.line, "value", record.value, f"a {prop.name} is above zero.")
 
 
 def find_cycle(pairs: Iterator[tuple[str, str]]) -> list[str]:

@@ -7,10 +7,12 @@ unpacked.
 from __future__ import annotations
 
 import json
+import lzma
 import os
 import shutil
 import tempfile
 import zipfile
+import zlib
 from collections.abc import Mapping
 from pathlib import Path, PurePosixPath
 from typing import Any
@@ -47,6 +49,8 @@ def read_package(path: Path) -> dict[str, bytes]:
         If it is no package, names a file outside itself, or unpacks to more
         than the limits.
     """
+    if path == Path():
+        raise BadInput(f"The name of the package is empty. Give a folder or a .zip with {DESCRIPTOR}.")
     if not path.exists():
         raise BadInput(f"There is nothing at {path}. Give a folder or a .zip with {DESCRIPTOR}.")
     try:
@@ -71,7 +75,10 @@ def _resource_paths(package: Path, raw: bytes) -> list[str]:
         why = "it must be JSON in UTF-8 with a list of resources that have a path."
         raise _fault(package, DESCRIPTOR, why) from None
     problems = [problem for entry in resources if (problem := _path_problem(entry))]
-    problems += [f"resource {quote(name)} is named twice." for name in {*resources} if resources.count(name) > 1]
+    if not problems:
+        problems += [f"resource {quote(n)} is named twice." for n in dict.fromkeys(resources) if resources.count(n) > 1]
+    if not resources:
+        problems.append(f"it names no file; the files are {', '.join(FILES)}.")
     if problems:
         raise InvalidPackage(str(package), [CellProblem(DESCRIPTOR, 0, "", "", why) for why in problems])
     return [name for name in FILES if name in resources]
@@ -80,6 +87,8 @@ def _resource_paths(package: Path, raw: bytes) -> list[str]:
 def _path_problem(entry: Any) -> str:
     if not isinstance(entry, str):
         return f"a resource path must be one text, not {quote(entry)}."
+    if not entry:
+        return "a resource path is empty."
     parts = PurePosixPath(entry.replace("\\", "/")).parts
     if not parts or ".." in parts or entry.startswith(("/", "~")) or ":" in entry:
         return f"resource {quote(entry)} points outside the package."
@@ -117,7 +126,12 @@ class _Zip:
     def __init__(self, path: Path) -> None:
         self._path = path
         self._zip = zipfile.ZipFile(path)
-        self._entries = {info.filename: info for info in self._zip.infolist()}
+        infos = self._zip.infolist()
+        self._entries = {info.filename: info for info in infos}
+        twice = [info.filename for info in infos if info is not self._entries[info.filename]]
+        if twice:
+            self._zip.close()
+            raise _fault(path, path.name, f"entry {quote(twice[0])} is there twice.")
         outside = [n for n in self._entries if ".." in PurePosixPath(n).parts or n.startswith("/") or "\\" in n]
         if outside:
             self._zip.close()
@@ -141,9 +155,12 @@ class _Zip:
             raise _fault(self._path, name, f"it unpacks to more than {HIGHEST_RATIO} times its size.")
         if info.flag_bits & 1:
             raise _fault(self._path, name, "it is encrypted.")
-        with self._zip.open(info) as stream:
-            # the header may lie about the size: read one byte more than allowed
-            data = stream.read(LARGEST_FILE + 1)
+        try:
+            with self._zip.open(info) as stream:
+                # the header may lie about the size: read one byte more than allowed
+                data = stream.read(LARGEST_FILE + 1)
+        except (zipfile.BadZipFile, zlib.error, lzma.LZMAError, OSError, NotImplementedError, EOFError) as error:
+            raise _fault(self._path, name, f"it cannot be unpacked ({error}); make the zip again.") from None
         if len(data) > LARGEST_FILE:
             raise _fault(self._path, name, f"it unpacks to more than {LARGEST_FILE >> 20} MiB.")
         return data

@@ -68,12 +68,15 @@ def _read(file: File, text: str, problems: list[CellProblem]) -> Iterator[Row]:
             elif not fields:
                 continue
             elif len(fields) != len(header):
-                why = f"it has {len(fields)} cells, the header has {len(header)}."
+                cells = "1 cell" if len(fields) == 1 else f"{len(fields)} cells"
+                why = f"it has {cells}, the header has {len(header)}."
                 problems.append(CellProblem(file.name, start, "", "", why))
             else:
                 yield Row(start, dict(zip(header, fields, strict=True)))
     except csv.Error as error:
-        problems.append(CellProblem(file.name, line, "", "", f"it is no well-formed CSV: {error}."))
+        large = "field larger" in str(error)
+        why = f"a cell is longer than {csv.field_size_limit()} characters." if large else f"it is no CSV: {error}."
+        problems.append(CellProblem(file.name, line, "", "", why))
     if header is None:
         problems.append(CellProblem(file.name, 1, "", "", "it is empty; the first line names the columns."))
 
@@ -81,6 +84,13 @@ def _read(file: File, text: str, problems: list[CellProblem]) -> Iterator[Row]:
 def _header_holds(file: File, header: Sequence[str], problems: list[CellProblem]) -> bool:
     names = [column.name for column in file.columns]
     before = len(problems)
+    if len(header) == 1 and (mark := next((m for m in ";\t|" if m in header[0]), "")):
+        why = f"the cells are parted by {mark!r}; save the file with commas."
+        problems.append(CellProblem(file.name, 1, "", header[0], why))
+        return False
+    if "" in header:
+        problems.append(CellProblem(file.name, 1, "", "", f"column {header.index('') + 1} has no name."))
+        return False
     for column in file.columns:
         if column.name not in header and not column.optional:
             problems.append(CellProblem(file.name, 1, column.name, "", "the column is missing."))

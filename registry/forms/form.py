@@ -116,7 +116,7 @@ class Coefficients:
     series: tuple[str, ...] = ()
 
     def __str__(self) -> str:
-        parts = [*self.required, *(f"[{name}]" for name in self.optional), *(f"{s}1, {s}2, ..." for s in self.series)]
+        parts = [*self.required, *(f"[{name}]" for name in self.optional), *(f"{s}1, {s}2 ..." for s in self.series)]
         return ", ".join(parts)
 
     def complaint(self, given: Mapping[str, str]) -> str:
@@ -137,6 +137,9 @@ class Coefficients:
         known = {*self.required, *self.optional}
         known |= {f"{stem}{i}" for stem, length in lengths.items() for i in range(1, length + 1)}
         extra = [name for name in given if name not in known]
+        stems = [m[1] for name in extra if (m := _NUMBERED.fullmatch(name))]
+        if extra and len(stems) == len(extra) and set(stems) <= set(self.series):
+            return f"{', '.join(extra)} comes after a gap; the form takes {self}, without a gap."
         if extra:
             return f"{', '.join(extra)} is no coefficient of the form, which takes {self}."
         for name, text in given.items():

@@ -22,6 +22,7 @@ from registry.records.record import (
     Record,
     entry,
     phase_problems,
+    temperature_problems,
     uncertainty_problems,
     value_unit_problems,
 )
@@ -84,6 +85,9 @@ class PrintedValue(Record):
     obtained: str = entry(OBTAINED_WORD)
     note: str = entry(cells.LONG, required=False)
 
+    def _problems(self) -> Iterator[Problem]:
+        yield from temperature_problems("temperature", self.temperature, self.temperature_unit)
+
 
 @dataclass(frozen=True)
 class Point:
@@ -122,7 +126,20 @@ class Dataset(Record):
         yield from value_unit_problems(self.value_unit, dimension)
         yield from uncertainty_problems(self.uncertainty, dimension)
         if not self.points:
-            yield Problem("points", "", "a dataset has at least one point.")
+            yield Problem("key", self.key, "points.csv has no point of it; a dataset has at least one.")
+        for number, point in enumerate(self.points):
+            yield from self._point_problems(number, point)
+
+    def _point_problems(self, number: int, point: Point) -> Iterator[Problem]:
+        """Problems of one point; the field says which."""
+        place = f"points.{number}."
+        yield from temperature_problems(f"{place}temperature", point.temperature, self.temperature_unit)
+        if PROPERTIES[self.property].positive and parse_number(point.value) <= 0:
+            yield Problem(f"{place}value", point.value, f"a {self.property} is above zero.")
+        for name in ("temperature_uncertainty", "value_uncertainty"):
+            text = getattr(point, name)
+            if text and parse_number(text) <= 0:
+                yield Problem(place + name, text, "an uncertainty is above zero; leave it empty if none is stated.")
 
     def content(self) -> dict[str, Any]:
         rows = [{f.name: v for f in dataclasses.fields(p) if (v := getattr(p, f.name))} for p in self.points]

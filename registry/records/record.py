@@ -8,6 +8,7 @@ from typing import Any, ClassVar, NamedTuple, Self
 
 from registry.cells import Cell, choice, complain
 from registry.errors import InvalidRecord, Problem
+from registry.numerals import parse_number
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.scales import SCALES
@@ -18,7 +19,9 @@ EVIDENCE = ("standard", "evaluated", "measured", "compiled", "estimated")
 STANDINGS = ("draft", "accepted", "declined", "withdrawn")
 OBTAINED = ("seen", "memory")
 
-UNIT = choice(*UNITS)
+UNIT = Cell(
+    "a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute.", UNITS.__contains__, values=tuple(UNITS)
+)
 TEMPERATURE_UNIT = choice(*(unit.name for unit in UNITS.values() if unit.dimension == "temperature"))
 SCALE = choice(*SCALES)
 EVIDENCE_WORD = choice(*EVIDENCE)
@@ -99,6 +102,12 @@ def value_unit_problems(name: str, dimension: str) -> Iterator[Problem]:
     if UNITS[name].dimension != dimension:
         names = ", ".join(unit.name for unit in UNITS.values() if unit.dimension == dimension)
         yield Problem("value_unit", name, f"one of {names} is allowed.")
+
+
+def temperature_problems(field: str, text: str, unit: str) -> Iterator[Problem]:
+    """A temperature lies above absolute zero."""
+    if UNITS[unit].to_si(parse_number(text)) <= 0:
+        yield Problem(field, text, "a temperature lies above absolute zero, 0 K.")
 
 
 def uncertainty_problems(text: str, dimension: str) -> Iterator[Problem]:

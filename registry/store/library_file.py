@@ -11,7 +11,7 @@ from pathlib import Path
 from sqlalchemy import Connection, Engine
 from sqlalchemy.exc import DatabaseError, OperationalError
 
-from registry.errors import BadInput, LibraryBusy, NotALibrary
+from registry.errors import BadInput, LibraryBusy, NotALibrary, quote
 from registry.store import reading
 from registry.store.engine import open_engine
 from registry.store.history import Change, Draft, append_change
@@ -34,6 +34,8 @@ def locate(place: str | os.PathLike[str]) -> Path:
     text = os.fspath(place)
     if text.startswith("sqlite:///"):
         return Path(text.removeprefix("sqlite:///"))
+    if text.startswith("sqlite://"):
+        raise BadInput(f"{quote(text)} is no place of a library: a sqlite URL has three slashes, sqlite:///team.db.")
     if "://" in text:
         raise BadInput(f"{text.split('://')[0]} libraries are not supported yet. Give a path or a sqlite:/// URL.")
     if not text or "\x00" in text:
@@ -51,6 +53,10 @@ class View:
     def kind(self, kind: str) -> list[Row]:
         """Every record of a kind, by key."""
         return reading.read_kind(self._connection, kind, self.position)
+
+    def revisions(self, kind: str) -> list[Row]:
+        """Every revision of every record of a kind."""
+        return reading.read_revisions(self._connection, kind, self.position)
 
     def current(self, kind: str, keys: Iterable[str]) -> list[Row]:
         """The records of a kind under some keys."""
@@ -135,6 +141,8 @@ class LibraryFile:
         """Database errors as what they mean to a user."""
         try:
             yield
+        except reading.DamagedRow as error:
+            raise NotALibrary(str(self.path), str(error)) from error
         except DatabaseError as error:
             text = str(error.orig)
             if "locked" in text or "busy" in text:

@@ -20,8 +20,13 @@ __all__ = [
     "read_linked",
     "read_name",
     "read_position",
+    "read_revisions",
     "read_terms",
 ]  # fmt: skip
+
+
+class DamagedRow(Exception):
+    """A row whose content is not what was recorded."""
 
 
 class Row(NamedTuple):
@@ -54,6 +59,11 @@ _POSITION_NOW = select(func.coalesce(func.max(change.c.number), 0))
 _NAME = select(library.c.name)
 _CHANGES = select(change).order_by(change.c.number)
 _BY_KIND = select(*_COLUMNS).where(record.c.kind == bindparam("kind"), _NEWEST).order_by(record.c.key)
+_REVISIONS = (
+    select(*_COLUMNS)
+    .where(record.c.kind == bindparam("kind"), record.c.change <= _POSITION)
+    .order_by(record.c.key, record.c.revision)
+)
 _BY_KEYS = (
     select(*_COLUMNS)
     .where(record.c.kind == bindparam("kind"), record.c.key.in_(bindparam("keys", expanding=True)), _NEWEST)
@@ -77,7 +87,19 @@ _TERMS = select(term.c.text).join(record, term.c.record == record.c.id).where(_N
 
 def _rows(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
     found = connection.execute(statement, values)
-    return [Row(kind, key, revision, number, json.loads(content)) for kind, key, revision, number, content in found]
+    return [
+        Row(kind, key, revision, number, _parse(kind, key, content)) for kind, key, revision, number, content in found
+    ]
+
+
+def _parse(kind: str, key: str, content: str) -> dict[str, Any]:
+    try:
+        parsed = json.loads(content)
+    except ValueError:
+        parsed = None
+    if not isinstance(parsed, dict):
+        raise DamagedRow(f"the {kind} {key!r} is damaged")
+    return parsed
 
 
 def read_position(connection: Connection) -> int:
@@ -99,6 +121,11 @@ def read_changes(connection: Connection) -> list[Change]:
 def read_kind(connection: Connection, kind: str, position: int) -> list[Row]:
     """Every record of a kind, by key."""
     return _rows(connection, _BY_KIND, kind=kind, position=position)
+
+
+def read_revisions(connection: Connection, kind: str, position: int) -> list[Row]:
+    """Every revision of every record of a kind, by key."""
+    return _rows(connection, _REVISIONS, kind=kind, position=position)
 
 
 def read_current(connection: Connection, kind: str, keys: Iterable[str], position: int) -> list[Row]:

@@ -7,6 +7,7 @@ migration code.
 
 from __future__ import annotations
 
+import errno
 import os
 import sqlite3
 from collections.abc import Callable
@@ -114,6 +115,8 @@ def create_file(path: Path, name: str, now: str, fill: Callable[[Connection], ob
     """
     if path.exists():
         raise FileExistsError(str(path))
+    if path.parent.exists() and not path.parent.is_dir():
+        raise NotADirectoryError(errno.ENOTDIR, "Not a directory", str(path.parent))
     path.parent.mkdir(parents=True, exist_ok=True)
     fresh = path.with_name(f".{path.name}.{name[:8]}.new")
     try:
