@@ -21,8 +21,8 @@ from sqlalchemy import insert
 from registry.canonical import encode
 from registry.errors import BadInput, NewerLibrary, NotALibrary, OlderLibrary
 from registry.library import Library
-from registry.opening import open_library, start_library
 from registry.merkle import hash_leaf, new_nodes, root_from_nodes, root_of
+from registry.opening import open_library, start_library
 from registry.store import schema
 from registry.store.engine import open_engine, wal_is_safe
 from registry.store.history import Draft, append_change
