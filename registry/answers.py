@@ -16,7 +16,8 @@ from registry.coverage import Coverage, Seam
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS, Unit, convert, find_unit, gauge_unit
 from registry.records import Correlation
-from registry.verdicts import Nearest, Refusal, Verdict, explain_choice, judge_candidates, refuse
+from registry.refusals import Nearest, Refusal
+from registry.verdicts import Verdict, explain_choice, judge_candidates, refuse
 
 __all__ = ["Answer", "Batch", "Nearest", "Refusal", "Verdict"]
 

@@ -26,10 +26,10 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
+from registry.refusals import Refusal
+
 if TYPE_CHECKING:
     from collections.abc import Sequence
-
-    from registry.answers import Refusal
 
 
 def quote(text: object, limit: int = 60) -> str:

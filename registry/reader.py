@@ -16,9 +16,10 @@ from registry.entries import entry_of, read_dossier, with_standing
 from registry.errors import BadInput, NotALibrary, Refused, UnknownKey, quote
 from registry.properties import PROPERTIES
 from registry.records import KINDS, Compound, Correlation
+from registry.refusals import Refusal
 from registry.searching import nearest_names
 from registry.store.library_file import LibraryFile
-from registry.verdicts import Refusal, refuse
+from registry.verdicts import refuse
 
 __all__ = ["Reader"]
 

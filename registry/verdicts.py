@@ -11,8 +11,9 @@ from registry.coverage import Coverage
 from registry.display import join_names
 from registry.properties import PROPERTIES
 from registry.ranking import explain_order
+from registry.refusals import Nearest, Refusal
 
-__all__ = ["Nearest", "Refusal", "Verdict", "explain_choice", "judge_candidates", "refuse", "refuse_property"]
+__all__ = ["Verdict", "explain_choice", "judge_candidates", "refuse"]
 
 
 @dataclass(frozen=True)
@@ -35,49 +36,6 @@ class Verdict:
     revision: int
     verdict: str
     because: str
-
-
-@dataclass(frozen=True)
-class Nearest:
-    """A window near a refused temperature.
-
-    Attributes
-    ----------
-    correlation : str
-        The key of the correlation.
-    window : tuple of float
-        Where it may answer, K.
-    distance : float
-        How far away that is, K.
-    """
-
-    correlation: str
-    window: tuple[float, float]
-    distance: float
-
-
-@dataclass(frozen=True)
-class Refusal:
-    """Why no correlation may answer at a temperature.
-
-    Attributes
-    ----------
-    temperature : float
-        As asked, K.
-    reason : str
-        ``no-correlation``, ``several-phases``, ``outside-windows``, ``gap``,
-        ``above-critical``, ``below-triple``, ``above-triple``,
-        ``not-accepted`` or ``no-value``.
-    explanation : str
-        The reason, and what can be done.
-    nearest : tuple of Nearest
-        The nearest windows, nearest first.
-    """
-
-    temperature: float
-    reason: str
-    explanation: str
-    nearest: tuple[Nearest, ...] = ()
 
 
 def _kelvin(value: float) -> str:
@@ -188,7 +146,7 @@ def _why_limited(coverage: Coverage, kelvin: float) -> str:
     return f"the triple point temperature is {_kelvin(limits.lower)}, below which the liquid is metastable"
 
 
-def refuse_property(coverage: Coverage, kelvin: float, known: Sequence[str]) -> Refusal:
+def _refuse_property(coverage: Coverage, kelvin: float, known: Sequence[str]) -> Refusal:
     """The refusal where nothing is recorded for a property at all."""
     name = coverage.dossier.compound.key
     phase = f" of {coverage.phase}" if coverage.phase else ""
@@ -215,7 +173,7 @@ def refuse(coverage: Coverage, kelvin: float) -> Refusal:
     dossier = coverage.dossier
     if not coverage.candidates:
         known = sorted({entry.record.property for entry in dossier.correlations if entry.accepted})
-        return refuse_property(coverage, kelvin, known)
+        return _refuse_property(coverage, kelvin, known)
     nearest = _find_nearest(coverage, kelvin)
     reason, sentence, advice = _find_reason(coverage, kelvin)
     if reason == "several-phases":
