@@ -109,10 +109,11 @@ class Reader:
         Examples
         --------
         >>> import registry
-        >>> library = registry.open_library("shelf.db")
-        >>> library.lookup("ammonia", [200.0, 300.0, 500.0]).values.round(1)
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.lookup("ammonia", [200.0, 300.0, 500.0]).values.round(1)
         array([   8610.9, 1061291.3,       nan])
-        >>> library.lookup("water", 700.0)
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.lookup("water", 700.0)
         Traceback (most recent call last):
         ...
         registry.errors.Refused: 700 K lies above the critical temperature of water, ...
@@ -144,8 +145,8 @@ class Reader:
         Examples
         --------
         >>> import registry
-        >>> library = registry.open_library("shelf.db")
-        >>> [seam.temperature for seam in library.coverage("helium-4").seams]
+        >>> with registry.open_library("shelf.db") as library:
+        ...     [seam.temperature for seam in library.coverage("helium-4").seams]
         [2.1768]
         """
         stamp = self._file.read_stamp()
@@ -199,7 +200,8 @@ class Reader:
         Examples
         --------
         >>> import registry
-        >>> registry.open_library("shelf.db").find_compound("7664-41-7")
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.find_compound("7664-41-7")
         'ammonia'
         """
         with self._lock, self._file.reading() as view:
