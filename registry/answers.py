@@ -13,6 +13,7 @@ from numpy.typing import NDArray
 from registry import rules
 from registry.candidate import Candidate
 from registry.coverage import Coverage, Seam
+from registry.errors import BadInput
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS, Unit, convert, find_unit, gauge_unit
 from registry.records import Correlation
@@ -25,13 +26,6 @@ __all__ = ["Answer", "Batch", "Nearest", "Refusal", "Verdict"]
 class Answer:
     """A value with everything behind it; what is not asked for is not computed.
 
-    Attributes
-    ----------
-    temperature : float
-        As asked, K.
-    value : float
-        In the SI unit of the property.
-
     Examples
     --------
     >>> import registry
@@ -41,13 +35,23 @@ class Answer:
     (221.2, 'ethanol-poling-5', 'memory')
     """
 
-    __slots__ = ("_candidate", "_coverage", "temperature", "value")
+    __slots__ = ("_candidate", "_coverage", "_temperature", "_value")
 
     def __init__(self, temperature: float, value: float, candidate: Candidate, coverage: Coverage) -> None:
-        self.temperature = temperature
-        self.value = value
+        self._temperature = temperature
+        self._value = value
         self._candidate = candidate
         self._coverage = coverage
+
+    @property
+    def temperature(self) -> float:
+        """The temperature as asked, K."""
+        return self._temperature
+
+    @property
+    def value(self) -> float:
+        """The value in the SI unit of the property."""
+        return self._value
 
     def __repr__(self) -> str:
         return f"<Answer {self.value!r} {self.unit} at {self.temperature!r} K by {self._candidate.key}>"
@@ -71,6 +75,11 @@ class Answer:
     def revision(self) -> int:
         """Its revision."""
         return self._candidate.entry.revision
+
+    @property
+    def counts_as(self) -> str:
+        """The evidence it ranks by: its own, or compiled if it is from memory and unconfirmed."""
+        return self._candidate.counted.evidence
 
     @property
     def standing(self) -> str:
@@ -156,6 +165,8 @@ class Answer:
             atmosphere.
         """
         prop = PROPERTIES[self._coverage.property]
+        if not isinstance(unit, str):
+            raise BadInput(f"{unit!r} is no unit; a text such as kPa is allowed.")
         target = find_target_unit(unit, prop.dimension, atmosphere)
         return convert(self.value, UNITS[prop.unit], target, self.grams_per_mole)
 
@@ -223,10 +234,15 @@ class Batch:
         self, temperatures: NDArray[np.float64], values: NDArray[np.float64],
         places: NDArray[np.signedinteger[Any]], coverage: Coverage,
     ) -> None:  # fmt: skip
+        values.flags.writeable = False
         self.temperatures = temperatures
         self.values = values
         self.coverage = coverage
         self._places = places
+
+    def __repr__(self) -> str:
+        answered = self.values.size - int(self.refused.sum())
+        return f"<Batch of {self.values.size} for {self.coverage.dossier.compound.key}, {answered} answered>"
 
     @cached_property
     def chosen(self) -> NDArray[np.int16]:
@@ -270,5 +286,12 @@ class Batch:
         -------
         Refusal
             With reason, explanation and nearest windows.
+
+        Raises
+        ------
+        BadInput
+            If the temperature there was answered.
         """
+        if not self.refused[index]:
+            raise BadInput(f"The temperature at {index} was answered: {self.values[index]} {self.unit}.")
         return refuse(self.coverage, float(self.temperatures[index]))

@@ -11,9 +11,13 @@ import unicodedata
 from collections.abc import Callable
 from dataclasses import dataclass
 
+from registry.naming import join_names, nearest_names
 from registry.numerals import parse_number
 
-__all__ = ["Cell", "choice", "complain"]
+__all__ = ["Cell", "choice", "complain", "word"]
+
+FEW = 12
+"""Up to here a message lists the words that are allowed."""
 
 _CONTROL = re.compile(r"[\x00-\x1f\x7f-\x9f\u2028\u2029\ud800-\udfff\ufeff]")
 
@@ -49,7 +53,7 @@ def complain(cell: Cell, text: str, required: bool) -> str:
     Examples
     --------
     >>> complain(NUMBER, "12,5", required=True)
-    'a number with a decimal point, such as 8.07131, below 1e300, is allowed.'
+    'a number with a decimal point, such as 8.07131, is allowed.'
     >>> complain(NUMBER, "12.5", required=True)
     ''
     """
@@ -68,12 +72,20 @@ def complain(cell: Cell, text: str, required: bool) -> str:
     unseen = next((c for c in text if unicodedata.category(c) == "Cf"), "")
     if unseen:
         return f"it holds a character that is not seen (U+{ord(unseen):04X}); plain text is allowed."
-    return "" if cell.accepts(text) else cell.allowed
+    if cell.accepts(text):
+        return ""
+    near = nearest_names(text, cell.values) if len(cell.values) > FEW else []
+    return cell.allowed + (f" Did you mean {join_names(near)}?" if near else "")
 
 
 def choice(*values: str) -> Cell:
     """A cell that holds one of a few words."""
-    return Cell(f"one of {', '.join(values)} is allowed.", lambda text: text in values, values=values)
+    return Cell(f"one of {', '.join(values)} is allowed.", values.__contains__, values=values)
+
+
+def word(allowed: str, *values: str) -> Cell:
+    """A cell that holds one of many words, which a message does not list."""
+    return Cell(allowed, values.__contains__, values=values)
 
 
 def _is_number(text: str) -> bool:
@@ -126,7 +138,7 @@ KEY = _pattern(
 )
 TEXT = Cell("text is allowed.", prose=True)
 LONG = Cell("text is allowed.", limit=4000, prose=True)
-NUMBER = Cell("a number with a decimal point, such as 8.07131, below 1e300, is allowed.", _is_number, limit=60)
+NUMBER = Cell("a number with a decimal point, such as 8.07131, is allowed.", _is_number, limit=60)
 YEAR = _pattern("a year of four digits is allowed.", r"[12]\d{3}")
 DOI = _pattern("a DOI such as 10.1063/1.555926 is allowed.", r"10\.\d{4,9}/\S+")
 URL = _pattern("an http or https address is allowed.", r"https?://[!-~]+")

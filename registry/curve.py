@@ -112,7 +112,8 @@ class Curve:
     def value(self, kelvin: float) -> float:
         """The SI value at one temperature, K; no window is applied."""
         at, out = np.array([kelvin]), np.empty(1)
-        self.fill(at, out, Scratch(1))
+        with np.errstate(all="ignore"):
+            self.fill(at, out, Scratch(1))
         return out.item()
 
     def rates(self, kelvin: Array) -> Array:

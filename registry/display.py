@@ -1,12 +1,10 @@
-"""Numbers, units and names as a person reads them."""
+"""Numbers and units as a person reads them."""
 
 from __future__ import annotations
 
-from collections.abc import Iterable
-
 from registry.quantities import UNITS, Unit
 
-__all__ = ["format_number", "format_plain", "join_names", "suit_unit"]
+__all__ = ["format_number", "format_plain", "suit_unit"]
 
 
 def format_number(value: float, digits: int = 6) -> str:
@@ -47,15 +45,3 @@ def suit_unit(value: float, si: Unit) -> Unit:
     if si.dimension == "pressure":
         return UNITS["Pa" if abs(value) < 100.0 else "MPa" if abs(value) > 1e7 else "kPa"]
     return UNITS["kJ/mol"] if si.dimension == "molar-energy" else si
-
-
-def join_names(names: Iterable[str], word: str = "or") -> str:
-    """Names as a sentence lists them.
-
-    Examples
-    --------
-    >>> join_names(["a", "b", "c"])
-    'a, b or c'
-    """
-    *rest, last = list(names)
-    return f"{', '.join(rest)} {word} {last}" if rest else last

@@ -30,6 +30,8 @@ class Entry(Generic[R]):
         kinds that are not reviewed.
     standing_note : str
         What the reviewer said.
+    reviewed_in : int
+        The change that gave it its standing; 0 if none did.
     """
 
     record: R
@@ -37,6 +39,7 @@ class Entry(Generic[R]):
     change: int
     standing: str = ""
     standing_note: str = ""
+    reviewed_in: int = 0
 
     @property
     def key(self) -> str:

@@ -13,23 +13,25 @@ from registry.store.reading import Row
 __all__ = ["entry_of", "in_force", "read_dossier", "with_standing"]
 
 
-def entry_of(row: Row, standing: str = "", note: str = "") -> Entry[Any]:
+def entry_of(row: Row, standing: str = "", note: str = "", reviewed_in: int = 0) -> Entry[Any]:
     """A stored row as an entry."""
     record: Record = KINDS[row.kind].restore(row.key, row.content)
-    return Entry(record, row.revision, row.change, standing, note)
+    return Entry(record, row.revision, row.change, standing, note, reviewed_in)
 
 
 def with_standing(view: View, rows: list[Row]) -> list[Entry[Any]]:
     """Entries with the standing that reviews give them; a draft where none does."""
     keys = {(row.kind, row.key, row.revision): Review.key_for(row.kind, row.key, row.revision) for row in rows}
     wanted = [key for (kind, _, _), key in keys.items() if kind in REVIEWED]
-    reviews = {row.key: row.content for row in view.current("review", wanted)}
+    reviews = {row.key: row for row in view.current("review", wanted)}
 
     def enter(row: Row) -> Entry[Any]:
         if row.kind not in REVIEWED:
             return entry_of(row)
-        review = reviews.get(keys[row.kind, row.key, row.revision], {})
-        return entry_of(row, review.get("standing", "draft"), review.get("note", ""))
+        review = reviews.get(keys[row.kind, row.key, row.revision])
+        if review is None:
+            return entry_of(row, "draft")
+        return entry_of(row, review.content["standing"], review.content.get("note", ""), review.change)
 
     return [enter(row) for row in rows]
 

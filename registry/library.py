@@ -9,6 +9,7 @@ from __future__ import annotations
 import os
 from datetime import UTC, datetime
 from pathlib import Path
+from typing import Any
 
 from registry.cells import LONG, TEXT, complain
 from registry.entries import in_force, with_standing
@@ -35,7 +36,7 @@ class Library(Reader):
 
     def load(
         self, path: str | os.PathLike[str], *, author: str, reason: str = "", dry_run: bool = False
-    ) -> dict[str, int]:
+    ) -> dict[str, Any]:
         """Load a package in one change: all of it or nothing.
 
         Parameters
@@ -51,9 +52,11 @@ class Library(Reader):
 
         Returns
         -------
-        dict of str to int
-            ``added``, ``revised``, ``reviewed`` and ``unchanged`` records, and
-            the number of the ``change`` (0 if there was nothing to record).
+        dict
+            How many records were ``added``, ``revised``, ``reviewed`` and
+            ``unchanged``; the number of the ``change`` (0 if there was nothing
+            to record); under ``changed`` what was revised or reviewed, a line
+            each.
 
         Raises
         ------
@@ -67,13 +70,14 @@ class Library(Reader):
         package = Path(path)
         if dry_run:
             with self._lock, self._file.reading() as view:
-                return {**plan_load(view, package).counts, "change": 0}
+                plan = plan_load(view, package)
+                return {**plan.counts, "change": 0, "changed": plan.changed}
         why = reason or f"Loaded {package.name}"
         check_signature(author, why)
         with self._lock, self._file.writing() as (view, append):
             plan = plan_load(view, package)
             number = append(author, why, now_utc(), plan.drafts).number if plan.drafts else 0
-        return {**plan.counts, "change": number}
+        return {**plan.counts, "change": number, "changed": plan.changed}
 
     def dump(self, path: str | os.PathLike[str]) -> dict[str, int]:
         """Write everything that counts as a package.

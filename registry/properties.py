@@ -4,7 +4,10 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-__all__ = ["PROPERTIES", "Property"]
+from registry.errors import BadInput, quote
+from registry.naming import join_names
+
+__all__ = ["PROPERTIES", "Property", "find_property"]
 
 
 @dataclass(frozen=True)
@@ -62,3 +65,18 @@ _ROWS = (
 )  # fmt: skip
 
 PROPERTIES: dict[str, Property] = {row.name: row for row in _ROWS}
+
+
+def find_property(text: str) -> Property:
+    """The property of that name or title, case and hyphens aside.
+
+    Examples
+    --------
+    >>> find_property("Vapour pressure").name
+    'vapor-pressure'
+    """
+    plain = text.casefold().replace("-", " ").replace("vapour", "vapor")
+    for row in _ROWS:
+        if plain in (row.name.replace("-", " "), row.title.replace("vapour", "vapor")):
+            return row
+    raise BadInput(f"There is no property {quote(text)}; the properties are {join_names(PROPERTIES, 'and')}.")

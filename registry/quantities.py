@@ -70,7 +70,7 @@ _MMHG = Fraction("13595.1") * _KGF / 1000
 
 _ROWS = (
     Unit("K", "temperature", Fraction(1), "kelvin", ("kelvin",)),
-    Unit("degC", "temperature", Fraction(1), "T/K - 273.15", ("C", "°C", "celsius"), Fraction("273.15")),
+    Unit("degC", "temperature", Fraction(1), "T/K - 273.15", ("C", "°C", "℃", "celsius"), Fraction("273.15")),
     Unit("degF", "temperature", Fraction(5, 9), "9/5 T/K - 459.67", ("F", "°F", "fahrenheit"), Fraction("459.67")),
     Unit("degR", "temperature", Fraction(5, 9), "9/5 T/K", ("R", "°R", "rankine")),
     Unit("Pa", "pressure", Fraction(1), "pascal"),
@@ -207,7 +207,12 @@ def _split_quantity(text: str, dimension: str, example: str) -> tuple[Fraction, 
     if not match[2]:
         listed = ", ".join(unit_names(dimension))
         raise BadQuantity(text, f"a {dimension} needs its unit ({listed}), such as {example}.")
-    unit = find_unit(match[2], dimension)
+    try:
+        unit = find_unit(match[2], dimension)
+    except GaugePressure:
+        raise
+    except BadQuantity as error:
+        raise BadQuantity(text, error.allowed) from None
     try:
         return parse_number(match[1]), unit
     except ValueError as error:

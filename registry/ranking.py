@@ -21,12 +21,13 @@ from collections.abc import Sequence
 from registry.candidate import Candidate
 from registry.records import EVIDENCE
 
-__all__ = ["choose_best", "explain_order"]
+__all__ = ["choose_best", "explain_order", "rank_of"]
 
 Pairs = frozenset[tuple[str, str]]
 
 
-def _rank(candidate: Candidate, kelvin: float) -> tuple[int, float, float, int, str]:
+def rank_of(candidate: Candidate, kelvin: float) -> tuple[int, float, float, int, str]:
+    """What a candidate is sorted by at a temperature; the least ranks first."""
     return (
         EVIDENCE.index(candidate.counted.evidence),
         candidate.ranked_uncertainty(kelvin),
@@ -56,7 +57,7 @@ def choose_best(covering: Sequence[Candidate], kelvin: float, preferred: Pairs) 
     keys = {candidate.key for candidate in covering}
     dropped = {over for key, over in preferred if key in keys}
     left = [candidate for candidate in covering if candidate.key not in dropped]
-    return min(left, key=lambda candidate: _rank(candidate, kelvin))
+    return min(left, key=lambda candidate: rank_of(candidate, kelvin))
 
 
 def explain_order(best: Candidate, other: Candidate, kelvin: float) -> str:
@@ -64,7 +65,7 @@ def explain_order(best: Candidate, other: Candidate, kelvin: float) -> str:
 
     The first rule in which they differ decides.
     """
-    first, second = _rank(best, kelvin), _rank(other, kelvin)
+    first, second = rank_of(best, kelvin), rank_of(other, kelvin)
     if first[0] != second[0]:
         return f"{_evidence(best).capitalize()} evidence ranks before {_evidence(other)}."
     if first[1] != second[1]:

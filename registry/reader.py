@@ -6,18 +6,17 @@ import threading
 from typing import Any, Self, overload
 
 import numpy as np
-from numpy.typing import ArrayLike
+from numpy.typing import ArrayLike, NDArray
 
 from registry.answers import Answer, Batch
 from registry.coverage import Coverage, build_coverage
-from registry.display import join_names
 from registry.dossier import Dossier, Entry
 from registry.entries import entry_of, read_dossier, with_standing
 from registry.errors import BadInput, NotALibrary, Refused, UnknownKey, quote
-from registry.properties import PROPERTIES
+from registry.naming import join_names, nearest_names
+from registry.properties import find_property
 from registry.records import KINDS, Compound, Correlation
 from registry.refusals import Refusal
-from registry.searching import nearest_names
 from registry.store.library_file import LibraryFile
 from registry.verdicts import refuse
 
@@ -45,6 +44,9 @@ class Reader:
 
     def __exit__(self, *_: object) -> None:
         self.close()
+
+    def __repr__(self) -> str:
+        return f"<{type(self).__name__} {self.place}>"
 
     def close(self) -> None:
         """Release the file."""
@@ -119,13 +121,12 @@ class Reader:
         registry.errors.Refused: 700 K lies above the critical temperature of water, ...
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable)
-        if isinstance(temperature, (float, int)):
-            return _answer_one(coverage, float(temperature))
-        kelvin = np.asarray(temperature, dtype=float)
+        if isinstance(temperature, float):
+            return _answer_one(coverage, temperature)
+        kelvin = _as_kelvin(temperature)
         if kelvin.ndim == 0:
             return _answer_one(coverage, float(kelvin))
-        values, places = coverage.evaluate(kelvin)
-        return Batch(kelvin, values, places, coverage)
+        return Batch(kelvin, *coverage.evaluate(kelvin), coverage)
 
     def coverage(
         self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False
@@ -149,31 +150,27 @@ class Reader:
         ...     [seam.temperature for seam in library.coverage("helium-4").seams]
         [2.1768]
         """
-        stamp = self._file.read_stamp()
-        if stamp != self._stamp:
-            self._forget(stamp)
         request = (compound, property, phase or "", metastable)
-        found = self._coverages.get(request)
-        if found is None:
-            found = self._coverages[request] = self._build_coverage(*request)
-        return found
-
-    def _forget(self, stamp: int) -> None:
+        # one thread at a time: they share one connection
         with self._lock:
-            self._coverages, self._dossiers, self._stamp = {}, {}, stamp
+            stamp = self._file.read_stamp()
+            if stamp != self._stamp:
+                self._coverages, self._dossiers, self._stamp = {}, {}, stamp
+            found = self._coverages.get(request)
+            if found is None:
+                found = self._coverages[request] = self._build_coverage(*request)
+            return found
 
     def _build_coverage(self, compound: str, prop: str, phase: str, metastable: bool) -> Coverage:
-        if prop not in PROPERTIES:
-            raise BadInput(f"There is no property {quote(prop)}; the properties are {join_names(PROPERTIES, 'and')}.")
+        row = find_property(prop)
         dossier = self.dossier(compound)
-        phases = sorted({entry.record.phase for entry in dossier.for_property(prop)})
-        if phase and phases and phase not in phases:
-            name = dossier.compound.key
-            raise BadInput(
-                f"{name} has no {prop} of a phase {quote(phase)}; it has one of {join_names(phases, 'and')}."
-            )
+        phases = {_plain(e.record.phase): e.record.phase for e in dossier.for_property(row.name)}
+        if phase and phases and _plain(phase) not in phases:
+            have = f"it has {join_names(sorted(phases.values()), 'and')}."
+            raise BadInput(f"{dossier.compound.key} has no {row.name} of a phase {quote(phase)}; {have}")
+        named = phases.get(_plain(phase), phase)
         try:
-            return build_coverage(dossier, prop, phase, metastable=metastable)
+            return build_coverage(dossier, row.name, named, metastable=metastable)
         except (ValueError, KeyError, TypeError) as error:
             # every record was checked when it was recorded: it has been changed since
             raise NotALibrary(self.place, f"a record of {dossier.compound.key} is damaged ({error})") from error
@@ -204,6 +201,8 @@ class Reader:
         ...     library.find_compound("7664-41-7")
         'ammonia'
         """
+        if not isinstance(text, str):
+            raise BadInput(f"{quote(text)} is no name of a compound; a text is allowed.")
         with self._lock, self._file.reading() as view:
             if view.current("compound", [text]):
                 return text
@@ -318,6 +317,19 @@ class Reader:
             return view.changes()
 
 
+def _as_kelvin(temperature: Any) -> NDArray[np.float64]:
+    """Numbers as an array of float; a masked element is no temperature."""
+    given = np.ma.filled(temperature, np.nan) if isinstance(temperature, np.ma.MaskedArray) else np.asarray(temperature)
+    if given.dtype.kind not in "fiu" and given.size:
+        raise BadInput(f"{quote(temperature)} is no temperature; numbers in kelvin are allowed.")
+    return given.astype(float)
+
+
+def _plain(phase: str) -> str:
+    """A phase as it is compared: case and hyphens aside."""
+    return phase.casefold().replace("-", " ")
+
+
 def _answer_one(coverage: Coverage, kelvin: float) -> Answer:
     value, candidate = coverage.value_at(kelvin)
     if candidate is None:
@@ -327,6 +339,7 @@ def _answer_one(coverage: Coverage, kelvin: float) -> Answer:
 
 def _refuse_one(coverage: Coverage, kelvin: float) -> Refusal:
     """The refusal at one temperature, which must be a temperature."""
-    if not 0.0 < kelvin < np.inf:
-        raise BadInput(f"{kelvin} K is no temperature; a finite number of kelvin above 0 is allowed.")
-    return refuse(coverage, kelvin)
+    refusal = refuse(coverage, kelvin)
+    if refusal.reason == "not-a-temperature":
+        raise BadInput(refusal.explanation)
+    return refusal

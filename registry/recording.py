@@ -8,9 +8,12 @@ from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
 
+import numpy as np
+
+from registry.curve import Curve
 from registry.errors import CellProblem, InvalidPackage
 from registry.exchange.loading import Item, find_cycle, read_items
-from registry.records import KINDS, REVIEWED, Preference, Record, Review
+from registry.records import KINDS, REVIEWED, Compound, Correlation, Preference, Record, Review
 from registry.store.history import Draft
 
 __all__ = ["LoadPlan", "plan_load"]
@@ -26,10 +29,13 @@ class LoadPlan:
         The records, in order.
     counts : mapping
         ``added``, ``revised``, ``reviewed``, ``unchanged``.
+    changed : tuple of str
+        What is revised or reviewed, a line each.
     """
 
     drafts: tuple[Draft, ...]
     counts: dict[str, int]
+    changed: tuple[str, ...]
 
 
 def plan_load(view: Any, package: Path) -> LoadPlan:
@@ -50,9 +56,11 @@ def plan_load(view: Any, package: Path) -> LoadPlan:
     existing = _Existing(view)
     items = read_items(package, existing.record)
     _check_preferences(items, existing, package)
+    _check_usable(items, existing, package)
     counts = Counter({"added": 0, "revised": 0, "reviewed": 0, "unchanged": 0})
-    drafts = [draft for item in items for draft in _plan_item(item, existing, counts)]
-    return LoadPlan(tuple(drafts), dict(counts))
+    changed: list[str] = []
+    drafts = [draft for item in items for draft in _plan_item(item, existing, counts, changed)]
+    return LoadPlan(tuple(drafts), dict(counts), tuple(changed))
 
 
 class _Existing:
@@ -86,7 +94,7 @@ class _Existing:
             yield key, record, self.standing("preference", key, row.revision)[0]
 
 
-def _plan_item(item: Item, existing: _Existing, counts: Counter[str]) -> Iterator[Draft]:
+def _plan_item(item: Item, existing: _Existing, counts: Counter[str], told: list[str]) -> Iterator[Draft]:
     record = item.record
     row = existing.row(record.kind, record.key)
     content = record.content()
@@ -94,12 +102,17 @@ def _plan_item(item: Item, existing: _Existing, counts: Counter[str]) -> Iterato
     changed = row is None or row.content != content
     if changed:
         counts["added" if row is None else "revised"] += 1
+        if row is not None:
+            fields = [name for name in {**row.content, **content} if row.content.get(name) != content.get(name)]
+            told.append(f"{record.kind} {record.key}: {', '.join(sorted(fields))} revised")
         revision += 1
         yield draft_of(record)
     reviewed = False
     if record.kind in REVIEWED:
         before = ("draft", "") if changed else existing.standing(record.kind, record.key, revision)
         reviewed = (item.standing, item.standing_note) != before
+        if reviewed and not changed:
+            told.append(f"{record.kind} {record.key}: {before[0]} -> {item.standing}")
         if reviewed:
             review = Review(
                 of_kind=record.kind, of_key=record.key, of_revision=str(revision),
@@ -129,3 +142,34 @@ def _check_preferences(items: list[Item], existing: _Existing, package: Path) ->
     if cycle := find_cycle(iter(pairs)):
         why = f"with those recorded already the preferences go round in a circle: {' over '.join(cycle)}."
         raise InvalidPackage(str(package), [CellProblem("preferences.csv", 0, "", "", why)])
+
+
+def _check_usable(items: list[Item], existing: _Existing, package: Path) -> None:
+    """A correlation gives a value somewhere in its window, and a withdrawal is not taken back in silence."""
+    problems: list[CellProblem] = []
+    masses = {item.record.key: item.record for item in items if isinstance(item.record, Compound)}
+    for item in items:
+        record = item.record
+        if record.kind in REVIEWED and item.standing == "accepted" and not item.standing_note:
+            row = existing.row(record.kind, record.key)
+            before = existing.standing(record.kind, record.key, row.revision)[0] if row is not None else ""
+            if before in ("withdrawn", "declined"):
+                why = f"the library has it {before}; to accept it again say why in standing_note."
+                problems.append(CellProblem(item.file, item.line, "standing", "accepted", why))
+        if isinstance(record, Correlation):
+            compound = masses.get(record.compound) or existing.record("compound", record.compound)
+            if isinstance(compound, Compound) and not _has_value(record, compound.grams_per_mole()):
+                given = "; ".join(f"{name}={text}" for name, text in record.coefficients.items())
+                why = "with these coefficients and units the form gives no usable value anywhere in the window."
+                problems.append(CellProblem(item.file, item.line, "coefficients", given, why))
+    if problems:
+        raise InvalidPackage(str(package), problems)
+
+
+def _has_value(record: Correlation, molar_mass: float) -> bool:
+    curve = Curve.of(record, molar_mass)
+    low, high = curve.window
+    if not low < high:
+        return False
+    values = curve.values(np.linspace(low, high, 33))
+    return bool((np.isfinite(values) & (values > 0.0)).any())

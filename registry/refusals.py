@@ -37,7 +37,7 @@ class Refusal:
     reason : str
         ``no-correlation``, ``several-phases``, ``outside-windows``, ``gap``,
         ``above-critical``, ``below-triple``, ``above-triple``,
-        ``not-accepted`` or ``no-value``.
+        ``not-accepted``, ``no-value`` or ``not-a-temperature``.
     explanation : str
         The reason, and what can be done.
     nearest : tuple of Nearest

@@ -2,15 +2,16 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 
 from registry import rules
 from registry.candidate import Candidate
 from registry.coverage import Coverage
-from registry.display import join_names
+from registry.naming import join_names
 from registry.properties import PROPERTIES
-from registry.ranking import explain_order
+from registry.ranking import explain_order, rank_of
 from registry.refusals import Nearest, Refusal
 
 __all__ = ["Verdict", "explain_choice", "judge_candidates", "refuse"]
@@ -150,8 +151,8 @@ def _refuse_property(coverage: Coverage, kelvin: float, known: Sequence[str]) ->
     """The refusal where nothing is recorded for a property at all."""
     name = coverage.dossier.compound.key
     phase = f" of {coverage.phase}" if coverage.phase else ""
-    have = f"It has {join_names(known, 'and')}." if known else "It has no correlation at all."
-    text = f"{name} has no correlation for {coverage.property}{phase}. {have} `rangebook show {name}` lists them."
+    have = f"It has {join_names(known, 'and')}. `rangebook show {name}` lists them." if known else "It has none at all."
+    text = f"{name} has no correlation for {coverage.property}{phase}. {have}"
     return Refusal(kelvin, "no-correlation", text)
 
 
@@ -171,12 +172,15 @@ def refuse(coverage: Coverage, kelvin: float) -> Refusal:
         With the reason, the nearest windows and what can be done.
     """
     dossier = coverage.dossier
+    if not 0.0 < kelvin < math.inf:
+        text = f"{kelvin} K is no temperature; a finite number of kelvin above 0 is allowed."
+        return Refusal(kelvin, "not-a-temperature", text)
     if not coverage.candidates:
         known = sorted({entry.record.property for entry in dossier.correlations if entry.accepted})
         return _refuse_property(coverage, kelvin, known)
     nearest = _find_nearest(coverage, kelvin)
     reason, sentence, advice = _find_reason(coverage, kelvin)
-    if reason == "several-phases":
+    if reason in ("several-phases", "no-value"):
         nearest = ()
     near = "; ".join(f"{n.correlation} ({_range(*n.window)}) is {n.distance:.6g} K away" for n in nearest)
     parts = [sentence, f"Nearest: {near}." if near else "", advice]
@@ -185,9 +189,11 @@ def refuse(coverage: Coverage, kelvin: float) -> Refusal:
 
 def _find_nearest(coverage: Coverage, kelvin: float) -> tuple[Nearest, ...]:
     """The nearest answering window on either side."""
-    below = [c for c in coverage.accepted if c.reach[0] <= c.reach[1] < kelvin]
-    above = [c for c in coverage.accepted if kelvin < c.reach[0] <= c.reach[1]]
-    found = [min(side, key=lambda c: (c.distance(kelvin), c.key)) for side in (below, above) if side]
+    usable = [c for c in coverage.accepted if c.reach[0] <= c.reach[1] and not c.covers(kelvin)]
+    below = [c for c in usable if c.reach[1] < kelvin]
+    above = [c for c in usable if kelvin < c.reach[0]]
+    # of several that end at the same bound, the one that answers there
+    found = [min(side, key=lambda c: (c.distance(kelvin), rank_of(c, kelvin))) for side in (below, above) if side]
     found.sort(key=lambda c: c.distance(kelvin))
     return tuple(Nearest(c.key, c.reach, c.distance(kelvin)) for c in found)
 

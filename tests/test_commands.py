@@ -12,8 +12,8 @@ from registry.cli.app import app, main
 
 ANSWER_KEYS = {
     "temperature_K", "value", "unit", "value_SI", "correlation", "revision", "phase", "window_K", "evidence",
-    "standing", "obtained", "uncertainty_percent", "percent_per_kelvin", "factor_per_10_K", "source", "chosen_because",
-    "candidates", "cautions",
+    "counts_as", "standing", "obtained", "uncertainty_percent", "percent_per_kelvin", "factor_per_10_K", "source",
+    "chosen_because", "candidates", "cautions",
 }  # fmt: skip
 
 
@@ -135,7 +135,7 @@ READING = [
     ("list",), ("list", "methyl"), ("show", "ammonia"), ("show", "water-if97"), ("show", "perry-8"),
     ("show", "water-vapor-pressure-crc-73"), ("show", "ammonia-triple-point-temperature-gao-2023"),
     ("show", "water-hardy-1998-at-0-degc"), ("coverage", "water"), ("coverage", "water", "-p", "melting-pressure"),
-    ("coverage", "neon"), ("lookup", "water", "25C", "--why"),
+    ("coverage", "neon"), ("forms",), ("forms", "antoine-ln"), ("lookup", "water", "25C", "--why"),
 ]  # fmt: skip
 
 
@@ -243,4 +243,4 @@ def test_an_explicit_library_must_exist(tmp_path):
 def test_commands_are_the_ones_of_the_job():
     """No command is missing, and none is there that nobody asked for."""
     names = {command.name for command in app.registered_commands}
-    assert names == {"lookup", "coverage", "list", "show", "start", "load", "dump", "upgrade"}
+    assert names == {"lookup", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade"}

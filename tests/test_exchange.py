@@ -115,6 +115,7 @@ def test_only_what_differs_becomes_a_revision(own_path, tmp_path):
         table = tmp_path / "package" / "correlations.csv"
         _edit(table, "water-august", "note", "an edited note")
         _edit(table, "water-himmelblau", "standing", "withdrawn")
+        _edit(table, "water-himmelblau", "standing_note", "an invented erratum")
         counts = library.load(tmp_path / "package", author="somebody", reason="edited")
         assert (counts["added"], counts["revised"], counts["reviewed"]) == (0, 1, 1)
         edited, withdrawn = library.entry("water-august"), library.entry("water-himmelblau")
@@ -123,6 +124,57 @@ def test_only_what_differs_becomes_a_revision(own_path, tmp_path):
         assert library.entry("water-if97").revision == 1
         library.dump(tmp_path / "again")
         assert _files_of(tmp_path / "again") == _files_of(tmp_path / "package")
+
+
+def test_a_withdrawal_is_not_taken_back_in_silence(own_path, tmp_path):
+    """Loading an older package over a withdrawal is refused until somebody says why."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "older")
+        library.dump(tmp_path / "withdrawing")
+        table = tmp_path / "withdrawing" / "correlations.csv"
+        _edit(table, "water-himmelblau", "standing", "withdrawn")
+        with pytest.raises(InvalidPackage, match="a record that is withdrawn says why"):
+            library.load(tmp_path / "withdrawing", author="somebody")
+        _edit(table, "water-himmelblau", "standing_note", "an invented erratum")
+        counts = library.load(tmp_path / "withdrawing", author="somebody")
+        assert counts["changed"] == ("correlation water-himmelblau: accepted -> withdrawn",)
+        with pytest.raises(InvalidPackage, match="to accept it again say why"):
+            library.load(tmp_path / "older", author="somebody")
+        assert library.entry("water-himmelblau").standing == "withdrawn"
+        _edit(tmp_path / "older" / "correlations.csv", "water-himmelblau", "standing_note", "the erratum was wrong")
+        assert library.load(tmp_path / "older", author="somebody")["reviewed"] == 1
+        assert library.entry("water-himmelblau").standing == "accepted"
+
+
+def test_what_is_revised_is_told(own_path, tmp_path):
+    """A spreadsheet that drops a trailing zero revises a record, and the load names record and field."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        table = tmp_path / "package" / "correlations.csv"
+        _edit(table, "ethanol-antoine-low", "coefficients", "A=8.20417; B=1642.89; C=230.3")
+        counts = library.load(tmp_path / "package", author="somebody", dry_run=True)
+        assert counts["changed"] == ("correlation ethanol-antoine-low: coefficients revised",)
+
+
+def test_a_correlation_without_any_value_is_refused(own_path, tmp_path):
+    """Coefficients that give no usable number anywhere in the window are refused at the door."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        table = tmp_path / "package" / "correlations.csv"
+        _edit(table, "ethanol-antoine-low", "coefficients", "A=8.20417; B=-164289000; C=230.300")
+        with pytest.raises(InvalidPackage, match="no usable value anywhere in the window"):
+            library.load(tmp_path / "package", author="somebody")
+
+
+def test_an_empty_library_dumps_a_template(tmp_path):
+    """An empty library dumps every file with its header, and the package loads."""
+    with start_library(tmp_path / "library.db", "none") as library:
+        library.dump(tmp_path / "package")
+        headers = {
+            p.name: p.read_text(encoding="utf-8").strip().split(",") for p in (tmp_path / "package").glob("*.csv")
+        }
+        assert headers == {name: [c.name for c in file.columns] for name, file in FILES.items()}
+        assert library.load(tmp_path / "package", author="somebody")["change"] == 0
 
 
 def test_a_draft_revision_leaves_the_accepted_one_in_force(own_path, tmp_path):
@@ -195,8 +247,9 @@ def test_columns_that_may_be_left_out_may_be_left_out(tmp_path):
     package = Path(shutil.copytree(find_shelf("published"), tmp_path / "package"))
     optional = {name: {c.name for c in file.columns if c.optional} for name, file in FILES.items()}
     for table in package.glob("*.csv"):
-        rows = list(csv.DictReader(io.StringIO(table.read_text(encoding="utf-8"))))
-        kept = [name for name in rows[0] if name not in optional[table.name] or any(row[name] for row in rows)]
+        reader = csv.DictReader(io.StringIO(table.read_text(encoding="utf-8")))
+        rows, names = list(reader), list(reader.fieldnames)
+        kept = [name for name in names if name not in optional[table.name] or any(row[name] for row in rows)]
         stream = io.StringIO(newline="")
         writer = csv.DictWriter(stream, kept, lineterminator="\r\n", extrasaction="ignore")
         writer.writeheader()

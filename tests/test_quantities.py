@@ -9,8 +9,9 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from registry.display import format_number, join_names
+from registry.display import format_number
 from registry.errors import BadQuantity, GaugePressure
+from registry.naming import join_names
 from registry.quantities import (
     UNITS,
     convert,

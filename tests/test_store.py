@@ -345,8 +345,9 @@ def test_a_lookup_sees_another_process_change(own_path, tmp_path):
         library.dump(package)
         table = package / "correlations.csv"
         rows = table.read_text(encoding="utf-8").splitlines(keepends=True)
-        changed = [r.replace(",accepted,", ",withdrawn,") if r.startswith("water-if97,") else r for r in rows]
-        table.write_text("".join(changed), encoding="utf-8")
+        mine = next(i for i, row in enumerate(rows) if row.startswith("water-if97,"))
+        rows[mine] = rows[mine].replace(",accepted,", ",withdrawn,").replace("\n", "an invented erratum\n")
+        table.write_text("".join(rows), encoding="utf-8")
         subprocess.run([sys.executable, "-c", script, str(own_path), str(package)], check=True, timeout=60)
         after = library.lookup("water", 300.0)
         assert after.correlation.key == "water-sr1-86"
@@ -389,6 +390,73 @@ def test_a_large_import_is_one_leaf(tmp_path):
     with closing(sqlite3.connect(path)) as db:
         assert db.execute("SELECT count(*) FROM node").fetchone()[0] == 3
         assert db.execute("SELECT max(revision) FROM record").fetchone()[0] == 2
+
+
+def test_nothing_is_slipped_into_an_earlier_change(own_path):
+    """A record inserted under a change that is not the newest is stopped by the database."""
+    with closing(sqlite3.connect(own_path)) as db:
+        header = "2, 'somebody', 'a later change', '2030-01-01T00:00:00.000000Z', 0, '" + "0" * 64 + "', '{}'"
+        db.execute(f"INSERT INTO change VALUES ({header})")
+        with pytest.raises(sqlite3.IntegrityError, match="history is only appended to"):
+            db.execute(
+                "INSERT INTO record SELECT 99999, 1, 99999, kind, 'new', 1, content, digest FROM record WHERE id = 5"
+            )
+
+
+def test_a_record_changed_behind_the_back_does_not_answer(own_path):
+    """With the triggers dropped a coefficient can be changed; the digest no longer fits, and the lookup says so."""
+    with closing(sqlite3.connect(own_path)) as db:
+        db.execute("DROP TRIGGER record_no_update")
+        db.execute(
+            "UPDATE record SET content = replace(content, '1642.89', '1652.89') WHERE key = 'ethanol-antoine-low'"
+        )
+        db.commit()
+    with open_library(own_path) as library:
+        with pytest.raises(NotALibrary, match="'ethanol-antoine-low', revision 1, is not what was recorded"):
+            library.lookup("ethanol", 268.15)
+        assert library.lookup("water", 300.0).value > 0.0
+
+
+THREADS = """
+import sys, threading
+from registry.opening import open_library
+names = ["water", "ammonia", "ethanol", "benzene", "methane", "nitrogen", "argon", "propane"]
+at = {"water": 300.0, "ammonia": 250.0, "ethanol": 300.0, "benzene": 300.0, "methane": 110.0, "nitrogen": 80.0,
+      "argon": 90.0, "propane": 250.0}
+faults = []
+with open_library(sys.argv[1]) as library:
+    alone = {name: library.lookup(name, at[name]).value for name in names}
+    def work(name):
+        try:
+            for _ in range(300):
+                assert library.lookup(name, at[name]).value == alone[name]
+                library.coverage(name).seams
+                library.lookup(name, [at[name], at[name] + 1.0])
+        except BaseException as error:
+            faults.append(repr(error))
+    threads = [threading.Thread(target=work, args=(name,)) for name in names]
+    [t.start() for t in threads]
+    [t.join() for t in threads]
+print(faults)
+"""
+
+
+def test_one_library_serves_many_threads(published_path):
+    """Eight threads that look up different compounds in one open library get what each gets alone."""
+    done = subprocess.run(
+        [sys.executable, "-c", THREADS, str(published_path)], capture_output=True, text=True, timeout=120
+    )
+    assert (done.returncode, done.stdout.strip(), done.stderr) == (0, "[]", "")
+
+
+def test_a_closed_library_says_so(own_path):
+    """After closing, neither a warm nor a cold lookup answers."""
+    library = open_library(own_path)
+    library.lookup("water", 300.0)
+    library.close()
+    for name in ("water", "ammonia"):
+        with pytest.raises(BadInput, match="is closed"):
+            library.lookup(name, 300.0)
 
 
 def test_foreign_keys_are_on(own_path):

@@ -29,6 +29,11 @@ def upgrade() -> None:
     if op.get_bind().dialect.name == "sqlite":
         for table, same in _SAME_ROW.items():
             _forbid_changes(table, same)
+        op.execute(
+            "CREATE TRIGGER record_no_insertion BEFORE INSERT ON record "
+            "WHEN NEW.change <> (SELECT max(number) FROM change) "
+            "BEGIN SELECT RAISE(ABORT, 'history is only appended to: record'); END"
+        )
 
 
 def downgrade() -> None:

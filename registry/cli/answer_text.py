@@ -15,7 +15,7 @@ from registry.quantities import Unit
 __all__ = ["print_answers"]
 
 _BASIS = {"printed": "as printed", "assumed": "assumed, not printed", "memory": "from memory"}
-_OBTAINED = {"seen": "seen", "memory": "from memory"}
+_OBTAINED = {"seen": "seen in the source", "memory": "from memory"}
 
 
 def print_answers(coverage: Coverage, found: list[tuple[Asked, Answer | Refusal]], to: Unit | None, why: bool) -> None:
@@ -46,11 +46,11 @@ def _print_values(answers: list[tuple[Asked, Answer]], to: Unit | None) -> None:
         stated = answer.uncertainty_percent
         rows.append([
             asked.text, f"{format_plain(answer.temperature)} K", format_number(value), unit.name,
-            f"{stated:.3g} %" if stated is not None else "not stated",
+            f"{stated:.3g} %" if stated is not None else "none",
             f"{answer.percent_per_kelvin:+.3g} %", f"x {answer.factor_per_10_kelvin:.4g}",
-            _OBTAINED[answer.correlation.obtained], answer.correlation.key,
+            answer.correlation.obtained, answer.correlation.key,
         ])  # fmt: skip
-    headers = ["asked", "is", "value", "", "uncertainty", "per K", "per 10 K", "obtained", "answered by"]
+    headers = ["asked", "is", "value", "", "stated", "per K", "per 10 K", "obtained", "answered by"]
     print_table(headers, rows, right=(True, True, True, False, True, True, True))
 
 
@@ -59,7 +59,8 @@ def _print_story(told: list[tuple[Asked, Answer]]) -> None:
     first, answer = told[0]
     record = answer.correlation
     low, high = answer.window
-    chosen = answer.chosen_because + (f" (At {first.text}; --why tells the others.)" if len(told) > 1 else "")
+    reasons = dict.fromkeys(each.chosen_because for _, each in told)
+    chosen = answer.chosen_because + (f" (At {first.text}; --why tells the others.)" if len(reasons) > 1 else "")
     cautions = dict.fromkeys(caution for _, each in told for caution in each.cautions)
     locator = record.locator if record.locator != "not recorded" else "the place in it is not recorded"
     say(f"  {emphasize(record.key)}, revision {answer.revision}, {answer.standing}")
@@ -67,13 +68,21 @@ def _print_story(told: list[tuple[Asked, Answer]]) -> None:
         (
             ("form", FORMS[record.form].title),
             ("window", f"{format_plain(low)} to {format_plain(high)} K, {_BASIS[record.window_basis]}"),
-            ("evidence", f"{record.evidence}, {_OBTAINED[record.obtained]}"),
+            ("evidence", _word_evidence(answer)),
             ("source", f"{answer.citation}; {locator}"),
             ("chosen", chosen),
             *(("caution", caution) for caution in cautions),
         ),
         indent=4,
     )
+
+
+def _word_evidence(answer: Answer) -> str:
+    """What it ranks by, and what the record says where that differs."""
+    record = answer.correlation
+    if answer.counts_as == record.evidence:
+        return f"{record.evidence}, {_OBTAINED[record.obtained]}"
+    return f"{answer.counts_as} (recorded as {record.evidence}, but from memory and unconfirmed)"
 
 
 def _print_verdicts(answers: list[tuple[Asked, Answer]]) -> None:

@@ -23,6 +23,7 @@ from registry.cli.browsing import coverage, list_records, show
 from registry.cli.keeping import dump, load, start, upgrade
 from registry.cli.looking import REFUSED, lookup
 from registry.cli.screen import complain, print_json
+from registry.cli.vocabulary import forms
 from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, quote
 
 __all__ = ["main"]
@@ -40,7 +41,7 @@ app = typer.Typer(
 )
 for command, name in (
     (lookup, "lookup"), (coverage, "coverage"), (list_records, "list"), (show, "show"),
-    (start, "start"), (load, "load"), (dump, "dump"), (upgrade, "upgrade"),
+    (forms, "forms"), (start, "start"), (load, "load"), (dump, "dump"), (upgrade, "upgrade"),
 ):  # fmt: skip
     app.command(name)(command)
 

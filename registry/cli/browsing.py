@@ -71,7 +71,7 @@ def show(
 
     Example: rangebook show water-if97
     """
-    from registry.cli.documents import describe_entry
+    from registry.cli.documents import describe_change, describe_entry
     from registry.cli.record_text import print_record
     from registry.cli.screen import print_json
 
@@ -79,13 +79,15 @@ def show(
         entry = book.entry(key)
         related = book.referring(entry.record.kind, entry.key)
         changes = {change.number: change for change in book.changes()}
-        change = changes[entry.change]
         if as_json:
-            header = {"author": change.author, "reason": change.reason, "recorded_at": change.recorded_at}
-            document = {**describe_entry(entry), "recorded": header}
+            document = {**describe_entry(entry), "recorded": describe_change(changes[entry.change])}
+            if entry.reviewed_in:
+                document["reviewed"] = describe_change(changes[entry.reviewed_in])
+            if getattr(entry.record, "source", ""):
+                document["citation"] = book.source_citation(entry.record.source)
             print_json({**document, "referred_to_by": [describe_entry(other) for other in related]})
             return
-        print_record(book, entry, related, change)
+        print_record(book, entry, related, changes)
 
 
 def coverage(

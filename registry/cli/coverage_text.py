@@ -7,11 +7,14 @@ import sys
 
 from registry.candidate import Candidate
 from registry.cli.screen import emphasize, print_table, say, width
-from registry.coverage import Coverage
+from registry.coverage import Coverage, Stretch
 from registry.display import format_plain
 from registry.properties import PROPERTIES
 
 __all__ = ["print_coverage"]
+
+_THIN = 1e-6
+"""Kelvin below which a stretch is only the tolerance of two bounds that meet."""
 
 _COLOURS = ("36", "33", "35", "32", "34", "31")
 
@@ -32,8 +35,8 @@ def print_coverage(coverage: Coverage) -> None:
 
 def _print_bars(coverage: Coverage) -> None:
     shown = sorted(coverage.candidates, key=lambda c: (not _answers(coverage, c), c.curve.window[0], c.key))
-    low = min(c.curve.window[0] for c in shown)
-    high = max(c.curve.window[1] for c in shown)
+    windows = [c.record.window_kelvin() for c in shown]
+    low, high = min(w[0] for w in windows), max(w[1] for w in windows)
     label = max(len(c.key) for c in shown)
     room = max(20, width() - label - 16)
     marks = _marks()
@@ -43,12 +46,13 @@ def _print_bars(coverage: Coverage) -> None:
         counted = candidate.counted.evidence if candidate.entry.accepted else candidate.entry.standing
         say(f"  {candidate.key.ljust(label)}  {emphasize(bar, colour)}  {counted}")
     _print_axis(low, high, room, label, marks)
-    say(f"  {marks[0]} answers   {marks[1]} covers, but another ranks before it   {marks[2]} may not answer")
+    several = f"   {marks[4]} several phases" if any(s.phases for s in coverage.stretches) else ""
+    say(f"  {marks[0]} answers   {marks[1]} covers, but another ranks before it   {marks[2]} may not answer{several}")
 
 
-def _marks() -> tuple[str, str, str, str]:
+def _marks() -> tuple[str, ...]:
     encoding = (sys.stdout.encoding or "ascii").lower()
-    return ("━", "─", "·", "┬") if encoding.startswith("utf") else ("#", "-", ".", "+")
+    return ("━", "─", "·", "┬", "?") if encoding.startswith("utf") else ("#", "-", ".", "+", "?")
 
 
 def _answers(coverage: Coverage, candidate: Candidate) -> bool:
@@ -66,11 +70,13 @@ def _mark(
     if any(min(s.high, right) - max(s.low, left) > 0.25 * (right - left) for s in answering):
         return marks[0]
     middle = 0.5 * (max(left, candidate.curve.window[0]) + min(right, candidate.curve.window[1]))
-    return marks[1] if candidate.entry.accepted and candidate.covers(middle) else marks[2]
+    if not (candidate.entry.accepted and candidate.covers(middle)):
+        return marks[2]
+    return marks[4] if coverage.stretch_at(middle).phases else marks[1]
 
 
 def _print_axis(low: float, high: float, room: int, label: int, marks: tuple[str, ...]) -> None:
-    ticks = _round_ticks(low, high, max(2, room // 12))
+    ticks = _round_ticks(low, high, max(3, room // 12))
     places = {round((tick - low) / (high - low) * (room - 1)): tick for tick in ticks}
     line = "".join(marks[3] if cell in places else marks[1] for cell in range(room))
     numbers = [" "] * (room + 8)
@@ -109,9 +115,16 @@ def _print_seams(coverage: Coverage) -> None:
 
 
 def _print_gaps(coverage: Coverage) -> None:
+    for stretch in coverage.stretches:
+        if stretch.phases and stretch.high - stretch.low > _THIN:
+            say(f"  phases  {_range(stretch)}: {' and '.join(stretch.phases)}; name one with --phase")
     for gap in coverage.gaps:
-        why = f"several phases: {', '.join(gap.phases)}" if gap.phases else "nothing may answer"
-        say(f"  gap  {format_plain(round(gap.low, 6))} to {format_plain(round(gap.high, 6))} K: {why}")
+        if not gap.phases and gap.high - gap.low > _THIN:
+            say(f"  gap  {_range(gap)}: nothing may answer")
+
+
+def _range(stretch: Stretch) -> str:
+    return f"{format_plain(round(stretch.low, 6))} to {format_plain(round(stretch.high, 6))} K"
 
 
 def _print_limits(coverage: Coverage) -> None:

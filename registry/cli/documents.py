@@ -13,7 +13,7 @@ from registry.dossier import Entry
 from registry.limits import Limits
 from registry.quantities import UNITS, Unit, convert
 
-__all__ = ["describe_answer", "describe_coverage", "describe_entry", "describe_refusal", "value_in"]
+__all__ = ["describe_answer", "describe_change", "describe_coverage", "describe_entry", "describe_refusal", "value_in"]
 
 
 def value_in(answer: Answer, to: Unit | None) -> tuple[float, Unit]:
@@ -36,6 +36,7 @@ def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:
         "phase": record.phase,
         "window_K": list(answer.window),
         "evidence": record.evidence,
+        "counts_as": answer.counts_as,
         "standing": answer.standing,
         "obtained": record.obtained,
         "uncertainty_percent": answer.uncertainty_percent,
@@ -99,6 +100,16 @@ def _describe_stretch(stretch: Stretch) -> dict[str, Any]:
     assert stretch.candidate is not None
     entry = stretch.candidate.entry
     return {"from_K": stretch.low, "to_K": stretch.high, "correlation": entry.key, "revision": entry.revision}
+
+
+def describe_change(change: Any) -> dict[str, Any]:
+    """Who changed the library, when and why."""
+    return {
+        "change": change.number,
+        "author": change.author,
+        "reason": change.reason,
+        "recorded_at": change.recorded_at,
+    }
 
 
 def describe_entry(entry: Entry[Any]) -> dict[str, Any]:

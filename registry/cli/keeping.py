@@ -35,7 +35,7 @@ def start(
     if as_json:
         print_json({"library": str(place), "shelf": shelf, "compounds": compounds, "position": position})
     else:
-        say(f"Started {place} with {compounds} compounds, position {position}.")
+        say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
 
 
 def load(
@@ -58,6 +58,10 @@ def load(
         print_json({"package": str(package), "dry_run": dry_run, **counts})
         return
     told = ", ".join(f"{counts[word]} {word}" for word in ("added", "revised", "reviewed", "unchanged"))
+    for line in counts["changed"][:20]:
+        say(f"  {line}")
+    if len(counts["changed"]) > 20:
+        say(f"  ... and {len(counts['changed']) - 20} more; --json lists all")
     if dry_run:
         say(f"{package} can be loaded: {told}. Nothing was recorded (--dry-run).")
     elif counts["change"]:
@@ -85,7 +89,7 @@ def dump(
         return
     say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
-        say(f"{waiting} drafts that wait over an accepted revision stayed behind.")
+        say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
 
 
 def upgrade(library: LibraryOption = None, as_json: JsonOption = False) -> None:

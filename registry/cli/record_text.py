@@ -10,12 +10,12 @@ from registry.dossier import Entry
 from registry.exchange.dumping import ordered_coefficients
 from registry.forms.catalogue import FORMS
 from registry.library import Library
-from registry.records import Compound, Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
+from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
 
 __all__ = ["print_record"]
 
 
-def print_record(book: Library, entry: Entry[Any], related: list[Entry[Any]], change: Any) -> None:
+def print_record(book: Library, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Any]) -> None:
     """A record, who recorded it, and what refers to it."""
     record = entry.record
     standing = f", {entry.standing}" if entry.standing else ""
@@ -25,13 +25,25 @@ def print_record(book: Library, entry: Entry[Any], related: list[Entry[Any]], ch
         [
             *_facts(record),
             ("citation", book.source_citation(source) if source else ""),
-            ("review", entry.standing_note),
-            ("recorded", f"change {change.number} by {change.author}, {change.recorded_at}: {change.reason}"),
+            ("review", _word_review(entry, changes)),
+            ("recorded", _word_change(changes[entry.change])),
         ]
     )
     if isinstance(record, Dataset):
         _print_points(record)
     _print_related(record, related)
+
+
+def _word_change(change: Any) -> str:
+    """A change as a line: number, author, time to the second, reason."""
+    return f"change {change.number} by {change.author}, {change.recorded_at[:19]}Z: {change.reason}"
+
+
+def _word_review(entry: Entry[Any], changes: dict[int, Any]) -> str:
+    if not entry.reviewed_in:
+        return ""
+    note = f" ({entry.standing_note})" if entry.standing_note else ""
+    return f"{entry.standing}{note} in {_word_change(changes[entry.reviewed_in])}"
 
 
 def _facts(record: Record) -> list[tuple[str, str]]:
@@ -67,9 +79,15 @@ def _correlation_facts(record: Correlation) -> list[tuple[str, str]]:
 
 def _print_points(record: Dataset) -> None:
     say()
-    rows = [(point.temperature, point.value, point.value_uncertainty, point.note) for point in record.points]
-    headers = (record.temperature_unit, record.value_unit, "+/-", "note")
-    print_table(headers, rows, right=(True, True, True))
+    columns = [
+        (record.temperature_unit, [point.temperature for point in record.points]),
+        (record.value_unit, [point.value for point in record.points]),
+        (f"+/- {record.value_unit}", [point.value_uncertainty for point in record.points]),
+        ("note", [point.note for point in record.points]),
+    ]
+    filled = [(header, cells) for header, cells in columns if any(cells)]
+    rows = list(zip(*(cells for _, cells in filled), strict=True))
+    print_table([header for header, _ in filled], rows, right=(True, True, True))
 
 
 def _print_related(record: Record, related: list[Entry[Any]]) -> None:
@@ -84,7 +102,8 @@ def _print_related(record: Record, related: list[Entry[Any]]) -> None:
 
 _PLURAL = {
     "name": "Also called", "correlation": "Correlations", "fixed-point": "Fixed points", "dataset": "Datasets",
-    "printed-value": "Values the source prints for it", "preference": "Preferences", "compound": "Molar masses",
+    "printed-value": "Values the source prints for it", "preference": "Preferences",
+    "compound": "Compounds that cite it",
 }  # fmt: skip
 
 
@@ -96,11 +115,10 @@ def _related_row(record: Record, entry: Entry[Any]) -> tuple[str, ...]:
         return (other.key, what, window, other.evidence, other.obtained, entry.standing)
     if isinstance(other, FixedPoint):
         text = f"{other.value} {other.unit}" if other.unit != "1" else other.value
-        return (other.quantity, text, other.source if isinstance(record, Compound) else other.compound,
-                other.obtained, " ".join(t for t in (entry.standing, other.qualifier) if t))  # fmt: skip
+        return (other.key, other.quantity, text, other.obtained, entry.standing, other.qualifier)
     if isinstance(other, PrintedValue):
-        return (f"{other.temperature} {other.temperature_unit}", f"{other.value} {other.value_unit}", other.obtained,
-                other.locator)  # fmt: skip
+        at, value = f"{other.temperature} {other.temperature_unit}", f"{other.value} {other.value_unit}"
+        return (other.key, at, value, other.obtained)
     if isinstance(other, Dataset):
         return (other.key, other.property, str(len(other.points)), other.evidence, entry.standing)
     if other.kind == "preference":
@@ -111,8 +129,8 @@ def _related_row(record: Record, entry: Entry[Any]) -> tuple[str, ...]:
 def _layout(kind: str, rows: list[tuple[str, ...]]) -> tuple[tuple[str, ...], list[tuple[str, ...]]]:
     headers = {
         "correlation": ("key", "for", "window", "evidence", "obtained", "standing"),
-        "fixed-point": ("quantity", "value", "source or compound", "obtained", "standing"),
-        "printed-value": ("at", "value", "obtained", "where"),
+        "fixed-point": ("key", "quantity", "value", "obtained", "standing", "qualifier"),
+        "printed-value": ("key", "at", "value", "obtained"),
         "dataset": ("key", "property", "points", "evidence", "standing"),
         "preference": ("preferred", "standing", "reason"),
         "name": ("name",),

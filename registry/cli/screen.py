@@ -88,7 +88,7 @@ def print_table(
     headers: Sequence[str], rows: Sequence[Sequence[str]], right: Sequence[bool] = (), indent: int = 2
 ) -> None:
     """A table with columns as wide as they need; the last one wraps."""
-    sides = [*right, *([False] * (len(headers) - len(right)))]
+    sides = [*right, *([False] * len(headers))][: len(headers)]
     widths = [max(len(str(row[i])) for row in (headers, *rows)) for i in range(len(headers))]
     margin = indent + sum(widths[:-1]) + 2 * (len(headers) - 1)
     for number, row in enumerate((headers, *rows)):

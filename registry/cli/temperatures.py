@@ -20,7 +20,7 @@ class Asked(NamedTuple):
 
 
 def read_temperatures(words: Sequence[str]) -> list[Asked]:
-    """The temperatures on a command line; `-` stands for stdin, one a line."""
+    """The temperatures on a command line; `-` stands for stdin, one a line; `#` starts a remark."""
     asked: list[Asked] = []
     for word in _join_units(words):
         if word == "-":
@@ -60,7 +60,7 @@ def _read_stdin() -> Iterator[Asked]:
         raise BadInput(f"stdin is no UTF-8 text ({error.reason}).") from None
     for number, line in enumerate(lines, 1):
         text = line.strip()
-        if text:
+        if text and not text.startswith("#"):
             try:
                 yield Asked(text, parse_temperature(text))
             except BadQuantity as error:

@@ -33,7 +33,7 @@ def build_files(items: Iterable[tuple[Record, Standing]]) -> dict[str, bytes]:
     """
     entries = sorted(items, key=lambda item: item[0].key)
     tables = {name: list(_rows(file, entries)) for name, file in FILES.items()}
-    present = [name for name, rows in tables.items() if rows]
+    present = list(FILES)  # empty ones too: their headers are a template
     text = json.dumps(descriptor(present), indent=2, ensure_ascii=False) + "\n"
     return {DESCRIPTOR: text.encode(), **{name: write_rows(FILES[name], tables[name]) for name in present}}
 

@@ -127,6 +127,9 @@ def _build_item(file: File, row: Row, points: Points, problems: list[CellProblem
         text = {"standing": standing, "standing_note": note}.get(column.name)
         if text is not None and (why := complain(column.cell, text, column.required)):
             problems.append(CellProblem(file.name, row.line, column.name, text, why))
+    if standing in ("withdrawn", "declined") and not note:
+        why = f"a record that is {standing} says why: fill standing_note."
+        problems.append(CellProblem(file.name, row.line, "standing_note", "", why))
     if file.record is Correlation:
         fields["coefficients"] = _parse_coefficients(file, row, problems)
     lines: list[int] = []

@@ -56,7 +56,11 @@ def read_package(path: Path) -> dict[str, bytes]:
     try:
         source: _Folder | _Zip = _Folder(path) if path.is_dir() else _Zip(path)
     except (zipfile.BadZipFile, NotImplementedError) as error:
-        raise _fault(path, path.name, f"it is neither a folder nor a zip that can be read ({error}).") from None
+        raise _fault(
+            path,
+            path.name,
+            f"it is no folder and no zip that can be read ({error}). Give the folder that holds {DESCRIPTOR}.",
+        ) from None
     with source:
         names = _resource_paths(path, source.read(DESCRIPTOR))
         return {name: source.read(name) for name in names}

@@ -65,7 +65,7 @@ def _read(file: File, text: str, problems: list[CellProblem]) -> Iterator[Row]:
                 header = fields
                 if not _header_holds(file, header, problems):
                     return
-            elif not fields:
+            elif not any(fields):  # a spreadsheet leaves such rows behind
                 continue
             elif len(fields) != len(header):
                 cells = "1 cell" if len(fields) == 1 else f"{len(fields)} cells"

@@ -131,7 +131,8 @@ class Coefficients:
         lengths = {stem: self._length(stem, given) for stem in self.series}
         missing += [f"{stem}1" for stem, length in lengths.items() if not length]
         if missing:
-            return f"coefficient {', '.join(missing)} is missing; the form takes {self}."
+            verb = "coefficient {} is" if len(missing) == 1 else "coefficients {} are"
+            return f"{verb.format(', '.join(missing))} missing; the form takes {self}."
         if len(set(lengths.values())) > 1:
             return f"{' and '.join(self.series)} must be equally many; the form takes {self}."
         known = {*self.required, *self.optional}

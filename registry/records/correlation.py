@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from typing import ClassVar
 
 from registry import cells
-from registry.cells import choice
+from registry.cells import choice, word
 from registry.errors import BadQuantity, Problem
 from registry.forms.catalogue import FORMS
 from registry.numerals import parse_number
@@ -37,7 +37,7 @@ class Correlation(Record):
     compound: str = entry(cells.KEY)
     property: str = entry(choice(*PROPERTIES))
     phase: str = entry(cells.PHASE)
-    form: str = entry(choice(*FORMS))
+    form: str = entry(word("the name of an equation form is allowed; `rangebook forms` lists them.", *FORMS))
     coefficients: Mapping[str, str] = dataclasses.field(default_factory=dict)
     temperature_unit: str = entry(TEMPERATURE_UNIT)
     value_unit: str = entry(UNIT)

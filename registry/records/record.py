@@ -6,7 +6,7 @@ import dataclasses
 from collections.abc import Iterator, Mapping
 from typing import Any, ClassVar, NamedTuple, Self
 
-from registry.cells import Cell, choice, complain
+from registry.cells import Cell, choice, complain, word
 from registry.errors import InvalidRecord, Problem
 from registry.numerals import parse_number
 from registry.properties import PROPERTIES
@@ -19,9 +19,7 @@ EVIDENCE = ("standard", "evaluated", "measured", "compiled", "estimated")
 STANDINGS = ("draft", "accepted", "declined", "withdrawn")
 OBTAINED = ("seen", "memory")
 
-UNIT = Cell(
-    "a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute.", UNITS.__contains__, values=tuple(UNITS)
-)
+UNIT = word("a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute.", *UNITS)
 TEMPERATURE_UNIT = choice(*(unit.name for unit in UNITS.values() if unit.dimension == "temperature"))
 SCALE = choice(*SCALES)
 EVIDENCE_WORD = choice(*EVIDENCE)

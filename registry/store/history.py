@@ -12,7 +12,7 @@ from registry.canonical import digest, encode
 from registry.merkle import hash_leaf, new_nodes, root_of
 from registry.store.tables import change, link, node, record, term
 
-__all__ = ["Change", "Draft", "append_change", "fold_term"]
+__all__ = ["Change", "Draft", "append_change", "envelope", "fold_term"]
 
 
 @dataclass(frozen=True)
@@ -73,6 +73,19 @@ def fold_term(text: str) -> str:
     return " ".join(text.casefold().split())
 
 
+def envelope(kind: str, key: str, revision: int, content: str) -> bytes:
+    """What the digest of a record is taken of: canonical JSON around its canonical content.
+
+    Examples
+    --------
+    >>> envelope("source", "s", 1, '{"citation":"c"}')
+    b'{"content":{"citation":"c"},"key":"s","kind":"source","revision":1}'
+    """
+    # the content is canonical already: encoding it again would cost more than the digest
+    rest = encode({"key": key, "kind": kind, "revision": revision}).decode()
+    return f'{{"content":{content},{rest[1:]}'.encode()
+
+
 def append_change(
     connection: Connection, author: str, reason: str, recorded_at: str, drafts: Sequence[Draft]
 ) -> Change:
@@ -128,10 +141,11 @@ def _number_records(
     for place, draft in enumerate(drafts):
         revision = revisions.get((draft.kind, draft.key), 0) + 1
         revisions[draft.kind, draft.key] = revision
-        envelope = {"kind": draft.kind, "key": draft.key, "revision": revision, "content": draft.content}
+        content = encode(draft.content).decode()
         yield {
             "id": first_id + place, "change": number, "place": place, "kind": draft.kind, "key": draft.key,
-            "revision": revision, "content": encode(draft.content).decode(), "digest": digest(encode(envelope)),
+            "revision": revision, "content": content,
+            "digest": digest(envelope(draft.kind, draft.key, revision, content)),
         }  # fmt: skip
 
 

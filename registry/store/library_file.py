@@ -87,6 +87,7 @@ class LibraryFile:
         self._inside = connection
         self._reader: Engine | None = None
         self._raw: sqlite3.Cursor | None = None
+        self._closed = False
 
     @classmethod
     def open(cls, path: Path) -> LibraryFile:
@@ -107,6 +108,7 @@ class LibraryFile:
 
     def close(self) -> None:
         """Release the file."""
+        self._closed = True
         if self._raw is not None:
             self._raw.close()
             self._raw = None
@@ -126,6 +128,8 @@ class LibraryFile:
             return view.position
 
     def _engine(self) -> Engine:
+        if self._closed:
+            raise BadInput(f"{self.path} is closed. Open the library again.")
         if self._reader is None:
             self._reader = open_engine(self.path)
         return self._reader

@@ -8,7 +8,8 @@ from typing import Any, NamedTuple
 
 from sqlalchemy import Connection, Select, and_, bindparam, func, select
 
-from registry.store.history import Change, fold_term
+from registry.canonical import digest
+from registry.store.history import Change, envelope, fold_term
 from registry.store.tables import change, library, link, record, term
 
 __all__ = [
@@ -40,7 +41,14 @@ class Row(NamedTuple):
 
 
 _newer = record.alias("newer")
-_COLUMNS = (record.c.kind, record.c.key, record.c.revision, record.c.change, record.c.content)
+_COLUMNS = (
+    record.c.kind,
+    record.c.key,
+    record.c.revision,
+    record.c.change,
+    record.c.content,
+    record.c.digest,
+)
 _POSITION: Any = bindparam("position")
 _NEWEST = and_(
     record.c.change <= _POSITION,
@@ -87,19 +95,14 @@ _TERMS = select(term.c.text).join(record, term.c.record == record.c.id).where(_N
 
 def _rows(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
     found = connection.execute(statement, values)
-    return [
-        Row(kind, key, revision, number, _parse(kind, key, content)) for kind, key, revision, number, content in found
-    ]
+    return [_restore(*row) for row in found]
 
 
-def _parse(kind: str, key: str, content: str) -> dict[str, Any]:
-    try:
-        parsed = json.loads(content)
-    except ValueError:
-        parsed = None
-    if not isinstance(parsed, dict):
-        raise DamagedRow(f"the {kind} {key!r} is damaged")
-    return parsed
+def _restore(kind: str, key: str, revision: int, number: int, content: str, expected: str) -> Row:
+    """A row as recorded: what was changed behind the program's back is noticed here."""
+    if digest(envelope(kind, key, revision, content)) != expected:
+        raise DamagedRow(f"the {kind} {key!r}, revision {revision}, is not what was recorded")
+    return Row(kind, key, revision, number, json.loads(content))
 
 
 def read_position(connection: Connection) -> int:

@@ -120,6 +120,12 @@ def trigger_statements() -> Iterator[str]:
     recursive triggers are on, so an insert over an existing key is stopped
     as well.
     """
+    # a record belongs to the change that is being appended, never to an earlier one
+    yield (
+        "CREATE TRIGGER record_no_insertion BEFORE INSERT ON record "
+        "WHEN NEW.change <> (SELECT max(number) FROM change) "
+        "BEGIN SELECT RAISE(ABORT, 'history is only appended to: record'); END"
+    )
     for table, keys in _KEYS.items():
         same = " AND ".join(f"{key} = NEW.{key}" for key in keys)
         if table == "record":
