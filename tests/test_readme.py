@@ -95,3 +95,15 @@ def test_the_python_example_runs(tour, capsys):
     assert capsys.readouterr().out.splitlines() == expected
     assert len(expected) >= 4
     assert sys.version_info >= (3, 11)
+
+
+def test_the_readme_counts_the_shelf(published):
+    """The numbers of correlations, compounds, fixed points and values that the README names are the shelf's."""
+    dossiers = [published.dossier(entry.key) for entry in published.compounds()]
+    correlations = sum(len(dossier.correlations) for dossier in dossiers)
+    with_some = sum(bool(dossier.correlations) for dossier in dossiers)
+    fixed = sum(len(dossier.fixed_points) for dossier in dossiers)
+    points = sum(len(entry.record.points) for dossier in dossiers for entry in dossier.datasets)
+    assert f"{correlations} correlations for {with_some} compounds" in README
+    assert f"{fixed} fixed points and {points} independent table values" in README
+    assert len(dossiers) - with_some == 3
