@@ -16,6 +16,9 @@ from registry.numerals import parse_number
 
 __all__ = ["Cell", "choice", "complain", "word"]
 
+_BLANK_LETTERS = "\u115f\u1160\u2800\u3164\uffa0"
+"""Letters and signs that are drawn as nothing."""
+
 FEW = 12
 """Up to here a message lists the words that are allowed."""
 
@@ -38,6 +41,9 @@ class Cell:
         All allowed texts, where they are few.
     prose : bool
         True for free text, which must not start like a spreadsheet formula.
+    suggest : bool
+        False if a word that only looks like an allowed one must not be
+        suggested, but for its case.
     """
 
     allowed: str
@@ -45,6 +51,7 @@ class Cell:
     limit: int = 200
     values: tuple[str, ...] = ()
     prose: bool = False
+    suggest: bool = True
 
 
 def complain(cell: Cell, text: str, required: bool) -> str:
@@ -69,13 +76,19 @@ def complain(cell: Cell, text: str, required: bool) -> str:
         return f"it starts with {text[0]}, which a spreadsheet would run as a formula."
     if unicodedata.normalize("NFC", text) != text:
         return "it is not in Unicode normal form C."
-    unseen = next((c for c in text if unicodedata.category(c) == "Cf"), "")
+    unseen = next((c for c in text if unicodedata.category(c) == "Cf" or c in _BLANK_LETTERS), "")
     if unseen:
         return f"it holds a character that is not seen (U+{ord(unseen):04X}); plain text is allowed."
     if cell.accepts(text):
         return ""
-    near = nearest_names(text, cell.values) if len(cell.values) > FEW else []
+    near = _suggest(cell, text) if len(cell.values) > FEW else []
     return cell.allowed + (f" Did you mean {join_names(near)}?" if near else "")
+
+
+def _suggest(cell: Cell, text: str) -> list[str]:
+    if cell.suggest:
+        return nearest_names(text, cell.values)
+    return [value for value in cell.values if value.casefold() == text.casefold().replace(" ", "")]
 
 
 def choice(*values: str) -> Cell:
@@ -83,9 +96,9 @@ def choice(*values: str) -> Cell:
     return Cell(f"one of {', '.join(values)} is allowed.", values.__contains__, values=values)
 
 
-def word(allowed: str, *values: str) -> Cell:
+def word(allowed: str, *values: str, suggest: bool = True) -> Cell:
     """A cell that holds one of many words, which a message does not list."""
-    return Cell(allowed, values.__contains__, values=values)
+    return Cell(allowed, values.__contains__, values=values, suggest=suggest)
 
 
 def _is_number(text: str) -> bool:
@@ -138,6 +151,7 @@ KEY = _pattern(
 )
 TEXT = Cell("text is allowed.", prose=True)
 LONG = Cell("text is allowed.", limit=4000, prose=True)
+SIGNED = Cell("text is allowed.", limit=4000)
 NUMBER = Cell("a number with a decimal point, such as 8.07131, is allowed.", _is_number, limit=60)
 YEAR = _pattern("a year of four digits is allowed.", r"[12]\d{3}")
 DOI = _pattern("a DOI such as 10.1063/1.555926 is allowed.", r"10\.\d{4,9}/\S+")

@@ -11,7 +11,7 @@ from datetime import UTC, datetime
 from pathlib import Path
 from typing import Any
 
-from registry.cells import LONG, TEXT, complain
+from registry.cells import SIGNED, TEXT, complain
 from registry.entries import in_force, with_standing
 from registry.errors import BadInput, quote
 from registry.reader import Reader
@@ -72,11 +72,10 @@ class Library(Reader):
             with self._lock, self._file.reading() as view:
                 plan = plan_load(view, package)
                 return {**plan.counts, "change": 0, "changed": plan.changed}
-        why = reason or f"Loaded {package.name}"
-        check_signature(author, why)
+        who, why = check_signature(author, reason or f"Loaded {package.name[:200]}")
         with self._lock, self._file.writing() as (view, append):
             plan = plan_load(view, package)
-            number = append(author, why, now_utc(), plan.drafts).number if plan.drafts else 0
+            number = append(who, why, now_utc(), plan.drafts).number if plan.drafts else 0
         return {**plan.counts, "change": number, "changed": plan.changed}
 
     def dump(self, path: str | os.PathLike[str]) -> dict[str, int]:
@@ -107,8 +106,10 @@ class Library(Reader):
         return {**rows, "waiting": waiting} if waiting else rows
 
 
-def check_signature(author: str, reason: str) -> None:
-    """A change names who and why, in plain text."""
-    for what, text, cell in (("author", author, TEXT), ("reason", reason, LONG)):
-        if why := complain(cell, text.strip(), required=True):
-            raise BadInput(f"{quote(text)} is no {what} of a change: {why}")
+def check_signature(author: str, reason: str) -> tuple[str, str]:
+    """Who and why, as they are recorded: plain text without blanks around it."""
+    signed = author.strip(), reason.strip()
+    for what, option, cell, text in zip(("author", "reason"), ("--as", "--note"), (TEXT, SIGNED), signed, strict=True):
+        if why := complain(cell, text, required=True):
+            raise BadInput(f"{quote(text)} is no {what} of a change ({option}): {why}")
+    return signed

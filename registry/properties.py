@@ -32,6 +32,8 @@ class Property:
     positive : bool
         True if a value is above zero by nature: a form that gives another one
         there does not answer.
+    signed : bool
+        True if a value may lie below zero.
     """
 
     name: str
@@ -42,6 +44,7 @@ class Property:
     lower: str = ""
     upper: str = ""
     positive: bool = False
+    signed: bool = False
 
 
 _ROWS = (
@@ -53,7 +56,7 @@ _ROWS = (
         "sublimation-pressure", "sublimation pressure", "pressure", "Pa", "solid",
         "", "triple-point-temperature", positive=True,
     ),
-    Property("melting-pressure", "melting pressure", "pressure", "Pa", "solid"),
+    Property("melting-pressure", "melting pressure", "pressure", "Pa", "solid", signed=True),
     Property(
         "enthalpy-of-vaporization", "enthalpy of vaporization", "molar-energy", "J/mol", "liquid",
         "triple-point-temperature", "critical-temperature",

@@ -135,6 +135,9 @@ def _why_not_covering(coverage: Coverage, candidate: Candidate, kelvin: float) -
     low, high = candidate.curve.window
     if low - rules.BOUND_TOLERANCE <= kelvin <= high + rules.BOUND_TOLERANCE:
         return f"Its window {_range(low, high)} holds the temperature, but {_why_limited(coverage, kelvin)}."
+    printed = candidate.record.window_kelvin()
+    if printed[0] <= kelvin <= printed[1]:
+        return f"Its window {_range(*printed)} holds the temperature, but its form has no value there."
     away = max(low - kelvin, kelvin - high)
     return f"Its window {_range(low, high)} ends {away:.6g} K {'above' if kelvin < low else 'below'} it."
 

@@ -333,6 +333,14 @@ def test_a_change_is_signed_in_plain_text(options, message, library, tmp_path, c
     assert snapshot(tmp_path) == before
 
 
+def test_a_reason_is_recorded_as_typed(library, tmp_path, capsys):
+    """A reason may start with a minus: it is no cell of a spreadsheet, and no temperature."""
+    package = write_folder(tmp_path / "package", build_base())
+    assert run(capsys, "load", str(package), "--note", "-5 % error", "--library", str(library))[0] == 0
+    with open_library(library) as book:
+        assert book.changes()[-1].reason == "-5 % error"
+
+
 def test_a_library_that_another_process_writes_to_is_busy(library, tmp_path, capsys, monkeypatch):
     """Exit code 4 after the wait; readers are not kept out."""
     monkeypatch.setattr(registry.store.engine, "BUSY_SECONDS", 0.05)

@@ -13,6 +13,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import re
 import sys
 from typing import Annotated, NoReturn
@@ -78,7 +79,7 @@ def protect_minus(arguments: list[str]) -> list[str]:
     >>> protect_minus(["lookup", "ammonia", "-40C", "-u", "bar"])
     ['lookup', 'ammonia', '−40C', '-u', 'bar']
     """
-    if "lookup" not in arguments:
+    if next((word for word in arguments if not word.startswith("-")), "") != "lookup":
         return arguments
     return [f"\u2212{word[1:]}" if re.match(r"-[0-9.]", word) else word for word in arguments]
 
@@ -92,8 +93,8 @@ def main(arguments: list[str] | None = None) -> None:
     except RangebookError as error:
         _stop(given, error, next(code for kind, code in EXIT_CODES if isinstance(error, kind)), str(error))
     except OSError as error:
-        place = f"{error.filename} cannot be used" if error.filename else "Reading or writing failed"
-        _stop(given, error, 2, f"{quote(place, 200)[1:-1]}: {error.strerror}.")
+        place = f"{quote(error.filename, 200)} cannot be used" if error.filename else "Reading or writing failed"
+        _stop(given, error, 2, f"{place}: {error.strerror}.")
     except SystemExit as stop:
         if stop.code == 2 and "--json" in given:
             print_json(_describe_error("Usage", "The words of the command are off; stderr says which.", 2))
@@ -118,6 +119,7 @@ def _stop(given: list[str], error: Exception, code: int, message: str) -> NoRetu
     if "--traceback" in given:
         raise error
     if "--json" in given:
-        print_json(_describe_error(type(error).__name__, message, code))
+        with contextlib.suppress(OSError):  # there may be no room left to say it
+            print_json(_describe_error(type(error).__name__, message, code))
     complain(message)
     sys.exit(code)

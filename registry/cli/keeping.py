@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from pathlib import Path
 from typing import Annotated
 
 import typer
@@ -39,7 +38,7 @@ def start(
 
 
 def load(
-    package: Annotated[Path, typer.Argument(help="A folder or .zip with datapackage.json.")],
+    package: Annotated[str, typer.Argument(help="A folder or .zip with datapackage.json.")],
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Check everything, record nothing.")] = False,
     note: Annotated[str, typer.Option("--note", help="Why it is loaded.", show_default=False)] = "",
     author: AuthorOption = "",
@@ -52,6 +51,7 @@ def load(
     """
     from registry.cli.screen import print_json, say
 
+    _refuse_empty(package)
     with open_chosen(library) as book:
         counts = book.load(package, author=name_author(author), reason=note, dry_run=dry_run)
     if as_json:
@@ -71,7 +71,7 @@ def load(
 
 
 def dump(
-    package: Annotated[Path, typer.Argument(help="A new folder, or a new name ending in .zip.")],
+    package: Annotated[str, typer.Argument(help="A new folder, or a new name ending in .zip.")],
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -81,6 +81,7 @@ def dump(
     """
     from registry.cli.screen import print_json, say
 
+    _refuse_empty(package)
     with open_chosen(library) as book:
         rows = book.dump(package)
     waiting = rows.pop("waiting", 0)
@@ -90,6 +91,13 @@ def dump(
     say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
         say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
+
+
+def _refuse_empty(package: str) -> None:
+    from registry.errors import BadInput
+
+    if not package:
+        raise BadInput("The name of the package is empty. Give a folder or a .zip with datapackage.json.")
 
 
 def upgrade(library: LibraryOption = None, as_json: JsonOption = False) -> None:

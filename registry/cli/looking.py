@@ -95,6 +95,7 @@ def _read_atmosphere(text: str) -> Any:
     from registry.errors import BadQuantity, GaugePressure
     from registry.quantities import parse_pressure
 
+    text = text.replace("\u2212", "-")
     try:
         return parse_pressure(text)
     except GaugePressure:

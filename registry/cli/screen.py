@@ -6,6 +6,7 @@ not asked for none.
 
 from __future__ import annotations
 
+import contextlib
 import json
 import math
 import os
@@ -23,16 +24,20 @@ CAUTION = (
 )
 
 
+def _is_terminal() -> bool:
+    return sys.stdout is not None and sys.stdout.isatty()
+
+
 def width() -> int:
     """Columns to use: the terminal's, between 60 and 110; 100 off a terminal."""
-    if not sys.stdout.isatty() and "COLUMNS" not in os.environ:
+    if not _is_terminal() and "COLUMNS" not in os.environ:
         return 100
     return max(60, min(110, shutil.get_terminal_size((100, 24)).columns))
 
 
 def emphasize(text: str, code: str = "1") -> str:
     """Text in bold or a colour, where that is wanted."""
-    plain = os.environ.get("NO_COLOR") or os.environ.get("TERM") == "dumb" or not sys.stdout.isatty()
+    plain = os.environ.get("NO_COLOR") or os.environ.get("TERM") == "dumb" or not _is_terminal()
     return text if plain else f"\x1b[{code}m{text}\x1b[0m"
 
 
@@ -51,7 +56,11 @@ def say(text: str = "") -> None:
 def complain(text: str) -> None:
     """A message, on stderr."""
     stream = sys.stderr
-    print(text.encode(stream.encoding or "utf-8", "backslashreplace").decode(stream.encoding or "utf-8"), file=stream)
+    if stream is None:
+        return
+    encoding = stream.encoding or "utf-8"
+    with contextlib.suppress(OSError):  # whoever read the messages has gone
+        print(text.encode(encoding, "backslashreplace").decode(encoding), file=stream)
 
 
 def print_json(content: Any) -> None:

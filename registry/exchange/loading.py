@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass
 from pathlib import Path
@@ -17,6 +18,9 @@ from registry.quantities import UNITS
 from registry.records import Correlation, Dataset, Point, Preference, PrintedValue, Record
 
 __all__ = ["Item", "find_cycle", "read_items"]
+
+_COMMA = re.compile(r",\s*\w+\s*=")
+"""Coefficients parted by commas."""
 
 Known = Callable[[str, str], Record | None]
 Points = dict[str, list[tuple[int, Point | None]]]
@@ -164,7 +168,7 @@ def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> di
     found: dict[str, str] = {}
     for part in text.split(";"):
         name, equals, value = (word.strip() for word in part.partition("="))
-        if not equals or not name or not value or name in found or "," in value:
+        if not equals or not name or not value or name in found or _COMMA.search(value):
             why = "coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed, each once."
             problems.append(CellProblem(file.name, row.line, "coefficients", text, why))
             return {}

@@ -49,13 +49,12 @@ def read_package(path: Path) -> dict[str, bytes]:
         If it is no package, names a file outside itself, or unpacks to more
         than the limits.
     """
-    if path == Path():
-        raise BadInput(f"The name of the package is empty. Give a folder or a .zip with {DESCRIPTOR}.")
+    _refuse_nul(path)
     if not path.exists():
         raise BadInput(f"There is nothing at {path}. Give a folder or a .zip with {DESCRIPTOR}.")
     try:
         source: _Folder | _Zip = _Folder(path) if path.is_dir() else _Zip(path)
-    except (zipfile.BadZipFile, NotImplementedError) as error:
+    except (zipfile.BadZipFile, NotImplementedError, UnicodeDecodeError) as error:
         raise _fault(
             path,
             path.name,
@@ -64,6 +63,11 @@ def read_package(path: Path) -> dict[str, bytes]:
     with source:
         names = _resource_paths(path, source.read(DESCRIPTOR))
         return {name: source.read(name) for name in names}
+
+
+def _refuse_nul(path: Path) -> None:
+    if "\x00" in str(path):
+        raise BadInput(f"{quote(path)} is no name of a package: it holds a NUL character.")
 
 
 def _fault(package: Path, file: str, why: str) -> InvalidPackage:
@@ -185,6 +189,7 @@ def write_package(path: Path, files: Mapping[str, bytes]) -> None:
     BadInput
         If something is there already or cannot be written.
     """
+    _refuse_nul(path)
     if path.exists():
         raise BadInput(f"{path} exists already; nothing was written. Give another name, or remove it first.")
     if not path.parent.is_dir():

@@ -133,14 +133,14 @@ class Coefficients:
         if missing:
             verb = "coefficient {} is" if len(missing) == 1 else "coefficients {} are"
             return f"{verb.format(', '.join(missing))} missing; the form takes {self}."
+        late = [n for n in given if (m := _NUMBERED.fullmatch(n)) and int(m[2]) > lengths.get(m[1], 100)]
+        if late:
+            return f"{', '.join(late)} stands after a gap in the numbers; the form takes {self}."
         if len(set(lengths.values())) > 1:
             return f"{' and '.join(self.series)} must be equally many; the form takes {self}."
         known = {*self.required, *self.optional}
         known |= {f"{stem}{i}" for stem, length in lengths.items() for i in range(1, length + 1)}
         extra = [name for name in given if name not in known]
-        stems = [m[1] for name in extra if (m := _NUMBERED.fullmatch(name))]
-        if extra and len(stems) == len(extra) and set(stems) <= set(self.series):
-            return f"{', '.join(extra)} comes after a gap; the form takes {self}, without a gap."
         if extra:
             return f"{', '.join(extra)} is no coefficient of the form, which takes {self}."
         for name, text in given.items():

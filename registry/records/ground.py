@@ -134,8 +134,11 @@ class Dataset(Record):
         """Problems of one point; the field says which."""
         place = f"points.{number}."
         yield from temperature_problems(f"{place}temperature", point.temperature, self.temperature_unit)
-        if PROPERTIES[self.property].positive and parse_number(point.value) <= 0:
+        prop, value = PROPERTIES[self.property], parse_number(point.value)
+        if prop.positive and value <= 0:
             yield Problem(f"{place}value", point.value, f"a {self.property} is above zero.")
+        elif value < 0 and not prop.signed:
+            yield Problem(f"{place}value", point.value, f"{self.property} is not below zero.")
         for name in ("temperature_uncertainty", "value_uncertainty"):
             text = getattr(point, name)
             if text and parse_number(text) <= 0:

@@ -19,7 +19,8 @@ EVIDENCE = ("standard", "evaluated", "measured", "compiled", "estimated")
 STANDINGS = ("draft", "accepted", "declined", "withdrawn")
 OBTAINED = ("seen", "memory")
 
-UNIT = word("a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute.", *UNITS)
+# barg looks like bar, and must not be taken for it
+UNIT = word("a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute.", *UNITS, suggest=False)
 TEMPERATURE_UNIT = choice(*(unit.name for unit in UNITS.values() if unit.dimension == "temperature"))
 SCALE = choice(*SCALES)
 EVIDENCE_WORD = choice(*EVIDENCE)

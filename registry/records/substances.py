@@ -53,7 +53,7 @@ class Compound(Record):
         if not self.molar_mass:
             return
         if not self.molar_mass_unit:
-            yield Problem("molar_mass_unit", "", "g/mol is allowed.")
+            yield Problem("molar_mass_unit", "", "it is empty; g/mol is allowed.")
         if abs(to_float(self.molar_mass) / expected - 1.0) > 5e-4:
             yield Problem("molar_mass", self.molar_mass, f"{self.formula} makes {expected:.6g} g/mol, within 0.05 %.")
         for name in ("source", "locator", "obtained"):

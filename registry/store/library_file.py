@@ -38,8 +38,10 @@ def locate(place: str | os.PathLike[str]) -> Path:
         raise BadInput(f"{quote(text)} is no place of a library: a sqlite URL has three slashes, sqlite:///team.db.")
     if "://" in text:
         raise BadInput(f"{text.split('://')[0]} libraries are not supported yet. Give a path or a sqlite:/// URL.")
-    if not text or "\x00" in text:
+    if not text:
         raise BadInput("The place of a library is empty. Give a path or a sqlite:/// URL.")
+    if "\x00" in text:
+        raise BadInput(f"{quote(text)} is no place of a library: it holds a NUL character.")
     return Path(text)
 
 

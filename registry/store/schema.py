@@ -64,7 +64,7 @@ def read_version(path: Path) -> int:
         if "locked" in str(error) or "busy" in str(error):
             raise LibraryBusy(place) from error
         raise NotALibrary(place, f"SQLite says {error}") from error
-    except sqlite3.DatabaseError as error:
+    except (sqlite3.DatabaseError, UnicodeDecodeError) as error:
         raise NotALibrary(place, f"SQLite says {error}") from error
     if application != APPLICATION_ID or not tables:
         raise NotALibrary(place, "it is another program's database")

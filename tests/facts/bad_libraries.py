@@ -43,24 +43,24 @@ DAMAGED = (
 )  # fmt: skip
 
 # who loads a good package and why, the message
-_NO_AUTHOR = "' ' is no author of a change: it is empty; text is allowed."
+_NO_AUTHOR = "'' is no author of a change (--as): it is empty; text is allowed."
 SIGNATURES = (
     ("a blank author", ("--as", " "), _NO_AUTHOR),
-    ("an author with a tab", ("--as", "a\tb"), f"'a\\tb' is no author of a change: {CONTROL}"),
+    ("an author with a tab", ("--as", "a\tb"), f"'a\\tb' is no author of a change (--as): {CONTROL}"),
     ("an author with a character that is not seen", ("--as", "a\u200bb"),
-     "'a\\u200bb' is no author of a change: it holds a character that is not seen (U+200B); plain text is allowed."),
+     "'a\\u200bb' is no author of a change (--as): it holds a character that is not seen (U+200B); "
+     "plain text is allowed."),
     ("an author of 201 letters", ("--as", "x" * 201),
-     f"'{'x' * 59}... (201 characters) is no author of a change: it is longer than 200 characters."),
+     f"'{'x' * 59}... (201 characters) is no author of a change (--as): it is longer than 200 characters."),
     ("an author that starts with =", ("--as", "=x"),
-     "'=x' is no author of a change: it starts with =, which a spreadsheet would run as a formula."),
-    ("a blank reason", ("--note", " "), "' ' is no reason of a change: it is empty; text is allowed."),
-    ("an escape sequence for a reason", ("--note", "\x1b[31m"), f"'\\x1b[31m' is no reason of a change: {CONTROL}"),
+     "'=x' is no author of a change (--as): it starts with =, which a spreadsheet would run as a formula."),
+    ("a blank reason", ("--note", " "), "'' is no reason of a change (--note): it is empty; text is allowed."),
+    ("an escape sequence for a reason", ("--note", "\x1b[31m"),
+     f"'\\x1b[31m' is no reason of a change (--note): {CONTROL}"),
     ("a reason of 4001 letters", ("--note", "n" * 4001),
-     f"'{'n' * 59}... (4001 characters) is no reason of a change: it is longer than 4000 characters."),
+     f"'{'n' * 59}... (4001 characters) is no reason of a change (--note): it is longer than 4000 characters."),
     ("a reason of a million letters", ("--note", "n" * 10**6),
-     f"'{'n' * 59}... (1000000 characters) is no reason of a change: it is longer than 4000 characters."),
-    ("a reason with a minus first, shown as typed", ("--note", "-5 % error"),
-     "'-5 % error' is no reason of a change: it starts with -, which a spreadsheet would run as a formula."),
+     f"'{'n' * 59}... (1000000 characters) is no reason of a change (--note): it is longer than 4000 characters."),
 )  # fmt: skip
 
 # in a folder with own.db (a library), taken/ and taken.txt

@@ -200,9 +200,10 @@ PACKAGES = (
         "n and t must be equally many; the form takes Tc, c0, n1, n2 ..., t1, t2 ....")),
     ("numbered coefficients with a gap", *_in_cell(
         _C, 3, "coefficients", "Tc=618.4; c0=436.0; n1=741.8; n3=338.5; t1=1/3; t3=2/3",
-        "n3, t3 comes after a gap; the form takes Tc, c0, n1, n2 ..., t1, t2 ..., without a gap.")),
+        "n3, t3 stands after a gap in the numbers; the form takes Tc, c0, n1, n2 ..., t1, t2 ....")),
     ("a coefficient with thousands separated", *_in_cell(
-        _C, 2, "coefficients", "A=22.14808; B=3,909.70; C=-45.63", COEFFICIENTS)),
+        _C, 2, "coefficients", "A=22.14808; B=3,909.70; C=-45.63",
+        "coefficient B: '3,909.70' is not a printed number.")),
     ("commas between coefficients", *_in_cell(
         _C, 2, "coefficients", "A=22.14808, B=3909.70, C=-45.63", COEFFICIENTS)),
     ("a semicolon at the end", *_in_cell(_C, 2, "coefficients", f"{_LOW};", COEFFICIENTS)),
@@ -242,7 +243,7 @@ PACKAGES = (
     ("a unit of another property", *_in_cell(_C, 2, "value_unit", "J/mol", f"one of {PRESSURES} is allowed.")),
     ("a unit by another spelling", *_in_cell(
         _C, 2, "value_unit", "mm Hg", "a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute. "
-        "Did you mean mmHg or cmHg?")),
+        "Did you mean mmHg?")),
     ("degrees Celsius in a form that needs kelvin", *_in_cell(
         _C, 4, "temperature_unit", "degC", "the form counts from absolute zero: K or degR.")),
     ("a temperature unit by another spelling", *_in_cell(
