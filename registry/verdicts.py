@@ -236,7 +236,7 @@ def _find_phase_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str
         source = f"{limits.upper:.9g} K ({point.record.source})"
         if prop.upper == "critical-temperature":
             text = f"{_kelvin(kelvin)} lies above the critical temperature of {name}, {source}: there is no liquid."
-            return "above-critical", text, ""
+            return "above-critical", text, _show_map(coverage)
         text = f"{_kelvin(kelvin)} lies above the triple temperature of {name}, {source}: the solid has melted."
         return "above-triple", text, "Ask for the vapour pressure: --property vapor-pressure."
     if kelvin < limits.lower:
@@ -258,12 +258,16 @@ def _below_triple(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
     ]  # fmt: skip
     if metastable and not coverage.metastable:
         advice.append(f"The metastable liquid is covered by {join_names(metastable)}: ask with --metastable.")
-    return "below-triple", text, " ".join(advice)
+    return "below-triple", text, " ".join(advice) or _show_map(coverage)
+
+
+def _show_map(coverage: Coverage) -> str:
+    return f"`rangebook coverage {coverage.dossier.compound.key} --property {coverage.property}` shows the map."
 
 
 def _find_window_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
     name, prop = coverage.dossier.compound.key, coverage.property
-    advice = f"`rangebook coverage {name} --property {prop}` shows the map."
+    advice = _show_map(coverage)
     if any(gap.low <= kelvin < gap.high for gap in coverage.gaps):
         text = f"{_kelvin(kelvin)} falls into a gap between two windows for {prop} of {name}."
         return "gap", text, advice

@@ -578,7 +578,10 @@ def test_json_is_one_object_when_it_fails(arguments, kind, code, own_path, tmp_p
     arguments = [text.replace("{folder}", str(tmp_path)) for text in arguments]
     before = snapshot(tmp_path)
     found, out, err = run(capsys, arguments[0], "--json", "--library", str(own_path), *arguments[1:])
-    assert json.loads(out) == {"error": {"kind": kind, "message": err.removesuffix("\n"), "exit_code": code}}
+    error = json.loads(out)["error"]
+    problems = error.pop("problems", [])
+    assert error == {"kind": kind, "message": err.removesuffix("\n"), "exit_code": code}
+    assert [p["file"] for p in problems] == (["names.csv"] if kind == "InvalidPackage" else [])
     assert found == code
     assert snapshot(tmp_path) == before
 

@@ -2,7 +2,7 @@
 
 `facts/own_check_points.csv` was worked out outside the program when the shelf
 was collected: a point from a source beside each row and how far the
-correlation lies from it. It guards the transcription, the form and the units
+correlation lies from it. It guards the copying, the form and the units
 at once: a wrong digit, base or unit moves the deviation.
 """
 

@@ -14,9 +14,11 @@
 from __future__ import annotations
 
 import contextlib
+import dataclasses
 import re
 import sys
-from typing import Annotated, NoReturn
+from collections.abc import Sequence
+from typing import Annotated, Any, NoReturn
 
 import typer
 
@@ -110,8 +112,11 @@ def _refuse_surrogates(arguments: list[str]) -> None:
             raise BadInput(f"{quote(word)} is no text in UTF-8. Type it again, or set the terminal to UTF-8.")
 
 
-def _describe_error(kind: str, message: str, code: int) -> dict[str, dict[str, object]]:
-    return {"error": {"kind": kind, "message": message, "exit_code": code}}
+def _describe_error(kind: str, message: str, code: int, problems: Sequence[Any] = ()) -> dict[str, Any]:
+    described: dict[str, Any] = {"kind": kind, "message": message, "exit_code": code}
+    if problems:
+        described["problems"] = [dataclasses.asdict(problem) for problem in problems]
+    return {"error": described}
 
 
 def _stop(given: list[str], error: Exception, code: int, message: str) -> NoReturn:
@@ -120,6 +125,6 @@ def _stop(given: list[str], error: Exception, code: int, message: str) -> NoRetu
         raise error
     if "--json" in given:
         with contextlib.suppress(OSError):  # there may be no room left to say it
-            print_json(_describe_error(type(error).__name__, message, code))
+            print_json(_describe_error(type(error).__name__, message, code, getattr(error, "problems", ())))
     complain(message)
     sys.exit(code)

@@ -72,7 +72,7 @@ class FixedPoint(Record):
 
 @dataclass(frozen=True)
 class PrintedValue(Record):
-    """A value that a source prints for its own correlation: proves the transcription."""
+    """A value that a source prints for its own correlation: shows that it was copied right."""
 
     kind: ClassVar[str] = "printed-value"
     key: str = entry(cells.KEY)

@@ -169,20 +169,24 @@ REQUESTS = (
     ("above the critical temperature", "published", ("lookup", "water", "700K"), 3,
      "Refused (above-critical): 700 K lies above the critical temperature of water, 647.096 K "
      "(iapws-r2-83-sr1-86-r6-95): there is no liquid. "
-     "Nearest: water-if97 (273.15 to 647.096 K) is 52.904 K away."),
+     "Nearest: water-if97 (273.15 to 647.096 K) is 52.904 K away. "
+     "`rangebook coverage water --property vapor-pressure` shows the map."),
     ("above the critical temperature, inside a window", "scenario", ("lookup", "dunmarane", "555K"), 3,
      "Refused (above-critical): 555 K lies above the critical temperature of dunmarane, 552.6 K "
      "(invented-handbook-d): there is no liquid. "
-     "Nearest: dunmarane-antoine-past-critical (480 to 552.6 K) is 2.4 K away."),
+     "Nearest: dunmarane-antoine-past-critical (480 to 552.6 K) is 2.4 K away. "
+     "`rangebook coverage dunmarane --property vapor-pressure` shows the map."),
     ("above the critical temperature, for a density", "published",
      ("lookup", "water", "700K", "-p", "saturated-liquid-density"), 3,
      "Refused (above-critical): 700 K lies above the critical temperature of water, 647.096 K "
      "(iapws-r2-83-sr1-86-r6-95): there is no liquid. "
-     "Nearest: water-density-sr1-86 (273.16 to 647.096 K) is 52.904 K away."),
+     "Nearest: water-density-sr1-86 (273.16 to 647.096 K) is 52.904 K away. "
+     "`rangebook coverage water --property saturated-liquid-density` shows the map."),
     ("below the triple temperature", "published", ("lookup", "ethanol", "100K"), 3,
      "Refused (below-triple): 100 K lies below the triple temperature of ethanol, 159 K "
      "(poling-prausnitz-oconnell-5): the stable phase is solid. "
-     "Nearest: ethanol-antoine-low (216.15 to 353.15 K) is 116.15 K away."),
+     "Nearest: ethanol-antoine-low (216.15 to 353.15 K) is 116.15 K away. "
+     "`rangebook coverage ethanol --property vapor-pressure` shows the map."),
     ("below the triple temperature, with ways out", "scenario", ("lookup", "corvexane", "155K"), 3,
      "Refused (below-triple): 155 K lies below the triple temperature of corvexane, 158.42 K "
      "(invented-evaluation-f): the stable phase is solid. "
