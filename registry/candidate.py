@@ -38,6 +38,8 @@ class Candidate:
         Its stated uncertainty, with the rank of each piece in percent.
     year : int
         Year of its source, 0 if not stated.
+    width : float
+        The width of its reach, K, without a metastable range.
     """
 
     entry: Entry[Correlation]
@@ -46,6 +48,7 @@ class Candidate:
     counted: Counted
     pieces: tuple[tuple[Piece, float], ...]
     year: int
+    width: float
 
     @property
     def key(self) -> str:
@@ -56,11 +59,6 @@ class Candidate:
     def record(self) -> Correlation:
         """The correlation."""
         return self.entry.record
-
-    @property
-    def width(self) -> float:
-        """The width of its reach, K."""
-        return max(self.reach[1] - self.reach[0], 0.0)
 
     def covers(self, kelvin: float) -> bool:
         """True if it may answer there, its standing aside."""
@@ -109,7 +107,9 @@ def build_candidate(
     counted = count_correlation(record, curve, values)
     pieces = parse_uncertainty(record.uncertainty, PROPERTIES[record.property].dimension)
     ranked = tuple((piece, _rank_piece(pieces, i, curve, reach)) for i, piece in enumerate(pieces))
-    return Candidate(entry, curve, reach, counted, ranked, dossier.year(record.source))
+    stable = _find_reach(record, curve, limits, metastable=False)
+    width = max(stable[1] - stable[0], 0.0)
+    return Candidate(entry, curve, reach, counted, ranked, dossier.year(record.source), width)
 
 
 def _find_reach(record: Correlation, curve: Curve, limits: Limits, metastable: bool) -> tuple[float, float]:

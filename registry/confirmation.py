@@ -18,6 +18,7 @@ from registry.dossier import Dossier, Entry
 from registry.numerals import last_digit_unit, parse_number
 from registry.quantities import UNITS
 from registry.records import EVIDENCE, Correlation, Dataset, FixedPoint
+from registry.scales import SCALES
 
 __all__ = ["Counted", "Value", "count_correlation", "count_fixed_point", "gather_values"]
 
@@ -131,12 +132,13 @@ def _count_agreeing(curve: Curve, values: Sequence[Value]) -> int:
 
 def _dataset_values(data: Dataset, molar_mass: float) -> Iterator[Value]:
     temperature, unit = UNITS[data.temperature_unit], UNITS[data.value_unit]
+    scale = SCALES[data.temperature_scale]
     factor = unit.factor * (Fraction(molar_mass) if unit.per_molar_mass else 1)
     for point in data.points:
         yield Value(
             data.source,
             data.phase,
-            float(temperature.to_si(parse_number(point.temperature))),
+            scale.to_its90(float(temperature.to_si(parse_number(point.temperature)))),
             float(parse_number(point.value) * factor),
             float(last_digit_unit(point.temperature) * temperature.factor / 2),
             float(last_digit_unit(point.value) * factor / 2),

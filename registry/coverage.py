@@ -126,7 +126,8 @@ class Coverage:
             if left.candidate and right.candidate:
                 # the bound itself: an edge lies the tolerance beside it
                 at = round(left.high, 8)
-                jump = 100.0 * (right.candidate.curve.value(at) / left.candidate.curve.value(at) - 1.0)
+                before, after = left.candidate.curve.value(at), right.candidate.curve.value(at)
+                jump = 100.0 * (after / before - 1.0) if before else math.inf
                 yield Seam(at, left.candidate.key, right.candidate.key, jump)
 
     @property

@@ -61,7 +61,7 @@ def read_dossier(view: View, key: str) -> Dossier:
     keys = {entry.key for entry in of_kind["correlation"]}
     preferences = [
         entry
-        for entry in in_force(with_standing(view, view.kind("preference")))
+        for entry in in_force(with_standing(view, view.revisions("preference")))
         if {entry.record.correlation, entry.record.over} & keys
     ]
     cited = {entry.record.source for kind in ("correlation", "fixed-point", "dataset") for entry in of_kind[kind]}

@@ -69,7 +69,7 @@ class Library(Reader):
 
         package = Path(path)
         if dry_run:
-            with self._lock, self._file.reading() as view:
+            with self._lock, self._reading() as view:
                 plan = plan_load(view, package)
                 return {**plan.counts, "change": 0, "changed": plan.changed}
         who, why = check_signature(author, reason or f"Loaded {package.name[:200]}")
@@ -97,7 +97,7 @@ class Library(Reader):
         """
         from registry.exchange.dumping import dump_items
 
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             entries = [e for kind in KINDS if kind != "review" for e in with_standing(view, view.revisions(kind))]
         counting = list(in_force(entries))
         newest = {(e.record.kind, e.key): e.revision for e in entries}

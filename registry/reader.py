@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import threading
+from contextlib import AbstractContextManager
 from typing import Any, Self, overload
 
 import numpy as np
@@ -11,16 +12,17 @@ from numpy.typing import ArrayLike, NDArray
 from registry.answers import Answer, Batch
 from registry.coverage import Coverage, build_coverage
 from registry.dossier import Dossier, Entry
-from registry.entries import entry_of, read_dossier, with_standing
+from registry.entries import entry_of, in_force, read_dossier, with_standing
 from registry.errors import BadInput, NotALibrary, Refused, UnknownKey, quote
 from registry.naming import join_names, nearest_names
 from registry.properties import find_property
 from registry.records import KINDS, Compound, Correlation
 from registry.refusals import Refusal
-from registry.store.library_file import LibraryFile
+from registry.store.history import Change
+from registry.store.library_file import LibraryFile, View
 from registry.verdicts import refuse
 
-__all__ = ["Reader"]
+__all__ = ["Reader", "answer_one"]
 
 
 class Reader:
@@ -30,10 +32,14 @@ class Reader:
     ----------
     file : LibraryFile
         The open database.
+    position : int, optional
+        The change up to which everything is read; the newest one if none is
+        given.
     """
 
-    def __init__(self, file: LibraryFile) -> None:
+    def __init__(self, file: LibraryFile, position: int | None = None) -> None:
         self._file = file
+        self._position = position
         self._lock = threading.RLock()
         self._stamp = -1
         self._coverages: dict[tuple[str, str, str, bool], Coverage] = {}
@@ -59,8 +65,12 @@ class Reader:
 
     @property
     def position(self) -> int:
-        """The number of the last change."""
-        return self._file.read_position()
+        """The number of the change up to which the library is read."""
+        with self._lock, self._reading() as view:
+            return view.position
+
+    def _reading(self) -> AbstractContextManager[View]:
+        return self._file.reading(self._position)
 
     @overload
     def lookup(
@@ -122,10 +132,10 @@ class Reader:
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable)
         if isinstance(temperature, float):
-            return _answer_one(coverage, temperature)
+            return answer_one(coverage, temperature)
         kelvin = _as_kelvin(temperature)
         if kelvin.ndim == 0:
-            return _answer_one(coverage, float(kelvin))
+            return answer_one(coverage, float(kelvin))
         return Batch(kelvin, *coverage.evaluate(kelvin), coverage)
 
     def coverage(
@@ -153,13 +163,17 @@ class Reader:
         request = (compound, property, phase or "", metastable)
         # one thread at a time: they share one connection
         with self._lock:
-            stamp = self._file.read_stamp()
-            if stamp != self._stamp:
-                self._coverages, self._dossiers, self._stamp = {}, {}, stamp
+            self._refresh()
             found = self._coverages.get(request)
             if found is None:
                 found = self._coverages[request] = self._build_coverage(*request)
             return found
+
+    def _refresh(self) -> None:
+        """Forget what was read if anybody has changed the file since."""
+        stamp = self._file.read_stamp()
+        if stamp != self._stamp:
+            self._coverages, self._dossiers, self._stamp = {}, {}, stamp
 
     def _build_coverage(self, compound: str, prop: str, phase: str, metastable: bool) -> Coverage:
         row = find_property(prop)
@@ -203,7 +217,7 @@ class Reader:
         """
         if not isinstance(text, str):
             raise BadInput(f"{quote(text)} is no name of a compound; a text is allowed.")
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             if view.current("compound", [text]):
                 return text
             found = {str(row.content.get("compound", row.key)) for row in view.find_term(text)}
@@ -230,20 +244,22 @@ class Reader:
         Dossier
             Records of every standing, at the newest position.
         """
-        key = self.find_compound(compound)
-        if key not in self._dossiers:
-            with self._lock, self._file.reading() as view:
-                self._dossiers[key] = read_dossier(view, key)
-        return self._dossiers[key]
+        with self._lock:
+            self._refresh()
+            key = self.find_compound(compound)
+            if key not in self._dossiers:
+                with self._reading() as view:
+                    self._dossiers[key] = read_dossier(view, key)
+            return self._dossiers[key]
 
     def compounds(self) -> list[Entry[Compound]]:
         """Every compound, by key."""
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             return [entry_of(row) for row in view.kind("compound")]
 
     def correlations(self) -> list[Entry[Correlation]]:
         """Every correlation, by key, in its newest revision."""
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             return with_standing(view, view.kind("correlation"))
 
     def entry(self, key: str) -> Entry[Any]:
@@ -264,7 +280,7 @@ class Reader:
         UnknownKey
             If there is none; carries the nearest keys.
         """
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             for kind in KINDS:
                 rows = view.current(kind, [key])
                 if rows:
@@ -274,7 +290,7 @@ class Reader:
         except UnknownKey as error:
             if error.several:
                 raise
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             keys = [row.key for kind in KINDS if kind not in ("name", "review") for row in view.kind(kind)]
             raise UnknownKey("record", key, nearest=nearest_names(key, [*keys, *view.terms()]))
 
@@ -289,10 +305,11 @@ class Reader:
         Returns
         -------
         list of Entry
-            By kind and key; every revision that refers to it.
+            By kind and key, each in the revision that counts.
         """
-        with self._lock, self._file.reading() as view:
-            return with_standing(view, [row for row in view.linked(kind, key) if row.kind != "review"])
+        with self._lock, self._reading() as view:
+            rows = [row for row in view.linked(kind, key) if row.kind != "review"]
+            return list(in_force(with_standing(view, rows)))
 
     def source_citation(self, key: str) -> str:
         """The citation of a source.
@@ -307,13 +324,13 @@ class Reader:
         str
             Its line of text, or the key if no such source is recorded.
         """
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             rows = view.current("source", [key])
         return str(rows[0].content["citation"]) if rows else key
 
-    def changes(self) -> list[Any]:
+    def changes(self) -> list[Change]:
         """The headers of all changes, in order."""
-        with self._lock, self._file.reading() as view:
+        with self._lock, self._reading() as view:
             return view.changes()
 
 
@@ -330,7 +347,8 @@ def _plain(phase: str) -> str:
     return phase.casefold().replace("-", " ")
 
 
-def _answer_one(coverage: Coverage, kelvin: float) -> Answer:
+def answer_one(coverage: Coverage, kelvin: float) -> Answer:
+    """The answer at one temperature, K; raises `Refused` where there is none."""
     value, candidate = coverage.value_at(kelvin)
     if candidate is None:
         raise Refused(_refuse_one(coverage, kelvin))

@@ -157,6 +157,19 @@ class Scale:
                 value[inside], rate[inside] = branch(kelvin[inside])
         return value, rate
 
+    def to_its90(self, number: float) -> float:
+        """The ITS-90 temperature, K, to which this scale gives a number.
+
+        Examples
+        --------
+        >>> round(SCALES["IPTS-68"].to_its90(373.15), 4)
+        373.1244
+        """
+        kelvin = np.array([number])
+        for _ in range(4):  # the shift changes by less than a thousandth of itself in a kelvin
+            kelvin = number - self.shift(kelvin)[0]
+        return float(kelvin[0])
+
     def reaches(self, kelvin: float) -> bool:
         """True if the conversion is defined at this ITS-90 temperature, K."""
         return not self.branches or any(lower <= kelvin < upper for lower, upper, _ in self.branches)

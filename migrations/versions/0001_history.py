@@ -18,7 +18,7 @@ _SAME_ROW = {
     "node": "level = NEW.level AND place = NEW.place",
     "record": "id = NEW.id OR (kind = NEW.kind AND key = NEW.key AND revision = NEW.revision)"
     " OR (change = NEW.change AND place = NEW.place)",
-    "link": "record = NEW.record AND role = NEW.role",
+    "link": "record = NEW.record AND role = NEW.role AND kind = NEW.kind AND key = NEW.key",
     "term": "record = NEW.record AND text = NEW.text",
 }
 
@@ -102,7 +102,7 @@ def _create_records() -> None:
         sa.Column("role", sa.Text, nullable=False),
         sa.Column("kind", sa.Text, nullable=False),
         sa.Column("key", sa.Text, nullable=False),
-        sa.PrimaryKeyConstraint("record", "role", name="pk_link"),
+        sa.PrimaryKeyConstraint("record", "role", "kind", "key", name="pk_link"),
         sa.ForeignKeyConstraint(["record"], ["record.id"], name="fk_link_record_record"),
         sqlite_strict=True,
     )

@@ -18,8 +18,7 @@ from registry.cli.options import (
 if TYPE_CHECKING:
     from registry.answers import Answer, Refusal
     from registry.cli.temperatures import Asked
-
-Found = "list[tuple[Asked, Answer | Refusal]]"
+    from registry.coverage import Coverage
 
 REFUSED = 3
 """Exit code when a temperature was refused."""
@@ -56,7 +55,8 @@ def lookup(
     with open_chosen(library) as book:
         to = _choose_unit(unit, atmosphere, prop)
         coverage = book.coverage(compound, property=prop, phase=phase or None, metastable=metastable)
-        found = [(one, _answer(book, coverage, one, metastable)) for one in asked]
+        # all at the one position that this coverage was read at
+        found = [(one, _answer(coverage, one)) for one in asked]
         refusals = [result for _, result in found if not isinstance(result, Answer)]
         if as_json:
             print_json(_describe(coverage.dossier.compound.key, prop, found, to))
@@ -68,14 +68,12 @@ def lookup(
         raise typer.Exit(REFUSED)
 
 
-def _answer(book: Any, coverage: Any, asked: Asked, metastable: bool) -> Answer | Refusal:
+def _answer(coverage: Coverage, asked: Asked) -> Answer | Refusal:
     from registry.errors import Refused
+    from registry.reader import answer_one
 
     try:
-        return book.lookup(
-            coverage.dossier.compound.key, asked.kelvin, property=coverage.property, phase=coverage.phase or None,
-            metastable=metastable,
-        )  # fmt: skip
+        return answer_one(coverage, asked.kelvin)
     except Refused as error:
         return error.refusal
 

@@ -81,13 +81,14 @@ def _print_points(record: Dataset) -> None:
     say()
     columns = [
         (record.temperature_unit, [point.temperature for point in record.points]),
+        (f"+/- {record.temperature_unit}", [point.temperature_uncertainty for point in record.points]),
         (record.value_unit, [point.value for point in record.points]),
         (f"+/- {record.value_unit}", [point.value_uncertainty for point in record.points]),
         ("note", [point.note for point in record.points]),
     ]
     filled = [(header, cells) for header, cells in columns if any(cells)]
     rows = list(zip(*(cells for _, cells in filled), strict=True))
-    print_table([header for header, _ in filled], rows, right=(True, True, True))
+    print_table([header for header, _ in filled], rows, right=(True, True, True, True))
 
 
 def _print_related(record: Record, related: list[Entry[Any]]) -> None:

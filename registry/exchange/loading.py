@@ -257,12 +257,11 @@ def find_cycle(pairs: Iterator[tuple[str, str]]) -> list[str]:
 
 
 def _check_against_known(items: list[Item], known: Known) -> Iterator[CellProblem]:
-    """A key keeps its compound: another substance needs another key."""
+    """A key keeps what it is for: another compound, property or phase needs another key."""
     for item in items:
-        compound = getattr(item.record, "compound", "")
-        if compound:
-            before = known(item.record.kind, item.record.key)
-            owner = getattr(before, "compound", compound)
-            if owner != compound:
-                why = f"the key is recorded for {owner}; another compound needs another key."
-                yield CellProblem(item.file, item.line, "compound", compound, why)
+        before = known(item.record.kind, item.record.key)
+        for field in ("compound", "property", "phase", "quantity", "correlation", "over"):
+            given, owner = getattr(item.record, field, ""), getattr(before, field, "")
+            if owner and owner != given:
+                why = f"the key is recorded for {owner}; another {field} needs another key."
+                yield CellProblem(item.file, item.line, field, given, why)

@@ -26,6 +26,7 @@ from registry.records.record import (
     uncertainty_problems,
     value_unit_problems,
 )
+from registry.scales import SCALES
 
 QUANTITIES = {
     "triple-point-temperature": "temperature", "triple-point-pressure": "pressure",
@@ -66,8 +67,11 @@ class FixedPoint(Record):
         yield from uncertainty_problems(self.uncertainty, dimension)
 
     def value_si(self) -> float:
-        """The value in SI units (K, Pa, g/mol for a molar mass)."""
-        return float(UNITS[self.unit].to_si(parse_number(self.value)))
+        """The value in SI units (K on ITS-90, Pa, g/mol for a molar mass)."""
+        value = float(UNITS[self.unit].to_si(parse_number(self.value)))
+        if QUANTITIES[self.quantity] == "temperature" and self.temperature_scale:
+            return SCALES[self.temperature_scale].to_its90(value)
+        return value
 
 
 @dataclass(frozen=True)

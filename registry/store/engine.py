@@ -54,9 +54,11 @@ def open_engine(path: Path, *, write: bool = False, create: bool = False) -> Eng
         Its connections have the pragmas that a library needs.
     """
     mode = "rwc" if create else "rw" if write else "ro"
+    # not through a database URL, which would decode the path a second time
+    uri = f"file:{quote(str(path))}?mode={mode}"
     engine = create_engine(
-        f"sqlite:///file:{quote(str(path))}?mode={mode}&uri=true",
-        connect_args={"timeout": BUSY_SECONDS, "check_same_thread": False},
+        "sqlite://",
+        creator=lambda: sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS, check_same_thread=False),
         poolclass=StaticPool,
     )
 

@@ -77,8 +77,15 @@ class View:
         return reading.read_terms(self._connection, self.position)
 
     def changes(self) -> list[Change]:
-        """The headers of all changes."""
-        return reading.read_changes(self._connection)
+        """The headers of all changes up to the position."""
+        return reading.read_changes(self._connection, self.position)
+
+
+def _settle(connection: Connection, position: int | None) -> int:
+    newest = reading.read_position(connection)
+    if position is not None and not 0 <= position <= newest:
+        raise BadInput(f"The library has no position {position}; the newest is {newest}.")
+    return newest if position is None else position
 
 
 class LibraryFile:
@@ -122,7 +129,10 @@ class LibraryFile:
         """A number that changes whenever another connection has changed the file."""
         if self._raw is None:
             self._raw = self._driver_cursor()
-        return self._raw.execute("PRAGMA data_version").fetchone()[0]
+        try:
+            return self._raw.execute("PRAGMA data_version").fetchone()[0]
+        except sqlite3.OperationalError as error:
+            raise LibraryBusy(str(self.path)) from error
 
     def read_position(self) -> int:
         """The number of the last change."""
@@ -158,13 +168,13 @@ class LibraryFile:
             raise NotALibrary(str(self.path), f"SQLite says {text}") from error
 
     @contextmanager
-    def reading(self) -> Iterator[View]:
-        """A read transaction at the newest position."""
+    def reading(self, position: int | None = None) -> Iterator[View]:
+        """A read transaction at a position; at the newest one if none is given."""
         if self._inside is not None:
-            yield View(self._inside, reading.read_position(self._inside))
+            yield View(self._inside, _settle(self._inside, position))
             return
         with self._guard(), self._engine().begin() as connection:
-            yield View(connection, reading.read_position(connection))
+            yield View(connection, _settle(connection, position))
 
     @contextmanager
     def writing(self) -> Iterator[tuple[View, Append]]:

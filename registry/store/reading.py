@@ -10,7 +10,7 @@ from sqlalchemy import Connection, Select, and_, bindparam, func, select
 
 from registry.canonical import digest
 from registry.store.history import Change, envelope, fold_term
-from registry.store.tables import change, library, link, record, term
+from registry.store.tables import change, link, record, term
 
 __all__ = [
     "Row",
@@ -19,7 +19,6 @@ __all__ = [
     "read_current",
     "read_kind",
     "read_linked",
-    "read_name",
     "read_position",
     "read_revisions",
     "read_terms",
@@ -64,8 +63,7 @@ _NEWEST = and_(
 
 # statements are built once: building them costs three times their execution
 _POSITION_NOW = select(func.coalesce(func.max(change.c.number), 0))
-_NAME = select(library.c.name)
-_CHANGES = select(change).order_by(change.c.number)
+_CHANGES = select(change).where(change.c.number <= _POSITION).order_by(change.c.number)
 _BY_KIND = select(*_COLUMNS).where(record.c.kind == bindparam("kind"), _NEWEST).order_by(record.c.key)
 _REVISIONS = (
     select(*_COLUMNS)
@@ -110,15 +108,11 @@ def read_position(connection: Connection) -> int:
     return int(connection.execute(_POSITION_NOW).scalar_one())
 
 
-def read_name(connection: Connection) -> str:
-    """The random name of the library."""
-    return str(connection.execute(_NAME).scalar_one())
-
-
-def read_changes(connection: Connection) -> list[Change]:
-    """The headers of all changes, in order."""
+def read_changes(connection: Connection, position: int) -> list[Change]:
+    """The headers of all changes up to a position, in order."""
     names = Change.__dataclass_fields__
-    return [Change(**{name: row._mapping[name] for name in names}) for row in connection.execute(_CHANGES)]
+    found = connection.execute(_CHANGES, {"position": position})
+    return [Change(**{name: row._mapping[name] for name in names}) for row in found]
 
 
 def read_kind(connection: Connection, kind: str, position: int) -> list[Row]:

@@ -16,6 +16,7 @@ from pathlib import Path
 from urllib.parse import quote
 
 from sqlalchemy import Connection, insert, text
+from sqlalchemy.exc import OperationalError
 
 from registry.errors import LibraryBusy, NewerLibrary, NoLibrary, NotALibrary, OlderLibrary
 from registry.store.engine import BUSY_SECONDS, open_engine
@@ -28,8 +29,6 @@ _MIGRATION_TABLE = (
     "CONSTRAINT alembic_version_pkc PRIMARY KEY (version_num))"
 )
 """As Alembic makes it, so that a new library equals an upgraded one."""
-
-_MAGIC = b"SQLite format 3\x00"
 
 
 def read_version(path: Path) -> int:
@@ -47,14 +46,9 @@ def read_version(path: Path) -> int:
         raise NoLibrary(place)
     if path.is_dir():
         raise NotALibrary(place, "it is a folder")
-    try:
-        # only a few bytes, and before any connection is open: closing a file drops SQLite's locks
-        with path.open("rb") as stream:
-            magic = stream.read(16)
-    except OSError as error:
-        raise NotALibrary(place, f"{error.strerror}") from error
-    if magic != _MAGIC:
-        raise NotALibrary(place, "it is empty" if not magic else "it is no SQLite file")
+    # never open()ed: closing it would drop the locks that this process holds on the file
+    if path.stat().st_size == 0:
+        raise NotALibrary(place, "it is empty")
     try:
         with closing(_connect_plainly(path)) as connection:
             application = connection.execute("PRAGMA application_id").fetchone()[0]
@@ -65,7 +59,8 @@ def read_version(path: Path) -> int:
             raise LibraryBusy(place) from error
         raise NotALibrary(place, f"SQLite says {error}") from error
     except (sqlite3.DatabaseError, UnicodeDecodeError) as error:
-        raise NotALibrary(place, f"SQLite says {error}") from error
+        plain = "it is no SQLite file" if "is not a database" in str(error) else f"SQLite says {error}"
+        raise NotALibrary(place, plain) from error
     if application != APPLICATION_ID or not tables:
         raise NotALibrary(place, "it is another program's database")
     return int(version)
@@ -202,19 +197,29 @@ def upgrade_file(path: Path, migrations: Path | None = None) -> Path | None:
         raise NewerLibrary(str(path), version, newest)
     if version == newest:
         return None
-    backup = _back_up(path, version)
+    backup: Path | None = None
     engine = open_engine(path, write=True)
     try:
         with engine.connect() as connection:
             # outside a transaction, where SQLite heeds it: tables may be rebuilt
             connection.connection.execute("PRAGMA foreign_keys=OFF")
+            # the write lock is taken first: nobody records between the backup and the migration
             with connection.begin():
+                backup = _back_up(path, version)
                 config.attributes["connection"] = connection
                 command.upgrade(config, "head")
                 broken = connection.exec_driver_sql("PRAGMA foreign_key_check").fetchall()
                 if broken:
                     raise NotALibrary(str(path), f"the upgrade left {len(broken)} dangling references")
                 stamp_version(connection, newest)
+    except OperationalError as error:
+        if "locked" in str(error.orig):
+            raise LibraryBusy(str(path)) from error
+        raise
+    except BaseException:
+        if backup is not None:
+            backup.unlink()
+        raise
     finally:
         engine.dispose()
     return backup

@@ -93,8 +93,8 @@ link = Table(
     "link", METADATA,
     Column("record", Integer, ForeignKey("record.id"), primary_key=True, autoincrement=False),
     Column("role", Text, primary_key=True),
-    Column("kind", Text, nullable=False),
-    Column("key", Text, nullable=False),
+    Column("kind", Text, primary_key=True),
+    Column("key", Text, primary_key=True),
     Index(None, "kind", "key", "record"),
     sqlite_strict=True,
 )  # fmt: skip
@@ -109,7 +109,7 @@ term = Table(
 
 _KEYS = {
     "library": ("id",), "change": ("number",), "node": ("level", "place"), "record": ("id",),
-    "link": ("record", "role"), "term": ("record", "text"),
+    "link": ("record", "role", "kind", "key"), "term": ("record", "text"),
 }  # fmt: skip
 
 
