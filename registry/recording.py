@@ -11,12 +11,17 @@ from typing import Any
 import numpy as np
 
 from registry.curve import Curve
+from registry.dossier import Entry
+from registry.entries import in_force, with_standing
 from registry.errors import CellProblem, InvalidPackage
-from registry.exchange.loading import Item, find_cycle, read_items
-from registry.records import KINDS, REVIEWED, Compound, Correlation, Preference, Record, Review
+from registry.exchange.loading import Item, read_items
+from registry.records import REVIEWED, Compound, Correlation, Preference, Record, Review
 from registry.store.history import Draft
+from registry.store.library_file import View
 
 __all__ = ["LoadPlan", "plan_load"]
+
+_MAY_COUNT = ("accepted", "draft")
 
 
 @dataclass(frozen=True)
@@ -38,7 +43,7 @@ class LoadPlan:
     changed: tuple[str, ...]
 
 
-def plan_load(view: Any, package: Path) -> LoadPlan:
+def plan_load(view: View, package: Path) -> LoadPlan:
     """Read a package and compare it with the library.
 
     Parameters
@@ -66,61 +71,76 @@ def plan_load(view: Any, package: Path) -> LoadPlan:
 class _Existing:
     """What the library has, read kind by kind when first asked for."""
 
-    def __init__(self, view: Any) -> None:
+    def __init__(self, view: View) -> None:
         self._view = view
-        self._rows: dict[str, dict[str, Any]] = {}
+        self._entries: dict[str, list[Entry[Any]]] = {}
+        self._newest: dict[str, dict[str, Entry[Any]]] = {}
+        self._counting: dict[str, dict[str, Entry[Any]]] = {}
 
-    def row(self, kind: str, key: str) -> Any:
-        """The stored row, or None."""
-        if kind not in self._rows:
-            self._rows[kind] = {row.key: row for row in self._view.kind(kind)}
-        return self._rows[kind].get(key)
+    def all(self, kind: str) -> list[Entry[Any]]:
+        """Every revision of every record of a kind, with its standing."""
+        if kind not in self._entries:
+            entries = with_standing(self._view, self._view.revisions(kind))
+            self._entries[kind] = entries
+            self._newest[kind] = {entry.key: entry for entry in entries}  # revisions come in order
+            self._counting[kind] = {entry.key: entry for entry in in_force(entries)}
+        return self._entries[kind]
+
+    def newest(self, kind: str, key: str) -> Entry[Any] | None:
+        """The newest revision, or None."""
+        self.all(kind)
+        return self._newest[kind].get(key)
+
+    def counting(self, kind: str, key: str) -> Entry[Any] | None:
+        """The revision in force, or None."""
+        self.all(kind)
+        return self._counting[kind].get(key)
 
     def record(self, kind: str, key: str) -> Record | None:
-        """The record, or None."""
-        row = self.row(kind, key)
-        return KINDS[kind].restore(row.key, row.content) if row is not None else None
-
-    def standing(self, kind: str, key: str, revision: int) -> tuple[str, str]:
-        """Standing and note of a revision; a draft where no review says otherwise."""
-        row = self.row("review", Review.key_for(kind, key, revision))
-        return (row.content["standing"], row.content.get("note", "")) if row is not None else ("draft", "")
-
-    def preferences(self) -> Iterator[tuple[str, Preference, str]]:
-        """Key, record and standing of every preference."""
-        self.row("preference", "")
-        for key, row in self._rows["preference"].items():
-            record = Preference.restore(key, row.content)
-            yield key, record, self.standing("preference", key, row.revision)[0]
+        """The newest revision's record, or None."""
+        entry = self.newest(kind, key)
+        return entry.record if entry is not None else None
 
 
 def _plan_item(item: Item, existing: _Existing, counts: Counter[str], told: list[str]) -> Iterator[Draft]:
     record = item.record
-    row = existing.row(record.kind, record.key)
-    content = record.content()
-    revision = row.revision if row is not None else 0
-    changed = row is None or row.content != content
-    if changed:
-        counts["added" if row is None else "revised"] += 1
-        if row is not None:
-            fields = [name for name in {**row.content, **content} if row.content.get(name) != content.get(name)]
-            told.append(f"{record.kind} {record.key}: {', '.join(sorted(fields))} revised")
-        revision += 1
+    newest = existing.newest(record.kind, record.key)
+    if newest is None:
+        counts["added"] += 1
         yield draft_of(record)
-    reviewed = False
-    if record.kind in REVIEWED:
-        before = ("draft", "") if changed else existing.standing(record.kind, record.key, revision)
-        reviewed = (item.standing, item.standing_note) != before
-        if reviewed and not changed:
-            told.append(f"{record.kind} {record.key}: {before[0]} -> {item.standing}")
-        if reviewed:
-            review = Review(
-                of_kind=record.kind, of_key=record.key, of_revision=str(revision),
-                standing=item.standing, note=item.standing_note,
-            )  # fmt: skip
-            yield draft_of(review)
-    if not changed:
-        counts["reviewed" if reviewed else "unchanged"] += 1
+        yield from _review(item, 1, ("draft", ""))
+        return
+    if newest.record != record:
+        counting = existing.counting(record.kind, record.key)
+        if counting is not None and (counting.record, _standing(counting)) == (record, _standing(item)):
+            counts["unchanged"] += 1  # it is what counts already; the draft over it goes on waiting
+            return
+        counts["revised"] += 1
+        before, after = newest.record.content(), record.content()
+        fields = sorted(name for name in {**before, **after} if before.get(name) != after.get(name))
+        told.append(f"{record.kind} {record.key}: {', '.join(fields)} revised")
+        yield draft_of(record)
+        yield from _review(item, newest.revision + 1, ("draft", ""))
+        return
+    reviews = list(_review(item, newest.revision, _standing(newest)))
+    counts["reviewed" if reviews else "unchanged"] += 1
+    if reviews:
+        told.append(f"{record.kind} {record.key}: {newest.standing} -> {item.standing}")
+    yield from reviews
+
+
+def _standing(of: Item | Entry[Any]) -> tuple[str, str]:
+    return of.standing, of.standing_note
+
+
+def _review(item: Item, revision: int, before: tuple[str, str]) -> Iterator[Draft]:
+    """The review that gives a revision its standing, if it has another one so far."""
+    if item.record.kind in REVIEWED and _standing(item) != before:
+        review = Review(
+            of_kind=item.record.kind, of_key=item.record.key, of_revision=str(revision),
+            standing=item.standing, note=item.standing_note,
+        )  # fmt: skip
+        yield draft_of(review)
 
 
 def draft_of(record: Record) -> Draft:
@@ -129,18 +149,21 @@ def draft_of(record: Record) -> Draft:
 
 
 def _check_preferences(items: list[Item], existing: _Existing, package: Path) -> None:
-    """Refuse preferences that go round in a circle with those already recorded."""
+    """Refuse preferences that would go round in a circle, with those recorded and those that wait."""
     loaded = {item.record.key: item for item in items if isinstance(item.record, Preference)}
     if not loaded:
         return
-    pairs = [(i.record.correlation, i.record.over) for i in loaded.values() if i.standing in ("accepted", "draft")]  # type: ignore[attr-defined]
-    pairs += [
-        (record.correlation, record.over)
-        for key, record, standing in existing.preferences()
-        if key not in loaded and standing in ("accepted", "draft")
-    ]
-    if cycle := find_cycle(iter(pairs)):
-        why = f"with those recorded already the preferences go round in a circle: {' over '.join(cycle)}."
+    pairs = {(i.record.correlation, i.record.over) for i in loaded.values() if i.standing in _MAY_COUNT}  # type: ignore[attr-defined]
+    for entry in existing.all("preference"):
+        item = loaded.get(entry.key)
+        # what a load accepts, declines or withdraws ends the revisions before it; a draft does not
+        ended = item is not None and item.standing != "draft" and item.standing != "declined"
+        counts = existing.counting("preference", entry.key) is entry and entry.standing == "accepted"
+        waits = existing.newest("preference", entry.key) is entry and entry.standing == "draft"
+        if (counts or waits) and not ended:
+            pairs.add((entry.record.correlation, entry.record.over))
+    if cycle := find_cycle(iter(sorted(pairs))):
+        why = f"the preferences, with those recorded already, go round in a circle: {' over '.join(cycle)}."
         raise InvalidPackage(str(package), [CellProblem("preferences.csv", 0, "", "", why)])
 
 
@@ -151,8 +174,8 @@ def _check_usable(items: list[Item], existing: _Existing, package: Path) -> None
     for item in items:
         record = item.record
         if record.kind in REVIEWED and item.standing == "accepted" and not item.standing_note:
-            row = existing.row(record.kind, record.key)
-            before = existing.standing(record.kind, record.key, row.revision)[0] if row is not None else ""
+            newest = existing.newest(record.kind, record.key)
+            before = newest.standing if newest is not None else ""
             if before in ("withdrawn", "declined"):
                 why = f"the library has it {before}; to accept it again say why in standing_note."
                 problems.append(CellProblem(item.file, item.line, "standing", "accepted", why))
@@ -173,3 +196,30 @@ def _has_value(record: Correlation, molar_mass: float) -> bool:
         return False
     values = curve.values(np.linspace(low, high, 33))
     return bool((np.isfinite(values) & (values > 0.0)).any())
+
+
+def find_cycle(pairs: Iterator[tuple[str, str]]) -> list[str]:
+    """A chain of preferences that comes back to its start, or an empty list.
+
+    Examples
+    --------
+    >>> find_cycle(iter([("a", "b"), ("b", "c"), ("c", "a")]))
+    ['a', 'b', 'c', 'a']
+    """
+    below: dict[str, list[str]] = {}
+    for key, over in pairs:
+        below.setdefault(key, []).append(over)
+    done: set[str] = set()
+    for start in below:
+        trail, stack = [start], [iter(below[start])]
+        while stack:
+            nxt = next(stack[-1], None)
+            if nxt is None:
+                done.add(trail.pop())
+                stack.pop()
+            elif nxt in trail:
+                return [*trail[trail.index(nxt) :], nxt]
+            elif nxt not in done:
+                trail.append(nxt)
+                stack.append(iter(below.get(nxt, ())))
+    return []

@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass
 from pathlib import Path
 
-from registry.cells import complain
+from registry.cells import KEY, complain
 from registry.errors import CellProblem, InvalidPackage, InvalidRecord, Problem
 from registry.exchange.layout import FILES, File
 from registry.exchange.package import read_package
@@ -17,13 +17,13 @@ from registry.properties import PROPERTIES, Property
 from registry.quantities import UNITS
 from registry.records import Correlation, Dataset, Point, Preference, PrintedValue, Record
 
-__all__ = ["Item", "find_cycle", "read_items"]
+__all__ = ["Item", "read_items"]
 
 _COMMA = re.compile(r",\s*\w+\s*=")
 """Coefficients parted by commas."""
 
 Known = Callable[[str, str], Record | None]
-Points = dict[str, list[tuple[int, Point | None]]]
+Points = dict[str, list[tuple[int, Point]]]
 
 
 @dataclass(frozen=True)
@@ -63,14 +63,27 @@ def read_items(path: Path, known: Known) -> list[Item]:
     rows = {name: parse_rows(FILES[name], data, problems) for name, data in files.items()}
     items = list(_build_items(rows, problems))
     by_key = {(item.record.kind, item.record.key): item for item in items}
-    unread = {(FILES[p.file].record.kind) for p in problems if p.file in FILES and p.file != "points.csv"}  # type: ignore[union-attr]
-    # a reference into a file that could not be read is not reported on top
-    problems += _check_references(items, by_key, known, unread)
+    problems += _check_references(items, by_key, known, _find_silent(rows, by_key, problems))
     problems += _check_against_known(items, known)
     if problems:
         problems.sort(key=lambda p: (list(FILES).index(p.file) if p.file in FILES else -1, p.line))
         raise InvalidPackage(str(path), problems)
     return items
+
+
+def _find_silent(
+    rows: Mapping[str, list[Row]], by_key: Mapping[tuple[str, str], Item], problems: list[CellProblem]
+) -> Callable[[str, str], bool]:
+    """Which references are not reported on top: into a file or row that could not be read."""
+    unread = {p.file for p in problems if p.file in FILES and not rows.get(p.file)}
+    silent_kinds = {getattr(FILES[name].record, "kind", "") for name in unread}
+    failed = {
+        (kind, row.cells.get("key", ""))
+        for name, of_file in rows.items()
+        for row in of_file
+        if (kind := getattr(FILES[name].record, "kind", "")) and (kind, row.cells.get("key", "")) not in by_key
+    }
+    return lambda kind, key: kind in silent_kinds or (kind, key) in failed
 
 
 def _build_items(rows: Mapping[str, list[Row]], problems: list[CellProblem]) -> Iterator[Item]:
@@ -107,19 +120,15 @@ def _check_key(file: File, row: Row, seen: dict[tuple[str, ...], int]) -> CellPr
 
 
 def _group_points(rows: list[Row], problems: list[CellProblem]) -> Points:
-    """The points of each dataset with their lines; None for a point with a bad cell."""
+    """The points of each dataset with their lines."""
     grouped: Points = {}
-    columns = FILES["points.csv"].columns
     for row in rows:
-        bad = [
-            CellProblem("points.csv", row.line, column.name, text, why)
-            for column in columns
-            if (why := complain(column.cell, text := row.cells.get(column.name, ""), column.required))
-        ]
-        problems += bad
         cells = dict(row.cells)
         dataset = cells.pop("dataset")
-        grouped.setdefault(dataset, []).append((row.line, None if bad else Point(**cells)))
+        if why := complain(KEY, dataset, required=True):
+            problems.append(CellProblem("points.csv", row.line, "dataset", dataset, why))
+        else:
+            grouped.setdefault(dataset, []).append((row.line, Point(**cells)))
     return grouped
 
 
@@ -139,16 +148,14 @@ def _build_item(file: File, row: Row, points: Points, problems: list[CellProblem
     lines: list[int] = []
     if file.record is Dataset:
         of_dataset = points.get(row.cells["key"], [])
-        if any(point is None for _, point in of_dataset):
-            return None
         lines = [line for line, _ in of_dataset]
         fields["points"] = tuple(point for _, point in of_dataset)
-    if len(problems) > before and file.record is Correlation and not fields["coefficients"]:
-        return None
     try:
         record = file.record(**fields)  # type: ignore[arg-type]
     except InvalidRecord as error:
-        problems += [_place_problem(file, row, lines, problem) for problem in error.problems]
+        said = {problem.column for problem in problems[before:]}
+        found = (_place_problem(file, row, lines, problem) for problem in error.problems)
+        problems += [problem for problem in found if problem.column not in said or problem.file != file.name]
         return None
     assert isinstance(record, Record)
     return Item(record, standing, note, file.name, row.line) if len(problems) == before else None
@@ -177,22 +184,14 @@ def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> di
 
 
 def _check_references(
-    items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known, unread: set[str]
+    items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known, silent: Callable[[str, str], bool]
 ) -> Iterator[CellProblem]:
     for item in items:
         for role, kind, key in item.record.references():
-            if (kind, key) not in by_key and kind not in unread and known(kind, key) is None:
+            if (kind, key) not in by_key and not silent(kind, key) and known(kind, key) is None:
                 why = f"there is no {kind} with this key, neither in the package nor in the library."
                 yield CellProblem(item.file, item.line, role, key, why)
     yield from _check_kinship(items, by_key, known)
-    cycle = find_cycle(
-        (i.record.correlation, i.record.over)
-        for i in items
-        if isinstance(i.record, Preference) and i.standing in ("accepted", "draft")
-    )
-    if cycle:
-        why = f"the preferences go round in a circle: {' over '.join(cycle)}."
-        yield CellProblem("preferences.csv", 0, "", "", why)
 
 
 def _check_kinship(items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known) -> Iterator[CellProblem]:
@@ -227,33 +226,6 @@ def _check_printed_value(item: Item, record: PrintedValue, prop: Property) -> It
         yield CellProblem(item.file, item.line, "value_unit", record.value_unit, why)
     elif prop.positive and parse_number(record.value) <= 0:
         yield CellProblem(item.file, item.line, "value", record.value, f"a {prop.name} is above zero.")
-
-
-def find_cycle(pairs: Iterator[tuple[str, str]]) -> list[str]:
-    """A chain of preferences that comes back to its start, or an empty list.
-
-    Examples
-    --------
-    >>> find_cycle(iter([("a", "b"), ("b", "c"), ("c", "a")]))
-    ['a', 'b', 'c', 'a']
-    """
-    below: dict[str, list[str]] = {}
-    for key, over in pairs:
-        below.setdefault(key, []).append(over)
-    done: set[str] = set()
-    for start in below:
-        trail, stack = [start], [iter(below[start])]
-        while stack:
-            nxt = next(stack[-1], None)
-            if nxt is None:
-                done.add(trail.pop())
-                stack.pop()
-            elif nxt in trail:
-                return [*trail[trail.index(nxt) :], nxt]
-            elif nxt not in done:
-                trail.append(nxt)
-                stack.append(iter(below.get(nxt, ())))
-    return []
 
 
 def _check_against_known(items: list[Item], known: Known) -> Iterator[CellProblem]:

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import dataclasses
-from collections.abc import Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass
 from typing import ClassVar
 
@@ -54,23 +54,41 @@ class Correlation(Record):
     note: str = entry(cells.LONG, required=False)
     metastable_below: str = entry(cells.TEXT, required=False)
 
-    def _problems(self) -> Iterator[Problem]:
-        prop, form = PROPERTIES[self.property], FORMS[self.form]
+    def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
+        return (
+            self._form_problems,
+            self._coefficient_problems,
+            self._unit_problems,
+            lambda: phase_problems(self.property, self.phase),
+            lambda: value_unit_problems(self.value_unit, PROPERTIES[self.property].dimension),
+            self._window_problems,
+            lambda: uncertainty_problems(self.uncertainty, PROPERTIES[self.property].dimension),
+            self._metastable_problems,
+        )
+
+    def _form_problems(self) -> Iterator[Problem]:
+        form = FORMS[self.form]
         if self.property not in form.properties:
             yield Problem("form", self.form, f"the form is for {' and '.join(form.properties)}.")
-        if why := form.coefficients.complaint(self.coefficients):
+
+    def _coefficient_problems(self) -> Iterator[Problem]:
+        if why := FORMS[self.form].coefficients.complaint(self.coefficients):
             yield Problem("coefficients", "; ".join(f"{k}={v}" for k, v in self.coefficients.items()), why)
+
+    def _unit_problems(self) -> Iterator[Problem]:
+        form = FORMS[self.form]
         if form.absolute and self.temperature_unit not in ("K", "degR"):
             yield Problem("temperature_unit", self.temperature_unit, "the form counts from absolute zero: K or degR.")
         if form.value_unit and self.value_unit != form.value_unit:
             yield Problem("value_unit", self.value_unit, f"the form gives {form.value_unit}.")
-        yield from phase_problems(self.property, self.phase)
-        yield from value_unit_problems(self.value_unit, prop.dimension)
+
+    def _window_problems(self) -> Iterator[Problem]:
         low, high = self.window_kelvin()
         if not 0.0 < low < high:
             given = f"{self.window_min} to {self.window_max} {self.window_unit}"
             yield Problem("window_min", given, "the lower bound must lie above 0 K and below the upper bound.")
-        yield from uncertainty_problems(self.uncertainty, prop.dimension)
+
+    def _metastable_problems(self) -> Iterator[Problem]:
         if self.metastable_below and (why := _temperature_complaint(self.metastable_below)):
             yield Problem("metastable_below", self.metastable_below, why)
 

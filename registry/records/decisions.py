@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass
 from typing import ClassVar
 
@@ -22,7 +22,10 @@ class Preference(Record):
     over: str = entry(cells.KEY)
     reason: str = entry(cells.LONG)
 
-    def _problems(self) -> Iterator[Problem]:
+    def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
+        return (self._self_problems,)
+
+    def _self_problems(self) -> Iterator[Problem]:
         if self.correlation == self.over:
             yield Problem("over", self.over, "a correlation cannot be preferred over itself.")
 

@@ -3,12 +3,13 @@
 from __future__ import annotations
 
 import dataclasses
-from collections.abc import Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping
 from dataclasses import dataclass
+from functools import partial
 from typing import Any, ClassVar, Self
 
 from registry import cells
-from registry.cells import choice
+from registry.cells import choice, complain
 from registry.errors import Problem
 from registry.numerals import parse_number
 from registry.properties import PROPERTIES
@@ -56,15 +57,16 @@ class FixedPoint(Record):
     obtained: str = entry(OBTAINED_WORD)
     note: str = entry(cells.LONG, required=False)
 
-    def _problems(self) -> Iterator[Problem]:
+    def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
+        return (self._value_problems, lambda: uncertainty_problems(self.uncertainty, QUANTITIES[self.quantity]))
+
+    def _value_problems(self) -> Iterator[Problem]:
         dimension = QUANTITIES[self.quantity]
-        unit = UNITS[self.unit]
-        if unit.dimension != dimension:
+        if UNITS[self.unit].dimension != dimension:
             names = ", ".join(u.name for u in UNITS.values() if u.dimension == dimension)
             yield Problem("unit", self.unit, f"{self.quantity} is in one of {names}.")
         elif dimension != "number" and self.value_si() <= 0.0:
             yield Problem("value", self.value, f"a {self.quantity} is above zero.")
-        yield from uncertainty_problems(self.uncertainty, dimension)
 
     def value_si(self) -> float:
         """The value in SI units (K on ITS-90, Pa, g/mol for a molar mass)."""
@@ -89,8 +91,8 @@ class PrintedValue(Record):
     obtained: str = entry(OBTAINED_WORD)
     note: str = entry(cells.LONG, required=False)
 
-    def _problems(self) -> Iterator[Problem]:
-        yield from temperature_problems("temperature", self.temperature, self.temperature_unit)
+    def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
+        return (lambda: temperature_problems("temperature", self.temperature, self.temperature_unit),)
 
 
 @dataclass(frozen=True)
@@ -124,19 +126,27 @@ class Dataset(Record):
     note: str = entry(cells.LONG, required=False)
     points: tuple[Point, ...] = ()
 
-    def _problems(self) -> Iterator[Problem]:
-        dimension = PROPERTIES[self.property].dimension
-        yield from phase_problems(self.property, self.phase)
-        yield from value_unit_problems(self.value_unit, dimension)
-        yield from uncertainty_problems(self.uncertainty, dimension)
+    def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
+        of_points = (partial(self._point_problems, number, point) for number, point in enumerate(self.points))
+        return (
+            lambda: phase_problems(self.property, self.phase),
+            lambda: value_unit_problems(self.value_unit, PROPERTIES[self.property].dimension),
+            lambda: uncertainty_problems(self.uncertainty, PROPERTIES[self.property].dimension),
+            self._emptiness_problems,
+            *of_points,
+        )
+
+    def _emptiness_problems(self) -> Iterator[Problem]:
         if not self.points:
             yield Problem("key", self.key, "points.csv has no point of it; a dataset has at least one.")
-        for number, point in enumerate(self.points):
-            yield from self._point_problems(number, point)
 
     def _point_problems(self, number: int, point: Point) -> Iterator[Problem]:
         """Problems of one point; the field says which."""
         place = f"points.{number}."
+        bad = list(_cell_problems(point, place))
+        if bad:
+            yield from bad
+            return
         yield from temperature_problems(f"{place}temperature", point.temperature, self.temperature_unit)
         prop, value = PROPERTIES[self.property], parse_number(point.value)
         if prop.positive and value <= 0:
@@ -157,3 +167,10 @@ class Dataset(Record):
         record = super().restore(key, content)
         object.__setattr__(record, "points", tuple(Point(**row) for row in content["points"]))
         return record
+
+
+def _cell_problems(point: Point, place: str) -> Iterator[Problem]:
+    for field in dataclasses.fields(point):
+        text = getattr(point, field.name)
+        if why := complain(field.metadata["cell"], text, field.metadata["required"]):
+            yield Problem(place + field.name, text, why)

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import dataclasses
-from collections.abc import Iterator, Mapping
+from collections.abc import Callable, Iterable, Iterator, Mapping
 from typing import Any, ClassVar, NamedTuple, Self
 
 from registry.cells import Cell, choice, complain, word
@@ -48,8 +48,13 @@ class Record:
 
     def __post_init__(self) -> None:
         problems = list(self._cell_problems())
-        if not problems:
-            problems = list(self._problems())
+        bad = {problem.field for problem in problems}
+        for check in self._checks():
+            try:
+                problems += [problem for problem in check() if problem.field not in bad]
+            except (KeyError, ValueError):
+                if not bad:  # else the check needs a cell that is bad, and said to be
+                    raise
         if problems:
             raise InvalidRecord(self.kind, self.key, problems)
 
@@ -60,8 +65,9 @@ class Record:
                 if why := complain(field.metadata["cell"], text, field.metadata["required"]):
                     yield Problem(field.name, text, why)
 
-    def _problems(self) -> Iterator[Problem]:
-        return iter(())
+    def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
+        """What must hold between fields; each check runs even where another one cannot."""
+        return ()
 
     def content(self) -> dict[str, Any]:
         """What is recorded and digested: every field that is not empty, but the key."""

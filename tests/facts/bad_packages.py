@@ -182,7 +182,7 @@ PACKAGES = (
     ("preferences in a circle",
      (("again", _R, 2), ("cell", _R, 3, "key", "back"), ("cell", _R, 3, "correlation", "tallowane-antoine-low"),
       ("cell", _R, 3, "over", "tallowane-antoine-high")),
-     ("preferences.csv: the preferences go round in a circle: "
+     ("preferences.csv: the preferences, with those recorded already, go round in a circle: "
       "tallowane-antoine-high over tallowane-antoine-low over tallowane-antoine-high.",)),
     # coefficients
     ("a coefficient under a wrong name", *_in_cell(
@@ -418,8 +418,8 @@ AGAINST_LIBRARY = (
     ("a preference against a recorded one",
      (("cell", _R, 2, "key", "back"), ("cell", _R, 2, "correlation", "tallowane-antoine-low"),
       ("cell", _R, 2, "over", "tallowane-antoine-high")),
-     ("preferences.csv: with those recorded already the preferences go round in a circle: "
-      "tallowane-antoine-low over tallowane-antoine-high over tallowane-antoine-low.",)),
+     ("preferences.csv: the preferences, with those recorded already, go round in a circle: "
+      "tallowane-antoine-high over tallowane-antoine-low over tallowane-antoine-high.",)),
 )  # fmt: skip
 
 # what is done to the package on disk (see test_bad_input.DISKS), the problem
