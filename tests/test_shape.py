@@ -36,6 +36,7 @@ LAYERS = (
     {"answers"},
     {"store", "exchange"},
     {"recording", "entries"},
+    {"collection"},
     {"reader"},
     {"library"},
     {"opening"},

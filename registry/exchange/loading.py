@@ -74,8 +74,8 @@ def read_items(path: Path, known: Known) -> list[Item]:
 def _find_silent(
     rows: Mapping[str, list[Row]], by_key: Mapping[tuple[str, str], Item], problems: list[CellProblem]
 ) -> Callable[[str, str], bool]:
-    """Which references are not reported on top: into a file or row that could not be read."""
-    unread = {p.file for p in problems if p.file in FILES and not rows.get(p.file)}
+    """Which references are not reported on top: into a file, row or key that could not be read."""
+    unread = {p.file for p in problems if p.file in FILES and (p.column == "key" or not rows.get(p.file))}
     silent_kinds = {getattr(FILES[name].record, "kind", "") for name in unread}
     failed = {
         (kind, row.cells.get("key", ""))

@@ -67,8 +67,8 @@ class Correlation(Record):
         )
 
     def _form_problems(self) -> Iterator[Problem]:
-        form = FORMS[self.form]
-        if self.property not in form.properties:
+        form, prop = FORMS[self.form], PROPERTIES[self.property]
+        if prop.name not in form.properties:
             yield Problem("form", self.form, f"the form is for {' and '.join(form.properties)}.")
 
     def _coefficient_problems(self) -> Iterator[Problem]:

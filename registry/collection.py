@@ -1,0 +1,218 @@
+"""What a library holds: compounds, sources, correlations, by key and by name."""
+
+from __future__ import annotations
+
+import threading
+from contextlib import AbstractContextManager
+from typing import Any, Self
+
+from registry.dossier import Dossier, Entry
+from registry.entries import entry_of, in_force, read_dossier, with_standing
+from registry.errors import BadInput, UnknownKey, quote
+from registry.naming import nearest_names
+from registry.records import KINDS, Compound, Correlation
+from registry.store.history import Change
+from registry.store.library_file import LibraryFile, View
+
+__all__ = ["Collection"]
+
+
+class Collection:
+    """What is recorded, at one position or the newest; sees other processes' changes.
+
+    Parameters
+    ----------
+    file : LibraryFile
+        The open database.
+    position : int, optional
+        The change up to which everything is read; the newest one if none is
+        given.
+    """
+
+    def __init__(self, file: LibraryFile, position: int | None = None) -> None:
+        self._file = file
+        self._position = position
+        self._lock = threading.RLock()
+        self._stamp = -1
+        self._dossiers: dict[str, Dossier] = {}
+
+    def __enter__(self) -> Self:
+        return self
+
+    def __exit__(self, *_: object) -> None:
+        self.close()
+
+    def __repr__(self) -> str:
+        return f"<{type(self).__name__} {self.place}>"
+
+    def close(self) -> None:
+        """Release the file."""
+        self._file.close()
+
+    @property
+    def place(self) -> str:
+        """Where the library is."""
+        return str(self._file.path)
+
+    @property
+    def position(self) -> int:
+        """The number of the change up to which the library is read."""
+        with self._lock, self._reading() as view:
+            return view.position
+
+    def _reading(self) -> AbstractContextManager[View]:
+        return self._file.reading(self._position)
+
+    def _refresh(self) -> None:
+        """Forget what was read if anybody has changed the file since."""
+        stamp = self._file.read_stamp()
+        if stamp != self._stamp:
+            self._stamp = stamp
+            self._forget()
+
+    def _forget(self) -> None:
+        self._dossiers = {}
+
+    def find_compound(self, text: str) -> str:
+        """The key of a compound, by key, name, synonym, CAS number or formula.
+
+        Parameters
+        ----------
+        text : str
+            What a person types; case and runs of blanks do not matter.
+
+        Returns
+        -------
+        str
+            The key.
+
+        Raises
+        ------
+        UnknownKey
+            If nothing or more than one compound is meant; carries the nearest
+            names or the keys.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.find_compound("7664-41-7")
+        'ammonia'
+        """
+        if not isinstance(text, str):
+            raise BadInput(f"{quote(text)} is no name of a compound; a text is allowed.")
+        with self._lock, self._reading() as view:
+            if view.current("compound", [text]):
+                return text
+            found = {str(row.content.get("compound", row.key)) for row in view.find_term(text)}
+            # a key in other case, before names
+            if len(found) != 1 and view.current("compound", [text.casefold()]):
+                return text.casefold()
+            if len(found) == 1:
+                return found.pop()
+            if found:
+                raise UnknownKey("compound", text, several=sorted(found))
+            keys = [row.key for row in view.kind("compound")]
+            raise UnknownKey("compound", text, nearest=nearest_names(text, [*keys, *view.terms()]))
+
+    def dossier(self, compound: str) -> Dossier:
+        """Everything recorded about a compound.
+
+        Parameters
+        ----------
+        compound : str
+            Any of its names.
+
+        Returns
+        -------
+        Dossier
+            Records of every standing, at the newest position.
+        """
+        with self._lock:
+            self._refresh()
+            key = self.find_compound(compound)
+            if key not in self._dossiers:
+                with self._reading() as view:
+                    self._dossiers[key] = read_dossier(view, key)
+            return self._dossiers[key]
+
+    def compounds(self) -> list[Entry[Compound]]:
+        """Every compound, by key."""
+        with self._lock, self._reading() as view:
+            return [entry_of(row) for row in view.kind("compound")]
+
+    def correlations(self) -> list[Entry[Correlation]]:
+        """Every correlation, by key, in its newest revision."""
+        with self._lock, self._reading() as view:
+            return with_standing(view, view.kind("correlation"))
+
+    def entry(self, key: str) -> Entry[Any]:
+        """The record under a key, of whatever kind; a compound by any name.
+
+        Parameters
+        ----------
+        key : str
+            The key of a record, or a name of a compound.
+
+        Returns
+        -------
+        Entry
+            The newest revision, with its standing.
+
+        Raises
+        ------
+        UnknownKey
+            If there is none; carries the nearest keys.
+        """
+        with self._lock, self._reading() as view:
+            for kind in KINDS:
+                rows = view.current(kind, [key])
+                if rows:
+                    return with_standing(view, rows)[0]
+        try:
+            return self.dossier(key).compound
+        except UnknownKey as error:
+            if error.several:
+                raise
+        with self._lock, self._reading() as view:
+            keys = [row.key for kind in KINDS if kind not in ("name", "review") for row in view.kind(kind)]
+            raise UnknownKey("record", key, nearest=nearest_names(key, [*keys, *view.terms()]))
+
+    def referring(self, kind: str, key: str) -> list[Entry[Any]]:
+        """The records that refer to one record.
+
+        Parameters
+        ----------
+        kind, key : str
+            The record referred to.
+
+        Returns
+        -------
+        list of Entry
+            By kind and key, each in the revision that counts.
+        """
+        with self._lock, self._reading() as view:
+            rows = [row for row in view.linked(kind, key) if row.kind != "review"]
+            return list(in_force(with_standing(view, rows)))
+
+    def source_citation(self, key: str) -> str:
+        """The citation of a source.
+
+        Parameters
+        ----------
+        key : str
+            The key of the source.
+
+        Returns
+        -------
+        str
+            Its line of text, or the key if no such source is recorded.
+        """
+        with self._lock, self._reading() as view:
+            rows = view.current("source", [key])
+        return str(rows[0].content["citation"]) if rows else key
+
+    def changes(self) -> list[Change]:
+        """The headers of all changes, in order."""
+        with self._lock, self._reading() as view:
+            return view.changes()
