@@ -62,7 +62,8 @@ class Candidate:
 
     def covers(self, kelvin: float) -> bool:
         """True if it may answer there, its standing aside."""
-        return self.reach[0] - rules.BOUND_TOLERANCE <= kelvin <= self.reach[1] + rules.BOUND_TOLERANCE
+        low, high = self.reach
+        return low <= high and low - rules.BOUND_TOLERANCE <= kelvin <= high + rules.BOUND_TOLERANCE
 
     def distance(self, kelvin: float) -> float:
         """How far a temperature lies outside its reach, K."""

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import dataclasses
 import math
 
 import numpy as np
@@ -9,12 +10,14 @@ import pytest
 from inventane import COMPOUND, invent_correlation
 
 from registry.candidate import Candidate
-from registry.confirmation import count_fixed_point
+from registry.confirmation import Value, count_correlation, count_fixed_point
 from registry.coverage import build_coverage
+from registry.curve import Curve
 from registry.dossier import Dossier, Entry
 from registry.errors import BadInput, Refused, UnknownKey
 from registry.limits import best_fixed_point, find_limits
-from registry.records import Correlation
+from registry.records import Correlation, FixedPoint, Preference, Source
+from registry.verdicts import explain_choice, judge_candidates, refuse
 
 
 def _candidate(library, compound: str, key: str, **request: object) -> Candidate:
@@ -229,3 +232,232 @@ def test_the_key_beats_a_name_and_case_aside(published):
     assert published.find_compound("Hydrogen-Para") == "hydrogen-para"
     assert published.find_compound("C2H6O") == "ethanol"
     assert published.find_compound("  methyl   alcohol ") == "methanol"
+
+
+def _changed(entry, standing="accepted", **fields):
+    return Entry(dataclasses.replace(entry.record, **fields), 1, 1, standing)
+
+
+RANKED = [  # evidence, uncertainty, obtained, width, year of winner and loser; the key would decide the other way
+    (("measured", "", "seen", 300, 1990), ("compiled", "", "seen", 300, 1990),
+     "Measured evidence ranks before compiled."),
+    (("measured", "", "seen", 300, 1990), ("standard", "", "memory", 300, 1990),
+     "Measured evidence ranks before compiled (standard from memory, unconfirmed)."),
+    (("compiled", "1 %", "seen", 300, 1990), ("compiled", "", "seen", 300, 1990),
+     "Equal evidence; as uncertainty inventane-4 states 1 %, inventane-0 none."),
+    (("compiled", "", "seen", 300, 1990), ("compiled", "", "seen", 200, 1990),
+     "Equal evidence and uncertainty; inventane-4 answers over 300 K, inventane-0 over 200 K."),
+    (("compiled", "", "seen", 300, 1990), ("compiled", "", "seen", 300, 1980),
+     "Equal so far; the newer source counts, inventane-4 of 1990, inventane-0 of 1980."),
+]  # fmt: skip
+
+
+@pytest.mark.parametrize(("winner", "loser", "because"), RANKED)
+def test_each_rule_ranks_and_is_told(winner, loser, because):
+    """Evidence, uncertainty, reach and year decide in this order, before the key, and the sentence says which did."""
+    entries, sources = [], {}
+    for number, (evidence, percent, obtained, width, year) in ((4, winner), (0, loser)):
+        entry = invent_correlation(number, 200, width, evidence, percent, obtained, "accepted")
+        entries.append(_changed(entry, source=f"s{number}"))
+        sources[f"s{number}"] = Source(key=f"s{number}", type="book", year=str(year), citation="invented")
+    coverage = build_coverage(Dossier(COMPOUND, tuple(entries), sources=sources), "vapor-pressure")
+    chosen, passed = judge_candidates(coverage, 300.0)
+    assert (chosen.correlation, passed.correlation, passed.because) == ("inventane-4", "inventane-0", because)
+    assert explain_choice(coverage, 300.0).endswith(f"next comes inventane-0: {because}")
+
+
+def test_an_uncertainty_holds_up_to_its_bound_and_no_further():
+    """'1 % up to 300 K; 3 %' ranks before 2 % at 300 K and after it just above."""
+    rows = (("1 % up to 300 K; 3 %", 0), ("2 %", 4))
+    entries = tuple(invent_correlation(n, 200, 300, "compiled", text, "seen", "accepted") for text, n in rows)
+    coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+    found = [coverage.stretch_at(t).candidate.key for t in (250.0, 300.0, math.nextafter(300.0, 400.0), 400.0)]
+    assert found == ["inventane-0", "inventane-0", "inventane-4", "inventane-4"]
+
+
+def test_an_absolute_uncertainty_ranks_by_its_worst_percent():
+    """50 Pa is most percent where the pressure is least: at the lower end of its own piece."""
+    entry = invent_correlation(0, 200, 300, "compiled", "1 % up to 300 K; 50 Pa", "seen", "accepted")
+    (candidate,) = build_coverage(Dossier(COMPOUND, (entry,)), "vapor-pressure").candidates
+    assert candidate.ranked_uncertainty(300.0) == 1.0
+    assert candidate.ranked_uncertainty(450.0) == pytest.approx(5000.0 / candidate.curve.value(300.0), rel=1e-12)
+    value = candidate.curve.value(450.0)
+    assert candidate.stated_percent(450.0, value) == pytest.approx(5000.0 / value, rel=1e-12)
+
+
+RECORD = invent_correlation(0, 250, 150, "standard", "", "memory", "accepted").record
+CURVE = Curve.of(RECORD, 58.12)
+
+
+def _value(percent, kelvin=300.0, source="other", phase="", half_kelvin=0.0, half_value=0.0):
+    value = CURVE.value(kelvin)
+    return Value(source, phase, kelvin, value * (1.0 + percent / 100.0), half_kelvin, half_value * value)
+
+
+CONFIRMING = {
+    "two agree": ([_value(0.9), _value(-0.9)], "standard", 2, 2),
+    "one is not enough": ([_value(0.0)], "compiled", 1, 1),
+    "as many disagree": ([_value(0.0), _value(0.0), _value(2.0), _value(2.0)], "standard", 2, 4),
+    "more disagree": ([_value(0.0), _value(0.0), _value(2.0), _value(2.0), _value(2.0)], "compiled", 2, 5),
+    "its own source": ([_value(0.0, source="invented")] * 2, "compiled", 0, 0),
+    "another phase": ([_value(0.0, phase="ice Ih")] * 2, "compiled", 0, 0),
+    "its own phase": ([_value(0.0, phase="liquid")] * 2, "standard", 2, 2),
+    "outside the window": ([_value(0.0, 249.9), _value(0.0, 400.1)], "compiled", 0, 0),
+    "at the bounds": ([_value(0.0, 250.0), _value(0.0, 400.0)], "standard", 2, 2),
+    "coarse digits of the value": ([_value(1.9, half_value=0.01)] * 2, "standard", 2, 2),
+    "coarse digits of the temperature": ([_value(1.9, half_kelvin=0.5)] * 2, "standard", 2, 2),
+}
+
+
+@pytest.mark.parametrize("case", CONFIRMING)
+def test_what_confirms_a_record_from_memory(case):
+    """Two independent values inside the window within 1 % and the printed digits, and no more that disagree."""
+    values, evidence, agreeing, compared = CONFIRMING[case]
+    counted = count_correlation(RECORD, CURVE, values)
+    assert (counted.evidence, counted.agreeing, counted.compared) == (evidence, agreeing, compared)
+
+
+def test_a_sublimation_point_confirms_a_sublimation_curve(published):
+    """Values at one atmosphere and at the triple point are gathered for the curve they belong to."""
+    from registry.confirmation import gather_values
+
+    dossier = published.dossier("carbon-dioxide")
+    point = next(e for e in dossier.fixed_points if e.record.quantity == "normal-sublimation-temperature")
+    seen = Entry(dataclasses.replace(point.record, obtained="seen"), 1, 1, "accepted")
+    alone = Dossier(dossier.compound, fixed_points=(seen,))
+    assert [v.value for v in gather_values(alone, "sublimation-pressure", None)] == [101325.0]
+    assert gather_values(alone, "vapor-pressure", None) == ()
+    draft = Dossier(dossier.compound, fixed_points=(Entry(seen.record, 1, 1, "draft"),))
+    assert gather_values(draft, "sublimation-pressure", None) == ()
+
+
+def _triple(key, value, evidence, obtained, qualifier="", source="a"):
+    record = FixedPoint(
+        key=key, compound="inventane", quantity="triple-point-temperature", value=value, unit="K", evidence=evidence,
+        qualifier=qualifier, source=source, locator="invented", obtained=obtained,
+    )  # fmt: skip
+    return Entry(record, 1, 1, "accepted")
+
+
+def test_fixed_points_rank_by_the_evidence_they_count_as():
+    """An unconfirmed standard value from memory ranks after an evaluated one; a newer source and the key come last."""
+    memory, evaluated = _triple("a", "250", "standard", "memory"), _triple("b", "255", "evaluated", "seen", source="b")
+    dossier = Dossier(COMPOUND, fixed_points=(memory, evaluated))
+    assert count_fixed_point(memory, dossier).evidence == "compiled"
+    assert best_fixed_point(dossier, "triple-point-temperature") is evaluated
+    for other, counts in (
+        (_triple("c", "250.1", "compiled", "seen", source="c"), "standard"),
+        (_triple("c", "250.1", "compiled", "seen", source="a"), "compiled"),
+        (_triple("c", "250.1", "compiled", "memory", source="c"), "compiled"),
+        (_triple("c", "250.1", "compiled", "seen", "rounded", source="c"), "compiled"),
+        (_triple("c", "250.3", "compiled", "seen", source="c"), "compiled"),
+    ):
+        assert count_fixed_point(memory, Dossier(COMPOUND, fixed_points=(memory, other))).evidence == counts
+    years = {k: Source(key=k, type="book", year=y, citation="invented") for k, y in (("a", "1980"), ("b", "1990"))}
+    old, new = _triple("a", "250", "compiled", "seen"), _triple("b", "255", "compiled", "seen", source="b")
+    assert best_fixed_point(Dossier(COMPOUND, fixed_points=(old, new), sources=years), old.record.quantity) is new
+
+
+def _with_a(number, a, low=200, width=300):
+    entry = invent_correlation(number, low, width, "compiled", "", "seen", "accepted")
+    return _changed(entry, coefficients={**entry.record.coefficients, "A": a})
+
+
+@pytest.mark.parametrize("a", ["1600", "-1600"])
+def test_a_curve_without_a_usable_value_does_not_answer(a):
+    """Infinity and zero are no pressures: refused alone, NaN in sorted and mixed arrays, alone or among others."""
+    good = invent_correlation(4, 501, 99, "compiled", "", "seen", "accepted")
+    for entries in ((_with_a(0, a),), (_with_a(0, a), good)):
+        coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+        value, candidate = coverage.value_at(400.0)
+        assert math.isnan(value)
+        assert candidate is None
+        assert refuse(coverage, 400.0).reason == "no-value"
+        for order in ([300.0, 400.0, 550.0], [550.0, 300.0, 400.0]):
+            values, _ = coverage.evaluate(np.array(order))
+            for t, found in zip(order, values.tolist(), strict=True):
+                assert math.isnan(found) if t < 500.0 or len(entries) == 1 else found == coverage.value_at(t)[0]
+
+
+@pytest.mark.parametrize("windows", [3, 40, 130])
+def test_edges_and_order_do_not_matter(windows):
+    """At every edge, and in an array that is unsorted only behind its first hundred points, array equals scalar."""
+    entries = tuple(
+        invent_correlation(4 * i, 200 + 3 * i, 3, "compiled", "", "seen", "accepted") for i in range(windows)
+    )
+    coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+    edges = [s.low for s in coverage.stretches[1:]]
+    around = sorted(t for e in edges for t in (math.nextafter(e, 0.0), e, math.nextafter(e, math.inf)))
+    for order in (around, around[::-1], [*[150.0] * 100, *around[::-1]], [*edges[::-1], *around]):
+        values, places = coverage.evaluate(np.array(order))
+        for t, value, place in zip(order, values.tolist(), places.tolist(), strict=True):
+            assert coverage.stretches[place] is coverage.stretch_at(t)
+            best = coverage.stretch_at(t).candidate
+            assert math.isnan(value) if best is None else value == best.curve.value(t)
+
+
+def test_threads_do_not_share_working_arrays():
+    """Four threads that evaluate at once get what one gets."""
+    from concurrent.futures import ThreadPoolExecutor
+
+    entries = tuple(invent_correlation(i, 200 + 40 * i, 60, "compiled", "", "seen", "accepted") for i in range(5))
+    coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+    arrays = [np.random.default_rng(seed).uniform(200.0, 420.0, 200_000) for seed in range(8)]
+    alone = [coverage.evaluate(array)[0] for array in arrays]
+    with ThreadPoolExecutor(4) as pool:
+        together = list(pool.map(lambda array: coverage.evaluate(array)[0], arrays))
+    for one, other in zip(alone, together, strict=True):
+        assert np.array_equal(one, other, equal_nan=True)
+
+
+def test_the_nearest_windows_stand_nearest_first():
+    """One window on either side, of those that can answer; the distance is to the reach."""
+    rows = ((0, 200, 50, "accepted"), (4, 400, 50, "accepted"), (8, 260, 20, "draft"), (12, 150, 50, "accepted"))
+    entries = tuple(invent_correlation(n, low, width, "compiled", "", "seen", s) for n, low, width, s in rows)
+    coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+    for kelvin, order in ((300.0, ("inventane-0", "inventane-4")), (350.0, ("inventane-4", "inventane-0"))):
+        refusal = refuse(coverage, kelvin)
+        assert tuple(n.correlation for n in refusal.nearest) == order
+        assert [n.distance for n in refusal.nearest] == [50.0, 100.0]
+        assert refusal.reason == "gap"
+
+
+def test_a_temperature_without_dimension_is_one_temperature(published):
+    """An integer, a NumPy number and an array without dimension get an answer, not a batch."""
+    for kelvin in (300, np.float32(300.0), np.int64(300), np.array(300.0)):
+        assert published.lookup("water", kelvin).value == published.lookup("water", 300.0).value
+
+
+def test_a_preference_is_told_with_its_reason():
+    """What a steward's preference sets aside says so with the reason, though it ranks first by itself."""
+    entries = tuple(
+        invent_correlation(n, 200, 300, e, "", "seen", "accepted") for n, e in ((0, "standard"), (4, "measured"))
+    )
+    preference = Preference(key="p", correlation="inventane-4", over="inventane-0", reason="Fits better.")
+    for standing, chosen in (("accepted", "inventane-4"), ("draft", "inventane-0"), ("withdrawn", "inventane-0")):
+        dossier = Dossier(COMPOUND, entries, preferences=(Entry(preference, 1, 1, standing),))
+        first, second = judge_candidates(build_coverage(dossier, "vapor-pressure"), 300.0)
+        assert first.correlation == chosen
+    dossier = Dossier(COMPOUND, entries, preferences=(Entry(preference, 1, 1, "accepted"),))
+    first, second = judge_candidates(build_coverage(dossier, "vapor-pressure"), 300.0)
+    assert second.because == "A steward prefers inventane-4 over it: Fits better."
+    assert "sets inventane-0 aside" in first.because
+
+
+def test_what_ends_an_accepted_revision():
+    """A withdrawal ends the revision before it; a draft and a declined one leave it in force."""
+    from registry.entries import in_force
+
+    old = invent_correlation(0, 200, 300, "compiled", "", "seen", "accepted")
+    for standing, revision in (("withdrawn", 2), ("accepted", 2), ("draft", 1), ("declined", 1)):
+        assert [e.revision for e in in_force([old, Entry(old.record, 2, 2, standing)])] == [revision]
+
+
+def test_only_accepted_datasets_confirm(published):
+    """The points of a draft confirm nothing."""
+    from registry.confirmation import gather_values
+
+    water = published.dossier("water")
+    drafts = tuple(dataclasses.replace(e, standing="draft") for e in water.datasets)
+    assert gather_values(dataclasses.replace(water, fixed_points=()), "vapor-pressure", None)
+    assert gather_values(dataclasses.replace(water, fixed_points=(), datasets=drafts), "vapor-pressure", None) == ()

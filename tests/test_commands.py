@@ -7,8 +7,10 @@ import subprocess
 import sys
 
 import pytest
+from test_exchange import _edit
 
 from registry.cli.app import app, main
+from registry.opening import open_library
 
 ANSWER_KEYS = {
     "temperature_K", "value", "unit", "value_SI", "correlation", "revision", "phase", "window_K", "evidence",
@@ -178,19 +180,6 @@ def test_coverage_json_tiles_between_its_ends(run):
     assert document["limits"]["not_recorded"] == ["triple-point-temperature"]
 
 
-def test_a_closed_pipe_is_no_error(published_path):
-    """`rangebook list | head -1` ends quietly."""
-    code = "from registry.cli.entry import main; main()"
-    line = f"{sys.executable} -c '{code}' list | head -1"
-    done = subprocess.run(
-        ["bash", "-c", line], capture_output=True, text=True, timeout=60, env={
-            "PATH": "/usr/bin:/bin", "RANGEBOOK_LIBRARY": str(published_path),
-        },
-    )  # fmt: skip
-    assert done.stderr == ""
-    assert "compounds" in done.stdout
-
-
 def test_a_terminal_without_unicode_gets_plain_marks(published_path):
     """Where the output is ASCII, bars and messages still print."""
     environment = {"RANGEBOOK_LIBRARY": str(published_path), "PYTHONIOENCODING": "ascii", "LC_ALL": "C"}
@@ -244,3 +233,93 @@ def test_commands_are_the_ones_of_the_job():
     """No command is missing, and none is there that nobody asked for."""
     names = {command.name for command in app.registered_commands}
     assert names == {"lookup", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade"}
+
+
+def test_a_refusal_tells_distances_and_a_dump_what_waits(own_path, tmp_path, monkeypatch, capsys):
+    """distance_K is how far the window is; drafts that a dump leaves behind are counted for a person too."""
+    monkeypatch.setenv("RANGEBOOK_LIBRARY", str(own_path))
+    with pytest.raises(SystemExit):
+        main(["lookup", "water", "700K", "--json"])
+    (refusal,) = json.loads(capsys.readouterr().out)["refusals"]
+    for near in refusal["nearest"]:
+        low, high = near["window_K"]
+        assert near["distance_K"] == max(low - 700.0, 700.0 - high) > 50.0
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        _edit(tmp_path / "package" / "correlations.csv", "water-august", "note", "a draft")
+        _edit(tmp_path / "package" / "correlations.csv", "water-august", "standing", "draft")
+        library.load(tmp_path / "package", author="somebody")
+    with pytest.raises(SystemExit):
+        main(["dump", str(tmp_path / "dump")])
+    assert "stayed behind: 1." in capsys.readouterr().out
+
+
+@pytest.mark.parametrize(("value", "unit"), [(99.999, "Pa"), (100.0, "kPa"), (1e7, "kPa"), (1.0001e7, "MPa")])
+def test_the_unit_changes_at_100_pa_and_above_10_mpa(value, unit):
+    """Pa below 100 Pa, MPa above 10 MPa, kPa at both bounds."""
+    from registry.display import suit_unit
+    from registry.quantities import UNITS
+
+    assert suit_unit(value, UNITS["Pa"]).name == unit
+
+
+def test_a_solid_above_its_triple_point_has_melted(scenario, published):
+    """A sublimation curve is refused above the triple temperature, with the other property to ask for."""
+    from registry.errors import Refused
+
+    with pytest.raises(Refused) as caught:
+        published.lookup("carbon-dioxide", 250.0, property="sublimation-pressure")
+    assert caught.value.refusal.reason == "above-triple"
+    assert "--property vapor-pressure" in caught.value.refusal.explanation
+
+
+def test_where_no_conversion_reaches_the_answer_says_so(published):
+    """A curve on an older scale, asked beyond the published conversions, says so; within them it does not."""
+    import dataclasses
+
+    from registry.answers import find_cautions
+    from registry.scales import SCALES
+
+    coverage = published.coverage("water")
+    candidate = next(c for c in coverage.candidates if c.key == "water-wexler-1976")
+    other = dataclasses.replace(candidate, curve=dataclasses.replace(candidate.curve, scale=SCALES["IPTS-48"]))
+    said = [any("No published conversion" in c for c in find_cautions(coverage, other, t)) for t in (300.0, 550.0)]
+    assert said == [False, True]
+
+
+def test_json_holds_no_number_that_json_cannot(capsys):
+    """Infinity and NaN become null, at any depth."""
+    from registry.cli.screen import print_json
+
+    print_json({"a": [float("inf"), {"b": float("nan")}], "c": (1.5,)})
+    assert json.loads(capsys.readouterr().out) == {"a": [None, {"b": None}], "c": [1.5]}
+
+
+def test_list_counts_accepted_correlations_and_gaps_rise(scenario_path, monkeypatch, capsys):
+    """Drafts and withdrawn records are not counted; a gap is given from its lower to its upper end."""
+    monkeypatch.setenv("RANGEBOOK_LIBRARY", str(scenario_path))
+
+    def read(*words):
+        with pytest.raises(SystemExit):
+            main([*words, "--json"])
+        return json.loads(capsys.readouterr().out)
+
+    gaps = 0
+    for row in read("list")["compounds"]:
+        for prop, count in row["correlations"].items():
+            found = read("coverage", row["key"], "-p", prop)
+            assert count == sum(c["standing"] == "accepted" for c in found["candidates"])
+            gaps += len(found["gaps_K"])
+            assert all(low < high for low, high in found["gaps_K"])
+    assert gaps
+
+
+def test_a_closed_pipe_is_no_error(published_path):
+    """A reader that has gone before the first line ends the program quietly, with exit code 0."""
+    process = subprocess.Popen(
+        [sys.executable, "-c", "from registry.cli.entry import main; main()", "list"], stdout=subprocess.PIPE,
+        stderr=subprocess.PIPE, text=True, env={"PATH": "/usr/bin:/bin", "RANGEBOOK_LIBRARY": str(published_path)},
+    )  # fmt: skip
+    process.stdout.close()
+    assert (process.stderr.read(), process.wait(60)) == ("", 0)
+    process.stderr.close()

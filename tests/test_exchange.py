@@ -15,9 +15,11 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from registry.errors import InvalidPackage
+from registry.errors import CellProblem, InvalidPackage
 from registry.exchange.dumping import build_files
 from registry.exchange.layout import FILES, descriptor
+from registry.exchange.package import read_package
+from registry.exchange.rows import parse_rows
 from registry.opening import open_library, start_library
 from registry.records import KINDS, Correlation, Source
 from registry.shelves import find_shelf
@@ -317,3 +319,119 @@ def test_the_descriptor_describes_every_column():
         assert [field["name"] for field in described[name]] == [column.name for column in file.columns]
         assert all(field["description"] for field in described[name])
     assert "coefficients" in Correlation.__dataclass_fields__
+
+
+def _only(package: Path, *files: str) -> Path:
+    """The package cut down to some files."""
+    for path in package.glob("*.csv"):
+        if path.name not in files:
+            path.unlink()
+    (package / "datapackage.json").write_text(json.dumps({"resources": [{"path": name} for name in files]}))
+    return package
+
+
+def test_an_edited_standing_note_is_a_review(own_path, tmp_path):
+    """A note beside a standing is part of the review: editing it alone is recorded, once."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        _edit(tmp_path / "package" / "correlations.csv", "water-august", "standing_note", "looked at again")
+        assert library.load(tmp_path / "package", author="somebody")["reviewed"] == 1
+        assert library.entry("water-august").standing_note == "looked at again"
+        assert library.load(tmp_path / "package", author="somebody")["change"] == 0
+
+
+def test_a_new_revision_is_reviewed_anew(own_path, tmp_path):
+    """A revision inherits no standing: recorded as accepted it is accepted by its own review."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        table = tmp_path / "package" / "correlations.csv"
+        for number in (2, 3):
+            _edit(table, "water-august", "note", f"edit {number}")
+            library.load(tmp_path / "package", author="somebody")
+            entry = library.entry("water-august")
+            assert (entry.revision, entry.standing) == (number, "accepted")
+
+
+@pytest.mark.parametrize("later", ["draft", "declined"])
+def test_a_preference_stays_in_force_while_a_later_one_waits(later, tmp_path):
+    """A draft or declined revision of a preference leaves the accepted one in force, for lookups as for dumps."""
+    with start_library(tmp_path / "library.db", "scenario") as library:
+        library.dump(tmp_path / "package")
+        before = library.dossier("tallowane").preferred()
+        table = tmp_path / "package" / "preferences.csv"
+        key = next(csv.DictReader(io.StringIO(table.read_text(encoding="utf-8"))))["key"]
+        _edit(table, key, "reason", "another reason")
+        _edit(table, key, "standing", later)
+        _edit(table, key, "standing_note", "invented")
+        library.load(_only(tmp_path / "package", "preferences.csv"), author="somebody")
+        with open_library(tmp_path / "library.db") as again:
+            assert again.dossier("tallowane").preferred() == before != frozenset()
+
+
+def test_a_preference_in_force_counts_against_a_circle(tmp_path):
+    """A preference that a declined revision left in force cannot be reversed by another one."""
+    with start_library(tmp_path / "library.db", "scenario") as library:
+        library.dump(tmp_path / "package")
+        package = _only(tmp_path / "package", "preferences.csv")
+        rows = list(csv.DictReader(io.StringIO((package / "preferences.csv").read_text(encoding="utf-8"))))[:1]
+        declined = {**rows[0], "reason": "another reason", "standing": "declined", "standing_note": "invented"}
+        reverse = {**rows[0], "key": "reverse", "correlation": rows[0]["over"], "over": rows[0]["correlation"]}
+        for row in (declined, reverse):
+            with (package / "preferences.csv").open("w", encoding="utf-8", newline="") as stream:
+                writer = csv.DictWriter(stream, list(row), lineterminator="\n")
+                writer.writeheader()
+                writer.writerow(row)
+            if row is declined:
+                library.load(package, author="somebody")
+        with pytest.raises(InvalidPackage, match="round in a circle"):
+            library.load(package, author="somebody")
+
+
+def test_loading_a_dump_back_adds_nothing_though_a_draft_waits(own_path, tmp_path):
+    """What is in force is there already: a dump loaded back leaves a waiting draft as it is."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        _edit(tmp_path / "package" / "correlations.csv", "water-august", "note", "a draft")
+        _edit(tmp_path / "package" / "correlations.csv", "water-august", "standing", "draft")
+        library.load(tmp_path / "package", author="somebody")
+        library.dump(tmp_path / "again")
+        assert library.load(tmp_path / "again", author="somebody")["change"] == 0
+        assert library.entry("water-august").revision == 2
+
+
+def test_one_bad_row_hides_no_dangling_reference(tmp_path):
+    """A bad cell in sources.csv does not keep a source that is nowhere from being reported."""
+    package = Path(shutil.copytree(find_shelf("scenario"), tmp_path / "package"))
+    sources = csv.DictReader(io.StringIO((package / "sources.csv").read_text(encoding="utf-8")))
+    _edit(package / "sources.csv", next(sources)["key"], "year", "19x1")
+    _edit(package / "correlations.csv", "tallowane-riedel", "source", "nowhere")
+    with start_library(tmp_path / "library.db", "none") as library, pytest.raises(InvalidPackage) as caught:
+        library.load(package, author="somebody")
+    assert [(p.file, p.given) for p in caught.value.problems] == [
+        ("sources.csv", "19x1"), ("correlations.csv", "nowhere"),
+    ]  # fmt: skip
+
+
+def test_the_folder_one_stands_in_can_be_loaded(tmp_path, monkeypatch):
+    """`rangebook load .` loads the package in the working folder."""
+    with start_library(tmp_path / "library.db", "none") as library:
+        monkeypatch.chdir(find_shelf("scenario"))
+        assert library.load(".", author="somebody")["change"] == 1
+
+
+def test_a_zip_with_an_entry_twice_is_refused(tmp_path):
+    """Which of two entries counts is nobody's guess."""
+    with zipfile.ZipFile(tmp_path / "p.zip", "w") as archive, pytest.warns(UserWarning, match="Duplicate"):
+        for _ in range(2):
+            archive.writestr("datapackage.json", json.dumps({"resources": [{"path": "names.csv"}]}))
+    with pytest.raises(InvalidPackage, match="is there twice"):
+        read_package(tmp_path / "p.zip")
+
+
+def test_decomposed_letters_are_composed_and_stray_quotes_refused():
+    """A file in Unicode normal form D reads as form C; a letter behind a closing quote is no CSV."""
+    problems: list[CellProblem] = []
+    (row,) = parse_rows(FILES["names.csv"], "compound,name\nx,Me\u0301thane\n".encode(), problems)
+    assert (row.cells["name"], problems) == ("M\u00e9thane", [])
+    assert parse_rows(FILES["names.csv"], b'compound,name\nx,"a"b\n', problems) == []
+    assert [(p.line, p.allowed[:12]) for p in problems] == [(2, "it is no CSV")]

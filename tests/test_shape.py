@@ -120,9 +120,10 @@ def _path(module: str) -> Path:
 
 LOOKUP = """
 import contextlib, io, sys
-from registry.cli.app import main
+from registry.cli.entry import main
+sys.argv = ["rangebook", "lookup", "water", "25C", "--library", sys.argv[1]]
 with contextlib.suppress(SystemExit), contextlib.redirect_stdout(io.StringIO()) as out:
-    main(["lookup", "water", "25C", "--library", sys.argv[1]])
+    main()
 assert "kPa" in out.getvalue()
 print(*sorted({name.split(".")[0] for name in sys.modules}))
 """

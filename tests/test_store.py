@@ -19,13 +19,13 @@ from hypothesis import strategies as st
 from sqlalchemy import insert
 
 from registry.canonical import encode
-from registry.errors import BadInput, NewerLibrary, NotALibrary, OlderLibrary
+from registry.errors import BadInput, LibraryBusy, NewerLibrary, NotALibrary, OlderLibrary
 from registry.library import Library
 from registry.merkle import hash_leaf, new_nodes, root_from_nodes, root_of
 from registry.opening import open_library, start_library
 from registry.store import schema
 from registry.store.engine import open_engine, wal_is_safe
-from registry.store.history import Draft, append_change
+from registry.store.history import Draft, append_change, fold_term
 from registry.store.library_file import LibraryFile
 from registry.store.tables import METADATA, SCHEMA
 
@@ -269,6 +269,9 @@ WAL_VERSIONS = {
 }  # fmt: skip
 
 
+PRAGMAS = {"foreign_keys": 1, "recursive_triggers": 1, "trusted_schema": 0, "cell_size_check": 1}
+
+
 def test_write_ahead_logging_only_where_sqlite_is_free_of_its_bug(own_path):
     """WAL is used only by versions without the WAL-reset bug; else the rollback journal with EXTRA flushes."""
     assert {version: wal_is_safe(version) for version in WAL_VERSIONS} == WAL_VERSIONS
@@ -276,12 +279,12 @@ def test_write_ahead_logging_only_where_sqlite_is_free_of_its_bug(own_path):
     with engine.connect() as connection:
         pragma = {
             name: connection.exec_driver_sql(f"PRAGMA {name}").scalar()
-            for name in ("journal_mode", "synchronous", "foreign_keys", "recursive_triggers", "trusted_schema")
+            for name in (*PRAGMAS, "journal_mode", "synchronous")
         }
     engine.dispose()
     safe = wal_is_safe(sqlite3.sqlite_version_info[:3])
     assert (pragma.pop("journal_mode"), pragma.pop("synchronous")) == (("wal", 2) if safe else ("delete", 3))
-    assert pragma == {"foreign_keys": 1, "recursive_triggers": 1, "trusted_schema": 0}
+    assert pragma == PRAGMAS
 
 
 def test_a_reader_cannot_write(own_path):
@@ -468,3 +471,178 @@ def test_foreign_keys_are_on(own_path):
         row = {"record": 10**9, "role": "source", "kind": "source", "key": "x"}
         connection.execute(insert(METADATA.tables["link"]), row)
     engine.dispose()
+
+
+NOW = "2030-01-01T00:00:00.000000Z"
+
+
+def test_every_read_takes_a_position(own_path):
+    """Revisions, references and terms that a later change brought are not there at an earlier position."""
+    with open_library(own_path) as library:
+        for citation in ("first", "second"):
+            draft = Draft(
+                "source", "later", {"citation": citation}, [("source", "source", "aim")], [f"Term  {citation}"]
+            )
+            with library._file.writing() as (_, append):
+                append("somebody", citation, NOW, [draft])
+        with library._file.reading() as view:
+            for position, citations in ((1, []), (2, ["first"]), (3, ["first", "second"])):
+                view.position = position
+                assert [r.content["citation"] for r in view.revisions("source") if r.key == "later"] == citations
+                assert [r.content["citation"] for r in view.linked("source", "aim")] == citations
+                assert [r.content["citation"] for r in view.kind("source") if r.key == "later"] == citations[-1:]
+                # a person finds the newest revision alone
+                assert [bool(view.find_term(f"tErM {c}")) for c in ("first", "second")] == [
+                    citations[-1:] == ["first"], citations[-1:] == ["second"],
+                ]  # fmt: skip
+                assert {"term first", "term second"} & set(view.terms()) == {f"term {c}" for c in citations[-1:]}
+
+
+def test_many_keys_are_read_at_once(own_path):
+    """More keys than one statement takes are all found."""
+    with open_library(own_path) as library:
+        drafts = [Draft("source", f"many-{i}", {"citation": "invented"}) for i in range(1201)]
+        with library._file.writing() as (_, append):
+            append("somebody", "many", NOW, drafts)
+        with library._file.reading() as view:
+            assert len(view.current("source", [*(d.key for d in drafts), "missing"])) == 1201
+
+
+def test_two_revisions_in_one_change_count_on(own_path):
+    """Several revisions of one key in one change follow each other."""
+    with open_library(own_path) as library:
+        with library._file.writing() as (_, append):
+            append("somebody", "twice", NOW, [STRAY, STRAY])
+        with library._file.reading() as view:
+            assert [row.revision for row in view.revisions("source") if row.key == "stray"] == [1, 2]
+
+
+def test_texts_are_compared_by_full_case_folding():
+    """Case folding, not lower case: a sharp s equals two; runs of blanks count as one."""
+    assert fold_term(" Wei\u00dfer  PHOSPHOR ") == fold_term("WEISSER phosphor") == "weisser phosphor"
+
+
+def test_a_finished_library_is_never_put_over_another(tmp_path):
+    """If a library has appeared while another was being made, the one that is there stays."""
+    fresh, there = tmp_path / "fresh", tmp_path / "there"
+    fresh.write_bytes(b"fresh")
+    there.write_bytes(b"there")
+    with pytest.raises(FileExistsError):
+        schema._publish(fresh, there)
+    assert there.read_bytes() == b"there"
+
+
+def test_a_damaged_row_is_told(own_path):
+    """Content that is no object is a damaged library, not a fault of the program."""
+    with closing(sqlite3.connect(own_path)) as db:
+        db.execute("DROP TRIGGER record_no_update")
+        db.execute("UPDATE record SET content = '[]' WHERE kind = 'compound' AND key = 'water'")
+        db.commit()
+    with open_library(own_path) as library, pytest.raises(NotALibrary, match="is not what was recorded"):
+        library.lookup("water", 300.0)
+
+
+def test_an_upgrade_that_leaves_dangling_references_is_taken_back(own_path, tmp_path):
+    """Tables may be rebuilt with foreign keys off; what dangles afterwards stops the upgrade whole."""
+    row = """op.execute("INSERT INTO link VALUES (999999999, 'source', 'source', 'x')")"""
+    before = _all_rows(own_path)
+    with pytest.raises(NotALibrary, match="1 dangling reference"):
+        schema.upgrade_file(own_path, _next_migrations(tmp_path, row))
+    assert _all_rows(own_path) == before
+
+
+def test_backups_do_not_replace_each_other(own_path, tmp_path):
+    """A second backup of one schema takes another name."""
+    first = schema._back_up(own_path, 1)
+    before = first.read_bytes()
+    second = schema._back_up(own_path, 1)
+    assert second != first
+    assert first.read_bytes() == before
+    assert second.exists()
+
+
+def test_a_change_needs_an_author_and_a_reason_in_plain_text(own_path, tmp_path):
+    """Neither load nor start records an empty author, a control character or a spreadsheet formula."""
+    from registry.shelves import find_shelf
+
+    for author in ("", " ", "a\tb", "=A1", "x" * 201):
+        with open_library(own_path) as library, pytest.raises(BadInput, match="is no author of a change"):
+            library.load(find_shelf("scenario"), author=author)
+        with pytest.raises(BadInput, match="is no author of a change"):
+            start_library(tmp_path / "new.db", "none", author)
+    with open_library(own_path) as library:
+        with pytest.raises(BadInput, match="is no reason of a change"):
+            library.load(find_shelf("scenario"), author="somebody", reason="a\x00b")
+        library.load(find_shelf("scenario"), author="somebody")
+        assert library.changes()[-1].reason == "Loaded scenario"
+
+
+@pytest.mark.parametrize("name", ["a#b.db", "a%20b.db", "a?b.db", "a b.db", "a&mode=rwc.db", "ä.db"])
+def test_a_library_is_the_file_of_its_name(name, tmp_path):
+    """Whatever characters a file name has, that file and no other is made, read and written."""
+    start_library(tmp_path / name, "none").close()
+    with open_library(tmp_path / name) as library:
+        with library._file.writing() as (_, append):
+            append("somebody", "something", NOW, [STRAY])
+        assert library.position == 1
+    assert [path.name for path in tmp_path.iterdir()] == [name]
+
+
+def test_a_dossier_sees_what_was_recorded_since(own_path):
+    """A dossier is read at the newest position, also after one was read before."""
+    with open_library(own_path) as library:
+        library.dossier("water")
+        with library._file.writing() as (_, append):
+            append("somebody", "something", NOW, [STRAY])
+        assert library.dossier("water").position == library.position == 2
+
+
+def test_opening_again_in_one_process_drops_no_lock(own_path):
+    """While a change is being written, the library may be opened again here and still nobody else can write."""
+    probe = (
+        "import sqlite3, sys; sqlite3.connect(sys.argv[1], timeout=0, isolation_level=None).execute('BEGIN IMMEDIATE')"
+    )
+    with open_library(own_path) as library, library._file.writing() as (_, append):
+        append("somebody", "something", NOW, [STRAY])
+        open_library(own_path).close()
+        done = subprocess.run([sys.executable, "-c", probe, str(own_path)], capture_output=True, text=True, timeout=60)
+        assert "database is locked" in done.stderr
+
+
+def test_a_locked_library_is_busy_for_readers_and_upgrades_too(own_path, monkeypatch):
+    """A lookup, a warm lookup and an upgrade that find the file locked say so (exit code 4), and leave no backup."""
+    import registry.store.engine
+
+    monkeypatch.setattr(registry.store.engine, "BUSY_SECONDS", 0.05)
+    with open_library(own_path) as library, closing(sqlite3.connect(own_path, isolation_level=None)) as other:
+        library.lookup("water", 300.0)
+        other.execute("PRAGMA user_version=0")
+        other.execute("BEGIN IMMEDIATE")
+        with pytest.raises(LibraryBusy):
+            schema.upgrade_file(own_path)
+        other.execute("ROLLBACK")
+        other.execute("BEGIN EXCLUSIVE")
+        with pytest.raises(LibraryBusy):
+            library.lookup("water", 300.0)
+        other.execute("ROLLBACK")
+    assert [path.name for path in own_path.parent.iterdir()] == ["own.db"]
+
+
+def test_a_large_change_counts_revisions_on(own_path):
+    """Two hundred keys and more in one change continue the revisions that are there."""
+    drafts = [Draft("source", f"s{i}", {"citation": "invented"}) for i in range(250)]
+    with open_library(own_path) as library:
+        for _ in range(2):
+            with library._file.writing() as (_, append):
+                append("somebody", "large", NOW, drafts)
+        with library._file.reading() as view:
+            assert {row.revision for row in view.current("source", [d.key for d in drafts])} == {2}
+
+
+def test_a_writer_holds_the_lock_from_its_first_read(own_path):
+    """What a load compares with cannot change before it appends: the lock is taken at BEGIN."""
+    with open_library(own_path) as library, library._file.writing() as (view, _):
+        view.current("source", ["stray"])
+        with closing(sqlite3.connect(own_path, timeout=0, isolation_level=None)) as other:
+            with pytest.raises(sqlite3.OperationalError, match="locked"):
+                other.execute("BEGIN IMMEDIATE")

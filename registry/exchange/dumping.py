@@ -62,20 +62,5 @@ def _rows(file: File, entries: list[tuple[Record, Standing]]) -> Iterator[dict[s
 def _text(record: Record, name: str) -> str:
     value: Any = getattr(record, name, "")
     if name == "coefficients" and isinstance(record, Correlation):
-        return "; ".join(f"{key}={text}" for key, text in ordered_coefficients(record))
+        return "; ".join(f"{key}={text}" for key, text in record.ordered_coefficients())
     return str(value)
-
-
-def ordered_coefficients(record: Correlation) -> list[tuple[str, str]]:
-    """Coefficients in the order in which the form takes them, series by number."""
-    from registry.forms.catalogue import FORMS
-
-    spec = FORMS[record.form].coefficients
-    names = [name for name in (*spec.required, *spec.optional) if name in record.coefficients]
-    for stem in spec.series:
-        number = 1
-        while f"{stem}{number}" in record.coefficients:
-            if f"{stem}{number}" not in names:
-                names.append(f"{stem}{number}")
-            number += 1
-    return [(name, record.coefficients[name]) for name in names]

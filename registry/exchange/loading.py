@@ -19,6 +19,9 @@ from registry.records import Correlation, Dataset, Point, Preference, PrintedVal
 
 __all__ = ["Item", "read_items"]
 
+MOST_PROBLEMS = 10_000
+"""Bad cells after which reading stops: a file of nothing but them says so early."""
+
 _COMMA = re.compile(r",\s*\w+\s*=")
 """Coefficients parted by commas."""
 
@@ -93,6 +96,8 @@ def _build_items(rows: Mapping[str, list[Row]], problems: list[CellProblem]) -> 
             continue
         seen: dict[tuple[str, ...], int] = {}
         for row in rows[name]:
+            if len(problems) > MOST_PROBLEMS:
+                return
             if key_problem := _check_key(file, row, seen):
                 problems.append(key_problem)
                 continue

@@ -27,7 +27,6 @@ LARGEST_FILE = 64 * 2**20
 """Bytes that one file may have, unpacked."""
 HIGHEST_RATIO = 200
 """How much a zip entry may shrink; text shrinks less than a tenth as much."""
-_ZIP_TIME = (1980, 1, 1, 0, 0, 0)
 
 
 def read_package(path: Path) -> dict[str, bytes]:
@@ -221,7 +220,7 @@ def _write_zip(path: Path, files: Mapping[str, bytes]) -> None:
     try:
         with os.fdopen(handle, "wb") as stream, zipfile.ZipFile(stream, "w", zipfile.ZIP_DEFLATED) as archive:
             for entry, data in files.items():
-                info = zipfile.ZipInfo(entry, _ZIP_TIME)
+                info = zipfile.ZipInfo(entry)  # dated 1980: the same files give the same bytes
                 info.compress_type = zipfile.ZIP_DEFLATED
                 info.external_attr = 0o644 << 16
                 archive.writestr(info, data)

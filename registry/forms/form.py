@@ -119,6 +119,12 @@ class Coefficients:
         parts = [*self.required, *(f"[{name}]" for name in self.optional), *(f"{s}1, {s}2 ..." for s in self.series)]
         return ", ".join(parts)
 
+    def names(self, given: Mapping[str, str]) -> list[str]:
+        """The names that are given, in the order in which the form takes them."""
+        single = [name for name in (*self.required, *self.optional) if name in given]
+        counted = [f"{stem}{i}" for stem in self.series for i in range(1, self._length(stem, given) + 1)]
+        return single + [name for name in counted if name not in single]
+
     def complaint(self, given: Mapping[str, str]) -> str:
         """What is wrong with these coefficients, or an empty text.
 

@@ -92,6 +92,10 @@ class Correlation(Record):
         if self.metastable_below and (why := _temperature_complaint(self.metastable_below)):
             yield Problem("metastable_below", self.metastable_below, why)
 
+    def ordered_coefficients(self) -> list[tuple[str, str]]:
+        """Coefficients as printed, in the order in which the form takes them."""
+        return [(name, self.coefficients[name]) for name in FORMS[self.form].coefficients.names(self.coefficients)]
+
     def window_kelvin(self) -> tuple[float, float]:
         """The printed window, K: each bound the double nearest to its exact value."""
         unit = UNITS[self.window_unit]
