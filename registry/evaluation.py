@@ -26,6 +26,9 @@ Intervals = NDArray[np.signedinteger[Any]]
 BLOCK = 32768
 """Points a block: the working arrays then fit the second-level cache."""
 
+SPAN = 4 * BLOCK
+"""Points that are looked at together: in rising order they need few working arrays."""
+
 _FEW_EDGES = 24
 """Up to here, adding comparisons is quicker than a binary search."""
 
@@ -96,14 +99,12 @@ class Evaluator:
         intervals: Intervals = np.empty(flat.size, dtype=np.int8 if few else np.int16)
         scratch = _thread_scratch()
         with np.errstate(all="ignore"):
-            for start in range(0, flat.size, BLOCK):
-                part = slice(start, min(start + BLOCK, flat.size))
-                t = flat[part]
-                if _is_sorted(t, scratch):
-                    self._fill_runs(t, intervals[part], values[part], scratch)
+            for start in range(0, flat.size, SPAN):
+                part = slice(start, min(start + SPAN, flat.size))
+                if _is_sorted(flat[part], scratch):
+                    self._fill_runs(flat[part], intervals[part], values[part], scratch)
                 else:
-                    self._locate(t, intervals[part], scratch)
-                    self._fill_mixed(t, intervals[part], values[part], scratch)
+                    self._fill_blocks(flat[part], intervals[part], values[part], scratch)
         return values, intervals
 
     def _fill_runs(self, t: Array, intervals: Intervals, out: Array, scratch: Scratch) -> None:
@@ -119,8 +120,16 @@ class Evaluator:
             else:
                 self._fill_curve(owner, t[run], out[run], scratch)
 
+    def _fill_blocks(self, t: Array, intervals: Intervals, out: Array, scratch: Scratch) -> None:
+        for start in range(0, t.size, BLOCK):
+            part = slice(start, min(start + BLOCK, t.size))
+            self._locate(t[part], intervals[part], scratch)
+            self._fill_mixed(t[part], intervals[part], out[part], scratch)
+
     def _fill_curve(self, owner: int, t: Array, out: Array, scratch: Scratch) -> None:
-        self._curves[owner].fill(t, out, scratch)
+        for start in range(0, t.size, BLOCK):
+            part = slice(start, min(start + BLOCK, t.size))
+            self._curves[owner].fill(t[part], out[part], scratch)
         if not self._bounded[owner]:
             self._refuse_unusable(out)
 

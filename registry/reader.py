@@ -157,7 +157,7 @@ def _as_kelvin(temperature: Any) -> NDArray[np.float64]:
     given = np.ma.filled(temperature, np.nan) if isinstance(temperature, np.ma.MaskedArray) else np.asarray(temperature)
     if given.dtype.kind not in "fiu" and given.size:
         raise BadInput(f"{quote(temperature)} is no temperature; numbers in kelvin are allowed.")
-    return given.astype(float)
+    return given.astype(float, copy=False)
 
 
 def _plain(phase: str) -> str:
