@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from typing import Any
 
 import numpy as np
 
 from registry.forms.elementary import Expression
-from registry.forms.form import Array, Coefficients, Folded, Form, Units
+from registry.forms.form import Array, Coefficients, Folded, Form, Units, fold_named
 from registry.forms.reciprocal import GAS_CONSTANT
 
 __all__ = ["FORMS"]
@@ -73,21 +73,17 @@ def _fold_rackett(c: Mapping[str, float], units: Units) -> Folded:
     return Folded(RACKETT, (c["Tc"], density, math.log(c["ZRA"])))
 
 
-def _fold_named(kernel: Expression, *names: str) -> Callable[[Mapping[str, float], Units], Folded]:
-    return lambda c, units: Folded(kernel, tuple(c[name] for name in names))
-
-
 _ENTHALPY = ("enthalpy-of-vaporization",)
 
 FORMS = (
     Form(
         "majer-svoboda", "Majer-Svoboda", "H = A exp(-alpha Tr) (1 - Tr)^beta",
-        Coefficients(("A", "alpha", "beta", "Tc")), _fold_named(MAJER, "Tc", "A", "alpha", "beta"), _ENTHALPY,
+        Coefficients(("A", "alpha", "beta", "Tc")), fold_named(MAJER, "Tc", "A", "alpha", "beta"), _ENTHALPY,
         "V. Majer, V. Svoboda, Enthalpies of Vaporization of Organic Compounds, IUPAC Chem. Data Ser. 32 (1985)",
     ),
     Form(
         "watson", "Watson", "H = H1 [(1 - Tr)/(1 - T1/Tc)]^n",
-        Coefficients(("H1", "T1", "Tc", "n")), _fold_named(WATSON, "Tc", "T1", "H1", "n"), _ENTHALPY,
+        Coefficients(("H1", "T1", "Tc", "n")), fold_named(WATSON, "Tc", "T1", "H1", "n"), _ENTHALPY,
         "K. M. Watson, Ind. Eng. Chem. 35, 398 (1943)",
     ),
     Form(

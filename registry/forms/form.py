@@ -17,7 +17,7 @@ from numpy.typing import NDArray
 
 from registry.numerals import parse_number
 
-__all__ = ["Array", "Coefficients", "Folded", "Form", "Kernel", "Scratch", "Units"]
+__all__ = ["Array", "Coefficients", "Fold", "Folded", "Form", "Kernel", "Scratch", "Units"]
 
 Array = NDArray[np.float64]
 LN10 = float(np.log(10.0))
@@ -95,6 +95,8 @@ class Folded:
     absorbed: bool = False
 
 
+Fold = Callable[[Mapping[str, float], Units], Folded]
+
 _NUMBERED = re.compile(r"([A-Za-z]+)([1-9][0-9]?)", re.ASCII)
 
 
@@ -165,12 +167,17 @@ class Coefficients:
         return count
 
 
-def numbered(c: Mapping[str, float], stem: str) -> tuple[float, ...]:
-    """The values of n1, n2, ... for the stem n."""
+def numbered(c: Mapping[str, float], stem: str, first: int = 1) -> tuple[float, ...]:
+    """The values of n1, n2, ... for the stem n; of n0, n1, ... if `first` is 0."""
     values: list[float] = []
-    while (name := f"{stem}{len(values) + 1}") in c:
+    while (name := f"{stem}{first + len(values)}") in c:
         values.append(c[name])
     return tuple(values)
+
+
+def fold_named(kernel: Kernel, *names: str) -> Fold:
+    """A fold whose parameters are the named coefficients as they are."""
+    return lambda c, units: Folded(kernel, tuple(c[name] for name in names))
 
 
 @dataclass(frozen=True)
@@ -203,7 +210,7 @@ class Form:
     title: str
     equation: str
     coefficients: Coefficients
-    fold: Callable[[Mapping[str, float], Units], Folded]
+    fold: Fold
     properties: tuple[str, ...]
     reference: str
     absolute: bool = True

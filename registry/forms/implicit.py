@@ -8,7 +8,7 @@ from typing import Any
 import numpy as np
 
 from registry.forms.elementary import Expression
-from registry.forms.form import Array, Coefficients, Folded, Form, Units
+from registry.forms.form import Array, Coefficients, Folded, Form, Units, fold_named
 from registry.forms.roots import solve_bracketed, solve_rising_concave
 
 __all__ = ["FORMS"]
@@ -78,10 +78,6 @@ def _helium_bounds(p: Parameters) -> tuple[float, float]:
 HELIUM = Expression(_helium_value, _helium_slope, _helium_bounds)
 
 
-def _fold_thodos(c: Mapping[str, float], units: Units) -> Folded:
-    return Folded(THODOS, (c["A"], c["B"], c["C"], c["D"]))
-
-
 def _fold_helium(c: Mapping[str, float], units: Units) -> Folded:
     return Folded(HELIUM, (tuple(c[f"A{i}"] for i in range(10)), c["B"], c["C"]))
 
@@ -89,7 +85,7 @@ def _fold_helium(c: Mapping[str, float], units: Units) -> Folded:
 FORMS = (
     Form(
         "frost-kalkwarf-thodos", "Frost-Kalkwarf-Thodos", "ln p = A - B/T + C ln T + D p/T^2 (lower root)",
-        Coefficients(("A", "B", "C", "D")), _fold_thodos, ("vapor-pressure",),
+        Coefficients(("A", "B", "C", "D")), fold_named(THODOS, "A", "B", "C", "D"), ("vapor-pressure",),
         "A. A. Frost, D. R. Kalkwarf, J. Chem. Phys. 21, 264 (1953); G. Thodos et al. (from memory)",
     ),
     Form(

@@ -7,13 +7,13 @@ pressure close to it keeps its digits.
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from typing import Any
 
 import numpy as np
 
 from registry.forms.elementary import Expression
-from registry.forms.form import Array, Coefficients, Folded, Form, Units, numbered
+from registry.forms.form import Array, Coefficients, Folded, Form, Units, fold_named, numbered
 from registry.forms.roots import solve_rising_concave
 
 __all__ = ["FORMS"]
@@ -160,12 +160,6 @@ def _kechin_bounds(p: Parameters) -> tuple[float, float]:
 
 KECHIN = Expression(_kechin_value, _kechin_slope, _kechin_bounds)
 
-Fold = Callable[[Mapping[str, float], Units], Folded]
-
-
-def _fold_named(kernel: Expression, *names: str) -> Fold:
-    return lambda c, units: Folded(kernel, tuple(c[name] for name in names))
-
 
 _MELTING = ("melting-pressure",)
 _SIMON = "F. Simon, G. Glatzel, Z. Anorg. Allg. Chem. 178, 309 (1929) (from memory)"
@@ -177,7 +171,7 @@ FORMS = (
     Form("simon-glatzel-sum", "Simon-Glatzel sum", "p/pt = 1 + sum n_i [(T/Tt)^t_i - 1]",
          Coefficients(("Tt", "pt"), series=("n", "t")), _fold_simon_sum, _MELTING, _SIMON),
     Form("simon-glatzel-power", "Simon-Glatzel, power of T", "p = a T^c + b",
-         Coefficients(("a", "b", "c")), _fold_named(Expression(_power_value, _power_slope), "a", "b", "c"),
+         Coefficients(("a", "b", "c")), fold_named(Expression(_power_value, _power_slope), "a", "b", "c"),
          _MELTING, "F. Datchi, P. Loubeyre, R. LeToullec, Phys. Rev. B 61, 6535 (2000)"),
     Form("iapws-melting-ih", "IAPWS melting, ice Ih", "p/pt = 1 + sum a_i [1 - (T/Tt)^b_i]",
          Coefficients(("Tt", "pt"), series=("a", "b")), _fold_melting_ih, _MELTING, _R14),
@@ -188,13 +182,13 @@ FORMS = (
          Coefficients(("T0", "p0", "a1", "a2", "a3")), _fold_melting_vii, _MELTING, _R14),
     Form("melting-polynomial", "melting polynomial", "p/pt = 1 + a1 (T/Tt - 1) + a2 (T/Tt - 1)^2",
          Coefficients(("Tt", "pt", "a1", "a2")),
-         _fold_named(Expression(_quadratic_value, _quadratic_slope), "Tt", "pt", "a1", "a2"), _MELTING,
+         fold_named(Expression(_quadratic_value, _quadratic_slope), "Tt", "pt", "a1", "a2"), _MELTING,
          "R. Span, W. Wagner, J. Phys. Chem. Ref. Data 25, 1509 (1996), eq. (3.10)"),
     Form("clapeyron-melting", "Clapeyron melting line, constant enthalpy and volume",
          "p = p0 + (H/dV) ln(T/T0), H in J/mol, dV in cm3/mol",
          Coefficients(("T0", "p0", "H", "dV")), _fold_clapeyron, _MELTING,
          "E. Clapeyron, J. Ec. Polytech. 14, 153 (1834), integrated (from memory)"),
     Form("kechin", "Kechin", "T = T0 (1 + p/a)^b exp(-c p)",
-         Coefficients(("T0", "a", "b", "c")), _fold_named(KECHIN, "T0", "a", "b", "c"), _MELTING,
+         Coefficients(("T0", "a", "b", "c")), fold_named(KECHIN, "T0", "a", "b", "c"), _MELTING,
          "V. V. Kechin, Phys. Rev. B 65, 052102 (2001) (from memory)"),
 )  # fmt: skip

@@ -9,12 +9,12 @@ be evaluated together.
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from typing import Any
 
 import numpy as np
 
-from registry.forms.form import LN10, Array, Coefficients, Folded, Form, Scratch, Units
+from registry.forms.form import LN10, Array, Coefficients, Fold, Folded, Form, Scratch, Units
 
 __all__ = ["FORMS", "GAS_CONSTANT", "Reciprocal"]
 
@@ -58,7 +58,7 @@ class Reciprocal:
 RECIPROCAL = Reciprocal()
 
 
-def _fold_antoine(log: float, sign: float) -> Callable[[Mapping[str, float], Units], Folded]:
+def _fold_antoine(log: float, sign: float) -> Fold:
     def fold(c: Mapping[str, float], units: Units) -> Folded:
         # t + C = ratio (T + (C - shift)/ratio)
         a = log * c["A"] + math.log(units.factor)

@@ -7,12 +7,12 @@ equations of state, and the ancillaries for saturated liquid density.
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from typing import Any
 
 import numpy as np
 
-from registry.forms.form import Array, Coefficients, Folded, Form, Scratch, Units, numbered
+from registry.forms.form import Array, Coefficients, Fold, Folded, Form, Scratch, Units, numbered
 
 __all__ = ["FORMS", "ReducedExponential", "ReducedSum"]
 
@@ -143,8 +143,6 @@ class ReducedSum:
 EXPONENTIAL = ReducedExponential()
 SUM = ReducedSum()
 
-Fold = Callable[[Mapping[str, float], Units], Folded]
-
 
 def _fold_wagner(exponents: tuple[float, float, float, float]) -> Fold:
     def fold(c: Mapping[str, float], units: Units) -> Folded:
@@ -164,10 +162,6 @@ def _fold_series(reference: str, value: str, s: int) -> Fold:
 def _terms(c: Mapping[str, float]) -> tuple[tuple[float, float], ...]:
     pairs = zip(numbered(c, "n"), numbered(c, "t"), strict=True)
     return tuple(sorted(pairs, key=lambda pair: pair[1]))
-
-
-def _fold_density_ln(c: Mapping[str, float], units: Units) -> Folded:
-    return Folded(EXPONENTIAL, (c["Tc"], c["rhoc"], 0, _terms(c)))
 
 
 def _fold_density_reduced(c: Mapping[str, float], units: Units) -> Folded:
@@ -203,7 +197,7 @@ FORMS = (
     ),
     Form(
         "density-ln", "density ancillary, logarithm", "ln(rho/rhoc) = sum n_i (1 - T/Tc)^t_i [M in g/mol]",
-        Coefficients(("Tc", "rhoc"), ("M",), ("n", "t")), _fold_density_ln, _DENSITY,
+        Coefficients(("Tc", "rhoc"), ("M",), ("n", "t")), _fold_series("Tc", "rhoc", 0), _DENSITY,
         "R. Span, W. Wagner, J. Phys. Chem. Ref. Data 25, 1509 (1996), eq. (3.14), in general form",
     ),
     Form(

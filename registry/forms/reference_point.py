@@ -9,7 +9,7 @@ from typing import Any
 import numpy as np
 
 from registry.forms.elementary import Expression
-from registry.forms.form import LN10, Array, Coefficients, Folded, Form, Units, numbered
+from registry.forms.form import LN10, Array, Coefficients, Folded, Form, Units, fold_named, numbered
 
 __all__ = ["FORMS"]
 
@@ -63,12 +63,8 @@ def _chebyshev_slope(t: Array, p: Parameters) -> Array:
 CHEBYSHEV = Expression(_chebyshev_value, _chebyshev_slope, lambda p: (0.0, math.inf))
 
 
-def _fold_cox(c: Mapping[str, float], units: Units) -> Folded:
-    return Folded(COX, (c["T0"], c["p0"], c["A0"], c["A1"], c["A2"]))
-
-
 def _fold_chebyshev(c: Mapping[str, float], units: Units) -> Folded:
-    return Folded(CHEBYSHEV, (c["Tmin"], c["Tmax"], (c["a0"], *numbered(c, "a"))))
+    return Folded(CHEBYSHEV, (c["Tmin"], c["Tmax"], numbered(c, "a", first=0)))
 
 
 _PRESSURES = ("vapor-pressure", "sublimation-pressure")
@@ -76,7 +72,7 @@ _PRESSURES = ("vapor-pressure", "sublimation-pressure")
 FORMS = (
     Form(
         "cox", "Cox", "ln(p/p0) = (1 - T0/T) exp(A0 + A1 T + A2 T^2)",
-        Coefficients(("T0", "p0", "A0", "A1", "A2")), _fold_cox, _PRESSURES,
+        Coefficients(("T0", "p0", "A0", "A1", "A2")), fold_named(COX, "T0", "p0", "A0", "A1", "A2"), _PRESSURES,
         "E. R. Cox, Ind. Eng. Chem. 28, 613 (1936); K. Ruzicka, V. Majer, J. Phys. Chem. Ref. Data 23, 1 (1994)",
     ),
     Form(

@@ -47,8 +47,9 @@ def solve_rising_concave(f: Callable[[Array], Array], slope: Callable[[Array], A
     active = np.ones(x.shape, dtype=bool)
     for _ in range(200):
         with np.errstate(all="ignore"):
-            step = -f(x) / slope(x)
-            rises = (slope(x) > 0.0) & np.isfinite(step)
+            gradient = slope(x)
+            step = -f(x) / gradient
+            rises = (gradient > 0.0) & np.isfinite(step)
         x = np.where(active & ~rises, np.nan, x)
         active = active & rises
         x = np.where(active, x + step, x)

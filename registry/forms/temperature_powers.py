@@ -7,12 +7,12 @@ series, and polynomials in T or 1/T.
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from typing import Any
 
 import numpy as np
 
-from registry.forms.form import LN10, Array, Coefficients, Folded, Form, Scratch, Units
+from registry.forms.form import LN10, Array, Coefficients, Fold, Folded, Form, Scratch, Units, numbered
 
 __all__ = ["FORMS", "TemperaturePowers"]
 
@@ -87,8 +87,6 @@ def _horner(coefficients: tuple[float, ...], x: Array, out: Array) -> None:
 
 POWERS = TemperaturePowers()
 
-Fold = Callable[[Mapping[str, float], Units], Folded]
-
 
 def _fold(rising: tuple[str, ...], falling: tuple[str, ...] = (), log: str = "", base: float = 1.0) -> Fold:
     """A fold that takes the named coefficients; `base` is ln 10 for forms in log10 p."""
@@ -116,12 +114,10 @@ def _fold_counted(stem: str, first: int, rising: bool) -> Fold:
     """A fold for polynomials whose length the source chooses."""
 
     def fold(c: Mapping[str, float], units: Units) -> Folded:
-        values = [c[f"{stem}{first}"]]
-        while (name := f"{stem}{first + len(values)}") in c:
-            values.append(c[name])
+        values = numbered(c, stem, first)
         if rising:
-            return Folded(POWERS, (tuple(values), (), 0.0, 0.0, 1.0))
-        return Folded(POWERS, ((values[0],), tuple(values[1:]), 0.0, 0.0, 1.0))
+            return Folded(POWERS, (values, (), 0.0, 0.0, 1.0))
+        return Folded(POWERS, (values[:1], values[1:], 0.0, 0.0, 1.0))
 
     return fold
 
