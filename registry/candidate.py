@@ -14,7 +14,7 @@ from registry.limits import Limits
 from registry.properties import PROPERTIES
 from registry.quantities import parse_temperature
 from registry.records import Correlation
-from registry.uncertainty import Piece, parse_uncertainty, piece_at
+from registry.uncertainty import Piece, parse_uncertainty
 
 __all__ = ["Candidate", "build_candidate"]
 
@@ -60,10 +60,15 @@ class Candidate:
         """The correlation."""
         return self.entry.record
 
+    @property
+    def empty(self) -> bool:
+        """True if its window and its phase do not meet."""
+        return self.reach[0] > self.reach[1]
+
     def covers(self, kelvin: float) -> bool:
         """True if it may answer there, its standing aside."""
         low, high = self.reach
-        return low <= high and low - rules.BOUND_TOLERANCE <= kelvin <= high + rules.BOUND_TOLERANCE
+        return not self.empty and low - rules.BOUND_TOLERANCE <= kelvin <= high + rules.BOUND_TOLERANCE
 
     def distance(self, kelvin: float) -> float:
         """How far a temperature lies outside its reach, K."""
@@ -71,12 +76,16 @@ class Candidate:
 
     def ranked_uncertainty(self, kelvin: float) -> float:
         """The stated uncertainty it ranks by there, percent; infinity if none."""
-        return next((percent for piece, percent in self.pieces if kelvin <= piece.upper), math.inf)
+        found = self._piece_at(kelvin)
+        return found[1] if found else math.inf
 
     def stated_percent(self, kelvin: float, value: float) -> float | None:
         """The stated uncertainty as a percent of a value there, or None."""
-        piece = piece_at(tuple(piece for piece, _ in self.pieces), kelvin)
-        return piece.percent_of(value) if piece else None
+        found = self._piece_at(kelvin)
+        return found[0].percent_of(value) if found else None
+
+    def _piece_at(self, kelvin: float) -> tuple[Piece, float] | None:
+        return next((ranked for ranked in self.pieces if kelvin <= ranked[0].upper), None)
 
 
 def build_candidate(

@@ -213,7 +213,7 @@ def build_coverage(dossier: Dossier, prop: str, phase: str = "", *, metastable: 
         for entry in dossier.for_property(prop)
         if phase in ("", entry.record.phase)
     )
-    accepted = [c for c in candidates if c.entry.accepted and c.reach[0] <= c.reach[1]]
+    accepted = [c for c in candidates if c.entry.accepted and not c.empty]
     stretches = _tile(accepted, dossier.preferred())
     return Coverage(dossier, prop, phase, metastable, limits, candidates, stretches)
 

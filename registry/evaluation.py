@@ -27,7 +27,10 @@ BLOCK = 32768
 """Points a block: the working arrays then fit the second-level cache."""
 
 SPAN = 4 * BLOCK
-"""Points that are looked at together: in rising order they need few working arrays."""
+"""Points that are looked at together: in rising order each curve takes one run of them.
+
+Their flags, a byte each, fit one working array of a block of floats.
+"""
 
 _FEW_EDGES = 24
 """Up to here, adding comparisons is quicker than a binary search."""
@@ -108,7 +111,7 @@ class Evaluator:
         return values, intervals
 
     def _fill_runs(self, t: Array, intervals: Intervals, out: Array, scratch: Scratch) -> None:
-        """A block in rising order: each curve takes one run of points."""
+        """Points in rising order: each curve takes one run of them."""
         bounds = [0, *np.searchsorted(t, self._edges, side="left").tolist(), t.size]
         for index, owner in enumerate(self._owners):
             run = slice(bounds[index], bounds[index + 1])

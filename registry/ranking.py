@@ -21,7 +21,7 @@ from collections.abc import Sequence
 from registry.candidate import Candidate
 from registry.records import EVIDENCE
 
-__all__ = ["choose_best", "explain_order", "rank_of"]
+__all__ = ["choose_best", "deciding_rule", "explain_order", "rank_of"]
 
 Pairs = frozenset[tuple[str, str]]
 
@@ -60,21 +60,28 @@ def choose_best(covering: Sequence[Candidate], kelvin: float, preferred: Pairs) 
     return min(left, key=lambda candidate: rank_of(candidate, kelvin))
 
 
+def deciding_rule(best: Candidate, other: Candidate, kelvin: float) -> int:
+    """The place in `rank_of` of the first rule in which two candidates differ."""
+    pairs = zip(rank_of(best, kelvin), rank_of(other, kelvin), strict=True)
+    return next(i for i, (first, second) in enumerate(pairs) if first != second)
+
+
 def explain_order(best: Candidate, other: Candidate, kelvin: float) -> str:
     """Why one candidate ranks before another, in a sentence.
 
     The first rule in which they differ decides.
     """
     first, second = rank_of(best, kelvin), rank_of(other, kelvin)
-    if first[0] != second[0]:
+    rule = deciding_rule(best, other, kelvin)
+    if rule == 0:
         return f"{_evidence(best).capitalize()} evidence ranks before {_evidence(other)}."
-    if first[1] != second[1]:
+    if rule == 1:
         stated = f"{best.key} states {_percent(first[1])}, {other.key} {_percent(second[1])}"
         return f"Equal evidence; as uncertainty {stated}."
-    if first[2] != second[2]:
+    if rule == 2:
         reach = f"{best.key} answers over {best.width:.6g} K, {other.key} over {other.width:.6g} K"
         return f"Equal evidence and uncertainty; {reach}."
-    if first[3] != second[3]:
+    if rule == 3:
         years = f"{best.key} of {best.year}, {other.key} of {other.year or 'no stated year'}"
         return f"Equal so far; the newer source counts, {years}."
     return f"Equal in all else; the keys decide, {best.key} before {other.key}."

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
 from pathlib import Path
 from typing import Any
@@ -162,7 +162,7 @@ def _check_preferences(items: list[Item], existing: _Existing, package: Path) ->
         waits = existing.newest("preference", entry.key) is entry and entry.standing == "draft"
         if (counts or waits) and not ended:
             pairs.add((entry.record.correlation, entry.record.over))
-    if cycle := find_cycle(iter(sorted(pairs))):
+    if cycle := find_cycle(sorted(pairs)):
         why = f"the preferences, with those recorded already, go round in a circle: {' over '.join(cycle)}."
         raise InvalidPackage(str(package), [CellProblem("preferences.csv", 0, "", "", why)])
 
@@ -198,12 +198,12 @@ def _has_value(record: Correlation, molar_mass: float) -> bool:
     return bool((np.isfinite(values) & (values > 0.0)).any())
 
 
-def find_cycle(pairs: Iterator[tuple[str, str]]) -> list[str]:
+def find_cycle(pairs: Iterable[tuple[str, str]]) -> list[str]:
     """A chain of preferences that comes back to its start, or an empty list.
 
     Examples
     --------
-    >>> find_cycle(iter([("a", "b"), ("b", "c"), ("c", "a")]))
+    >>> find_cycle([("a", "b"), ("b", "c"), ("c", "a")])
     ['a', 'b', 'c', 'a']
     """
     below: dict[str, list[str]] = {}

@@ -17,7 +17,7 @@ from registry.errors import BadQuantity
 from registry.numerals import parse_number
 from registry.quantities import find_unit, parse_temperature
 
-__all__ = ["Piece", "parse_uncertainty", "piece_at"]
+__all__ = ["Piece", "parse_uncertainty"]
 
 _ALLOWED = "pieces such as '0.025 % up to 373 K; 0.1 %' are allowed."
 _PIECE = re.compile(r"(not stated|(\S+) (%|\S+))(?: up to (.+))?")
@@ -103,8 +103,3 @@ def _read_piece(match: re.Match[str], upper: float, dimension: str) -> Piece:
         return Piece(upper, absolute=float(amount * find_unit(match[3], dimension).factor))
     except BadQuantity as error:
         raise ValueError(f"{match[3]!r}: {error.allowed}") from None
-
-
-def piece_at(pieces: tuple[Piece, ...], kelvin: float) -> Piece | None:
-    """The piece that holds at a temperature, K."""
-    return next((piece for piece in pieces if kelvin <= piece.upper), None)

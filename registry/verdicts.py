@@ -11,7 +11,7 @@ from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.naming import join_names
 from registry.properties import PROPERTIES
-from registry.ranking import explain_order, rank_of
+from registry.ranking import deciding_rule, explain_order, rank_of
 from registry.refusals import Nearest, Refusal
 
 __all__ = ["Verdict", "explain_choice", "judge_candidates", "refuse"]
@@ -115,20 +115,10 @@ def explain_choice(coverage: Coverage, kelvin: float) -> str:
     aside = f" A steward's preference sets {set_aside} aside." if dropped else ""
     if not left:
         return aside.strip()
-    closest = min(left, key=lambda c: (_first_difference(best, c, kelvin), c.key))
+    # the rival that falls behind by the latest rule
+    closest = min(left, key=lambda c: (-deciding_rule(best, c, kelvin), c.key))
     first = f"Of {len(others) + 1} that cover this temperature it ranks first; next comes {closest.key}: "
     return first + explain_order(best, closest, kelvin) + aside
-
-
-def _first_difference(best: Candidate, other: Candidate, kelvin: float) -> int:
-    """How late in the ranking two candidates differ, negated: the closest rival sorts first."""
-    same = (
-        best.counted.evidence == other.counted.evidence,
-        best.ranked_uncertainty(kelvin) == other.ranked_uncertainty(kelvin),
-        best.width == other.width,
-        best.year == other.year,
-    )
-    return -next((i for i, equal in enumerate(same) if not equal), len(same))
 
 
 def _why_not_covering(coverage: Coverage, candidate: Candidate, kelvin: float) -> str:
@@ -192,7 +182,7 @@ def refuse(coverage: Coverage, kelvin: float) -> Refusal:
 
 def _find_nearest(coverage: Coverage, kelvin: float) -> tuple[Nearest, ...]:
     """The nearest answering window on either side."""
-    usable = [c for c in coverage.accepted if c.reach[0] <= c.reach[1] and not c.covers(kelvin)]
+    usable = [c for c in coverage.accepted if not (c.empty or c.covers(kelvin))]
     below = [c for c in usable if c.reach[1] < kelvin]
     above = [c for c in usable if kelvin < c.reach[0]]
     # of several that end at the same bound, the one that answers there

@@ -80,9 +80,14 @@ class File:
     refers: dict[str, str]
 
     @property
+    def kind(self) -> str:
+        """The kind of its records; empty for points, which are part of one."""
+        return getattr(self.record, "kind", "")
+
+    @property
     def reviewed(self) -> bool:
         """True if its records have a standing."""
-        return getattr(self.record, "kind", "") in REVIEWED
+        return self.kind in REVIEWED
 
 
 _STANDING = Column("standing", choice(*STANDINGS), required=True)

@@ -79,12 +79,12 @@ def _find_silent(
 ) -> Callable[[str, str], bool]:
     """Which references are not reported on top: into a file, row or key that could not be read."""
     unread = {p.file for p in problems if p.file in FILES and (p.column == "key" or not rows.get(p.file))}
-    silent_kinds = {getattr(FILES[name].record, "kind", "") for name in unread}
+    silent_kinds = {FILES[name].kind for name in unread}
     failed = {
         (kind, row.cells.get("key", ""))
         for name, of_file in rows.items()
         for row in of_file
-        if (kind := getattr(FILES[name].record, "kind", "")) and (kind, row.cells.get("key", "")) not in by_key
+        if (kind := FILES[name].kind) and (kind, row.cells.get("key", "")) not in by_key
     }
     return lambda kind, key: kind in silent_kinds or (kind, key) in failed
 

@@ -9,11 +9,11 @@ from functools import partial
 from typing import Any, ClassVar, Self
 
 from registry import cells
-from registry.cells import choice, complain
+from registry.cells import choice
 from registry.errors import Problem
 from registry.numerals import parse_number
 from registry.properties import PROPERTIES
-from registry.quantities import UNITS
+from registry.quantities import UNITS, unit_names
 from registry.records.record import (
     EVIDENCE_WORD,
     OBTAINED_WORD,
@@ -21,6 +21,7 @@ from registry.records.record import (
     TEMPERATURE_UNIT,
     UNIT,
     Record,
+    cell_problems,
     entry,
     phase_problems,
     temperature_problems,
@@ -63,8 +64,7 @@ class FixedPoint(Record):
     def _value_problems(self) -> Iterator[Problem]:
         dimension = QUANTITIES[self.quantity]
         if UNITS[self.unit].dimension != dimension:
-            names = ", ".join(u.name for u in UNITS.values() if u.dimension == dimension)
-            yield Problem("unit", self.unit, f"{self.quantity} is in one of {names}.")
+            yield Problem("unit", self.unit, f"{self.quantity} is in one of {', '.join(unit_names(dimension))}.")
         elif dimension != "number" and self.value_si() <= 0.0:
             yield Problem("value", self.value, f"a {self.quantity} is above zero.")
 
@@ -143,7 +143,7 @@ class Dataset(Record):
     def _point_problems(self, number: int, point: Point) -> Iterator[Problem]:
         """Problems of one point; the field says which."""
         place = f"points.{number}."
-        bad = list(_cell_problems(point, place))
+        bad = list(cell_problems(point, place))
         if bad:
             yield from bad
             return
@@ -167,10 +167,3 @@ class Dataset(Record):
         record = super().restore(key, content)
         object.__setattr__(record, "points", tuple(Point(**row) for row in content["points"]))
         return record
-
-
-def _cell_problems(point: Point, place: str) -> Iterator[Problem]:
-    for field in dataclasses.fields(point):
-        text = getattr(point, field.name)
-        if why := complain(field.metadata["cell"], text, field.metadata["required"]):
-            yield Problem(place + field.name, text, why)

@@ -10,7 +10,7 @@ from registry.cells import Cell, choice, complain, word
 from registry.errors import InvalidRecord, Problem
 from registry.numerals import parse_number
 from registry.properties import PROPERTIES
-from registry.quantities import UNITS
+from registry.quantities import UNITS, unit_names
 from registry.scales import SCALES
 from registry.uncertainty import parse_uncertainty
 
@@ -21,7 +21,7 @@ OBTAINED = ("seen", "memory")
 
 # barg looks like bar, and must not be taken for it
 UNIT = word("a unit such as kPa, kJ/mol or kg/m3 is allowed; pressures are absolute.", *UNITS, suggest=False)
-TEMPERATURE_UNIT = choice(*(unit.name for unit in UNITS.values() if unit.dimension == "temperature"))
+TEMPERATURE_UNIT = choice(*unit_names("temperature"))
 SCALE = choice(*SCALES)
 EVIDENCE_WORD = choice(*EVIDENCE)
 OBTAINED_WORD = choice(*OBTAINED)
@@ -47,7 +47,7 @@ class Record:
     key: str
 
     def __post_init__(self) -> None:
-        problems = list(self._cell_problems())
+        problems = list(cell_problems(self))
         bad = {problem.field for problem in problems}
         for check in self._checks():
             try:
@@ -57,13 +57,6 @@ class Record:
                     raise
         if problems:
             raise InvalidRecord(self.kind, self.key, problems)
-
-    def _cell_problems(self) -> Iterator[Problem]:
-        for field in dataclasses.fields(self):  # type: ignore[arg-type]
-            if "cell" in field.metadata:
-                text = getattr(self, field.name)
-                if why := complain(field.metadata["cell"], text, field.metadata["required"]):
-                    yield Problem(field.name, text, why)
 
     def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
         """What must hold between fields; each check runs even where another one cannot."""
@@ -95,6 +88,15 @@ class Record:
         return ()
 
 
+def cell_problems(holder: Any, place: str = "") -> Iterator[Problem]:
+    """Each field of a dataclass whose text its cell does not allow; `place` goes before its name."""
+    for field in dataclasses.fields(holder):
+        if "cell" in field.metadata:
+            text = getattr(holder, field.name)
+            if why := complain(field.metadata["cell"], text, field.metadata["required"]):
+                yield Problem(place + field.name, text, why)
+
+
 def phase_problems(prop: str, phase: str) -> Iterator[Problem]:
     """A property belongs to a liquid or to a solid."""
     expected = PROPERTIES[prop].phase
@@ -105,8 +107,7 @@ def phase_problems(prop: str, phase: str) -> Iterator[Problem]:
 def value_unit_problems(name: str, dimension: str) -> Iterator[Problem]:
     """A value is in a unit of its property's dimension."""
     if UNITS[name].dimension != dimension:
-        names = ", ".join(unit.name for unit in UNITS.values() if unit.dimension == dimension)
-        yield Problem("value_unit", name, f"one of {names} is allowed.")
+        yield Problem("value_unit", name, f"one of {', '.join(unit_names(dimension))} is allowed.")
 
 
 def temperature_problems(field: str, text: str, unit: str) -> Iterator[Problem]:

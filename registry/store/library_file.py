@@ -134,11 +134,6 @@ class LibraryFile:
         except sqlite3.OperationalError as error:
             raise LibraryBusy(str(self.path)) from error
 
-    def read_position(self) -> int:
-        """The number of the last change."""
-        with self.reading() as view:
-            return view.position
-
     def _engine(self) -> Engine:
         if self._closed:
             raise BadInput(f"{self.path} is closed. Open the library again.")
