@@ -29,6 +29,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from registry.polynomial import polynomial_and_slope
+
 __all__ = ["SCALES", "Scale"]
 
 Array = NDArray[np.float64]
@@ -53,28 +55,18 @@ _D48 = (
 )  # fmt: skip
 
 
-def _polynomial(coefficients: tuple[float, ...], x: Array) -> tuple[Array, Array]:
-    """A polynomial and its derivative, by Horner's rule."""
-    value = np.full_like(x, coefficients[-1])
-    slope = np.zeros_like(x)
-    for c in coefficients[-2::-1]:
-        slope = slope * x + value
-        value = value * x + c
-    return value, slope
-
-
 def _middle_68(kelvin: Array) -> tuple[Array, Array]:
-    value, slope = _polynomial(_A, (kelvin - ICE_POINT) / 630.0)
+    value, slope = polynomial_and_slope(_A, (kelvin - ICE_POINT) / 630.0)
     return -value, -slope / 630.0
 
 
 def _high_68(kelvin: Array) -> tuple[Array, Array]:
-    value, slope = _polynomial(_B, kelvin - ICE_POINT)
+    value, slope = polynomial_and_slope(_B, kelvin - ICE_POINT)
     return -value, -slope
 
 
 def _low_68(kelvin: Array) -> tuple[Array, Array]:
-    value, slope = _polynomial(_C, (kelvin - 40.0) / 40.0)
+    value, slope = polynomial_and_slope(_C, (kelvin - 40.0) / 40.0)
     return -value, -slope / 40.0
 
 

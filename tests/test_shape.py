@@ -20,7 +20,7 @@ MODULES = sorted(
 
 LAYERS = (
     # what stands lower never imports what stands higher; within a layer, modules may import each other
-    {"refusals", "numerals", "rules", "canonical", "merkle", "naming"},
+    {"refusals", "numerals", "rules", "canonical", "merkle", "naming", "polynomial"},
     {"errors"},
     {"quantities", "properties", "cells", "scales", "shelves"},
     {"display"},

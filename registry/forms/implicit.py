@@ -10,6 +10,7 @@ import numpy as np
 from registry.forms.elementary import Expression
 from registry.forms.form import Array, Coefficients, Folded, Form, Units, fold_named
 from registry.forms.roots import solve_bracketed, solve_rising_concave
+from registry.polynomial import polynomial_and_slope
 
 __all__ = ["FORMS"]
 
@@ -42,19 +43,11 @@ def _thodos_slope(t: Array, p: Parameters) -> Array:
 THODOS = Expression(_thodos_value, _thodos_slope)
 
 
-def _helium_temperature(x: Array, a: tuple[float, ...]) -> tuple[Array, Array]:
-    value, slope = np.full_like(x, a[-1]), np.zeros_like(x)
-    for coefficient in a[-2::-1]:
-        slope = slope * x + value
-        value = value * x + coefficient
-    return value, slope
-
-
 def _helium_argument(t: Array, p: Parameters) -> Array:
     """x = (ln p - B)/C at which the ITS-90 equation gives T."""
     a, _, _ = p
     return solve_bracketed(
-        lambda x: _helium_temperature(x, a)[0] - t, lambda x: _helium_temperature(x, a)[1], -_BRACKET, _BRACKET, t
+        lambda x: polynomial_and_slope(a, x)[0] - t, lambda x: polynomial_and_slope(a, x)[1], -_BRACKET, _BRACKET, t
     )
 
 
@@ -66,12 +59,12 @@ def _helium_value(t: Array, p: Parameters) -> Array:
 def _helium_slope(t: Array, p: Parameters) -> Array:
     a, b, c = p
     x = _helium_argument(t, p)
-    return np.exp(b + c * x) * c / _helium_temperature(x, a)[1]
+    return np.exp(b + c * x) * c / polynomial_and_slope(a, x)[1]
 
 
 def _helium_bounds(p: Parameters) -> tuple[float, float]:
     """The temperatures at the ends of the bracket: beyond them the equation is not solved."""
-    low, high = _helium_temperature(np.array([-_BRACKET, _BRACKET]), p[0])[0].tolist()
+    low, high = polynomial_and_slope(p[0], np.array([-_BRACKET, _BRACKET]))[0].tolist()
     return low, high
 
 

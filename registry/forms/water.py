@@ -7,7 +7,7 @@ from typing import Any
 import numpy as np
 
 from registry.forms.elementary import Expression
-from registry.forms.form import LN10, Array, Coefficients, Folded, Form, numbered
+from registry.forms.form import LN10, Array, Coefficients, Folded, Form, fold_named, numbered
 
 __all__ = ["FORMS"]
 
@@ -140,14 +140,14 @@ FORMS = (
         "goff-gratch", "Goff-Gratch",
         "log10(p/ps) = -k1(Ts/T - 1) + k2 log10(Ts/T) - k3(10^(k4(1 - T/Ts)) - 1) + k5(10^(-k6(Ts/T - 1)) - 1)",
         Coefficients((*_K6, "Ts", "ps")),
-        lambda c, units: Folded(GOFF_GRATCH, tuple(c[name] for name in (*_K6, "Ts", "ps"))), _VAPOR,
+        fold_named(GOFF_GRATCH, *_K6, "Ts", "ps"), _VAPOR,
         "J. A. Goff, S. Gratch, Trans. Am. Soc. Heat. Vent. Eng. 52, 95 (1946)",
     ),
     Form(
         "wmo-goff", "WMO (Goff 1957)",
         "log10 p = k1(1 - Tt/T) - k2 log10(T/Tt) + k3(1 - 10^(-k4(T/Tt - 1))) + k5(10^(k6(1 - Tt/T)) - 1) + k7",
         Coefficients((*_K6, "k7", "Tt")),
-        lambda c, units: Folded(WMO, tuple(c[name] for name in (*_K6, "k7", "Tt"))), _VAPOR,
+        fold_named(WMO, *_K6, "k7", "Tt"), _VAPOR,
         "J. A. Goff, Trans. ASHVE 63, 347 (1957); WMO Technical Regulations",
     ),
     Form(
@@ -164,7 +164,7 @@ FORMS = (
         "p = [2C/(-B + sqrt(B^2 - 4AC))]^4 in MPa; v = T + n9/(T - n10), A = v^2 + n1 v + n2, "
         "B = n3 v^2 + n4 v + n5, C = n6 v^2 + n7 v + n8",
         Coefficients(tuple(f"n{i}" for i in range(1, 11))),
-        lambda c, units: Folded(IF97, tuple(c[f"n{i}"] for i in range(1, 11))), _VAPOR,
+        fold_named(IF97, *(f"n{i}" for i in range(1, 11))), _VAPOR,
         "IAPWS R7-97(2012), eq. (30)", value_unit="MPa",
     ),
     Form(
