@@ -162,4 +162,12 @@ FORMULA = _pattern(
     "a formula of element symbols and counts is allowed, such as C2H5OH.",
     r"(?:\[\d{1,3}[A-Z][a-z]?\]\d{0,3}|[A-Z][a-z]?\d{0,3}|\((?:[A-Z][a-z]?\d{0,3})+\)\d{0,3})+",
 )
+EDITION = _pattern(
+    "a name of letters, digits, '-', '_' and '.' is allowed, such as 2026-Q4; no number, no date.",
+    r"(?!\d+\Z)(?!\d{4}-\d\d-\d\d)[A-Za-z0-9][A-Za-z0-9._-]*",
+    limit=80,
+)
+ROOT = _pattern(
+    "a root such as 12:5dc9... is allowed: the number of changes and 64 hexadecimal digits.", r"\d+:[0-9a-f]{64}"
+)
 PHASE = _pattern("liquid, solid or a named solid such as ice Ih is allowed.", r"[a-z][A-Za-z0-9 -]{0,39}")

@@ -7,14 +7,18 @@ from contextlib import AbstractContextManager
 from typing import Any, Self
 
 from registry.dossier import Dossier, Entry
-from registry.entries import entry_of, in_force, read_dossier, with_standing
+from registry.entries import enter_all, enter_states, read_dossier, restore
 from registry.errors import BadInput, UnknownKey, quote
 from registry.naming import nearest_names
 from registry.records import KINDS, Compound, Correlation
-from registry.store.history import Change
+from registry.store.history import Change, fold_term
 from registry.store.library_file import LibraryFile, View
+from registry.store.reading import Row
 
 __all__ = ["Collection"]
+
+_UNNAMED = ("name", "review", "library", "origin")
+"""Kinds that nobody looks for by key."""
 
 
 class Collection:
@@ -27,14 +31,17 @@ class Collection:
     position : int, optional
         The change up to which everything is read; the newest one if none is
         given.
+    lock : RLock, optional
+        Of the collection that this one is a view of, and that owns the file.
     """
 
-    def __init__(self, file: LibraryFile, position: int | None = None) -> None:
+    def __init__(self, file: LibraryFile, position: int | None = None, lock: threading.RLock | None = None) -> None:
         self._file = file
         self._position = position
-        self._lock = threading.RLock()
+        self._owner = lock is None
+        self._lock = lock or threading.RLock()
         self._stamp = -1
-        self._dossiers: dict[str, Dossier] = {}
+        self._dossiers: dict[tuple[str, bool], Dossier] = {}
 
     def __enter__(self) -> Self:
         return self
@@ -46,8 +53,9 @@ class Collection:
         return f"<{type(self).__name__} {self.place}>"
 
     def close(self) -> None:
-        """Release the file."""
-        self._file.close()
+        """Release the file; a view leaves it to the library that it looks at."""
+        if self._owner:
+            self._file.close()
 
     @property
     def place(self) -> str:
@@ -65,6 +73,8 @@ class Collection:
 
     def _refresh(self) -> None:
         """Forget what was read if anybody has changed the file since."""
+        if self._position is not None:
+            return  # what is past does not change
         stamp = self._file.read_stamp()
         if stamp != self._stamp:
             self._stamp = stamp
@@ -104,7 +114,7 @@ class Collection:
         with self._lock, self._reading() as view:
             if view.current("compound", [text]):
                 return text
-            found = {str(row.content.get("compound", row.key)) for row in view.find_term(text)}
+            found = {key for row in view.find_term(text) if (key := _named_by(row, text))}
             # a key in other case, before names
             if len(found) != 1 and view.current("compound", [text.casefold()]):
                 return text.casefold()
@@ -115,36 +125,39 @@ class Collection:
             keys = [row.key for row in view.kind("compound")]
             raise UnknownKey("compound", text, nearest=nearest_names(text, [*keys, *view.terms()]))
 
-    def dossier(self, compound: str) -> Dossier:
+    def dossier(self, compound: str, *, drafts: bool = False) -> Dossier:
         """Everything recorded about a compound.
 
         Parameters
         ----------
         compound : str
             Any of its names.
+        drafts : bool
+            Let the newest draft of a correlation stand for it.
 
         Returns
         -------
         Dossier
-            Records of every standing, at the newest position.
+            Records of every standing, at the position.
         """
         with self._lock:
             self._refresh()
             key = self.find_compound(compound)
-            if key not in self._dossiers:
+            found = self._dossiers.get((key, drafts))
+            if found is None:
                 with self._reading() as view:
-                    self._dossiers[key] = read_dossier(view, key)
-            return self._dossiers[key]
+                    found = self._dossiers[key, drafts] = read_dossier(view, key, drafts=drafts)
+            return found
 
     def compounds(self) -> list[Entry[Compound]]:
         """Every compound, by key."""
         with self._lock, self._reading() as view:
-            return [entry_of(row) for row in view.kind("compound")]
+            return enter_all(view, "compound")
 
     def correlations(self) -> list[Entry[Correlation]]:
-        """Every correlation, by key, in its newest revision."""
+        """Every correlation, by key, in the revision that counts."""
         with self._lock, self._reading() as view:
-            return with_standing(view, view.kind("correlation"))
+            return enter_all(view, "correlation")
 
     def entry(self, key: str) -> Entry[Any]:
         """The record under a key, of whatever kind; a compound by any name.
@@ -157,7 +170,8 @@ class Collection:
         Returns
         -------
         Entry
-            The newest revision, with its standing.
+            The revision that counts, with its standing; `waiting` names a
+            newer one that waits for review.
 
         Raises
         ------
@@ -166,16 +180,16 @@ class Collection:
         """
         with self._lock, self._reading() as view:
             for kind in KINDS:
-                rows = view.current(kind, [key])
-                if rows:
-                    return with_standing(view, rows)[0]
+                states = view.states(kind, [key])
+                if states:
+                    return enter_states(view, states)[0]
         try:
             return self.dossier(key).compound
         except UnknownKey as error:
             if error.several:
                 raise
         with self._lock, self._reading() as view:
-            keys = [row.key for kind in KINDS if kind not in ("name", "review") for row in view.kind(kind)]
+            keys = [row.key for kind in KINDS if kind not in _UNNAMED for row in view.kind(kind)]
             raise UnknownKey("record", key, nearest=nearest_names(key, [*keys, *view.terms()]))
 
     def referring(self, kind: str, key: str) -> list[Entry[Any]]:
@@ -192,8 +206,9 @@ class Collection:
             By kind and key, each in the revision that counts.
         """
         with self._lock, self._reading() as view:
-            rows = [row for row in view.linked(kind, key) if row.kind != "review"]
-            return list(in_force(with_standing(view, rows)))
+            entries = enter_states(view, view.linked(kind, [key]))
+            aim = (kind, key)
+            return [e for e in entries if aim in ((r.kind, r.key) for r in e.record.references())]
 
     def source_citation(self, key: str) -> str:
         """The citation of a source.
@@ -216,3 +231,11 @@ class Collection:
         """The headers of all changes, in order."""
         with self._lock, self._reading() as view:
             return view.changes()
+
+
+def _named_by(row: Row, text: str) -> str:
+    """The compound that a record gives a name to, if it still does."""
+    record = restore(row)
+    if fold_term(text) not in map(fold_term, record.terms()):
+        return ""
+    return str(getattr(record, "compound", row.key))

@@ -32,6 +32,10 @@ class Entry(Generic[R]):
         What the reviewer said.
     reviewed_in : int
         The change that gave it its standing; 0 if none did.
+    waiting : int
+        A newer revision that waits for review; 0 if there is none.
+    trial : bool
+        True for a draft that is let answer because drafts were asked for.
     """
 
     record: R
@@ -40,6 +44,8 @@ class Entry(Generic[R]):
     standing: str = ""
     standing_note: str = ""
     reviewed_in: int = 0
+    waiting: int = 0
+    trial: bool = False
 
     @property
     def key(self) -> str:
@@ -49,7 +55,7 @@ class Entry(Generic[R]):
     @property
     def accepted(self) -> bool:
         """True if it may take part in an answer."""
-        return self.standing == "accepted"
+        return self.standing == "accepted" or self.trial
 
 
 @dataclass(frozen=True)

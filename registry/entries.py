@@ -1,72 +1,131 @@
-"""Stored rows as records with their standing, and all of a compound's together."""
+"""Stored states as records with their standing, and all of a compound's together."""
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+import dataclasses
+from collections.abc import Iterable, Mapping
 from typing import Any
 
 from registry.dossier import Dossier, Entry
-from registry.records import KINDS, REVIEWED, Record, Review
+from registry.records import KINDS, REVIEWED, Record, Source
 from registry.store.library_file import View
-from registry.store.reading import Row
+from registry.store.reading import Decision, Row, State
 
-__all__ = ["entry_of", "in_force", "read_dossier", "with_standing"]
+__all__ = ["enter_all", "enter_newest", "enter_states", "read_dossier", "restore", "word_cause"]
 
 
-def entry_of(row: Row, standing: str = "", note: str = "", reviewed_in: int = 0) -> Entry[Any]:
-    """A stored row as an entry."""
+def restore(row: Row) -> Any:
+    """A stored row as a record."""
     record: Record = KINDS[row.kind].restore(row.key, row.content)
-    return Entry(record, row.revision, row.change, standing, note, reviewed_in)
+    return record
 
 
-def with_standing(view: View, rows: list[Row]) -> list[Entry[Any]]:
-    """Entries with the standing that reviews give them; a draft where none does."""
-    keys = {(row.kind, row.key, row.revision): Review.key_for(row.kind, row.key, row.revision) for row in rows}
-    wanted = [key for (kind, _, _), key in keys.items() if kind in REVIEWED]
-    reviews = {row.key: row for row in view.current("review", wanted)}
-
-    def enter(row: Row) -> Entry[Any]:
-        if row.kind not in REVIEWED:
-            return entry_of(row)
-        review = reviews.get(keys[row.kind, row.key, row.revision])
-        if review is None:
-            return entry_of(row, "draft")
-        return entry_of(row, review.content["standing"], review.content.get("note", ""), review.change)
-
-    return [enter(row) for row in rows]
+def word_cause(decision: Decision) -> str:
+    """What was said with a decision: the note of a review, the reason of a withdrawal."""
+    said: str = decision.cause.content.get("note") or decision.cause.content.get("reason", "")
+    return said
 
 
-def in_force(entries: list[Entry[Any]]) -> Iterator[Entry[Any]]:
-    """For each key the revision that counts.
+def enter_newest(state: State) -> Entry[Any]:
+    """The newest revision of a key, whether it counts or waits."""
+    newest = state.newest
+    if newest.kind not in REVIEWED:
+        return (
+            _with_decision(newest, state.decision)
+            if state.decision
+            else Entry(restore(newest), newest.revision, newest.change)
+        )
+    latest = state.latest
+    if latest is None or latest.revision != newest.revision:
+        return Entry(restore(newest), newest.revision, newest.change, "draft")
+    return _with_decision(newest, latest)
+
+
+def _with_decision(row: Row, decision: Decision) -> Entry[Any]:
+    said = word_cause(decision)
+    return Entry(restore(row), row.revision, row.change, decision.standing, said, decision.change)
+
+
+def enter_in_force(state: State) -> Entry[Any]:
+    """The revision of a key that counts.
 
     The newest accepted one stays in force while a newer draft waits or was
-    declined; a withdrawal ends it.
+    declined; a withdrawal ends it. Where nothing was decided yet, the newest.
     """
-    by_key: dict[tuple[str, str], list[Entry[Any]]] = {}
-    for entry in entries:
-        by_key.setdefault((entry.record.kind, entry.key), []).append(entry)
-    for revisions in by_key.values():
-        revisions.sort(key=lambda entry: entry.revision, reverse=True)
-        decided = (entry for entry in revisions if entry.standing in ("accepted", "withdrawn", ""))
-        yield next(decided, revisions[0])
+    newest = enter_newest(state)
+    if state.newest.kind not in REVIEWED or state.decided is None or state.decision is None:
+        return newest
+    waiting = newest.revision if newest.standing == "draft" and newest.revision != state.decided.revision else 0
+    return dataclasses.replace(_with_decision(state.decided, state.decision), waiting=waiting)
 
 
-def read_dossier(view: View, key: str) -> Dossier:
-    """Everything recorded about one compound, each key in the revision that counts."""
-    compound = entry_of(view.current("compound", [key])[0])
-    entries = list(in_force(with_standing(view, view.linked("compound", key))))
+def enter_states(view: View, states: Iterable[State]) -> list[Entry[Any]]:
+    """The revision of each key that counts; what rests on a withdrawn source is withdrawn with it."""
+    entries = [enter_in_force(state) for state in states]
+    cited = {source for entry in entries if entry.standing and (source := getattr(entry.record, "source", ""))}
+    withdrawn = withdrawn_sources(view.states("source", cited)) if cited else {}
+    return [_withdraw(entry, withdrawn) for entry in entries]
+
+
+def withdrawn_sources(states: Iterable[State]) -> Mapping[str, Decision]:
+    """The sources among these that are withdrawn, each with the decision."""
+    return {
+        state.newest.key: state.decision
+        for state in states
+        if state.decision is not None and state.decision.standing == "withdrawn"
+    }
+
+
+def _withdraw(entry: Entry[Any], sources: Mapping[str, Decision]) -> Entry[Any]:
+    decision = sources.get(getattr(entry.record, "source", ""))
+    if decision is None or entry.record.kind not in REVIEWED or entry.standing in ("withdrawn", "declined"):
+        return entry
+    note = f"its source {entry.record.source} is withdrawn: {word_cause(decision)}"
+    return dataclasses.replace(
+        entry, standing="withdrawn", standing_note=note, reviewed_in=decision.change, trial=False
+    )
+
+
+def enter_all(view: View, kind: str) -> list[Entry[Any]]:
+    """Every record of a kind, by key, in the revision that counts."""
+    return enter_states(view, view.states(kind))
+
+
+def read_dossier(view: View, key: str, *, drafts: bool = False) -> Dossier:
+    """Everything recorded about one compound, each key in the revision that counts.
+
+    Parameters
+    ----------
+    view : View
+        The library at a position.
+    key : str
+        The key of the compound.
+    drafts : bool
+        Let the newest draft of a correlation stand for it.
+    """
+    compound = enter_newest(view.states("compound", [key])[0])
+    states = view.linked("compound", [key])
+    keys = [state.newest.key for state in states if state.newest.kind == "correlation"]
+    states += view.linked("correlation", keys, "preference") if keys else []
+    entries = [enter_in_force(state) for state in states]
+    if drafts:
+        entries = [_let_answer(entry, state) for entry, state in zip(entries, states, strict=True)]
+    cited = {source for entry in entries if entry.standing and (source := getattr(entry.record, "source", ""))}
+    of_sources = view.states("source", cited) if cited else []
+    withdrawn = withdrawn_sources(of_sources)
     of_kind: dict[str, list[Any]] = {kind: [] for kind in KINDS}
     for entry in entries:
-        of_kind[entry.record.kind].append(entry)
-    keys = {entry.key for entry in of_kind["correlation"]}
-    preferences = [
-        entry
-        for entry in in_force(with_standing(view, view.revisions("preference")))
-        if {entry.record.correlation, entry.record.over} & keys
-    ]
-    cited = {entry.record.source for kind in ("correlation", "fixed-point", "dataset") for entry in of_kind[kind]}
-    sources = {row.key: KINDS["source"].restore(row.key, row.content) for row in view.current("source", cited)}
+        of_kind[entry.record.kind].append(_withdraw(entry, withdrawn))
+    sources: dict[str, Source] = {state.newest.key: restore(state.newest) for state in of_sources}
     return Dossier(
         compound, tuple(of_kind["correlation"]), tuple(of_kind["fixed-point"]), tuple(of_kind["dataset"]),
-        tuple(preferences), sources, view.position,  # type: ignore[arg-type]
+        tuple(of_kind["preference"]), sources, view.position,
     )  # fmt: skip
+
+
+def _let_answer(entry: Entry[Any], state: State) -> Entry[Any]:
+    """A correlation's newest draft in place of what counts, marked as on trial."""
+    newest = enter_newest(state)
+    if state.newest.kind == "correlation" and newest.standing == "draft":
+        return dataclasses.replace(newest, trial=True)
+    return entry

@@ -11,6 +11,7 @@
     |   `-- UnknownKey (LookupError)   no record under that key or name
     |-- Refused (LookupError)          no correlation may answer
     |-- LibraryBusy (TimeoutError)     another writer holds the library
+    |-- RevisedMeanwhile               somebody else has revised a record since it was read
     `-- LibraryUnreadable (OSError)    there is no library that can be read
         |-- NoLibrary                  nothing is there
         |-- NotALibrary                a file, but no library, or damaged
@@ -23,13 +24,10 @@ allowed and what to do next.
 
 from __future__ import annotations
 
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
-from typing import TYPE_CHECKING
 
 from registry.refusals import Refusal
-
-if TYPE_CHECKING:
-    from collections.abc import Sequence
 
 
 def quote(text: object, limit: int = 60) -> str:
@@ -163,6 +161,55 @@ class LibraryBusy(RangebookError, TimeoutError):
     def __init__(self, place: str) -> None:
         self.place = place
         super().__init__(f"{place} is being written by another process. Nothing was changed; try again.")
+
+
+class RevisedMeanwhile(RangebookError):
+    """Somebody else has revised a record since it was read; nothing was recorded.
+
+    Attributes
+    ----------
+    kind, key : str
+        The record.
+    expected, found : int
+        The revision it was read in, and the newest one.
+    mine, theirs : mapping
+        What was to be recorded, and what the newest revision says.
+    """
+
+    def __init__(
+        self, kind: str, key: str, expected: int, found: int, mine: Mapping[str, object], theirs: Mapping[str, object]
+    ) -> None:
+        self.kind = kind
+        self.key = key
+        self.expected = expected
+        self.found = found
+        self.mine = dict(mine)
+        self.theirs = dict(theirs)
+        head = (
+            f"The {kind} {key} was read in revision {expected}, but revision {found} is the newest now. "
+            "Nothing was recorded. Look at it and start from it."
+        )
+        super().__init__("\n".join([head, *put_side_by_side(self.mine, self.theirs, f"revision {found}")]))
+
+
+def put_side_by_side(mine: Mapping[str, object], theirs: Mapping[str, object], whose: str) -> list[str]:
+    """Two contents field by field, where they differ, as indented lines."""
+    lines: list[str] = []
+    for name in dict.fromkeys([*mine, *theirs]):
+        if mine.get(name) != theirs.get(name):
+            lines += [
+                f"  {name}",
+                f"    yours: {_shorten(mine.get(name))}",
+                f"    {whose}: {_shorten(theirs.get(name))}",
+            ]
+    return lines
+
+
+def _shorten(value: object, limit: int = 200) -> str:
+    if isinstance(value, Mapping):
+        value = "; ".join(f"{name}={text}" for name, text in value.items())
+    text = "nothing" if value in (None, "") else str(value)
+    return text if len(text) <= limit else f"{text[:limit]}... ({len(text)} characters)"
 
 
 class LibraryUnreadable(RangebookError, OSError):

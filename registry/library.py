@@ -1,32 +1,60 @@
 """The facade: every verb of the job is one method of `Library`.
 
-Here and in `registry.reader` the database and the numeric side meet, and
+Here and in the readers below it the database and the numeric side meet, and
 nowhere else.
 """
 
 from __future__ import annotations
 
 import os
+from collections.abc import Callable
+from dataclasses import dataclass
 from datetime import UTC, datetime
 from pathlib import Path
 from typing import Any
 
+from registry.archive import Archive
 from registry.cells import SIGNED, TEXT, complain
-from registry.entries import in_force, with_standing
+from registry.editions import format_time, plan_edition
+from registry.entries import enter_all
 from registry.errors import BadInput, quote
-from registry.reader import Reader
-from registry.records import KINDS
+from registry.holdings import Holdings, draft_of
+from registry.judgement import Plan, accept_at_once, plan_preference, plan_review, plan_withdrawal
+from registry.recording import plan_record, plan_revision
+from registry.records import Keeping, Record
+from registry.store.history import Change
 
-__all__ = ["Library", "check_signature", "now_utc"]
+__all__ = ["Library", "Recorded", "check_signature", "now_utc"]
+
+_DUMPED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset", "preference")
 
 
 def now_utc() -> str:
     """The time now, UTC, ISO 8601 with microseconds."""
-    return datetime.now(UTC).strftime("%Y-%m-%dT%H:%M:%S.%fZ")
+    return format_time(datetime.now(UTC))
 
 
-class Library(Reader):
-    """A library: reading as `Reader` does, and recording.
+@dataclass(frozen=True)
+class Recorded:
+    """What a verb has recorded.
+
+    Attributes
+    ----------
+    change : Change
+        The header of the change.
+    record : Record
+        The record that it is about.
+    revision : int
+        Its revision.
+    """
+
+    change: Change
+    record: Record
+    revision: int
+
+
+class Library(Archive):
+    """A library: reading as `Archive` does, and recording.
 
     Parameters
     ----------
@@ -34,9 +62,224 @@ class Library(Reader):
         The open database.
     """
 
+    def record(self, record: Record, *, author: str, reason: str = "", accept: bool = False) -> Recorded:
+        """Record something under a key that is still free.
+
+        Parameters
+        ----------
+        record : Record
+            A compound, name, source, correlation, fixed point, printed value
+            or dataset.
+        author : str
+            Who records it.
+        reason : str
+            Why; "Recorded ..." if empty.
+        accept : bool
+            Accept it in the same change; only in a library that one person
+            keeps.
+
+        Returns
+        -------
+        Recorded
+            A correlation, fixed point or dataset is a draft until it is
+            reviewed.
+
+        Raises
+        ------
+        BadInput
+            If the key is taken, or the record does not fit the library.
+        LibraryBusy
+            If another process writes for too long.
+        """
+        why = reason or f"Recorded {record.kind} {record.key}"
+        return self._append(
+            author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept))
+        )  # fmt: skip
+
+    def revise(
+        self, record: Record, *, author: str, reason: str, expect: int | None = None, accept: bool = False
+    ) -> Recorded:
+        """Append a revision of a record; nothing is ever edited in place.
+
+        Parameters
+        ----------
+        record : Record
+            As it shall be, under the key that it has.
+        author, reason : str
+            Who, and why.
+        expect : int, optional
+            The revision it was made from.
+        accept : bool
+            Accept it in the same change; only in a library that one person
+            keeps.
+
+        Returns
+        -------
+        Recorded
+            An accepted revision stays in force while this one waits.
+
+        Raises
+        ------
+        RevisedMeanwhile
+            If the newest revision is not the expected one; nothing was
+            recorded.
+        BadInput
+            If there is no such record, nothing would change, or the record
+            does not fit the library.
+        """
+        return self._append(
+            author, reason, lambda held: plan_revision(held, record, expect, accept=accept_at_once(held, accept))
+        )  # fmt: skip
+
+    def review(
+        self, key: str, *, accept: bool, author: str, note: str, kind: str = "", expect: int | None = None
+    ) -> Recorded:
+        """Accept or decline what waits for review, or accept again what was declined or withdrawn.
+
+        Parameters
+        ----------
+        key : str
+            The key of a correlation, fixed point, dataset or preference; that
+            of a record whose withdrawal waits; or of a withdrawn source.
+        accept : bool
+            True to accept, False to decline.
+        author : str
+            The reviewer: somebody else than who recorded it, but where one
+            person keeps the library.
+        note : str
+            What the reviewer looked at.
+        kind : str
+            Needed where several records have the key.
+        expect : int, optional
+            The revision that was looked at.
+
+        Raises
+        ------
+        UnknownKey, BadInput
+            If nothing waits there, or the reviewer recorded it.
+        RevisedMeanwhile
+            If a newer revision waits than the one expected.
+        """
+        standing = "accepted" if accept else "declined"
+        return self._append(
+            author, note, lambda held: plan_review(held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect)
+        )  # fmt: skip
+
+    def withdraw(
+        self, key: str, *, author: str, reason: str, cause: str = "other", kind: str = "", accept: bool = False
+    ) -> Recorded:
+        """Withdraw a correlation, fixed point, dataset, preference or source, once that is accepted.
+
+        Parameters
+        ----------
+        key : str
+            What to withdraw. With a source goes everything that rests on it.
+        author, reason : str
+            Who, and why.
+        cause : {'erratum', 'retraction', 'superseded', 'other'}
+            The kind of reason.
+        kind : str
+            Needed where several records have the key.
+        accept : bool
+            Accept it in the same change; only in a library that one person
+            keeps.
+
+        Returns
+        -------
+        Recorded
+            The withdrawal, which waits for review like a draft.
+
+        Raises
+        ------
+        UnknownKey, BadInput
+            If there is nothing to withdraw, or its withdrawal waits already.
+        """
+        return self._append(
+            author,
+            reason,
+            lambda held: plan_withdrawal(
+                held, key, cause, reason.strip(), kind=kind, accept=accept_at_once(held, accept)
+            ),
+        )
+
+    def prefer(self, key: str, over: str, *, author: str, reason: str, accept: bool = False) -> Recorded:
+        """Prefer one correlation over another wherever both cover, once that is accepted.
+
+        Parameters
+        ----------
+        key, over : str
+            Correlations for one property of one compound.
+        author, reason : str
+            Who, and why.
+        accept : bool
+            Accept it in the same change; only in a library that one person
+            keeps.
+
+        Raises
+        ------
+        UnknownKey, BadInput
+            If one of them is not recorded, they are for different things, the
+            preference is recorded already, or it would close a circle.
+        """
+        return self._append(
+            author,
+            reason,
+            lambda held: plan_preference(held, key, over, reason.strip(), accept=accept_at_once(held, accept)),
+        )
+
+    def freeze(self, name: str, *, author: str, note: str) -> Recorded:
+        """Name the newest position, with its root and rules version: an edition.
+
+        Parameters
+        ----------
+        name : str
+            Letters, digits, '-', '_' and '.'; not a number and not a date.
+        author, note : str
+            Who, and what for.
+
+        Returns
+        -------
+        Recorded
+            The edition; it names the position before its own change.
+
+        Raises
+        ------
+        BadInput
+            If there is an edition of that name already.
+        """
+        return self._append(author, note, lambda held: plan_edition(held, name, note.strip()))
+
+    def keep(self, *, solo: bool, author: str) -> Recorded | None:
+        """Say that one person keeps the library and reviews their own, or that a team does.
+
+        Returns
+        -------
+        Recorded or None
+            None if the library says so already.
+        """
+        kept_by = "one-person" if solo else "team"
+        who, why = check_signature(author, f"The library is kept by {'one person' if solo else 'a team'}.")
+        with self._lock, self._file.writing() as (view, append):
+            state = next(iter(view.states("library", ["library"])), None)
+            name, started_at = view.identity()
+            if state is not None and state.newest.content["kept_by"] == kept_by:
+                return None
+            record = Keeping(name=name, started_at=started_at, kept_by=kept_by)
+            change = append(who, why, now_utc(), [draft_of(record)])
+            return Recorded(change, record, state.newest.revision + 1 if state is not None else 1)
+
+    def _append(self, author: str, reason: str, plan: Callable[[Holdings], Plan]) -> Recorded:
+        """One change: planned and appended under the write lock, whole or not at all."""
+        who, why = check_signature(author, reason)
+        with self._lock, self._file.writing() as (view, append):
+            planned = plan(Holdings(view))
+            change = append(who, why, now_utc(), planned.drafts)
+        return Recorded(change, planned.record, planned.revision)
+
     def load(
-        self, path: str | os.PathLike[str], *, author: str, reason: str = "", dry_run: bool = False
-    ) -> dict[str, Any]:
+        self, path: str | os.PathLike[str], *, author: str, reason: str = "", accept: bool = False,
+        dry_run: bool = False,
+    ) -> dict[str, Any]:  # fmt: skip
         """Load a package in one change: all of it or nothing.
 
         Parameters
@@ -47,16 +290,20 @@ class Library(Reader):
             Who loads it.
         reason : str
             Why; the name of the package if empty.
+        accept : bool
+            Review the whole load at once: every record gets the standing that
+            the package says. Without, what can change an answer arrives as a
+            draft.
         dry_run : bool
             Check everything and record nothing.
 
         Returns
         -------
         dict
-            How many records were ``added``, ``revised``, ``reviewed`` and
-            ``unchanged``; the number of the ``change`` (0 if there was nothing
-            to record); under ``changed`` what was revised or reviewed, a line
-            each.
+            How many records were ``added``, ``revised``, ``reviewed``,
+            ``proposed`` (withdrawals that wait) and ``unchanged``; the number
+            of the ``change`` (0 if there was nothing to record); under
+            ``changed`` what was revised, reviewed or proposed, a line each.
 
         Raises
         ------
@@ -65,16 +312,18 @@ class Library(Reader):
         LibraryBusy
             If another process writes for too long.
         """
-        from registry.recording import plan_load
+        from registry.arrival import plan_load
 
         package = Path(path)
+        if accept and not reason.strip():
+            raise BadInput("Accepting a whole load at once needs a note that says what was looked at.")
         if dry_run:
             with self._lock, self._reading() as view:
-                plan = plan_load(view, package)
+                plan = plan_load(view, package, accept=accept)
                 return {**plan.counts, "change": 0, "changed": plan.changed}
         who, why = check_signature(author, reason or f"Loaded {package.name[:200]}")
         with self._lock, self._file.writing() as (view, append):
-            plan = plan_load(view, package)
+            plan = plan_load(view, package, accept=accept)
             number = append(who, why, now_utc(), plan.drafts).number if plan.drafts else 0
         return {**plan.counts, "change": number, "changed": plan.changed}
 
@@ -98,11 +347,9 @@ class Library(Reader):
         from registry.exchange.dumping import dump_items
 
         with self._lock, self._reading() as view:
-            entries = [e for kind in KINDS if kind != "review" for e in with_standing(view, view.revisions(kind))]
-        counting = list(in_force(entries))
-        newest = {(e.record.kind, e.key): e.revision for e in entries}
-        waiting = sum(newest[e.record.kind, e.key] > e.revision for e in counting)
-        rows = dump_items(Path(path), ((e.record, (e.standing, e.standing_note)) for e in counting))
+            entries = [entry for kind in _DUMPED for entry in enter_all(view, kind)]
+        waiting = sum(entry.waiting > 0 for entry in entries)
+        rows = dump_items(Path(path), ((e.record, (e.standing, e.standing_note)) for e in entries))
         return {**rows, "waiting": waiting} if waiting else rows
 
 

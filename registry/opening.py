@@ -6,12 +6,18 @@ import os
 from pathlib import Path
 
 from registry.errors import BadInput
+from registry.holdings import draft_of
 from registry.library import Library, check_signature, now_utc
+from registry.records import Keeping
 from registry.store.library_file import LibraryFile, locate
 
 __all__ = ["default_place", "open_library", "start_library", "upgrade_library"]
 
-SHELVES = ("published", "scenario", "none")
+_REASONS = {
+    "published": "The published shelf, accepted as it stands.",
+    "scenario": "The invented scenario.",
+    "none": "A new library.",
+}
 
 
 def default_place() -> str:
@@ -61,7 +67,9 @@ def open_library(place: str | os.PathLike[str] | None = None) -> Library:
     return Library(LibraryFile.open(locate(place)))
 
 
-def start_library(place: str | os.PathLike[str], shelf: str = "published", author: str = "rangebook") -> Library:
+def start_library(
+    place: str | os.PathLike[str], shelf: str = "published", author: str = "rangebook", *, solo: bool = False
+) -> Library:
     """Make a new library, with a shelf or empty.
 
     Parameters
@@ -73,6 +81,8 @@ def start_library(place: str | os.PathLike[str], shelf: str = "published", autho
         demonstration scenario, or nothing.
     author : str
         Who starts it.
+    solo : bool
+        True if one person keeps it, who may then review what they recorded.
 
     Returns
     -------
@@ -86,20 +96,24 @@ def start_library(place: str | os.PathLike[str], shelf: str = "published", autho
     FileExistsError
         If something is there already.
     """
-    if shelf not in SHELVES:
-        raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(SHELVES)}.")
+    from registry.arrival import plan_load
+    from registry.shelves import find_shelf
+
+    if shelf not in _REASONS:
+        raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(_REASONS)}.")
     check_signature(author, "start")
     path = locate(place)
     name = os.urandom(16).hex()
 
-    def fill(library: Library) -> None:
-        if shelf != "none":
-            from registry.shelves import find_shelf
+    started_at = now_utc()
+    keeping = Keeping(name=name, started_at=started_at, kept_by="one-person" if solo else "team")
 
-            reason = "The published shelf, accepted as it stands." if shelf == "published" else "The invented scenario."
-            library.load(find_shelf(shelf), author=author, reason=reason)
+    def fill(file: LibraryFile) -> None:
+        with file.writing() as (view, append):
+            loaded = plan_load(view, find_shelf(shelf), accept=True).drafts if shelf != "none" else ()
+            append(author, _REASONS[shelf], started_at, [draft_of(keeping), *loaded])
 
-    LibraryFile.create(path, name, now_utc(), lambda file: fill(Library(file)))
+    LibraryFile.create(path, name, started_at, fill)
     return Library(LibraryFile.open(path))
 
 

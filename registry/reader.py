@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import threading
 from typing import Any, overload
 
 import numpy as np
@@ -30,11 +31,13 @@ class Reader(Collection):
     position : int, optional
         The change up to which everything is read; the newest one if none is
         given.
+    lock : RLock, optional
+        Of the reader that this one is a view of, and that owns the file.
     """
 
-    def __init__(self, file: LibraryFile, position: int | None = None) -> None:
-        super().__init__(file, position)
-        self._coverages: dict[tuple[str, str, str, bool], Coverage] = {}
+    def __init__(self, file: LibraryFile, position: int | None = None, lock: threading.RLock | None = None) -> None:
+        super().__init__(file, position, lock)
+        self._coverages: dict[tuple[str, str, str, bool, bool], Coverage] = {}
 
     def _forget(self) -> None:
         super()._forget()
@@ -42,18 +45,19 @@ class Reader(Collection):
 
     @overload
     def lookup(
-        self, compound: str, temperature: float, *, property: str = ..., phase: str | None = ..., metastable: bool = ...
-    ) -> Answer: ...
+        self, compound: str, temperature: float, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> Answer: ...  # fmt: skip
 
     @overload
     def lookup(
         self, compound: str, temperature: ArrayLike, *, property: str = ..., phase: str | None = ...,
-        metastable: bool = ...,
+        metastable: bool = ..., drafts: bool = ...,
     ) -> Batch: ...  # fmt: skip
 
     def lookup(
         self, compound: str, temperature: Any, *, property: str = "vapor-pressure", phase: str | None = None,
-        metastable: bool = False,
+        metastable: bool = False, drafts: bool = False,
     ) -> Answer | Batch:  # fmt: skip
         """The value of a property at one temperature, or at many.
 
@@ -69,6 +73,9 @@ class Reader(Collection):
             The phase; needed only where several cover a temperature.
         metastable : bool
             Let the metastable ranges answer that records state.
+        drafts : bool
+            Let the newest drafts of correlations answer; such an answer says
+            that it is a draft.
 
         Returns
         -------
@@ -98,7 +105,7 @@ class Reader(Collection):
         ...
         registry.errors.Refused: 700 K lies above the critical temperature of water, ...
         """
-        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable)
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
         if isinstance(temperature, float):
             return answer_one(coverage, temperature)
         kelvin = _as_kelvin(temperature)
@@ -107,13 +114,14 @@ class Reader(Collection):
         return Batch(kelvin, *coverage.evaluate(kelvin), coverage)
 
     def coverage(
-        self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False
-    ) -> Coverage:
+        self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False,
+        drafts: bool = False,
+    ) -> Coverage:  # fmt: skip
         """The map from temperature to the correlation that answers there.
 
         Parameters
         ----------
-        compound, property, phase, metastable
+        compound, property, phase, metastable, drafts
             As for `lookup`.
 
         Returns
@@ -128,7 +136,7 @@ class Reader(Collection):
         ...     [seam.temperature for seam in library.coverage("helium-4").seams]
         [2.1768]
         """
-        request = (compound, property, phase or "", metastable)
+        request = (compound, property, phase or "", metastable, drafts)
         # one thread at a time: they share one connection
         with self._lock:
             self._refresh()
@@ -137,9 +145,9 @@ class Reader(Collection):
                 found = self._coverages[request] = self._build_coverage(*request)
             return found
 
-    def _build_coverage(self, compound: str, prop: str, phase: str, metastable: bool) -> Coverage:
+    def _build_coverage(self, compound: str, prop: str, phase: str, metastable: bool, drafts: bool) -> Coverage:
         row = find_property(prop)
-        dossier = self.dossier(compound)
+        dossier = self.dossier(compound, drafts=drafts)
         phases = {_plain(e.record.phase): e.record.phase for e in dossier.for_property(row.name)}
         if phase and phases and _plain(phase) not in phases:
             have = f"it has {join_names(sorted(phases.values()), 'and')}."

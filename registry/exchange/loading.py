@@ -7,15 +7,13 @@ from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass
 from pathlib import Path
 
+from registry.admission import Find, check_identity, check_kinship, check_references, check_value
 from registry.cells import KEY, complain
 from registry.errors import CellProblem, InvalidPackage, InvalidRecord, Problem
 from registry.exchange.layout import FILES, File
 from registry.exchange.package import read_package
 from registry.exchange.rows import Row, parse_rows
-from registry.numerals import parse_number
-from registry.properties import PROPERTIES, Property
-from registry.quantities import UNITS
-from registry.records import Correlation, Dataset, Point, Preference, PrintedValue, Record
+from registry.records import Correlation, Dataset, Point, Record
 
 __all__ = ["Item", "read_items"]
 
@@ -25,7 +23,6 @@ MOST_PROBLEMS = 10_000
 _COMMA = re.compile(r",\s*\w+\s*=")
 """Coefficients parted by commas."""
 
-Known = Callable[[str, str], Record | None]
 Points = dict[str, list[tuple[int, Point]]]
 
 
@@ -39,8 +36,12 @@ class Item:
     file: str
     line: int
 
+    def place(self, problem: Problem) -> CellProblem:
+        """Where a problem of the record stands in the package."""
+        return CellProblem(self.file, self.line, problem.field, problem.given, problem.allowed)
 
-def read_items(path: Path, known: Known) -> list[Item]:
+
+def read_items(path: Path, known: Find) -> list[Item]:
     """The records of a package.
 
     Parameters
@@ -66,8 +67,15 @@ def read_items(path: Path, known: Known) -> list[Item]:
     rows = {name: parse_rows(FILES[name], data, problems) for name, data in files.items()}
     items = list(_build_items(rows, problems))
     by_key = {(item.record.kind, item.record.key): item for item in items}
-    problems += _check_references(items, by_key, known, _find_silent(rows, by_key, problems))
-    problems += _check_against_known(items, known)
+
+    def find(kind: str, key: str) -> Record | None:
+        """A record of the package, else of the library."""
+        item = by_key.get((kind, key))
+        return item.record if item is not None else known(kind, key)
+
+    problems += _check_together(items, find, known, _find_silent(rows, by_key, problems))
+    if not problems:
+        problems += (item.place(problem) for item in items for problem in check_value(item.record, find))
     if problems:
         problems.sort(key=lambda p: (list(FILES).index(p.file) if p.file in FILES else -1, p.line))
         raise InvalidPackage(str(path), problems)
@@ -188,57 +196,16 @@ def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> di
     return found
 
 
-def _check_references(
-    items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known, silent: Callable[[str, str], bool]
+def _check_together(
+    items: list[Item], find: Find, known: Find, silent: Callable[[str, str], bool]
 ) -> Iterator[CellProblem]:
+    """Each record held against the others."""
+    where = ", neither in the package nor in the library"
     for item in items:
-        for role, kind, key in item.record.references():
-            if (kind, key) not in by_key and not silent(kind, key) and known(kind, key) is None:
-                why = f"there is no {kind} with this key, neither in the package nor in the library."
-                yield CellProblem(item.file, item.line, role, key, why)
-    yield from _check_kinship(items, by_key, known)
-
-
-def _check_kinship(items: list[Item], by_key: Mapping[tuple[str, str], Item], known: Known) -> Iterator[CellProblem]:
-    """What must fit the correlations that a record names: units, signs, one compound and property."""
-
-    def find(key: str) -> Correlation | None:
-        item = by_key.get(("correlation", key))
-        record = item.record if item else known("correlation", key)
-        return record if isinstance(record, Correlation) else None
-
-    for item in items:
-        record = item.record
-        if isinstance(record, PrintedValue) and (of := find(record.correlation)):
-            yield from _check_printed_value(item, record, PROPERTIES[of.property])
-        elif isinstance(record, Preference) and (one := find(record.correlation)) and (two := find(record.over)):
-            yield from _check_preference(item, one, two)
-
-
-def _check_preference(item: Item, one: Correlation, two: Correlation) -> Iterator[CellProblem]:
-    if (one.compound, one.property, one.phase) == (two.compound, two.property, two.phase):
-        return
-    why = (
-        f"it is for {two.property} of {two.compound}, {one.key} for {one.property} of {one.compound}; "
-        "a preference is between correlations of one compound, property and phase."
-    )
-    yield CellProblem(item.file, item.line, "over", two.key, why)
-
-
-def _check_printed_value(item: Item, record: PrintedValue, prop: Property) -> Iterator[CellProblem]:
-    if UNITS[record.value_unit].dimension != prop.dimension:
-        why = f"{prop.name} is in a {prop.dimension} unit."
-        yield CellProblem(item.file, item.line, "value_unit", record.value_unit, why)
-    elif prop.positive and parse_number(record.value) <= 0:
-        yield CellProblem(item.file, item.line, "value", record.value, f"a {prop.name} is above zero.")
-
-
-def _check_against_known(items: list[Item], known: Known) -> Iterator[CellProblem]:
-    """A key keeps what it is for: another compound, property or phase needs another key."""
-    for item in items:
+        kinds = {(role, key): kind for role, kind, key in item.record.references()}
+        for problem in check_references(item.record, find, where):
+            if not silent(kinds[problem.field, problem.given], problem.given):
+                yield item.place(problem)
+        yield from (item.place(problem) for problem in check_kinship(item.record, find))
         before = known(item.record.kind, item.record.key)
-        for field in ("compound", "property", "phase", "quantity", "correlation", "over"):
-            given, owner = getattr(item.record, field, ""), getattr(before, field, "")
-            if owner and owner != given:
-                why = f"the key is recorded for {owner}; another {field} needs another key."
-                yield CellProblem(item.file, item.line, field, given, why)
+        yield from (item.place(problem) for problem in check_identity(item.record, before))

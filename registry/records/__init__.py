@@ -8,12 +8,13 @@ library was checked when it was recorded and is restored as it is.
 from __future__ import annotations
 
 from registry.records.correlation import Correlation
-from registry.records.decisions import Preference, Review
+from registry.records.decisions import CAUSES, Edition, Keeping, Origin, Preference, Review, Withdrawal
 from registry.records.ground import Dataset, FixedPoint, Point, PrintedValue
 from registry.records.record import EVIDENCE, STANDINGS, Record, Reference
 from registry.records.substances import Compound, CompoundName, Source
 
 __all__ = [
+    "CAUSES",
     "EVIDENCE",
     "KINDS",
     "REVIEWED",
@@ -22,7 +23,10 @@ __all__ = [
     "CompoundName",
     "Correlation",
     "Dataset",
+    "Edition",
     "FixedPoint",
+    "Keeping",
+    "Origin",
     "Point",
     "Preference",
     "PrintedValue",
@@ -30,13 +34,17 @@ __all__ = [
     "Reference",
     "Review",
     "Source",
+    "Withdrawal",
 ]
 
 KINDS: dict[str, type[Record]] = {
     cls.kind: cls
-    for cls in (Compound, CompoundName, Source, Correlation, FixedPoint, PrintedValue, Dataset, Preference, Review)
-}
+    for cls in (
+        Compound, CompoundName, Source, Correlation, FixedPoint, PrintedValue, Dataset, Preference, Withdrawal,
+        Review, Edition, Keeping, Origin,
+    )
+}  # fmt: skip
 """Every kind of record, by its name."""
 
-REVIEWED = ("correlation", "fixed-point", "dataset", "preference")
+REVIEWED = ("correlation", "fixed-point", "dataset", "preference", "withdrawal")
 """Kinds that can change an answer, and so have a standing."""

@@ -47,6 +47,7 @@ class Record:
     key: str
 
     def __post_init__(self) -> None:
+        object.__setattr__(self, "key", self._own_key())
         problems = list(cell_problems(self))
         bad = {problem.field for problem in problems}
         for check in self._checks():
@@ -57,6 +58,10 @@ class Record:
                     raise
         if problems:
             raise InvalidRecord(self.kind, self.key, problems)
+
+    def _own_key(self) -> str:
+        """The key: as given, or made of what the record says."""
+        return self.key
 
     def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
         """What must hold between fields; each check runs even where another one cannot."""

@@ -86,9 +86,8 @@ class CompoundName(Record):
     compound: str = entry(cells.KEY)
     name: str = entry(cells.TEXT)
 
-    def __post_init__(self) -> None:
-        object.__setattr__(self, "key", f"{self.compound}:{self.name.casefold()}")
-        super().__post_init__()
+    def _own_key(self) -> str:
+        return f"{self.compound}:{self.name.casefold()}"
 
     def terms(self) -> tuple[str, ...]:
         return (self.name,)

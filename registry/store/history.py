@@ -2,17 +2,41 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from sqlalchemy import Connection, func, insert, select
+from sqlalchemy import Connection, bindparam, func, insert, select
 
 from registry.canonical import digest, encode
 from registry.merkle import hash_leaf, new_nodes, root_of
-from registry.store.tables import change, link, node, record, term
+from registry.store.tables import change, link, node, record, standing, term
 
-__all__ = ["Change", "Draft", "append_change", "envelope", "fold_term"]
+__all__ = ["Change", "Draft", "Effect", "Revision", "append_change", "envelope", "fold_term"]
+
+Revision = tuple[str, str, int]
+"""Kind, key and number of a revision."""
+
+Effect = tuple[Revision, str, Revision | None]
+"""What a record makes of a revision: which, its standing, and the record that says why if it is another one."""
+
+# statements are built once: building them costs three times their execution
+_LAST_CHANGE = select(change.c.number, change.c.recorded_at).order_by(change.c.number.desc()).limit(1)
+_LAST_RECORD = select(func.coalesce(func.max(record.c.id), 0))
+_LAST_STANDING = select(func.coalesce(func.max(standing.c.id), 0))
+_LAST_REVISION = select(func.max(record.c.revision)).where(
+    record.c.kind == bindparam("kind"), record.c.key == bindparam("key")
+)
+_RECORD_ID = select(record.c.id).where(
+    record.c.kind == bindparam("kind"), record.c.key == bindparam("key"), record.c.revision == bindparam("revision")
+)
+_LINKS_OF = select(link.c.role, link.c.to_kind, link.c.to_key).where(
+    link.c.kind == bindparam("kind"), link.c.key == bindparam("key")
+)
+_HAS_TERM = select(func.count()).where(
+    term.c.text == bindparam("text"), term.c.kind == bindparam("kind"), term.c.key == bindparam("key")
+)
+_NODE = select(node.c.hash).where(node.c.level == bindparam("level"), node.c.place == bindparam("place"))
 
 
 @dataclass(frozen=True)
@@ -59,6 +83,8 @@ class Draft:
         What it refers to.
     terms : sequence of str
         Texts by which a person finds it.
+    effects : sequence of Effect
+        What it makes of other revisions.
     """
 
     kind: str
@@ -66,6 +92,7 @@ class Draft:
     content: Mapping[str, Any]
     links: Sequence[tuple[str, str, str]] = ()
     terms: Sequence[str] = ()
+    effects: Sequence[Effect] = ()
 
 
 def fold_term(text: str) -> str:
@@ -107,31 +134,27 @@ def append_change(
     Change
         The header as recorded.
     """
-    number, last_time = connection.execute(
-        select(func.coalesce(func.max(change.c.number), 0), func.max(change.c.recorded_at))
-    ).one()
-    first_id = connection.execute(select(func.coalesce(func.max(record.c.id), 0))).scalar_one() + 1
+    number, last_time = connection.execute(_LAST_CHANGE).one_or_none() or (0, "")
+    first_id = connection.execute(_LAST_RECORD).scalar_one() + 1
     revisions = _latest_revisions(connection, {(draft.kind, draft.key) for draft in drafts})
     rows = list(_number_records(drafts, number + 1, first_id, revisions))
     root = root_of([hash_leaf(bytes.fromhex(row["digest"])) for row in rows]).hex()
-    header = Change(number + 1, author, reason, max(recorded_at, last_time or ""), len(rows), root)
+    header = Change(number + 1, author, reason, max(recorded_at, last_time), len(rows), root)
     columns = {name: getattr(header, name) for name in header.__dataclass_fields__}
     connection.execute(insert(change), {**columns, "header": header.header().decode()})
-    _insert_records(connection, rows, drafts)
+    if rows:
+        connection.execute(insert(record), rows)
+        _insert_links(connection, rows, drafts)
+        _insert_terms(connection, rows, drafts)
+        _insert_standings(connection, rows, drafts)
     _grow_tree(connection, number, hash_leaf(header.header()))
     return header
 
 
 def _latest_revisions(connection: Connection, keys: set[tuple[str, str]]) -> dict[tuple[str, str], int]:
     found: dict[tuple[str, str], int] = {}
-    if len(keys) > 200:  # one pass over the index beats thousands of searches
-        everything = select(record.c.kind, record.c.key, func.max(record.c.revision)).group_by(
-            record.c.kind, record.c.key
-        )
-        return {(kind, key): revision for kind, key, revision in connection.execute(everything)}
     for kind, key in keys:
-        latest = select(func.max(record.c.revision)).where(record.c.kind == kind, record.c.key == key)
-        found[kind, key] = connection.execute(latest).scalar() or 0
+        found[kind, key] = connection.execute(_LAST_REVISION, {"kind": kind, "key": key}).scalar() or 0
     return found
 
 
@@ -149,30 +172,60 @@ def _number_records(
         }  # fmt: skip
 
 
-def _insert_records(connection: Connection, rows: list[dict[str, Any]], drafts: Sequence[Draft]) -> None:
-    if not rows:
+def _insert_links(connection: Connection, rows: Sequence[Mapping[str, Any]], drafts: Sequence[Draft]) -> None:
+    """What a key refers to for the first time."""
+    new: dict[tuple[str, ...], int] = {}
+    for row, draft in zip(rows, drafts, strict=True):
+        if not draft.links:
+            continue
+        known: Iterable[Any] = ()
+        if row["revision"] > 1:
+            known = connection.execute(_LINKS_OF, {"kind": draft.kind, "key": draft.key}).all()
+        for aim in {tuple(aim) for aim in draft.links} - {tuple(aim) for aim in known}:
+            new.setdefault((draft.kind, draft.key, *aim), row["change"])
+    names = ("kind", "key", "role", "to_kind", "to_key", "change")
+    if new:
+        connection.execute(insert(link), [dict(zip(names, (*of, at), strict=True)) for of, at in sorted(new.items())])
+
+
+def _insert_terms(connection: Connection, rows: Sequence[Mapping[str, Any]], drafts: Sequence[Draft]) -> None:
+    """Texts under which a key is found for the first time."""
+    new: dict[tuple[str, str, str], int] = {}
+    for row, draft in zip(rows, drafts, strict=True):
+        for text in {fold_term(text) for text in draft.terms}:
+            wanted = {"text": text, "kind": draft.kind, "key": draft.key}
+            if row["revision"] == 1 or not connection.execute(_HAS_TERM, wanted).scalar_one():
+                new.setdefault((text, draft.kind, draft.key), row["change"])
+    names = ("text", "kind", "key", "change")
+    if new:
+        connection.execute(insert(term), [dict(zip(names, (*of, at), strict=True)) for of, at in sorted(new.items())])
+
+
+def _insert_standings(connection: Connection, rows: Sequence[Mapping[str, Any]], drafts: Sequence[Draft]) -> None:
+    """What the records of a change make of revisions, which may be of the same change."""
+    if not any(draft.effects for draft in drafts):
         return
-    connection.execute(insert(record), rows)
-    links = [
-        {"record": row["id"], "role": role, "kind": kind, "key": key}
-        for row, draft in zip(rows, drafts, strict=True)
-        for role, kind, key in draft.links
-    ]
-    terms = [
-        {"record": row["id"], "text": text}
-        for row, draft in zip(rows, drafts, strict=True)
-        for text in sorted({fold_term(term) for term in draft.terms})
-    ]
-    if links:
-        connection.execute(insert(link), links)
-    if terms:
-        connection.execute(insert(term), terms)
+    here = {(row["kind"], row["key"], row["revision"]): row["id"] for row in rows}
+    last = connection.execute(_LAST_STANDING).scalar_one()
+
+    def find(revision: Revision) -> int:
+        wanted = dict(zip(("kind", "key", "revision"), revision, strict=True))
+        return here.get(revision) or connection.execute(_RECORD_ID, wanted).scalar_one()
+
+    new: list[dict[str, Any]] = []
+    for row, draft in zip(rows, drafts, strict=True):
+        for (kind, key, revision), word, cause in draft.effects:
+            new.append({
+                "id": last + len(new) + 1, "kind": kind, "key": key, "revision": revision, "standing": word,
+                "record": find((kind, key, revision)), "cause": find(cause) if cause else row["id"],
+                "change": row["change"],
+            })  # fmt: skip
+    connection.execute(insert(standing), new)
 
 
 def _grow_tree(connection: Connection, size: int, leaf: bytes) -> None:
     def node_at(level: int, place: int) -> bytes:
-        wanted = select(node.c.hash).where(node.c.level == level, node.c.place == place)
-        return bytes.fromhex(connection.execute(wanted).scalar_one())
+        return bytes.fromhex(connection.execute(_NODE, {"level": level, "place": place}).scalar_one())
 
     added = new_nodes(size, leaf, node_at)
     connection.execute(insert(node), [{"level": a, "place": b, "hash": c.hex()} for a, b, c in added])

@@ -12,10 +12,11 @@ from sqlalchemy import Connection, Engine
 from sqlalchemy.exc import DatabaseError, OperationalError
 
 from registry.errors import BadInput, LibraryBusy, NotALibrary, quote
+from registry.merkle import root_from_nodes
 from registry.store import reading
 from registry.store.engine import open_engine
 from registry.store.history import Change, Draft, append_change
-from registry.store.reading import Row
+from registry.store.reading import Decision, Row, State
 from registry.store.schema import check_file, create_file
 
 __all__ = ["LibraryFile", "View", "locate"]
@@ -53,32 +54,64 @@ class View:
         self.position = position
 
     def kind(self, kind: str) -> list[Row]:
-        """Every record of a kind, by key."""
+        """The newest revision of every record of a kind, by key."""
         return reading.read_kind(self._connection, kind, self.position)
 
-    def revisions(self, kind: str) -> list[Row]:
-        """Every revision of every record of a kind."""
-        return reading.read_revisions(self._connection, kind, self.position)
-
     def current(self, kind: str, keys: Iterable[str]) -> list[Row]:
-        """The records of a kind under some keys."""
+        """The newest revisions under some keys of a kind."""
         return reading.read_current(self._connection, kind, keys, self.position)
 
-    def linked(self, kind: str, key: str) -> list[Row]:
-        """Every revision of the records that refer to one record."""
-        return reading.read_linked(self._connection, kind, key, self.position)
+    def revisions(self, kind: str, key: str) -> list[Row]:
+        """Every revision of one record, in order."""
+        return reading.read_revisions(self._connection, kind, key, self.position)
+
+    def decisions(self, kind: str, key: str) -> list[Decision]:
+        """Every word on the revisions of one record, in order."""
+        return reading.read_decisions(self._connection, kind, key, self.position)
+
+    def states(self, kind: str, keys: Iterable[str] | None = None) -> list[State]:
+        """Where the keys of a kind stand, all of them or some, by key."""
+        return reading.read_states(self._connection, self.position, kind, keys)
+
+    def linked(self, to_kind: str, to_keys: Iterable[str], kind: str = "") -> list[State]:
+        """Where the keys stand that refer, or once referred, to some records."""
+        return reading.read_linked(self._connection, self.position, to_kind, to_keys, kind)
+
+    def waiting(self, kinds: Iterable[str]) -> list[tuple[Row, str]]:
+        """Newest revisions of some kinds without a verdict, oldest first, each with the note on its arrival."""
+        return reading.read_waiting(self._connection, kinds, self.position)
 
     def find_term(self, text: str) -> list[Row]:
-        """The records that a person finds under a text."""
+        """The records that a person has ever found under a text."""
         return reading.find_term(self._connection, text, self.position)
 
     def terms(self) -> Sequence[str]:
-        """Every text by which something is found."""
+        """Every text by which something has ever been found."""
         return reading.read_terms(self._connection, self.position)
 
     def changes(self) -> list[Change]:
         """The headers of all changes up to the position."""
         return reading.read_changes(self._connection, self.position)
+
+    def change(self, number: int) -> Change:
+        """The header of one change."""
+        return reading.read_change(self._connection, number)
+
+    def changed(self, since: int) -> list[tuple[str, str]]:
+        """Kind and key of every record that changes after `since` have added."""
+        return reading.read_changed(self._connection, since, self.position)
+
+    def find_position(self, time: str) -> int:
+        """The last change recorded before a time, 0 if there is none; never after the position."""
+        return min(reading.find_position(self._connection, time), self.position)
+
+    def identity(self) -> tuple[str, str]:
+        """The random name of the library, and when it was started."""
+        return reading.read_identity(self._connection)
+
+    def root(self, size: int) -> bytes:
+        """The Merkle root over the headers of the first `size` changes, from the stored nodes."""
+        return root_from_nodes(size, lambda level, place: reading.read_node(self._connection, level, place))
 
 
 def _settle(connection: Connection, position: int | None) -> int:

@@ -1,27 +1,42 @@
-"""Reading a library at a position: the newest revision of each key up to it."""
+"""Reading a library at a position: what counts of each key up to it, and what waits.
+
+For each key the newest revision and the newest decision are found by one
+search each in an index over key and change, at any position: what is read
+does not grow with the history.
+"""
 
 from __future__ import annotations
 
 import json
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from typing import Any, NamedTuple
 
-from sqlalchemy import Connection, Select, and_, bindparam, func, select
+from sqlalchemy import Connection, Select, bindparam, func, select
 
 from registry.canonical import digest
 from registry.store.history import Change, envelope, fold_term
-from registry.store.tables import change, link, record, term
+from registry.store.tables import change, library, link, node, record, standing, term
 
 __all__ = [
+    "Decision",
     "Row",
+    "State",
+    "find_position",
     "find_term",
+    "read_change",
+    "read_changed",
     "read_changes",
     "read_current",
+    "read_decisions",
+    "read_identity",
     "read_kind",
     "read_linked",
+    "read_node",
     "read_position",
     "read_revisions",
+    "read_states",
     "read_terms",
+    "read_waiting",
 ]  # fmt: skip
 
 
@@ -39,61 +54,152 @@ class Row(NamedTuple):
     content: dict[str, Any]
 
 
-_newer = record.alias("newer")
+class Decision(NamedTuple):
+    """What was made of one revision: by which record, and in which change."""
+
+    revision: int
+    standing: str
+    change: int
+    cause: Row
+
+
+class State(NamedTuple):
+    """Where a key stands at a position.
+
+    Attributes
+    ----------
+    newest : Row
+        Its newest revision.
+    decided : Row or None
+        The revision that the newest acceptance or withdrawal is about.
+    decision : Decision or None
+        That acceptance or withdrawal.
+    latest : Decision or None
+        The newest word on any revision, a declining one too.
+    """
+
+    newest: Row
+    decided: Row | None
+    decision: Decision | None
+    latest: Decision | None
+
+
 _COLUMNS = (
-    record.c.kind,
-    record.c.key,
-    record.c.revision,
-    record.c.change,
-    record.c.content,
-    record.c.digest,
-)
+    record.c.id, record.c.kind, record.c.key, record.c.revision, record.c.change, record.c.content, record.c.digest,
+)  # fmt: skip
 _POSITION: Any = bindparam("position")
-_NEWEST = and_(
-    record.c.change <= _POSITION,
-    ~select(_newer.c.id)
-    .where(
-        _newer.c.kind == record.c.kind,
-        _newer.c.key == record.c.key,
-        _newer.c.revision == record.c.revision + 1,
-        _newer.c.change <= _POSITION,
-    )
-    .exists(),
-)
+_KIND: Any = bindparam("kind")
+_KEY: Any = bindparam("key")
+_KEYS: Any = bindparam("keys", expanding=True)
+_DECIDING = ("accepted", "withdrawn")
+CHUNK = 500
+"""Keys or numbers that one statement takes."""
+
+_other = record.alias("other")
+_first = record.alias("first")
+
+
+def _newest_of(kind: Any, key: Any) -> Any:
+    """The newest revision of a key at the position, as a subquery."""
+    found = select(_other.c.id).where(_other.c.kind == kind, _other.c.key == key, _other.c.change <= _POSITION)
+    newest = found.order_by(_other.c.change.desc(), _other.c.revision.desc()).limit(1)
+    return newest.correlate(kind.table).scalar_subquery()
+
+
+def _word_on(kind: Any, key: Any, *among: str) -> Any:
+    """The newest word on a key at the position, as a subquery."""
+    found = select(standing.c.id).where(standing.c.kind == kind, standing.c.key == key, standing.c.change <= _POSITION)
+    if among:
+        found = found.where(standing.c.standing.in_(among))
+    newest = found.order_by(standing.c.change.desc(), standing.c.id.desc()).limit(1)
+    return newest.correlate(kind.table).scalar_subquery()
+
+
+def _states_of(kind: Any, key: Any) -> Select[Any]:
+    columns = _newest_of(kind, key), _word_on(kind, key, *_DECIDING), _word_on(kind, key)
+    return select(*columns).select_from(kind.table)
+
 
 # statements are built once: building them costs three times their execution
 _POSITION_NOW = select(func.coalesce(func.max(change.c.number), 0))
+_IDENTITY = select(library.c.name, library.c.started_at)
 _CHANGES = select(change).where(change.c.number <= _POSITION).order_by(change.c.number)
-_BY_KIND = select(*_COLUMNS).where(record.c.kind == bindparam("kind"), _NEWEST).order_by(record.c.key)
+_CHANGE = select(change).where(change.c.number == bindparam("number"))
+_UP_TO = (
+    select(change.c.number)
+    .where(change.c.recorded_at < bindparam("time"))
+    .order_by(change.c.recorded_at.desc(), change.c.number.desc())
+    .limit(1)
+)
+_NODE = select(node.c.hash).where(node.c.level == bindparam("level"), node.c.place == bindparam("place"))
+_FIRST = (_first.c.kind == _KIND, _first.c.revision == 1, _first.c.change <= _POSITION)
+_NEWEST_BY_KIND = (
+    select(_newest_of(_first.c.kind, _first.c.key)).select_from(_first).where(*_FIRST).order_by(_first.c.key)
+)
+_NEWEST_BY_KEYS = _NEWEST_BY_KIND.where(_first.c.key.in_(_KEYS))
+_STATES_BY_KIND = _states_of(_first.c.kind, _first.c.key).where(*_FIRST).order_by(_first.c.key)
+_STATES_BY_KEYS = _STATES_BY_KIND.where(_first.c.key.in_(_KEYS))
+_aims = (
+    select(link.c.kind, link.c.key)
+    .where(link.c.to_kind == bindparam("to_kind"), link.c.to_key.in_(_KEYS), link.c.change <= _POSITION)
+    .distinct()
+    .subquery("aims")
+)
+_STATES_BY_LINK = _states_of(_aims.c.kind, _aims.c.key).order_by(_aims.c.kind, _aims.c.key)
+_STATES_BY_LINK_OF_KIND = _STATES_BY_LINK.where(_aims.c.kind == _KIND)
+_named = (
+    select(term.c.kind, term.c.key)
+    .where(term.c.text == bindparam("text"), term.c.change <= _POSITION)
+    .subquery("named")
+)
+_BY_TERM = select(_newest_of(_named.c.kind, _named.c.key)).select_from(_named).order_by(_named.c.kind, _named.c.key)
+_TERMS = select(term.c.text, term.c.kind, term.c.key).where(term.c.change <= _POSITION)
 _REVISIONS = (
     select(*_COLUMNS)
-    .where(record.c.kind == bindparam("kind"), record.c.change <= _POSITION)
-    .order_by(record.c.key, record.c.revision)
+    .where(record.c.kind == _KIND, record.c.key == _KEY, record.c.change <= _POSITION)
+    .order_by(record.c.revision)
 )
-_BY_KEYS = (
-    select(*_COLUMNS)
-    .where(record.c.kind == bindparam("kind"), record.c.key.in_(bindparam("keys", expanding=True)), _NEWEST)
-    .order_by(record.c.key)
+_WORDS = (
+    select(standing.c.id)
+    .where(standing.c.kind == _KIND, standing.c.key == _KEY, standing.c.change <= _POSITION)
+    .order_by(standing.c.id)
 )
-_BY_LINK = (
-    select(*_COLUMNS)
-    .join(link, link.c.record == record.c.id)
-    .where(link.c.kind == bindparam("target_kind"), link.c.key == bindparam("target_key"), record.c.change <= _POSITION)
-    .order_by(record.c.kind, record.c.key, record.c.revision)
+_CHANGED = (
+    select(record.c.kind, record.c.key)
+    .where(record.c.change > bindparam("since"), record.c.change <= _POSITION)
     .distinct()
-)
-_BY_TERM = (
-    select(*_COLUMNS)
-    .join(term, term.c.record == record.c.id)
-    .where(term.c.text == bindparam("text"), _NEWEST)
     .order_by(record.c.kind, record.c.key)
 )
-_TERMS = select(term.c.text).join(record, term.c.record == record.c.id).where(_NEWEST).distinct()
-
-
-def _rows(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
-    found = connection.execute(statement, values)
-    return [_restore(*row) for row in found]
+_VERDICTS = ("accepted", "declined", "withdrawn")
+_WAITING = (
+    select(record.c.id)
+    .where(
+        record.c.kind.in_(bindparam("kinds", expanding=True)),
+        record.c.change <= _POSITION,
+        ~select(_other.c.id)
+        .where(
+            _other.c.kind == record.c.kind,
+            _other.c.key == record.c.key,
+            _other.c.revision == record.c.revision + 1,
+            _other.c.change <= _POSITION,
+        )
+        .exists(),
+        ~select(standing.c.id)
+        .where(
+            standing.c.kind == record.c.kind,
+            standing.c.key == record.c.key,
+            standing.c.revision == record.c.revision,
+            standing.c.standing.in_(_VERDICTS),
+            standing.c.change <= _POSITION,
+        )
+        .exists(),
+    )
+    .order_by(record.c.id)
+)
+_BY_ID = select(*_COLUMNS).where(record.c.id.in_(bindparam("ids", expanding=True)))
+_DECISION_BY_ID = select(
+    standing.c.id, standing.c.revision, standing.c.standing, standing.c.change, standing.c.record, standing.c.cause
+).where(standing.c.id.in_(bindparam("ids", expanding=True)))
 
 
 def _restore(kind: str, key: str, revision: int, number: int, content: str, expected: str) -> Row:
@@ -103,47 +209,158 @@ def _restore(kind: str, key: str, revision: int, number: int, content: str, expe
     return Row(kind, key, revision, number, json.loads(content))
 
 
+def _chunks(items: Iterable[Any]) -> Iterator[list[Any]]:
+    wanted = sorted(set(items))
+    for start in range(0, len(wanted), CHUNK):
+        yield wanted[start : start + CHUNK]
+
+
+def _fetch_rows(connection: Connection, ids: Iterable[int]) -> dict[int, Row]:
+    found: dict[int, Row] = {}
+    for chunk in _chunks(ids):
+        for number, *columns in connection.execute(_BY_ID, {"ids": chunk}):
+            found[number] = _restore(*columns)
+    return found
+
+
+def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
+    """States from the numbers of their newest record, decision and latest word."""
+    words: dict[int, Any] = {}
+    for chunk in _chunks(number for _, *pair in found for number in pair if number):
+        words.update({word.id: word for word in connection.execute(_DECISION_BY_ID, {"ids": chunk})})
+    wanted = {newest for newest, _, _ in found} | {number for word in words.values() for number in word[4:6]}
+    rows = _fetch_rows(connection, wanted)
+
+    def decide(number: int | None) -> Decision | None:
+        if not number:
+            return None
+        word = words[number]
+        return Decision(word.revision, word.standing, word.change, rows[word.cause])
+
+    return [
+        State(rows[newest], rows[words[decision].record] if decision else None, decide(decision), decide(latest))
+        for newest, decision, latest in found
+    ]
+
+
 def read_position(connection: Connection) -> int:
     """The number of the last change, 0 in an empty library."""
     return int(connection.execute(_POSITION_NOW).scalar_one())
 
 
+def find_position(connection: Connection, time: str) -> int:
+    """The number of the last change recorded before a time (UTC, ISO 8601); 0 if there is none."""
+    return connection.execute(_UP_TO, {"time": time}).scalar() or 0
+
+
+def read_identity(connection: Connection) -> tuple[str, str]:
+    """The random name of the library, and when it was started."""
+    name, started_at = connection.execute(_IDENTITY).one()
+    return name, started_at
+
+
+def _as_change(row: Any) -> Change:
+    return Change(**{name: row._mapping[name] for name in Change.__dataclass_fields__})
+
+
 def read_changes(connection: Connection, position: int) -> list[Change]:
     """The headers of all changes up to a position, in order."""
-    names = Change.__dataclass_fields__
-    found = connection.execute(_CHANGES, {"position": position})
-    return [Change(**{name: row._mapping[name] for name in names}) for row in found]
+    return [_as_change(row) for row in connection.execute(_CHANGES, {"position": position})]
+
+
+def read_change(connection: Connection, number: int) -> Change:
+    """The header of one change."""
+    return _as_change(connection.execute(_CHANGE, {"number": number}).one())
+
+
+def read_changed(connection: Connection, since: int, position: int) -> list[tuple[str, str]]:
+    """Kind and key of every record that changes after one position, up to another, have added."""
+    return [(kind, key) for kind, key in connection.execute(_CHANGED, {"since": since, "position": position})]
+
+
+def read_node(connection: Connection, level: int, place: int) -> bytes:
+    """A complete node of the tree over the changes."""
+    return bytes.fromhex(connection.execute(_NODE, {"level": level, "place": place}).scalar_one())
+
+
+def _newest(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
+    ids = list(connection.execute(statement, values).scalars())
+    rows = _fetch_rows(connection, ids)
+    return [rows[number] for number in ids]
 
 
 def read_kind(connection: Connection, kind: str, position: int) -> list[Row]:
-    """Every record of a kind, by key."""
-    return _rows(connection, _BY_KIND, kind=kind, position=position)
-
-
-def read_revisions(connection: Connection, kind: str, position: int) -> list[Row]:
-    """Every revision of every record of a kind, by key."""
-    return _rows(connection, _REVISIONS, kind=kind, position=position)
+    """The newest revision of every record of a kind, by key."""
+    return _newest(connection, _NEWEST_BY_KIND, kind=kind, position=position)
 
 
 def read_current(connection: Connection, kind: str, keys: Iterable[str], position: int) -> list[Row]:
-    """The records of a kind under some keys; keys that are not there are passed over."""
-    wanted = sorted(set(keys))
+    """The newest revisions under some keys of a kind; keys that are not there are passed over."""
     rows: list[Row] = []
-    for start in range(0, len(wanted), 500):
-        rows += _rows(connection, _BY_KEYS, kind=kind, keys=wanted[start : start + 500], position=position)
+    for chunk in _chunks(keys):
+        rows += _newest(connection, _NEWEST_BY_KEYS, kind=kind, keys=chunk, position=position)
     return rows
 
 
-def read_linked(connection: Connection, kind: str, key: str, position: int) -> list[Row]:
-    """Every revision of the records that refer to one record."""
-    return _rows(connection, _BY_LINK, target_kind=kind, target_key=key, position=position)
+def read_revisions(connection: Connection, kind: str, key: str, position: int) -> list[Row]:
+    """Every revision of one record, in order."""
+    found = connection.execute(_REVISIONS, {"kind": kind, "key": key, "position": position})
+    return [_restore(*columns) for _, *columns in found]
+
+
+def read_decisions(connection: Connection, kind: str, key: str, position: int) -> list[Decision]:
+    """Every word on the revisions of one record, in order."""
+    ids = list(connection.execute(_WORDS, {"kind": kind, "key": key, "position": position}).scalars())
+    states: list[Decision] = []
+    for chunk in _chunks(ids):
+        words = connection.execute(_DECISION_BY_ID, {"ids": chunk}).all()
+        rows = _fetch_rows(connection, {word.cause for word in words})
+        words.sort(key=lambda word: word.id)
+        states += [Decision(word.revision, word.standing, word.change, rows[word.cause]) for word in words]
+    return states
+
+
+def read_states(connection: Connection, position: int, kind: str, keys: Iterable[str] | None = None) -> list[State]:
+    """Where the keys of a kind stand, all of them or some, by key."""
+    values = {"kind": kind, "position": position}
+    if keys is None:
+        return _fetch_states(connection, connection.execute(_STATES_BY_KIND, values).all())
+    found: list[Any] = []
+    for chunk in _chunks(keys):
+        found += connection.execute(_STATES_BY_KEYS, {**values, "keys": chunk}).all()
+    return _fetch_states(connection, found)
+
+
+def read_waiting(connection: Connection, kinds: Iterable[str], position: int) -> list[tuple[Row, str]]:
+    """Newest revisions without a verdict, oldest first, each with the note on its arrival."""
+    ids = list(connection.execute(_WAITING, {"kinds": list(kinds), "position": position}).scalars())
+    rows = _fetch_rows(connection, ids)
+    found: list[tuple[Row, str]] = []
+    for number in ids:
+        row = rows[number]
+        words = read_decisions(connection, row.kind, row.key, position)
+        notes = [word.cause.content.get("note", "") for word in words if word.revision == row.revision]
+        found.append((row, notes[-1] if notes else ""))
+    return found
+
+
+def read_linked(
+    connection: Connection, position: int, to_kind: str, to_keys: Iterable[str], kind: str = ""
+) -> list[State]:
+    """Where the keys stand that refer, or once referred, to some records; of one kind if it is named."""
+    found: dict[Any, None] = {}
+    statement = _STATES_BY_LINK_OF_KIND if kind else _STATES_BY_LINK
+    for chunk in _chunks(to_keys):
+        values = {"to_kind": to_kind, "keys": chunk, "position": position, **({"kind": kind} if kind else {})}
+        found |= dict.fromkeys(connection.execute(statement, values).all())
+    return _fetch_states(connection, list(found))
 
 
 def find_term(connection: Connection, text: str, position: int) -> list[Row]:
-    """The records that a person finds under a text, case aside."""
-    return _rows(connection, _BY_TERM, text=fold_term(text), position=position)
+    """The records that a person has ever found under a text, case aside, each in its newest revision."""
+    return _newest(connection, _BY_TERM, text=fold_term(text), position=position)
 
 
 def read_terms(connection: Connection, position: int) -> Sequence[str]:
-    """Every text by which something is found."""
-    return connection.execute(_TERMS, {"position": position}).scalars().all()
+    """Every text by which something has ever been found."""
+    return sorted({row.text for row in connection.execute(_TERMS, {"position": position})})

@@ -1,17 +1,21 @@
-"""The tables of a library, schema 1.
+"""The tables of a library, schema 2.
 
 One mechanism holds every kind of record: a key with revisions 1..n, each
-belonging to exactly one change. Content is canonical JSON; whatever else a
-row holds is derived from it, to find records by.
+belonging to exactly one change. Content is canonical JSON; whatever else is
+stored is derived from it, to find records by.
 
 ===========  ===================================================================
 library      one row: which library this is
 change       the header of each change, with the Merkle root over its records
 node         complete nodes of the Merkle tree over change headers
 record       every revision of every record
-link         what a record refers to
-term         texts by which a person finds a record
+link         since which change a key refers to another one
+term         since which change a person finds a key under a text
+standing     what reviews and withdrawals made of a revision, in their order
 ===========  ===================================================================
+
+Links, terms and standings are found by key and change, not by revision: what
+a lookup reads does not grow with the history.
 """
 
 from __future__ import annotations
@@ -20,9 +24,9 @@ from collections.abc import Iterator
 
 from sqlalchemy import CheckConstraint, Column, ForeignKey, Index, Integer, MetaData, Table, Text, UniqueConstraint
 
-__all__ = ["APPLICATION_ID", "METADATA", "SCHEMA", "change", "library", "link", "node", "record", "term"]
+__all__ = ["APPLICATION_ID", "METADATA", "SCHEMA", "change", "library", "link", "node", "record", "standing", "term"]
 
-SCHEMA = 1
+SCHEMA = 2
 """Version of the schema, kept in SQLite's user_version."""
 
 APPLICATION_ID = 0x52474B31
@@ -60,6 +64,7 @@ change = Table(
     CheckConstraint("author <> ''", name="author_given"),
     CheckConstraint("reason <> ''", name="reason_given"),
     CheckConstraint("length(records_root) = 64", name="root_length"),
+    Index(None, "recorded_at"),
     sqlite_strict=True,
 )  # fmt: skip
 
@@ -86,30 +91,48 @@ record = Table(
     UniqueConstraint("change", "place"),
     CheckConstraint("revision >= 1", name="revision_from_one"),
     CheckConstraint("length(digest) = 64", name="digest_length"),
+    Index(None, "kind", "key", "change", "revision"),
     sqlite_strict=True,
 )  # fmt: skip
 
 link = Table(
     "link", METADATA,
-    Column("record", Integer, ForeignKey("record.id"), primary_key=True, autoincrement=False),
-    Column("role", Text, primary_key=True),
     Column("kind", Text, primary_key=True),
     Column("key", Text, primary_key=True),
-    Index(None, "kind", "key", "record"),
+    Column("role", Text, primary_key=True),
+    Column("to_kind", Text, primary_key=True),
+    Column("to_key", Text, primary_key=True),
+    Column("change", Integer, ForeignKey("change.number"), nullable=False),
+    Index(None, "to_kind", "to_key", "kind", "key"),
     sqlite_strict=True,
 )  # fmt: skip
 
 term = Table(
     "term", METADATA,
-    Column("record", Integer, ForeignKey("record.id"), primary_key=True, autoincrement=False),
     Column("text", Text, primary_key=True),
-    Index(None, "text", "record"),
+    Column("kind", Text, primary_key=True),
+    Column("key", Text, primary_key=True),
+    Column("change", Integer, ForeignKey("change.number"), nullable=False),
+    sqlite_strict=True,
+)  # fmt: skip
+
+standing = Table(
+    "standing", METADATA,
+    Column("id", Integer, primary_key=True, autoincrement=False),
+    Column("kind", Text, nullable=False),
+    Column("key", Text, nullable=False),
+    Column("revision", Integer, nullable=False),
+    Column("standing", Text, nullable=False),
+    Column("record", Integer, ForeignKey("record.id"), nullable=False),
+    Column("cause", Integer, ForeignKey("record.id"), nullable=False),
+    Column("change", Integer, ForeignKey("change.number"), nullable=False),
+    Index(None, "kind", "key", "change", "id"),
     sqlite_strict=True,
 )  # fmt: skip
 
 _KEYS = {
     "library": ("id",), "change": ("number",), "node": ("level", "place"), "record": ("id",),
-    "link": ("record", "role", "kind", "key"), "term": ("record", "text"),
+    "link": ("kind", "key", "role", "to_kind", "to_key"), "term": ("text", "kind", "key"), "standing": ("id",),
 }  # fmt: skip
 
 
@@ -120,12 +143,13 @@ def trigger_statements() -> Iterator[str]:
     recursive triggers are on, so an insert over an existing key is stopped
     as well.
     """
-    # a record belongs to the change that is being appended, never to an earlier one
-    yield (
-        "CREATE TRIGGER record_no_insertion BEFORE INSERT ON record "
-        "WHEN NEW.change <> (SELECT max(number) FROM change) "
-        "BEGIN SELECT RAISE(ABORT, 'history is only appended to: record'); END"
-    )
+    for table in ("record", "link", "term", "standing"):
+        # a row belongs to the change that is being appended, never to an earlier one
+        yield (
+            f"CREATE TRIGGER {table}_no_insertion BEFORE INSERT ON {table} "
+            "WHEN NEW.change <> (SELECT max(number) FROM change) "
+            f"BEGIN SELECT RAISE(ABORT, 'history is only appended to: {table}'); END"
+        )
     for table, keys in _KEYS.items():
         same = " AND ".join(f"{key} = NEW.{key}" for key in keys)
         if table == "record":

@@ -1,0 +1,243 @@
+"""Reviews, withdrawals and preferences: who may decide what, and what is appended."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Any
+
+from registry.admission import check_kinship, find_cycle
+from registry.canonical import digest
+from registry.dossier import Entry
+from registry.entries import enter_in_force
+from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey, quote
+from registry.holdings import Holdings, draft_of
+from registry.naming import join_names
+from registry.records import REVIEWED, Preference, Record, Review, Withdrawal
+from registry.store.history import Draft
+
+__all__ = [
+    "Plan",
+    "is_solo",
+    "judge",
+    "plan_preference",
+    "plan_review",
+    "plan_withdrawal",
+    "propose_withdrawal",
+    "rest_on",
+    "withdraw_at_once",
+]
+
+WITHDRAWN = ("correlation", "fixed-point", "dataset", "preference", "source")
+"""Kinds that can be withdrawn."""
+
+
+@dataclass(frozen=True)
+class Plan:
+    """What a decision or a recording would append.
+
+    Attributes
+    ----------
+    drafts : tuple of Draft
+        The records, in order.
+    record : Record
+        The record it is about.
+    revision : int
+        Its revision.
+    """
+
+    drafts: tuple[Draft, ...]
+    record: Record
+    revision: int
+
+
+def judge(record: Record, revision: int, standing: str, note: str) -> Draft:
+    """The review that gives a revision a standing."""
+    review = Review(
+        of_kind=record.kind, of_key=record.key, of_revision=str(revision), standing=standing, note=note
+    )  # fmt: skip
+    return draft_of(review, review.effects(record.content()))
+
+
+def propose_withdrawal(record: Record, revision: int, cause: str, reason: str) -> Draft:
+    """The withdrawal of a revision, which waits for review."""
+    return draft_of(_withdraw(record, revision, cause, reason))
+
+
+def _withdraw(record: Record, revision: int, cause: str, reason: str) -> Withdrawal:
+    return Withdrawal(
+        of_kind=record.kind, of_key=record.key, of_revision=str(revision), cause=cause, reason=reason
+    )  # fmt: skip
+
+
+def withdraw_at_once(holdings: Holdings, record: Record, revision: int, cause: str, reason: str) -> list[Draft]:
+    """A withdrawal together with its acceptance."""
+    withdrawal = _withdraw(record, revision, cause, reason)
+    return [draft_of(withdrawal), judge(withdrawal, next_revision(holdings, withdrawal), "accepted", "")]
+
+
+def next_revision(holdings: Holdings, record: Record) -> int:
+    """The revision that a record would become."""
+    state = holdings.state(record.kind, record.key)
+    return state.newest.revision + 1 if state is not None else 1
+
+
+def is_solo(holdings: Holdings) -> bool:
+    """True if the library says that one person keeps it."""
+    state = holdings.state("library", "library")
+    return state is not None and state.newest.content["kept_by"] == "one-person"
+
+
+def check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
+    """Nobody reviews what they recorded themselves, but where one person keeps the library."""
+    if author.casefold() == reviewer.casefold() and not is_solo(holdings):
+        raise BadInput(
+            f"{what} was recorded by {author}, and somebody else must review it. "
+            "A library that one person keeps says so once: `rangebook start --solo`."
+        )
+
+
+def plan_review(
+    holdings: Holdings, key: str, standing: str, note: str, reviewer: str, *, kind: str = "", expect: int | None = None
+) -> Plan:
+    """The review of what waits under a key, or the reinstatement of what was declined or withdrawn.
+
+    Raises
+    ------
+    UnknownKey
+        If nothing is recorded under the key.
+    BadInput
+        If nothing waits there, more than one record does, or the reviewer
+        recorded it.
+    RevisedMeanwhile
+        If the revision that waits is not the one expected.
+    """
+    entry = _find_reviewable(holdings, key, standing, kind)
+    record = entry.record
+    if expect is not None and entry.revision != expect:
+        before = next((r for r in holdings.view.revisions(record.kind, record.key) if r.revision == expect), None)
+        raise RevisedMeanwhile(
+            record.kind, record.key, expect, entry.revision, before.content if before else {}, record.content()
+        )
+    what = f"Revision {entry.revision} of the {record.kind} {record.key}"
+    check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
+    if isinstance(record, Preference) and standing == "accepted":
+        _check_round(holdings, record)
+    return Plan((judge(record, entry.revision, standing, note),), record, entry.revision)
+
+
+def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> Entry[Any]:
+    """What waits under a key; to be accepted again, what was declined or withdrawn."""
+    found = [entry for entry in _entries_under(holdings, key) if kind in ("", entry.record.kind)]
+    if not found:
+        raise UnknownKey(kind or "record", key)
+    waiting = [entry for entry in found if entry.standing == "draft"]
+    ended = [entry for entry in found if entry.standing in ("declined", "withdrawn")]
+    if not waiting and standing == "accepted":
+        # a withdrawal that was accepted is not reviewed again: what it withdrew is
+        waiting = [entry for entry in ended if entry.record.kind != "withdrawal" or len(ended) == 1]
+    if len(waiting) == 1:
+        return waiting[0]
+    if waiting:
+        several = join_names((f"the {entry.record.kind} {entry.key}" for entry in waiting), "and")
+        raise BadInput(f"{several} wait for review. Say which with --kind, or give the key of the withdrawal.")
+    shown = join_names((f"revision {e.revision} of the {e.record.kind} {e.key} is {e.standing}" for e in found), "and")
+    hint = " `rangebook withdraw` takes out what is in force." if standing == "declined" else ""
+    raise BadInput(f"Nothing under {quote(key)} waits for review: {shown}.{hint}")
+
+
+def _entries_under(holdings: Holdings, key: str) -> list[Entry[Any]]:
+    """The newest revision of everything with a standing that a key may mean."""
+    kinds = [kind for kind in REVIEWED if kind != "withdrawal"]
+    names = [*((kind, key) for kind in kinds), ("withdrawal", key)]
+    names += [("withdrawal", Withdrawal.key_for(kind, key)) for kind in WITHDRAWN]
+    found = [entry for name in names if (entry := holdings.newest(*name)) is not None]
+    source = holdings.newest("source", key)
+    return [*found, source] if source is not None and source.standing == "withdrawn" else found
+
+
+def plan_withdrawal(
+    holdings: Holdings, key: str, cause: str, reason: str, *, kind: str = "", accept: bool = False
+) -> Plan:
+    """The withdrawal of what counts under a key.
+
+    Raises
+    ------
+    UnknownKey
+        If nothing that can be withdrawn is recorded under the key.
+    BadInput
+        If several records have the key, or it is withdrawn already, or its
+        withdrawal waits for review.
+    """
+    kinds = [kind] if kind else list(WITHDRAWN)
+    found = [entry for each in kinds if (entry := holdings.counting(each, key)) is not None]
+    if not found:
+        raise UnknownKey(kind or "record", key)
+    if len(found) > 1:
+        raise BadInput(f"{quote(key)} may be a {join_names(e.record.kind for e in found)}. Say which with --kind.")
+    entry = found[0]
+    record = entry.record
+    if entry.standing == "withdrawn":
+        raise BadInput(f"The {record.kind} {key} is withdrawn already: {entry.standing_note}")
+    before = holdings.newest("withdrawal", Withdrawal.key_for(record.kind, key))
+    if before is not None and before.standing == "draft":
+        raise BadInput(f"A withdrawal of the {record.kind} {key} waits for review already: {before.record.reason}")
+    withdrawal = _withdraw(record, entry.revision, cause, reason)
+    revision = next_revision(holdings, withdrawal)
+    drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]
+    return Plan(tuple(drafts), withdrawal, revision)
+
+
+def rest_on(holdings: Holdings, source: str) -> list[Entry[Any]]:
+    """Everything that counts or waits and rests on a source, by kind and key."""
+    entries = (enter_in_force(state) for state in holdings.view.linked("source", [source]))
+    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source == source]
+
+
+def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, accept: bool = False) -> Plan:
+    """A steward's preference of one correlation over another.
+
+    Raises
+    ------
+    UnknownKey
+        If one of them is not recorded.
+    BadInput
+        If the two are for different things, the preference is recorded
+        already, or it would close a circle.
+    """
+    for each in (key, over):
+        if holdings.state("correlation", each) is None:
+            raise UnknownKey("correlation", each)
+    record = Preference(key=_name_preference(key, over), correlation=key, over=over, reason=reason)
+    if problems := list(check_kinship(record, holdings.record)):
+        raise InvalidRecord(record.kind, record.key, problems)
+    before = holdings.newest(record.kind, record.key)
+    if before is not None and before.standing in ("accepted", "draft"):
+        raise BadInput(f"{key} is preferred over {over} already ({before.standing}): {before.record.reason}")
+    _check_round(holdings, record)
+    revision = next_revision(holdings, record)
+    drafts = [draft_of(record), *([judge(record, revision, "accepted", "")] if accept else [])]
+    return Plan(tuple(drafts), record, revision)
+
+
+def _check_round(holdings: Holdings, record: Preference) -> None:
+    pairs = holdings.preferences([record.correlation, record.over]) | {(record.correlation, record.over)}
+    if cycle := find_cycle(sorted(pairs)):
+        raise BadInput(
+            f"The preferences would go round in a circle: {' over '.join(cycle)}. Withdraw one of them first."
+        )
+
+
+def _name_preference(key: str, over: str) -> str:
+    """A key of at most 80 characters for a pair."""
+    name = f"{key}-over-{over}"
+    return name if len(name) <= 80 else f"{name[:63]}-{digest(name.encode())[:16]}"
+
+
+def accept_at_once(holdings: Holdings, wanted: bool) -> bool:
+    """Whether what is recorded is accepted with it, which only the single keeper of a library may ask for."""
+    if wanted and not is_solo(holdings):
+        raise BadInput(
+            "Recording and accepting in one go is for a library that one person keeps (`rangebook start --solo`). "
+            "Here somebody else reviews it: `rangebook review`."
+        )
+    return wanted
