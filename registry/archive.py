@@ -60,7 +60,18 @@ class Archive(Reader):
         return Archive(self._file, self.find_position(place), self._lock)
 
     def find_position(self, place: Position) -> int:
-        """The number of the change that an edition, a number or a date means."""
+        """The number of the change that an edition, a number or a date means.
+
+        Parameters
+        ----------
+        place : str, int or date
+            As for `at`.
+
+        Returns
+        -------
+        int
+            A position.
+        """
         with self._lock, self._reading() as view:
             return find_position(view, place)
 

@@ -113,11 +113,7 @@ def find_position(view: View, place: Position) -> int:
         raise BadInput(f"{quote(place)} is no position; an edition, a change or a date is allowed.")
     if isinstance(place, int):
         return _check_number(view, place)
-    text = (
-        place
-        if isinstance(place, str)
-        else (format_moment(place) if isinstance(place, datetime) else place.isoformat())
-    )
+    text = _as_text(place)
     if re.fullmatch(r"\d{1,15}", text, re.ASCII):
         return _check_number(view, int(text))
     if _DAY.fullmatch(text):
@@ -127,9 +123,11 @@ def find_position(view: View, place: Position) -> int:
     return int(find_edition(view, text).position)
 
 
-def format_moment(moment: datetime) -> str:
-    """A moment as text; one without a time zone is taken as UTC."""
-    return format_time(moment.astimezone(UTC) if moment.tzinfo else moment)
+def _as_text(place: str | date) -> str:
+    """A place as text; a moment without a time zone is taken as UTC."""
+    if isinstance(place, datetime):
+        return format_time(place.astimezone(UTC) if place.tzinfo else place)
+    return place if isinstance(place, str) else place.isoformat()
 
 
 def _check_number(view: View, number: int) -> int:

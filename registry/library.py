@@ -8,49 +8,22 @@ from __future__ import annotations
 
 import os
 from collections.abc import Callable
-from dataclasses import dataclass
-from datetime import UTC, datetime
 from pathlib import Path
 from typing import Any
 
 from registry.archive import Archive
-from registry.cells import SIGNED, TEXT, complain
-from registry.editions import format_time, plan_edition
+from registry.editions import plan_edition
 from registry.entries import enter_all
-from registry.errors import BadInput, quote
+from registry.errors import BadInput
 from registry.holdings import Holdings, draft_of
 from registry.judgement import Plan, accept_at_once, plan_preference, plan_review, plan_withdrawal
 from registry.recording import plan_record, plan_revision
 from registry.records import Keeping, Record
-from registry.store.history import Change
+from registry.signature import Recorded, check_signature, now_utc
 
-__all__ = ["Library", "Recorded", "check_signature", "now_utc"]
+__all__ = ["Library"]
 
 _DUMPED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset", "preference")
-
-
-def now_utc() -> str:
-    """The time now, UTC, ISO 8601 with microseconds."""
-    return format_time(datetime.now(UTC))
-
-
-@dataclass(frozen=True)
-class Recorded:
-    """What a verb has recorded.
-
-    Attributes
-    ----------
-    change : Change
-        The header of the change.
-    record : Record
-        The record that it is about.
-    revision : int
-        Its revision.
-    """
-
-    change: Change
-    record: Record
-    revision: int
 
 
 class Library(Archive):
@@ -153,6 +126,11 @@ class Library(Archive):
         expect : int, optional
             The revision that was looked at.
 
+        Returns
+        -------
+        Recorded
+            The record that was reviewed.
+
         Raises
         ------
         UnknownKey, BadInput
@@ -161,9 +139,11 @@ class Library(Archive):
             If a newer revision waits than the one expected.
         """
         standing = "accepted" if accept else "declined"
-        return self._append(
-            author, note, lambda held: plan_review(held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect)
-        )  # fmt: skip
+
+        def plan(held: Holdings) -> Plan:
+            return plan_review(held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect)
+
+        return self._append(author, note, plan)
 
     def withdraw(
         self, key: str, *, author: str, reason: str, cause: str = "other", kind: str = "", accept: bool = False
@@ -215,6 +195,11 @@ class Library(Archive):
             Accept it in the same change; only in a library that one person
             keeps.
 
+        Returns
+        -------
+        Recorded
+            The preference, a draft until it is reviewed.
+
         Raises
         ------
         UnknownKey, BadInput
@@ -251,6 +236,13 @@ class Library(Archive):
 
     def keep(self, *, solo: bool, author: str) -> Recorded | None:
         """Say that one person keeps the library and reviews their own, or that a team does.
+
+        Parameters
+        ----------
+        solo : bool
+            True for one person.
+        author : str
+            Who says so.
 
         Returns
         -------
@@ -351,12 +343,3 @@ class Library(Archive):
         waiting = sum(entry.waiting > 0 for entry in entries)
         rows = dump_items(Path(path), ((e.record, (e.standing, e.standing_note)) for e in entries))
         return {**rows, "waiting": waiting} if waiting else rows
-
-
-def check_signature(author: str, reason: str) -> tuple[str, str]:
-    """Who and why, as they are recorded: plain text without blanks around it."""
-    signed = author.strip(), reason.strip()
-    for what, option, cell, text in zip(("author", "reason"), ("--as", "--note"), (TEXT, SIGNED), signed, strict=True):
-        if why := complain(cell, text, required=True):
-            raise BadInput(f"{quote(text)} is no {what} of a change ({option}): {why}")
-    return signed

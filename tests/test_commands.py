@@ -248,7 +248,7 @@ def test_a_refusal_tells_distances_and_a_dump_what_waits(own_path, tmp_path, mon
         library.dump(tmp_path / "package")
         _edit(tmp_path / "package" / "correlations.csv", "water-august", "note", "a draft")
         _edit(tmp_path / "package" / "correlations.csv", "water-august", "standing", "draft")
-        library.load(tmp_path / "package", author="somebody")
+        library.load(tmp_path / "package", author="somebody", reason="invented", accept=True)
     with pytest.raises(SystemExit):
         main(["dump", str(tmp_path / "dump")])
     assert "stayed behind: 1." in capsys.readouterr().out

@@ -43,6 +43,7 @@ LAYERS = (
     {"collection"},
     {"reader"},
     {"archive"},
+    {"signature"},
     {"library"},
     {"opening"},
     {"cli"},

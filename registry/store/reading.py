@@ -11,28 +11,21 @@ import json
 from collections.abc import Iterable, Iterator, Sequence
 from typing import Any, NamedTuple
 
-from sqlalchemy import Connection, Select, bindparam, func, select
+from sqlalchemy import Connection, Select, bindparam, select
 
 from registry.canonical import digest
-from registry.store.history import Change, envelope, fold_term
-from registry.store.tables import change, library, link, node, record, standing, term
+from registry.store.history import envelope, fold_term
+from registry.store.tables import link, record, standing, term
 
 __all__ = [
     "Decision",
     "Row",
     "State",
-    "find_position",
     "find_term",
-    "read_change",
-    "read_changed",
-    "read_changes",
     "read_current",
     "read_decisions",
-    "read_identity",
     "read_kind",
     "read_linked",
-    "read_node",
-    "read_position",
     "read_revisions",
     "read_states",
     "read_terms",
@@ -121,17 +114,6 @@ def _states_of(kind: Any, key: Any) -> Select[Any]:
 
 
 # statements are built once: building them costs three times their execution
-_POSITION_NOW = select(func.coalesce(func.max(change.c.number), 0))
-_IDENTITY = select(library.c.name, library.c.started_at)
-_CHANGES = select(change).where(change.c.number <= _POSITION).order_by(change.c.number)
-_CHANGE = select(change).where(change.c.number == bindparam("number"))
-_UP_TO = (
-    select(change.c.number)
-    .where(change.c.recorded_at < bindparam("time"))
-    .order_by(change.c.recorded_at.desc(), change.c.number.desc())
-    .limit(1)
-)
-_NODE = select(node.c.hash).where(node.c.level == bindparam("level"), node.c.place == bindparam("place"))
 _FIRST = (_first.c.kind == _KIND, _first.c.revision == 1, _first.c.change <= _POSITION)
 _NEWEST_BY_KIND = (
     select(_newest_of(_first.c.kind, _first.c.key)).select_from(_first).where(*_FIRST).order_by(_first.c.key)
@@ -163,12 +145,6 @@ _WORDS = (
     select(standing.c.id)
     .where(standing.c.kind == _KIND, standing.c.key == _KEY, standing.c.change <= _POSITION)
     .order_by(standing.c.id)
-)
-_CHANGED = (
-    select(record.c.kind, record.c.key)
-    .where(record.c.change > bindparam("since"), record.c.change <= _POSITION)
-    .distinct()
-    .order_by(record.c.kind, record.c.key)
 )
 _VERDICTS = ("accepted", "declined", "withdrawn")
 _WAITING = (
@@ -243,46 +219,6 @@ def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
     ]
 
 
-def read_position(connection: Connection) -> int:
-    """The number of the last change, 0 in an empty library."""
-    return int(connection.execute(_POSITION_NOW).scalar_one())
-
-
-def find_position(connection: Connection, time: str) -> int:
-    """The number of the last change recorded before a time (UTC, ISO 8601); 0 if there is none."""
-    return connection.execute(_UP_TO, {"time": time}).scalar() or 0
-
-
-def read_identity(connection: Connection) -> tuple[str, str]:
-    """The random name of the library, and when it was started."""
-    name, started_at = connection.execute(_IDENTITY).one()
-    return name, started_at
-
-
-def _as_change(row: Any) -> Change:
-    return Change(**{name: row._mapping[name] for name in Change.__dataclass_fields__})
-
-
-def read_changes(connection: Connection, position: int) -> list[Change]:
-    """The headers of all changes up to a position, in order."""
-    return [_as_change(row) for row in connection.execute(_CHANGES, {"position": position})]
-
-
-def read_change(connection: Connection, number: int) -> Change:
-    """The header of one change."""
-    return _as_change(connection.execute(_CHANGE, {"number": number}).one())
-
-
-def read_changed(connection: Connection, since: int, position: int) -> list[tuple[str, str]]:
-    """Kind and key of every record that changes after one position, up to another, have added."""
-    return [(kind, key) for kind, key in connection.execute(_CHANGED, {"since": since, "position": position})]
-
-
-def read_node(connection: Connection, level: int, place: int) -> bytes:
-    """A complete node of the tree over the changes."""
-    return bytes.fromhex(connection.execute(_NODE, {"level": level, "place": place}).scalar_one())
-
-
 def _newest(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
     ids = list(connection.execute(statement, values).scalars())
     rows = _fetch_rows(connection, ids)
@@ -313,9 +249,8 @@ def read_decisions(connection: Connection, kind: str, key: str, position: int) -
     ids = list(connection.execute(_WORDS, {"kind": kind, "key": key, "position": position}).scalars())
     states: list[Decision] = []
     for chunk in _chunks(ids):
-        words = connection.execute(_DECISION_BY_ID, {"ids": chunk}).all()
+        words = sorted(connection.execute(_DECISION_BY_ID, {"ids": chunk}), key=lambda word: word.id)
         rows = _fetch_rows(connection, {word.cause for word in words})
-        words.sort(key=lambda word: word.id)
         states += [Decision(word.revision, word.standing, word.change, rows[word.cause]) for word in words]
     return states
 
