@@ -8,6 +8,7 @@
     |   |   `-- GaugePressure          a gauge unit without the local atmosphere
     |   |-- InvalidRecord              a record that breaks its invariants
     |   |-- InvalidPackage             a package with bad cells or bad files
+    |   |-- InvalidSheet               a record sheet with bad fields
     |   `-- UnknownKey (LookupError)   no record under that key or name
     |-- Refused (LookupError)          no correlation may answer
     |-- LibraryBusy (TimeoutError)     another writer holds the library
@@ -74,14 +75,14 @@ class GaugePressure(BadQuantity):
 
 @dataclass(frozen=True)
 class Problem:
-    """One thing wrong with one field of a record."""
+    """One thing wrong with one field of a record; no field where it is the whole."""
 
     field: str
     given: str
     allowed: str
 
     def __str__(self) -> str:
-        return f"{self.field}: {quote(self.given)} given; {self.allowed}"
+        return f"{self.field}: {quote(self.given)} given; {self.allowed}" if self.field else self.allowed
 
 
 class InvalidRecord(BadInput):
@@ -123,11 +124,24 @@ class InvalidPackage(BadInput):
     def __init__(self, place: str, problems: Sequence[CellProblem]) -> None:
         self.place = place
         self.problems = tuple(problems)
-        count = len(self.problems)
-        head = f"{place} cannot be loaded: {count} problem{'s' if count != 1 else ''}; nothing was changed."
-        shown = [f"  {problem}" for problem in self.problems[:SHOWN_PROBLEMS]]
-        more = [f"  ... and {count - SHOWN_PROBLEMS} more"] if count > SHOWN_PROBLEMS else []
-        super().__init__("\n".join([head, *shown, *more]))
+        super().__init__(_list_problems(f"{place} cannot be loaded", self.problems))
+
+
+def _list_problems(head: str, problems: Sequence[CellProblem | Problem]) -> str:
+    count = len(problems)
+    first = f"{head}: {count} problem{'s' if count != 1 else ''}; nothing was changed."
+    shown = [f"  {problem}" for problem in problems[:SHOWN_PROBLEMS]]
+    more = [f"  ... and {count - SHOWN_PROBLEMS} more"] if count > SHOWN_PROBLEMS else []
+    return "\n".join([first, *shown, *more])
+
+
+class InvalidSheet(BadInput):
+    """A record sheet that cannot be used; every bad field at once."""
+
+    def __init__(self, place: str, problems: Sequence[Problem]) -> None:
+        self.place = place
+        self.problems = tuple(problems)
+        super().__init__(_list_problems(f"{place} cannot be used", self.problems))
 
 
 class UnknownKey(BadInput, LookupError):

@@ -9,14 +9,14 @@ from pathlib import Path
 
 import pytest
 
-from registry.cli.app import app, main
+from registry.cli.app import main
+from registry.cli.commands import COMMANDS
 from registry.opening import start_library
 
 ROOT = Path(__file__).parents[1]
 README = (ROOT / "README.md").read_text(encoding="utf-8")
 BLOCKS = re.findall(r"```console\n(.*?)```", README, flags=re.DOTALL)
 SESSIONS = [block for block in BLOCKS if block.startswith("$ rangebook")]
-COMMANDS = sorted(command.name for command in app.registered_commands)
 TIME = re.compile(r"\d{4}-\d\d-\d\dT[\d:.]+Z")
 
 

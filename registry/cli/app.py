@@ -22,31 +22,24 @@ from typing import Annotated, Any, NoReturn
 
 import typer
 
-from registry.cli.browsing import coverage, list_records, show
-from registry.cli.keeping import dump, load, start, upgrade
-from registry.cli.looking import REFUSED, lookup
+from registry.cli.commands import CommandTable
 from registry.cli.screen import complain, print_json
-from registry.cli.vocabulary import forms
 from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, quote
 
 __all__ = ["main"]
 
-EXIT_CODES = ((Refused, REFUSED), (LibraryBusy, 4), (LibraryUnreadable, 5), (RangebookError, 2))
+EXIT_CODES = ((Refused, 3), (LibraryBusy, 4), (LibraryUnreadable, 5), (RangebookError, 2))
 FAULT = 70
 
 app = typer.Typer(
     name="rangebook",
+    cls=CommandTable,
     no_args_is_help=True,
     rich_markup_mode=None,
     pretty_exceptions_enable=False,
     add_completion=True,
     context_settings={"help_option_names": ["-h", "--help"]},
 )
-for command, name in (
-    (lookup, "lookup"), (coverage, "coverage"), (list_records, "list"), (show, "show"),
-    (forms, "forms"), (start, "start"), (load, "load"), (dump, "dump"), (upgrade, "upgrade"),
-):  # fmt: skip
-    app.command(name)(command)
 
 
 def _print_version(wanted: bool) -> None:

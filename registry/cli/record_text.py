@@ -7,6 +7,7 @@ from typing import Any
 
 from registry.cli.screen import emphasize, print_facts, print_table, say
 from registry.dossier import Entry
+from registry.exchange.coefficients import join_coefficients
 from registry.forms.catalogue import FORMS
 from registry.library import Library
 from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
@@ -61,7 +62,7 @@ def _correlation_facts(record: Correlation) -> list[tuple[str, str]]:
         ("property", f"{record.property}, {record.phase}"),
         ("form", f"{form.name} ({form.title})"),
         ("equation", form.equation),
-        ("coefficients", "; ".join(f"{name}={text}" for name, text in record.ordered_coefficients())),
+        ("coefficients", join_coefficients(record.ordered_coefficients())),
         ("units", f"T in {record.temperature_unit}, value in {record.value_unit}"),
         ("window", f"{record.window_min} to {record.window_max} {record.window_unit} ({record.window_basis})"),
         ("metastable", f"below {record.metastable_below}" if record.metastable_below else ""),

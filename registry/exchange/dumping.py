@@ -8,6 +8,7 @@ from collections.abc import Iterable, Iterator
 from pathlib import Path
 from typing import Any
 
+from registry.exchange.coefficients import join_coefficients
 from registry.exchange.layout import FILES, File, descriptor
 from registry.exchange.package import DESCRIPTOR, write_package
 from registry.exchange.rows import write_rows
@@ -62,5 +63,5 @@ def _rows(file: File, entries: list[tuple[Record, Standing]]) -> Iterator[dict[s
 def _text(record: Record, name: str) -> str:
     value: Any = getattr(record, name, "")
     if name == "coefficients" and isinstance(record, Correlation):
-        return "; ".join(f"{key}={text}" for key, text in record.ordered_coefficients())
+        return join_coefficients(record.ordered_coefficients())
     return str(value)

@@ -13,6 +13,7 @@ from typing import Any
 
 from registry import cells
 from registry.cells import Cell, choice
+from registry.exchange.coefficients import COEFFICIENTS
 from registry.records import (
     REVIEWED,
     STANDINGS,
@@ -29,8 +30,6 @@ from registry.records import (
 )
 
 __all__ = ["FILES", "Column", "File", "descriptor"]
-
-COEFFICIENTS = Cell("coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed.", limit=4000)
 
 
 @dataclass(frozen=True)
