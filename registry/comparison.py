@@ -118,7 +118,7 @@ def compare_coverages(before: Coverage | None, after: Coverage | None) -> tuple[
     if len(subjects) > 1:
         given = " and ".join(" ".join(subject).strip() for subject in sorted(subjects))
         raise BadInput(f"Coverages of {given} cannot be compared; give two of one compound, property and phase.")
-    ranges = _join_neighbours(_find_ranges(before, after))
+    ranges = list(_find_ranges(before, after))
     wide = [found for found in ranges if found.high - found.low >= SLIVER]
     return tuple(found.report(*subject) for subject in subjects for found in _join_neighbours(wide or ranges))
 
@@ -230,11 +230,10 @@ def _close_segment(low: float, high: float, candidates: list[Candidate]) -> tupl
     """The closed range of a segment, [low, high) with bounds widened by their tolerance: the bounds as recorded."""
     last = math.nextafter(high, -math.inf)
     bounds = max(low, *(c.reach[0] for c in candidates)), min(last, *(c.reach[1] for c in candidates))
-    if bounds[0] > bounds[1]:
-        return low, last
     # a form's own critical temperature is a bound one double above it
     first, end = (near if low <= (near := round(bound, 8)) <= last else bound for bound in bounds)
-    return first, end
+    # two reaches may meet in nothing but their tolerances
+    return first, max(first, end)
 
 
 def _judge_piece(piece: Piece, left: Candidate | None, right: Candidate | None) -> Iterator[_Range]:

@@ -20,6 +20,7 @@ from registry.dossier import Dossier, Entry
 from registry.errors import BadInput
 from registry.properties import PROPERTIES
 from registry.records import Correlation, FixedPoint
+from registry.sampling import find_steps
 
 POINTS = 200_001
 
@@ -404,6 +405,57 @@ def test_several_phases_are_compared_one_by_one():
     assert _summary(compare_coverages(*unnamed)) == [("changes", 340.0, 380.0, (("m2", 1),), (("m2", 2),))]
 
 
+def test_a_correlation_is_named_once_in_a_range():
+    """Where the other side passes from several phases to none, the answer that appears is one and whole."""
+
+    def ice(key, phase, window):
+        return _invent(
+            key, form="simon-glatzel", property="melting-pressure", phase=phase, value_unit="MPa", window=window,
+            coefficients={"T0": "290", "p0": "1", "a": "400", "c": "2"},
+        )  # fmt: skip
+
+    before = _cover(ice("m1", "ice I", ("330", "340")), ice("m2", "ice II", ("330", "340")), prop="melting-pressure")
+    after = _cover(ice("m3", "ice III", ("330", "360")), prop="melting-pressure")
+    assert _summary(compare_coverages(before, after)) == [("appears", 330.0, 360.0, (), (("m3", 1),))]
+
+
+def test_other_coefficients_with_the_same_values_are_no_change():
+    """A term without weight, Riedel's C4 = 0, may have any power: every value is the same."""
+    sides = [
+        _cover(_invent(
+            form="riedel", revision=n, value_unit="Pa",
+            coefficients={"C1": "60.5", "C2": "-5200", "C3": "-6.1", "C4": "0", "C5": str(n)},
+        )) for n in (1, 2)
+    ]  # fmt: skip
+    assert sides[0].value_at(350.0)[0] > 0.0
+    assert compare_coverages(*sides) == ()
+
+
+def test_a_zero_on_both_sides_is_no_change():
+    """A melting pressure of zero at 300 K in both, and 1 percent higher everywhere else."""
+    sides = [
+        _cover(_invent(
+            form="simon-glatzel", property="melting-pressure", phase="solid", value_unit="MPa", revision=n,
+            coefficients={"T0": "300", "p0": "0", "a": a, "c": "1.6"},
+        ), prop="melting-pressure") for n, a in ((1, "500"), (2, "505"))
+    ]  # fmt: skip
+    (change,) = compare_coverages(*sides)
+    assert (sides[0].value_at(300.0)[0], sides[1].value_at(300.0)[0]) == (0.0, 0.0)
+    assert change.largest_percent == pytest.approx(1.0, rel=1e-12)
+    assert change.mean_percent == pytest.approx(1.0, rel=1e-8)
+
+
+def test_two_steps_between_two_points_are_both_found():
+    """Curves that begin and end between neighbouring points of a grid cut it twice."""
+
+    def code(t):
+        return 2 * (t > 1.25) + (t > 1.75)
+
+    grid = np.array([0.0, 1.0, 2.0, 3.0])
+    up = [math.nextafter(t, 2.0) for t in (1.25, 1.75)]
+    assert list(find_steps(code, grid, code(grid))) == [(1.25, up[0]), (1.75, up[1])]
+
+
 def test_only_two_of_a_kind_are_compared():
     """Coverages of two properties are refused by name."""
     density = _cover(prop="saturated-liquid-density")
@@ -427,6 +479,11 @@ def test_curves_are_compared_over_their_overlap():
     )  # fmt: skip
     assert compare_curves(curve(("300", "400")), curve(("400.001", "450"))) is None
     assert compare_curves(curve(("300", "400")), curve(("300", "500"))) == (0.0, 300.0, 0.0)
+    # 10^(6.9 - 1200/(T - 50)) kPa is zero in a double up to 53 K
+    low, high = curve(("52", "60")), curve(("52", "60"), "8")
+    assert compare_curves(low, high).largest_percent is None
+    assert compare_curves(low, high, positive=True).largest_percent > 100.0
+    assert compare_curves(curve(("52", "53")), curve(("52", "53")), positive=True) is None
 
 
 @pytest.mark.parametrize("compound", ["water", "argon", "ammonia", "ethanol"])
