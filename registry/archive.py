@@ -1,11 +1,13 @@
-"""Reading a library's past: positions, editions, what waits for review."""
+"""Reading a library's past: positions, editions, histories, differences, what waits for review."""
 
 from __future__ import annotations
 
+from registry.chronicle import Event, list_events
+from registry.difference import Difference, Preview, find_difference, find_preview
 from registry.editions import Position, find_position
 from registry.entries import restore
 from registry.reader import Reader
-from registry.records import Edition
+from registry.records import Edition, Record
 from registry.store.history import Change
 from registry.waiting import Waiting, list_waiting
 
@@ -85,3 +87,89 @@ class Archive(Reader):
         """What waits for review, oldest first."""
         with self._lock, self._reading() as view:
             return list_waiting(view)
+
+    def history(self, key: str, kind: str = "") -> list[Event]:
+        """Everything that happened to a record, in order.
+
+        Parameters
+        ----------
+        key : str
+            Its key.
+        kind : str
+            Needed where several kinds of record have the key; by default the
+            first that has it.
+
+        Returns
+        -------
+        list of Event
+            Who, when, why, and what changed field by field.
+
+        Raises
+        ------
+        UnknownKey
+            If there is no such record.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     [event.what for event in library.history("water-if97")]
+        ['recorded', 'accepted']
+        """
+        record = self.newest(key, kind).record
+        with self._lock, self._reading() as view:
+            return list_events(view, record.kind, record.key)
+
+    def diff(self, before: Position, after: Position | None = None) -> Difference:
+        """What differs between two positions, in numbers and record by record.
+
+        Parameters
+        ----------
+        before : str, int or date
+            An edition, a change or a date.
+        after : str, int or date, optional
+            Another one, later or earlier; the position read at if none is
+            given.
+
+        Returns
+        -------
+        Difference
+            The temperature ranges in which an answer appears, disappears or
+            changes, and the records that differ.
+
+        Raises
+        ------
+        UnknownKey, BadInput
+            If there is no such position.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.diff(1, 1).numbers
+        ()
+        """
+        with self._lock, self._reading() as view:
+            one = view.at(find_position(view, before))
+            two = view if after is None else view.at(find_position(view, after))
+            return find_difference(one, two)
+
+    def preview(self, record: Record) -> Preview:
+        """What a revision would change, were it accepted; nothing is recorded.
+
+        Parameters
+        ----------
+        record : Record
+            As it would be, under a key that is recorded.
+
+        Returns
+        -------
+        Preview
+            The fields, and what that does to the numbers.
+
+        Raises
+        ------
+        UnknownKey
+            If there is no such record.
+        """
+        return find_preview(self.newest(record.key, record.kind), record, self.dossier)

@@ -52,7 +52,8 @@ def _swap(text: str, old: str, new: str) -> str:
 @pytest.mark.parametrize("shelf", ["published", "scenario"])
 def test_every_record_of_the_shelves_survives(shelf):
     """Written, read and written again: an equal record and the same text, which any TOML reader takes."""
-    records = [item.record for item in read_items(find_shelf(shelf), lambda kind, key: None)]
+    items = read_items(find_shelf(shelf), lambda kind, key: None)
+    records = [item.record for item in items if item.record.kind in RECORDED]
     for revision, record in enumerate(records):
         text = write_sheet(record, revision, ["position 1"])
         sheet = read_sheet(text, "sheet.toml", record.kind)

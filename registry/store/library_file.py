@@ -81,6 +81,14 @@ class View:
         """Newest revisions of some kinds without a verdict, oldest first, each with the note on its arrival."""
         return reading.read_waiting(self._connection, kinds, self.position)
 
+    def origin(self, number: int) -> Row | None:
+        """Where the records of a change came from, if they came from another library."""
+        return reading.read_origin(self._connection, number)
+
+    def at(self, position: int) -> View:
+        """The same transaction, at another position."""
+        return View(self._connection, position)
+
     def find_term(self, text: str) -> list[Row]:
         """The records that a person has ever found under a text."""
         return reading.find_term(self._connection, text, self.position)

@@ -26,6 +26,7 @@ __all__ = [
     "read_decisions",
     "read_kind",
     "read_linked",
+    "read_origin",
     "read_revisions",
     "read_states",
     "read_terms",
@@ -136,6 +137,7 @@ _named = (
 )
 _BY_TERM = select(_newest_of(_named.c.kind, _named.c.key)).select_from(_named).order_by(_named.c.kind, _named.c.key)
 _TERMS = select(term.c.text, term.c.kind, term.c.key).where(term.c.change <= _POSITION)
+_ORIGIN = select(*_COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == "origin")
 _REVISIONS = (
     select(*_COLUMNS)
     .where(record.c.kind == _KIND, record.c.key == _KEY, record.c.change <= _POSITION)
@@ -236,6 +238,12 @@ def read_current(connection: Connection, kind: str, keys: Iterable[str], positio
     for chunk in _chunks(keys):
         rows += _newest(connection, _NEWEST_BY_KEYS, kind=kind, keys=chunk, position=position)
     return rows
+
+
+def read_origin(connection: Connection, number: int) -> Row | None:
+    """The origin that a change records, or None."""
+    found = connection.execute(_ORIGIN, {"number": number}).one_or_none()
+    return None if found is None else _restore(*found[1:])
 
 
 def read_revisions(connection: Connection, kind: str, key: str, position: int) -> list[Row]:
