@@ -135,7 +135,7 @@ def measure_deviation(before: Curve, after: Curve, low: float, high: float) -> D
     Returns
     -------
     Deviation
-        The mean is good to about 1e-8 of itself; to 1e-5 where a curve has a
+        The mean is good to about 1e-6 of itself; to 1e-5 where a curve has a
         kink or a step, as those on older temperature scales have.
 
     Examples
