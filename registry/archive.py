@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 from registry.chronicle import Event, list_events
 from registry.difference import Difference, Preview, find_difference, find_preview
-from registry.editions import Position, find_position
-from registry.entries import restore
+from registry.dossier import Entry
+from registry.editions import Position, find_edition, find_position
+from registry.entries import rest_on, restore
 from registry.reader import Reader
-from registry.records import Edition, Record
+from registry.records import Edition, Record, Source, Withdrawal
 from registry.store.history import Change
 from registry.waiting import Waiting, list_waiting
 
@@ -77,6 +80,29 @@ class Archive(Reader):
         with self._lock, self._reading() as view:
             return find_position(view, place)
 
+    def edition(self, name: str) -> Edition:
+        """The edition of a name, case aside.
+
+        Parameters
+        ----------
+        name : str
+            Its name.
+
+        Returns
+        -------
+        Edition
+            With its position, root and rules version.
+
+        Raises
+        ------
+        UnknownKey
+            If there is none.
+        BadInput
+            If it stands on rules that this program does not have.
+        """
+        with self._lock, self._reading() as view:
+            return find_edition(view, name)
+
     def editions(self) -> list[tuple[Edition, Change]]:
         """Every edition, oldest first, each with the change that froze it."""
         with self._lock, self._reading() as view:
@@ -87,6 +113,25 @@ class Archive(Reader):
         """What waits for review, oldest first."""
         with self._lock, self._reading() as view:
             return list_waiting(view)
+
+    def resting(self, record: Record) -> list[Entry[Any]]:
+        """What rests on the source that a withdrawal is about.
+
+        Parameters
+        ----------
+        record : Record
+            A withdrawal, or a source.
+
+        Returns
+        -------
+        list of Entry
+            Correlations, fixed points and datasets; none for another record.
+        """
+        source = record.key if isinstance(record, Source) else ""
+        if isinstance(record, Withdrawal) and record.of_kind == Source.kind:
+            source = record.of_key
+        with self._lock, self._reading() as view:
+            return rest_on(view, source) if source else []
 
     def history(self, key: str, kind: str = "") -> list[Event]:
         """Everything that happened to a record, in order.

@@ -203,10 +203,8 @@ def _list_preferences(view: View, key: str) -> Iterator[Event]:
         first = view.revisions(Preference.kind, row.key)[0]
         yield Event(view.change(first.change), "preference recorded", 0, f"{pair}: {first.content['reason']}")
         for decision in view.decisions(Preference.kind, row.key):
-            said = word_cause(decision)
-            yield Event(
-                view.change(decision.change), f"preference {decision.standing}", 0, f"{pair}{': ' if said else ''}{said}"
-            )  # fmt: skip
+            said = ": ".join(filter(None, (pair, word_cause(decision))))
+            yield Event(view.change(decision.change), f"preference {decision.standing}", 0, said)
 
 
 def list_record_changes(before: View, after: View) -> list[RecordChange]:

@@ -256,6 +256,22 @@ class Collection:
             rows = view.current("source", [key])
         return str(rows[0].content["citation"]) if rows else key
 
+    def change(self, number: int) -> Change:
+        """The header of one change.
+
+        Parameters
+        ----------
+        number : int
+            Its number.
+
+        Returns
+        -------
+        Change
+            Who, when and why.
+        """
+        with self._lock, self._reading() as view:
+            return view.change(number)
+
     def changes(self) -> list[Change]:
         """The headers of all changes, in order."""
         with self._lock, self._reading() as view:

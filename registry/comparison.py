@@ -18,9 +18,12 @@ from registry.dossier import Dossier
 from registry.errors import BadInput
 from registry.properties import PROPERTIES
 
-__all__ = ["NumberChange", "compare_coverages", "compare_curves", "compare_dossiers"]
+__all__ = ["SAME", "NumberChange", "compare_coverages", "compare_curves", "compare_dossiers"]
 
 Named = tuple[tuple[str, int], ...]
+
+SAME = 1e-10
+"""Percent up to which two values are the same: a record in other units may differ in the last bits."""
 
 SLIVER = 1e-6
 """Kelvin below which a range comes from the tolerance of two bounds that meet."""
@@ -80,7 +83,7 @@ def compare_dossiers(before: Dossier | None, after: Dossier | None) -> tuple[Num
     -------
     tuple of NumberChange
         By property, in the order of `PROPERTIES`, then by phase, then by
-        temperature.
+        temperature. Values within 1e-12 relative are the same.
     """
     given = [dossier for dossier in (before, after) if dossier is not None]
     records = [entry.record for dossier in given for entry in dossier.correlations]
@@ -89,7 +92,7 @@ def compare_dossiers(before: Dossier | None, after: Dossier | None) -> tuple[Num
         for phase in sorted({record.phase for record in records if record.property == prop}):
             sides = [None if dossier is None else build_coverage(dossier, prop, phase) for dossier in (before, after)]
             found += compare_coverages(*sides)
-    return tuple(found)
+    return tuple(change for change in found if change.largest_percent is None or abs(change.largest_percent) > SAME)
 
 
 def compare_coverages(before: Coverage | None, after: Coverage | None) -> tuple[NumberChange, ...]:

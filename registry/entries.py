@@ -11,7 +11,7 @@ from registry.records import KINDS, REVIEWED, Record, Source
 from registry.store.library_file import View
 from registry.store.reading import Decision, Row, State
 
-__all__ = ["enter_all", "enter_newest", "enter_states", "read_dossier", "restore", "word_cause"]
+__all__ = ["enter_all", "enter_newest", "enter_states", "read_dossier", "rest_on", "restore", "word_cause"]
 
 
 def restore(row: Row) -> Any:
@@ -89,6 +89,12 @@ def _withdraw(entry: Entry[Any], sources: Mapping[str, Decision]) -> Entry[Any]:
 def enter_all(view: View, kind: str) -> list[Entry[Any]]:
     """Every record of a kind, by key, in the revision that counts."""
     return enter_states(view, view.states(kind))
+
+
+def rest_on(view: View, source: str) -> list[Entry[Any]]:
+    """Everything that counts or waits and rests on a source, by kind and key."""
+    entries = enter_states(view, view.linked("source", [source]))
+    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source == source]
 
 
 def read_dossier(view: View, key: str, *, drafts: bool = False) -> Dossier:

@@ -8,7 +8,6 @@ from typing import Any
 from registry.admission import check_kinship, find_cycle
 from registry.canonical import digest
 from registry.dossier import Entry
-from registry.entries import enter_in_force
 from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey, quote
 from registry.holdings import Holdings, draft_of
 from registry.naming import join_names
@@ -23,7 +22,6 @@ __all__ = [
     "plan_review",
     "plan_withdrawal",
     "propose_withdrawal",
-    "rest_on",
     "withdraw_at_once",
 ]
 
@@ -185,12 +183,6 @@ def plan_withdrawal(
     revision = next_revision(holdings, withdrawal)
     drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]
     return Plan(tuple(drafts), withdrawal, revision)
-
-
-def rest_on(holdings: Holdings, source: str) -> list[Entry[Any]]:
-    """Everything that counts or waits and rests on a source, by kind and key."""
-    entries = (enter_in_force(state) for state in holdings.view.linked("source", [source]))
-    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source == source]
 
 
 def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, accept: bool = False) -> Plan:

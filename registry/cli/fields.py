@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import dataclasses
 import inspect
+import re
 from collections.abc import Callable, Mapping
 from typing import Annotated, Any
 
@@ -60,7 +61,7 @@ class Field:
     @property
     def told(self) -> str:
         """What it may hold, in few words."""
-        allowed = self.cell.allowed.replace(" is allowed", "").replace(" are allowed", "")
+        allowed = re.sub(r",? (is|are) allowed", "", self.cell.allowed)
         return allowed if self.required else f"optional; {allowed}"
 
 

@@ -13,6 +13,14 @@ def start(
     shelf: Annotated[
         str, typer.Option("--shelf", metavar="published|scenario|none", help="What it begins with.")
     ] = "published",
+    solo: Annotated[
+        bool | None,
+        typer.Option(
+            "--solo/--team",
+            help="One person keeps it and reviews their own, or a team does; also for a library that is there.",
+            show_default=False,
+        ),
+    ] = None,
     author: AuthorOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
@@ -27,14 +35,32 @@ def start(
 
     place = default_place() if library is None else library
     try:
-        with start_library(place, shelf, name_author(author)) as book:
+        with start_library(place, shelf, name_author(author), solo=bool(solo)) as book:
             compounds, position = len(book.compounds()), book.position
     except FileExistsError:
+        if solo is not None:
+            _keep(place, solo, author, as_json)
+            return
         raise BadInput(f"Something is at {place} already; it was left as it is. Give another --library.") from None
     if as_json:
         print_json({"library": str(place), "shelf": shelf, "compounds": compounds, "position": position})
     else:
         say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
+
+
+def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
+    """Say of a library that is there who keeps it."""
+    from registry.cli.screen import print_json, say
+
+    with open_chosen(place) as book:
+        done = book.keep(solo=solo, author=name_author(author))
+    kept_by = "one person" if solo else "a team"
+    if as_json:
+        print_json({"library": str(place), "kept_by": kept_by, "change": done.change.number if done else None})
+    elif done is None:
+        say(f"{place} is kept by {kept_by} already.")
+    else:
+        say(f"Change {done.change.number}: {place} is kept by {kept_by}.")
 
 
 def load(
