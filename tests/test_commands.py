@@ -49,7 +49,7 @@ def test_lookup_json_has_the_promised_shape(run):
     document = json.loads(out)
     assert code == 3
     assert err == ""
-    assert list(document) == ["compound", "property", "answers", "refusals"]
+    assert list(document) == ["compound", "property", "answers", "refusals", "position", "as_of"]
     assert [a["temperature_K"] for a in document["answers"]] == [300.0, 298.15]
     for answer in document["answers"]:
         assert set(answer) == ANSWER_KEYS
@@ -233,7 +233,10 @@ def test_an_explicit_library_must_exist(tmp_path):
 
 def test_commands_are_the_ones_of_the_job():
     """No command is missing, and none is there that nobody asked for."""
-    assert set(COMMANDS) == {"lookup", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade"}
+    assert set(COMMANDS) == {
+        "lookup", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade",
+        "record", "revise", "review", "withdraw", "prefer", "queue", "history", "diff", "freeze", "editions", "verify",
+    }  # fmt: skip
 
 
 @pytest.mark.parametrize("command", COMMANDS)

@@ -117,8 +117,8 @@ def _describe(coverage: Coverage, label: str, found: list[tuple[Asked, Answer | 
     return {
         "compound": coverage.dossier.compound.key,
         "property": coverage.property,
-        "position": coverage.dossier.position,
-        "as_of": label or None,
         "answers": [describe_answer(result, to) for _, result in found if isinstance(result, Answer)],
         "refusals": [describe_refusal(result) for _, result in found if not isinstance(result, Answer)],
+        "position": coverage.dossier.position,
+        "as_of": label or None,
     }

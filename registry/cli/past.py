@@ -53,6 +53,7 @@ def _print_event(event: Event) -> None:
 
 
 def field_facts(fields: tuple[FieldChange, ...]) -> list[tuple[str, str]]:
+    """What differs field by field, as labels and texts."""
     return [(f.name.replace("_", " "), f"{f.before or '(empty)'} -> {f.after or '(empty)'}") for f in fields]
 
 
