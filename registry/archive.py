@@ -9,6 +9,7 @@ from registry.difference import Difference, Preview, find_difference, find_previ
 from registry.dossier import Entry
 from registry.editions import Position, find_edition, find_position
 from registry.entries import rest_on, restore
+from registry.errors import RevisedMeanwhile
 from registry.reader import Reader
 from registry.records import Edition, Record, Source, Withdrawal
 from registry.store.history import Change
@@ -199,13 +200,15 @@ class Archive(Reader):
             two = view if after is None else view.at(find_position(view, after))
             return find_difference(one, two)
 
-    def preview(self, record: Record) -> Preview:
+    def preview(self, record: Record, expect: int | None = None) -> Preview:
         """What a revision would change, were it accepted; nothing is recorded.
 
         Parameters
         ----------
         record : Record
             As it would be, under a key that is recorded.
+        expect : int, optional
+            The revision it was made from.
 
         Returns
         -------
@@ -216,5 +219,11 @@ class Archive(Reader):
         ------
         UnknownKey
             If there is no such record.
+        RevisedMeanwhile
+            If the newest revision is not the expected one.
         """
-        return find_preview(self.newest(record.key, record.kind), record, self.dossier)
+        newest = self.newest(record.key, record.kind)
+        if expect is not None and newest.revision != expect:
+            sides = record.content(), newest.record.content()
+            raise RevisedMeanwhile(record.kind, record.key, expect, newest.revision, *sides)
+        return find_preview(newest, record, self.dossier)

@@ -24,11 +24,11 @@ import typer
 
 from registry.cli.commands import CommandTable
 from registry.cli.screen import complain, print_json
-from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, quote
+from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, RevisedMeanwhile, quote
 
 __all__ = ["main"]
 
-EXIT_CODES = ((Refused, 3), (LibraryBusy, 4), (LibraryUnreadable, 5), (RangebookError, 2))
+EXIT_CODES = ((Refused, REFUSED), (LibraryBusy, 4), (RevisedMeanwhile, 4), (LibraryUnreadable, 5), (RangebookError, 2))
 FAULT = 70
 
 app = typer.Typer(

@@ -89,7 +89,7 @@ def revise(
             if as_json:
                 print_json({"kind": newest.record.kind, "key": key, "change": None})
             return
-        preview = book.preview(record)
+        preview = book.preview(record, expect)
         if not as_json:
             _print_preview(book, record, preview)
         if dry_run:
