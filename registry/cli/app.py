@@ -28,7 +28,7 @@ from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookE
 
 __all__ = ["main"]
 
-EXIT_CODES = ((Refused, REFUSED), (LibraryBusy, 4), (RevisedMeanwhile, 4), (LibraryUnreadable, 5), (RangebookError, 2))
+EXIT_CODES = ((Refused, 3), (LibraryBusy, 4), (RevisedMeanwhile, 4), (LibraryUnreadable, 5), (RangebookError, 2))
 FAULT = 70
 
 app = typer.Typer(
