@@ -39,7 +39,7 @@ LAYERS = (
     {"entries"},
     {"holdings"},
     {"judgement", "waiting"},
-    {"recording", "arrival", "editions"},
+    {"recording", "reconciliation", "arrival", "editions", "departure"},
     {"collection"},
     {"reader"},
     {"archive"},

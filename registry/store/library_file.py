@@ -53,6 +53,14 @@ class View:
         self._connection = connection
         self.position = position
 
+    def at(self, position: int) -> View:
+        """The library at an earlier position, in the same transaction."""
+        return View(self._connection, min(position, self.position))
+
+    def added(self, number: int, kind: str) -> list[Row]:
+        """The records of one kind that a change has added, in order."""
+        return reading.read_added(self._connection, number, kind)
+
     def kind(self, kind: str) -> list[Row]:
         """The newest revision of every record of a kind, by key."""
         return reading.read_kind(self._connection, kind, self.position)

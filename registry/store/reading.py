@@ -23,6 +23,7 @@ __all__ = [
     "State",
     "find_position",
     "find_term",
+    "read_added",
     "read_change",
     "read_changed",
     "read_changes",
@@ -170,6 +171,9 @@ _CHANGED = (
     .distinct()
     .order_by(record.c.kind, record.c.key)
 )
+_ADDED = (
+    select(*_COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == _KIND).order_by(record.c.place)
+)
 _VERDICTS = ("accepted", "declined", "withdrawn")
 _WAITING = (
     select(record.c.id)
@@ -276,6 +280,12 @@ def read_change(connection: Connection, number: int) -> Change:
 def read_changed(connection: Connection, since: int, position: int) -> list[tuple[str, str]]:
     """Kind and key of every record that changes after one position, up to another, have added."""
     return [(kind, key) for kind, key in connection.execute(_CHANGED, {"since": since, "position": position})]
+
+
+def read_added(connection: Connection, number: int, kind: str) -> list[Row]:
+    """The records of one kind that a change has added, in order."""
+    found = connection.execute(_ADDED, {"number": number, "kind": kind})
+    return [_restore(*columns) for _, *columns in found]
 
 
 def read_node(connection: Connection, level: int, place: int) -> bytes:
