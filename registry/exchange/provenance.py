@@ -132,7 +132,7 @@ def _property_problems(given: Any) -> Iterator[str]:
     yield from _text_problems(since, "since.", name=cells.TEXT, root=cells.ROOT)
     for place, holder in (("", given), ("since.", since)):
         root = holder.get("root") if isinstance(holder, dict) else None
-        if isinstance(root, str) and root.partition(":")[0] != str(holder.get("position")):
+        if holder and isinstance(root, str) and root.partition(":")[0] != str(holder.get("position")):
             yield f"{place}position must be that of the root."
     for name, holds in (("bases", _is_digest), ("earlier", _are_digests)):
         if not _holds_kinds(given.get(name), holds):
