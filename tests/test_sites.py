@@ -84,8 +84,8 @@ def test_what_is_new_arrives_as_drafts_and_then_answers_alike(sites, tmp_path):
         assert read_origin(view, 1) is None
     with a._reading() as view:
         assert origin.library == view.identity()[0]
-        assert origin.root == f"{a.position}:{view.root(a.position).hex()}"
-        assert origin.since == a.editions()[0][0].root
+        assert origin.root == f"{view.position}:{view.root(view.position).hex()}"
+    assert origin.since == a.editions()[0][0].root
     for key in (KEY, "brindovane-new"):
         with pytest.raises(BadInput, match="somebody else must review it"):
             b.review(key, accept=True, author="bob", note="mine")
