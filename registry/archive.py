@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import os
+from pathlib import Path
 from typing import Any
 
 from registry.chronicle import Event, list_events
@@ -227,3 +229,39 @@ class Archive(Reader):
             sides = record.content(), newest.record.content()
             raise RevisedMeanwhile(record.kind, record.key, expect, newest.revision, *sides)
         return find_preview(newest, record, self.dossier)
+
+    def dump(self, path: str | os.PathLike[str], since: Position | None = None) -> dict[str, int]:
+        """Write everything that counts as a package, or what is new since a position.
+
+        Of a record with several revisions the one in force is written: a draft
+        that waits over an accepted revision stays behind.
+
+        Parameters
+        ----------
+        path : path
+            A folder that does not exist yet, or a name ending in .zip.
+        since : str, int or date, optional
+            An edition, a change or a date: only what was recorded, revised,
+            reviewed or withdrawn after it is written. Such a package says
+            where it comes from, and loads where everything older is.
+
+        Returns
+        -------
+        dict of str to int
+            The number of rows of each file, and under ``waiting`` the drafts
+            that stayed behind, if any.
+
+        Raises
+        ------
+        BadInput
+            If something is at the path already, or there is no such position.
+        """
+        from registry.departure import select_all, select_since
+        from registry.exchange.dumping import dump_items
+
+        with self._lock, self._reading() as view:
+            entries, provenance = (select_all(view), None) if since is None else select_since(view, since)
+        waiting = sum(entry.waiting > 0 for entry in entries)
+        items = ((e.record, (e.standing, e.standing_note)) for e in entries)
+        rows = dump_items(Path(path), items, provenance)
+        return {**rows, "waiting": waiting} if waiting else rows

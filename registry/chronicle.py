@@ -7,7 +7,7 @@ from dataclasses import dataclass
 from typing import Any
 
 from registry.dossier import Entry
-from registry.entries import enter_states, word_cause
+from registry.entries import enter_states, read_origin, word_cause
 from registry.records import REVIEWED, Correlation, Preference, Withdrawal
 from registry.store.history import Change
 from registry.store.library_file import View
@@ -164,10 +164,8 @@ def _list_revisions(view: View, revisions: list[Row]) -> Iterator[Event]:
 
 
 def _name_origin(view: View, number: int) -> str:
-    origin = view.origin(number)
-    if origin is None:
-        return ""
-    return f"library {origin.content['library']}, change {origin.content['root'].partition(':')[0]}"
+    origin = read_origin(view, number)
+    return f"library {origin.library}, change {origin.root.partition(':')[0]}" if origin is not None else ""
 
 
 def _list_words(view: View, kind: str, key: str) -> Iterator[Event]:

@@ -7,13 +7,12 @@ nowhere else.
 from __future__ import annotations
 
 import os
-from collections.abc import Callable
+from collections.abc import Callable, Iterable
 from pathlib import Path
 from typing import Any
 
 from registry.archive import Archive
 from registry.editions import plan_edition
-from registry.entries import enter_all
 from registry.errors import BadInput
 from registry.holdings import Holdings, draft_of
 from registry.judgement import Plan, accept_at_once, plan_preference, plan_review, plan_withdrawal
@@ -22,8 +21,6 @@ from registry.records import Keeping, Record
 from registry.signature import Recorded, check_signature, now_utc
 
 __all__ = ["Library"]
-
-_DUMPED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset", "preference")
 
 
 class Library(Archive):
@@ -270,7 +267,7 @@ class Library(Archive):
 
     def load(
         self, path: str | os.PathLike[str], *, author: str, reason: str = "", accept: bool = False,
-        dry_run: bool = False,
+        ours: Iterable[str] = (), theirs: Iterable[str] = (), dry_run: bool = False,
     ) -> dict[str, Any]:  # fmt: skip
         """Load a package in one change: all of it or nothing.
 
@@ -286,6 +283,9 @@ class Library(Archive):
             Review the whole load at once: every record gets the standing that
             the package says. Without, what can change an answer arrives as a
             draft.
+        ours, theirs : iterable of str
+            Keys that both sides have revised: of ``ours`` what is here stays,
+            of ``theirs`` what the package says arrives; ``all`` for the rest.
         dry_run : bool
             Check everything and record nothing.
 
@@ -293,14 +293,20 @@ class Library(Archive):
         -------
         dict
             How many records were ``added``, ``revised``, ``reviewed``,
-            ``proposed`` (withdrawals that wait) and ``unchanged``; the number
-            of the ``change`` (0 if there was nothing to record); under
-            ``changed`` what was revised, reviewed or proposed, a line each.
+            ``proposed`` (withdrawals that wait), ``kept`` (conflicts in which
+            what is here stays) and ``unchanged``; the number of the
+            ``change`` (0 if there was nothing to record); under ``changed``
+            what was revised, reviewed or proposed, a line each.
 
         Raises
         ------
         InvalidPackage
             With every bad cell.
+        Conflict
+            If the package says what is new since an earlier position, both
+            sides have revised a record, and it is not named.
+        BadInput
+            If a key is named that is no conflict.
         LibraryBusy
             If another process writes for too long.
         """
@@ -311,35 +317,10 @@ class Library(Archive):
             raise BadInput("Accepting a whole load at once needs a note that says what was looked at.")
         if dry_run:
             with self._lock, self._reading() as view:
-                plan = plan_load(view, package, accept=accept)
+                plan = plan_load(view, package, accept=accept, ours=ours, theirs=theirs)
                 return {**plan.counts, "change": 0, "changed": plan.changed}
         who, why = check_signature(author, reason or f"Loaded {package.name[:200]}")
         with self._lock, self._file.writing() as (view, append):
-            plan = plan_load(view, package, accept=accept)
+            plan = plan_load(view, package, accept=accept, ours=ours, theirs=theirs)
             number = append(who, why, now_utc(), plan.drafts).number if plan.drafts else 0
         return {**plan.counts, "change": number, "changed": plan.changed}
-
-    def dump(self, path: str | os.PathLike[str]) -> dict[str, int]:
-        """Write everything that counts as a package.
-
-        Of a record with several revisions the one in force is written: a draft
-        that waits over an accepted revision stays behind.
-
-        Parameters
-        ----------
-        path : path
-            A folder that does not exist yet, or a name ending in .zip.
-
-        Returns
-        -------
-        dict of str to int
-            The number of rows of each file, and under ``waiting`` the drafts
-            that stayed behind, if any.
-        """
-        from registry.exchange.dumping import dump_items
-
-        with self._lock, self._reading() as view:
-            entries = [entry for kind in _DUMPED for entry in enter_all(view, kind)]
-        waiting = sum(entry.waiting > 0 for entry in entries)
-        rows = dump_items(Path(path), ((e.record, (e.standing, e.standing_note)) for e in entries))
-        return {**rows, "waiting": waiting} if waiting else rows

@@ -41,7 +41,7 @@ LAYERS = (
     {"holdings"},
     {"judgement", "waiting", "chronicle"},
     {"difference"},
-    {"recording", "arrival", "editions"},
+    {"recording", "reconciliation", "arrival", "editions", "departure"},
     {"collection"},
     {"reader"},
     {"archive"},

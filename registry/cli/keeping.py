@@ -63,10 +63,26 @@ def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
         say(f"Change {done.change.number}: {place} is kept by {kept_by}.")
 
 
+_TOLD = ("added", "revised", "reviewed", "proposed", "kept", "unchanged")
+_SELDOM = ("proposed", "kept")
+"""Counts that are told only where there are any."""
+
+
 def load(
     package: Annotated[str, typer.Argument(help="A folder or .zip with datapackage.json.")],
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Check everything, record nothing.")] = False,
-    note: Annotated[str, typer.Option("--note", help="Why it is loaded.", show_default=False)] = "",
+    accept: Annotated[
+        bool, typer.Option("--accept", help="Review the whole load at once; needs --note. Else it arrives as drafts.")
+    ] = False,
+    note: Annotated[str, typer.Option("--note", help="Why it is loaded; what was looked at.", show_default=False)] = "",
+    ours: Annotated[
+        list[str] | None,
+        typer.Option("--ours", metavar="KEY", help="Revised on both sides: keep what is here (all for the rest)."),
+    ] = None,
+    theirs: Annotated[
+        list[str] | None,
+        typer.Option("--theirs", metavar="KEY", help="Revised on both sides: take theirs (all for the rest)."),
+    ] = None,
     author: AuthorOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
@@ -79,11 +95,14 @@ def load(
 
     _refuse_empty(package)
     with open_chosen(library) as book:
-        counts = book.load(package, author=name_author(author), reason=note, dry_run=dry_run)
+        counts = book.load(
+            package, author=name_author(author), reason=note, accept=accept, ours=ours or (), theirs=theirs or (),
+            dry_run=dry_run,
+        )  # fmt: skip
     if as_json:
         print_json({"package": str(package), "dry_run": dry_run, **counts})
         return
-    told = ", ".join(f"{counts[word]} {word}" for word in ("added", "revised", "reviewed", "unchanged"))
+    told = ", ".join(f"{counts[word]} {word}" for word in _TOLD if counts[word] or word not in _SELDOM)
     for line in counts["changed"][:20]:
         say(f"  {line}")
     if len(counts["changed"]) > 20:
@@ -92,24 +111,30 @@ def load(
         say(f"{package} can be loaded: {told}. Nothing was recorded (--dry-run).")
     elif counts["change"]:
         say(f"Loaded {package} as change {counts['change']}: {told}.")
+        if not accept:
+            say("What can change an answer waits for review: `rangebook queue` lists it.")
     else:
         say(f"Everything in {package} is there already ({told}); nothing was recorded.")
 
 
 def dump(
     package: Annotated[str, typer.Argument(help="A new folder, or a new name ending in .zip.")],
+    since: Annotated[
+        str | None,
+        typer.Option("--since", metavar="EDITION|CHANGE|DATE", help="Only what is new since then.", show_default=False),
+    ] = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Write the whole library as an open Tabular Data Package.
+    """Write the whole library, or what is new, as an open Tabular Data Package.
 
-    Example: rangebook dump library.zip
+    Example: rangebook dump new.zip --since 2026-Q4
     """
     from registry.cli.screen import print_json, say
 
     _refuse_empty(package)
     with open_chosen(library) as book:
-        rows = book.dump(package)
+        rows = book.dump(package, since)
     waiting = rows.pop("waiting", 0)
     if as_json:
         print_json({"package": str(package), "rows": rows, "waiting": waiting})

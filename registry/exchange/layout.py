@@ -143,8 +143,16 @@ _ROWS = (
 FILES: dict[str, File] = {row.name: row for row in _ROWS}
 
 
-def descriptor(present: list[str]) -> dict[str, Any]:
+def descriptor(present: list[str], *, whole: bool = True) -> dict[str, Any]:
     """The `datapackage.json` of a package with these files.
+
+    Parameters
+    ----------
+    present : list of str
+        The files.
+    whole : bool
+        False for a part of a library, whose rows may refer to what the other
+        side has: no foreign keys are stated.
 
     Notes
     -----
@@ -155,7 +163,7 @@ def descriptor(present: list[str]) -> dict[str, Any]:
         "profile": "tabular-data-package",
         "name": "rangebook-library",
         "title": "Pure-compound temperature correlations with their sources",
-        "resources": [_resource(FILES[name], present) for name in present],
+        "resources": [_resource(FILES[name], present if whole else []) for name in present],
     }
 
 

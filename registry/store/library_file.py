@@ -53,6 +53,14 @@ class View:
         self._connection = connection
         self.position = position
 
+    def at(self, position: int) -> View:
+        """The library at an earlier position, in the same transaction."""
+        return View(self._connection, min(position, self.position))
+
+    def added(self, number: int, kind: str) -> list[Row]:
+        """The records of one kind that a change has added, in order."""
+        return reading.read_added(self._connection, number, kind)
+
     def kind(self, kind: str) -> list[Row]:
         """The newest revision of every record of a kind, by key."""
         return reading.read_kind(self._connection, kind, self.position)
@@ -80,14 +88,6 @@ class View:
     def waiting(self, kinds: Iterable[str]) -> list[tuple[Row, str]]:
         """Newest revisions of some kinds without a verdict, oldest first, each with the note on its arrival."""
         return reading.read_waiting(self._connection, kinds, self.position)
-
-    def origin(self, number: int) -> Row | None:
-        """Where the records of a change came from, if they came from another library."""
-        return reading.read_origin(self._connection, number)
-
-    def at(self, position: int) -> View:
-        """The same transaction, at another position."""
-        return View(self._connection, position)
 
     def find_term(self, text: str) -> list[Row]:
         """The records that a person has ever found under a text."""

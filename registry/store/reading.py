@@ -22,11 +22,11 @@ __all__ = [
     "Row",
     "State",
     "find_term",
+    "read_added",
     "read_current",
     "read_decisions",
     "read_kind",
     "read_linked",
-    "read_origin",
     "read_revisions",
     "read_states",
     "read_terms",
@@ -137,7 +137,6 @@ _named = (
 )
 _BY_TERM = select(_newest_of(_named.c.kind, _named.c.key)).select_from(_named).order_by(_named.c.kind, _named.c.key)
 _TERMS = select(term.c.text, term.c.kind, term.c.key).where(term.c.change <= _POSITION)
-_ORIGIN = select(*_COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == "origin")
 _REVISIONS = (
     select(*_COLUMNS)
     .where(record.c.kind == _KIND, record.c.key == _KEY, record.c.change <= _POSITION)
@@ -147,6 +146,9 @@ _WORDS = (
     select(standing.c.id)
     .where(standing.c.kind == _KIND, standing.c.key == _KEY, standing.c.change <= _POSITION)
     .order_by(standing.c.id)
+)
+_ADDED = (
+    select(*_COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == _KIND).order_by(record.c.place)
 )
 _VERDICTS = ("accepted", "declined", "withdrawn")
 _WAITING = (
@@ -221,6 +223,12 @@ def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
     ]
 
 
+def read_added(connection: Connection, number: int, kind: str) -> list[Row]:
+    """The records of one kind that a change has added, in order."""
+    found = connection.execute(_ADDED, {"number": number, "kind": kind})
+    return [_restore(*columns) for _, *columns in found]
+
+
 def _newest(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
     ids = list(connection.execute(statement, values).scalars())
     rows = _fetch_rows(connection, ids)
@@ -238,12 +246,6 @@ def read_current(connection: Connection, kind: str, keys: Iterable[str], positio
     for chunk in _chunks(keys):
         rows += _newest(connection, _NEWEST_BY_KEYS, kind=kind, keys=chunk, position=position)
     return rows
-
-
-def read_origin(connection: Connection, number: int) -> Row | None:
-    """The origin that a change records, or None."""
-    found = connection.execute(_ORIGIN, {"number": number}).one_or_none()
-    return None if found is None else _restore(*found[1:])
 
 
 def read_revisions(connection: Connection, kind: str, key: str, position: int) -> list[Row]:
