@@ -501,7 +501,8 @@ def test_the_base_package_is_good(library, tmp_path, capsys):
     folder = write_folder(tmp_path / "package", build_base())
     zipped = write_zip(tmp_path / "package.zip", {f"inside/{name}": data for name, data in build_base().items()})
     for package, told in (
-        (folder, f"Loaded {folder} as change 2: 23 added, 0 revised, 0 reviewed, 0 unchanged.\n"),
+        (folder, f"Loaded {folder} as change 2: 23 added, 0 revised, 0 reviewed, 0 unchanged.\n"
+                 "What can change an answer waits for review: `rangebook queue` lists it.\n"),
         (zipped, f"Everything in {zipped} is there already (0 added, 0 revised, 0 reviewed, 23 unchanged); "
                  "nothing was recorded.\n"),
     ):  # fmt: skip

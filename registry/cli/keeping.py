@@ -6,7 +6,16 @@ from typing import Annotated
 
 import typer
 
-from registry.cli.options import AuthorOption, JsonOption, LibraryOption, name_author, open_chosen
+from registry.cli.options import (
+    AsOfOption,
+    AuthorOption,
+    EditionOption,
+    JsonOption,
+    LibraryOption,
+    look_at,
+    name_author,
+    open_chosen,
+)
 
 
 def start(
@@ -123,6 +132,8 @@ def dump(
         str | None,
         typer.Option("--since", metavar="EDITION|CHANGE|DATE", help="Only what is new since then.", show_default=False),
     ] = None,
+    edition: EditionOption = "",
+    as_of: AsOfOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -130,16 +141,17 @@ def dump(
 
     Example: rangebook dump new.zip --since 2026-Q4
     """
-    from registry.cli.screen import print_json, say
+    from registry.cli.screen import name_past, print_json, say
 
     _refuse_empty(package)
     with open_chosen(library) as book:
-        rows = book.dump(package, since)
+        past, label = look_at(book, edition, as_of)
+        rows = past.dump(package, since)
     waiting = rows.pop("waiting", 0)
     if as_json:
-        print_json({"package": str(package), "rows": rows, "waiting": waiting})
+        print_json({"package": str(package), "as_of": label or None, "rows": rows, "waiting": waiting})
         return
-    say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
+    say(f"Wrote {package}{name_past(label)}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
         say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
 
