@@ -14,7 +14,7 @@ from registry.errors import CellProblem, InvalidPackage
 from registry.exchange.loading import Item, read_items
 from registry.holdings import Holdings, draft_of
 from registry.judgement import judge, propose_withdrawal, withdraw_at_once
-from registry.records import REVIEWED, Preference
+from registry.records import REVIEWED, Preference, Withdrawal
 from registry.store.history import Draft
 from registry.store.library_file import View
 
@@ -122,7 +122,7 @@ class _Plan:
             if self._accept:
                 drafts = list(self._settle(item, newest.revision, (newest.standing, newest.standing_note)))
                 self.counts["reviewed"] += bool(drafts)
-            elif item.standing == "withdrawn" and newest.standing == "accepted":
+            elif item.standing == "withdrawn" and newest.standing == "accepted" and not self._is_proposed(item):
                 drafts = [propose_withdrawal(item.record, newest.revision, "other", item.standing_note)]
                 self.counts["proposed"] += 1
         if drafts:
@@ -131,6 +131,11 @@ class _Plan:
         else:
             self.counts["unchanged"] += 1
         yield from drafts
+
+    def _is_proposed(self, item: Item) -> bool:
+        """True if a withdrawal waits already, so that loading again adds nothing."""
+        before = self._holdings.newest(Withdrawal.kind, Withdrawal.key_for(item.record.kind, item.record.key))
+        return before is not None and before.standing == "draft"
 
     def _settle(self, item: Item, revision: int, before: tuple[str, str]) -> Iterator[Draft]:
         """The reviews that give a revision the standing its row says, if it has another one so far."""
