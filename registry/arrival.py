@@ -224,9 +224,9 @@ class _Plan:
             yield proposal
 
     def _is_known(self, proposal: Draft) -> bool:
-        """Whether that very withdrawal waits, or somebody has decided on it."""
-        before = self._holdings.record(proposal.kind, proposal.key)
-        return before is not None and before.content() == proposal.content
+        """Whether a withdrawal waits already, or somebody has decided on that very one."""
+        before = self._holdings.newest(proposal.kind, proposal.key)
+        return before is not None and (before.standing == "draft" or before.record.content() == proposal.content)
 
     def _tell_standing(self, item: Item, entry: Entry[Any], how: str = "") -> None:
         self.told.append(f"{item.record.kind} {item.record.key}: {entry.standing} -> {item.standing}{how}")

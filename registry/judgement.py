@@ -120,7 +120,20 @@ def plan_review(
     check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
     if isinstance(record, Preference) and standing == "accepted":
         _check_round(holdings, record)
+    if isinstance(record, Withdrawal) and standing == "accepted":
+        _check_aim(holdings, record)
     return Plan((judge(record, entry.revision, standing, note),), record, entry.revision)
+
+
+def _check_aim(holdings: Holdings, withdrawal: Withdrawal) -> None:
+    """What was accepted after the revision to be withdrawn is not taken out with it in silence."""
+    state = holdings.state(withdrawal.of_kind, withdrawal.of_key)
+    decided = state.decision.revision if state is not None and state.decision is not None else 0
+    if decided > int(withdrawal.of_revision):
+        raise BadInput(
+            f"The withdrawal is of revision {withdrawal.of_revision} of the {withdrawal.of_kind} {withdrawal.of_key}; "
+            f"revision {decided} was decided on since. Decline it; `rangebook withdraw` takes out what is in force."
+        )
 
 
 def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> Entry[Any]:

@@ -130,6 +130,20 @@ def test_only_what_differs_becomes_a_revision(own_path, tmp_path):
         assert _files_of(tmp_path / "again") == _files_of(tmp_path / "package")
 
 
+def test_a_withdrawal_in_a_package_is_proposed_once(own_path, tmp_path):
+    """Loading the same package again, while its withdrawal waits for review, records nothing."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        table = tmp_path / "package" / "correlations.csv"
+        _edit(table, "water-himmelblau", "standing", "withdrawn")
+        _edit(table, "water-himmelblau", "standing_note", "an invented erratum")
+        first = library.load(tmp_path / "package", author="somebody")
+        assert (first["proposed"], len(library.queue())) == (1, 1)
+        again = library.load(tmp_path / "package", author="somebody")
+        assert (again["proposed"], again["change"]) == (0, 0)
+        assert [item.revision for item in library.queue()] == [1]
+
+
 def test_a_withdrawal_is_not_taken_back_in_silence(own_path, tmp_path):
     """Loading an older package over a withdrawal is refused until somebody says why."""
     with open_library(own_path) as library:

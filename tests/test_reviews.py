@@ -315,3 +315,35 @@ def test_a_library_opened_again_stands_where_it_was(library, tmp_path):
     library.review("brindovane-new", accept=True, **LOOK)
     with open_library(tmp_path / "own.db") as again:
         assert _answering(again, 330.0) == ("brindovane-new", 1, "accepted")
+
+
+def test_a_declined_revision_is_no_draft_once_what_was_in_force_is_withdrawn(library):
+    """A word on an older revision does not undo the verdict on the newest one."""
+    library.record(FIRST, **WHEN)
+    library.review("brindovane-new", accept=True, **LOOK)
+    library.revise(_with_a(FIRST, "7.2"), **WHEN)
+    library.review("brindovane-new", accept=False, **LOOK)
+    library.withdraw("brindovane-new", **WHEN)
+    library.review("brindovane-new", kind="withdrawal", accept=True, **LOOK)
+    entry = library.entry("brindovane-new")
+    assert (entry.revision, entry.standing, entry.waiting) == (1, "withdrawn", 0)
+    assert not [item for item in library.queue() if item.record.key == "brindovane-new"]
+    assert _answering(library, 330.0, drafts=True)[0] == "brindovane-cox-draft"
+    with pytest.raises(BadInput, match="waits for review"):
+        library.review("brindovane-new", accept=False, kind="correlation", **LOOK)
+
+
+def test_a_withdrawal_does_not_take_out_what_was_accepted_after_it(library):
+    """It is of the revision that was looked at; the correction accepted since stays in force."""
+    library.record(FIRST, **WHEN)
+    library.review("brindovane-new", accept=True, **LOOK)
+    library.withdraw("brindovane-new", **WHEN)
+    library.revise(_with_a(FIRST, "7.2"), **WHEN)
+    library.review("brindovane-new", kind="correlation", accept=True, **LOOK)
+    with pytest.raises(BadInput, match="is of revision 1 of the correlation brindovane-new; revision 2 was decided on"):
+        library.review("brindovane-new", kind="withdrawal", accept=True, **LOOK)
+    assert _answering(library, 330.0) == ("brindovane-new", 2, "accepted")
+    library.review("brindovane-new", kind="withdrawal", accept=False, **LOOK)
+    library.withdraw("brindovane-new", **WHEN)
+    library.review("brindovane-new", kind="withdrawal", accept=True, **LOOK)
+    assert library.entry("brindovane-new").standing == "withdrawn"

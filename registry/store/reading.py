@@ -69,7 +69,7 @@ class State(NamedTuple):
     decision : Decision or None
         That acceptance or withdrawal.
     latest : Decision or None
-        The newest word on any revision, a declining one too.
+        The newest word on the newest revision, a declining one too.
     """
 
     newest: Row
@@ -93,24 +93,25 @@ _other = record.alias("other")
 _first = record.alias("first")
 
 
-def _newest_of(kind: Any, key: Any) -> Any:
+def _newest_of(kind: Any, key: Any, column: Any = _other.c.id) -> Any:
     """The newest revision of a key at the position, as a subquery."""
-    found = select(_other.c.id).where(_other.c.kind == kind, _other.c.key == key, _other.c.change <= _POSITION)
+    found = select(column).where(_other.c.kind == kind, _other.c.key == key, _other.c.change <= _POSITION)
     newest = found.order_by(_other.c.change.desc(), _other.c.revision.desc()).limit(1)
     return newest.correlate(kind.table).scalar_subquery()
 
 
-def _word_on(kind: Any, key: Any, *among: str) -> Any:
+def _word_on(kind: Any, key: Any, *which: Any) -> Any:
     """The newest word on a key at the position, as a subquery."""
     found = select(standing.c.id).where(standing.c.kind == kind, standing.c.key == key, standing.c.change <= _POSITION)
-    if among:
-        found = found.where(standing.c.standing.in_(among))
-    newest = found.order_by(standing.c.change.desc(), standing.c.id.desc()).limit(1)
+    newest = found.where(*which).order_by(standing.c.change.desc(), standing.c.id.desc()).limit(1)
     return newest.correlate(kind.table).scalar_subquery()
 
 
 def _states_of(kind: Any, key: Any) -> Select[Any]:
-    columns = _newest_of(kind, key), _word_on(kind, key, *_DECIDING), _word_on(kind, key)
+    newest = _newest_of(kind, key)
+    # no word on a revision is older than it: the search ends there, however many words there are on those before
+    on_newest = standing.c.record == newest, standing.c.change >= _newest_of(kind, key, _other.c.change)
+    columns = newest, _word_on(kind, key, standing.c.standing.in_(_DECIDING)), _word_on(kind, key, *on_newest)
     return select(*columns).select_from(kind.table)
 
 
