@@ -125,5 +125,15 @@ FIRST: list[tuple[Name, dict[str, Any], str, str]] = [
         )
         for compound in COMPOUNDS
     ),
+    *(
+        # over the wider one of the two, which would answer otherwise
+        (
+            ("preference", f"{compound}-p-over-{compound}-q"),
+            {"correlation": f"{compound}-p", "over": f"{compound}-q", "reason": MARK},
+            "accepted",
+            "",
+        )
+        for compound in COMPOUNDS
+    ),
 ]  # fmt: skip
 """What every library begins with: all of it accepted."""
