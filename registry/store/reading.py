@@ -11,11 +11,11 @@ import json
 from collections.abc import Iterable, Iterator, Sequence
 from typing import Any, NamedTuple
 
-from sqlalchemy import Connection, Select, bindparam, select
+from sqlalchemy import Connection, TextClause, bindparam, select, text
 
 from registry.canonical import digest
 from registry.store.history import envelope, fold_term
-from registry.store.tables import link, record, standing, term
+from registry.store.tables import record, standing, term
 
 __all__ = [
     "Decision",
@@ -85,58 +85,45 @@ _POSITION: Any = bindparam("position")
 _KIND: Any = bindparam("kind")
 _KEY: Any = bindparam("key")
 _KEYS: Any = bindparam("keys", expanding=True)
-_DECIDING = ("accepted", "withdrawn")
 CHUNK = 500
 """Keys or numbers that one statement takes."""
 
 _other = record.alias("other")
-_first = record.alias("first")
+
+# as SQL text: SQLAlchemy takes a millisecond to compile each of these from parts, a tenth of a whole first lookup
+_NEWEST = """(
+    SELECT other.{column} FROM record AS other
+    WHERE other.kind = aim.kind AND other.key = aim.key AND other.change <= :position
+    ORDER BY other.change DESC, other.revision DESC LIMIT 1)"""
+_WORD = """(
+    SELECT standing.id FROM standing
+    WHERE standing.kind = aim.kind AND standing.key = aim.key AND standing.change <= :position AND {which}
+    ORDER BY standing.change DESC, standing.id DESC LIMIT 1)"""
+_NEWEST_ID = _NEWEST.format(column="id")
+_DECIDED = _WORD.format(which="standing.standing IN ('accepted', 'withdrawn')")
+# no word on a revision is older than it: the search ends there, however many words there are on those before
+_LATEST = _WORD.format(
+    which=f"standing.record = {_NEWEST_ID} AND standing.change >= {_NEWEST.format(column='change')}"
+)  # fmt: skip
+_ALL_OF_KIND = "SELECT kind, key FROM record WHERE kind = :kind AND revision = 1 AND change <= :position"
+_SOME_OF_KIND = f"{_ALL_OF_KIND} AND key IN :keys"
+_LINKED = "SELECT DISTINCT kind, key FROM link WHERE to_kind = :to_kind AND to_key IN :keys AND change <= :position"
+_LINKED_OF_KIND = f"{_LINKED} AND kind = :kind"
+_NAMED = "SELECT kind, key FROM term WHERE text = :text AND change <= :position"
 
 
-def _newest_of(kind: Any, key: Any, column: Any = _other.c.id) -> Any:
-    """The newest revision of a key at the position, as a subquery."""
-    found = select(column).where(_other.c.kind == kind, _other.c.key == key, _other.c.change <= _POSITION)
-    newest = found.order_by(_other.c.change.desc(), _other.c.revision.desc()).limit(1)
-    return newest.correlate(kind.table).scalar_subquery()
-
-
-def _word_on(kind: Any, key: Any, *which: Any) -> Any:
-    """The newest word on a key at the position, as a subquery."""
-    found = select(standing.c.id).where(standing.c.kind == kind, standing.c.key == key, standing.c.change <= _POSITION)
-    newest = found.where(*which).order_by(standing.c.change.desc(), standing.c.id.desc()).limit(1)
-    return newest.correlate(kind.table).scalar_subquery()
-
-
-def _states_of(kind: Any, key: Any) -> Select[Any]:
-    newest = _newest_of(kind, key)
-    # no word on a revision is older than it: the search ends there, however many words there are on those before
-    on_newest = standing.c.record == newest, standing.c.change >= _newest_of(kind, key, _other.c.change)
-    columns = newest, _word_on(kind, key, standing.c.standing.in_(_DECIDING)), _word_on(kind, key, *on_newest)
-    return select(*columns).select_from(kind.table)
+def _of_aims(aims: str, *columns: str) -> TextClause:
+    """Numbers of rows about each kind and key that a statement gives, by kind and key."""
+    statement = text(f"SELECT {', '.join(columns)} FROM ({aims}) AS aim ORDER BY aim.kind, aim.key")
+    return statement.bindparams(_KEYS) if ":keys" in aims else statement
 
 
 # statements are built once: building them costs three times their execution
-_FIRST = (_first.c.kind == _KIND, _first.c.revision == 1, _first.c.change <= _POSITION)
-_NEWEST_BY_KIND = (
-    select(_newest_of(_first.c.kind, _first.c.key)).select_from(_first).where(*_FIRST).order_by(_first.c.key)
+_NEWEST_BY_KIND, _NEWEST_BY_KEYS = _of_aims(_ALL_OF_KIND, _NEWEST_ID), _of_aims(_SOME_OF_KIND, _NEWEST_ID)
+_BY_TERM = _of_aims(_NAMED, _NEWEST_ID)
+_STATES_BY_KIND, _STATES_BY_KEYS, _STATES_BY_LINK, _STATES_BY_LINK_OF_KIND = (
+    _of_aims(aims, _NEWEST_ID, _DECIDED, _LATEST) for aims in (_ALL_OF_KIND, _SOME_OF_KIND, _LINKED, _LINKED_OF_KIND)
 )
-_NEWEST_BY_KEYS = _NEWEST_BY_KIND.where(_first.c.key.in_(_KEYS))
-_STATES_BY_KIND = _states_of(_first.c.kind, _first.c.key).where(*_FIRST).order_by(_first.c.key)
-_STATES_BY_KEYS = _STATES_BY_KIND.where(_first.c.key.in_(_KEYS))
-_aims = (
-    select(link.c.kind, link.c.key)
-    .where(link.c.to_kind == bindparam("to_kind"), link.c.to_key.in_(_KEYS), link.c.change <= _POSITION)
-    .distinct()
-    .subquery("aims")
-)
-_STATES_BY_LINK = _states_of(_aims.c.kind, _aims.c.key).order_by(_aims.c.kind, _aims.c.key)
-_STATES_BY_LINK_OF_KIND = _STATES_BY_LINK.where(_aims.c.kind == _KIND)
-_named = (
-    select(term.c.kind, term.c.key)
-    .where(term.c.text == bindparam("text"), term.c.change <= _POSITION)
-    .subquery("named")
-)
-_BY_TERM = select(_newest_of(_named.c.kind, _named.c.key)).select_from(_named).order_by(_named.c.kind, _named.c.key)
 _TERMS = select(term.c.text, term.c.kind, term.c.key).where(term.c.change <= _POSITION)
 _REVISIONS = (
     select(*_COLUMNS)
@@ -230,7 +217,7 @@ def read_added(connection: Connection, number: int, kind: str) -> list[Row]:
     return [_restore(*columns) for _, *columns in found]
 
 
-def _newest(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
+def _newest(connection: Connection, statement: TextClause, **values: Any) -> list[Row]:
     ids = list(connection.execute(statement, values).scalars())
     rows = _fetch_rows(connection, ids)
     return [rows[number] for number in ids]
