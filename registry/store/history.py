@@ -22,10 +22,10 @@ Effect = tuple[Revision, str, Revision | None]
 
 # statements are built once: building them costs three times their execution
 _LAST = select(
-    select(func.max(change.c.number)).scalar_subquery(),
-    select(change.c.recorded_at).order_by(change.c.number.desc()).limit(1).scalar_subquery(),
-    select(func.max(record.c.id)).scalar_subquery(),
-    select(func.max(standing.c.id)).scalar_subquery(),
+    select(func.max(change.c.number)).scalar_subquery().label("number"),
+    select(change.c.recorded_at).order_by(change.c.number.desc()).limit(1).scalar_subquery().label("recorded_at"),
+    select(func.max(record.c.id)).scalar_subquery().label("record"),
+    select(func.max(standing.c.id)).scalar_subquery().label("standing"),
 )
 _LAST_REVISION = select(func.max(record.c.revision)).where(
     record.c.kind == bindparam("kind"), record.c.key == bindparam("key")
@@ -139,11 +139,12 @@ def append_change(
     Change
         The header as recorded.
     """
-    number, last_time, last_id, last_standing = (last or 0 for last in connection.execute(_LAST).one())
+    last = connection.execute(_LAST).one()
+    number, last_id, last_standing = last.number or 0, last.record or 0, last.standing or 0
     revisions = _latest_revisions(connection, {(draft.kind, draft.key) for draft in drafts})
     rows = list(_number_records(drafts, number + 1, last_id + 1, revisions))
     root = root_of([hash_leaf(bytes.fromhex(row["digest"])) for row in rows]).hex()
-    header = Change(number + 1, author, reason, max(recorded_at, last_time or ""), len(rows), root)
+    header = Change(number + 1, author, reason, max(recorded_at, last.recorded_at or ""), len(rows), root)
     columns = {name: getattr(header, name) for name in header.__dataclass_fields__}
     connection.execute(_INSERT_CHANGE, {**columns, "header": header.header().decode()})
     if rows:
