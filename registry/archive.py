@@ -4,18 +4,21 @@ from __future__ import annotations
 
 import os
 from pathlib import Path
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
-from registry.chronicle import Event, list_events
-from registry.difference import Difference, Preview, find_difference, find_preview
 from registry.dossier import Entry
-from registry.editions import Position, find_edition, find_position
 from registry.entries import rest_on, restore
 from registry.errors import RevisedMeanwhile
 from registry.reader import Reader
 from registry.records import Edition, Record, Source, Withdrawal
 from registry.store.history import Change
-from registry.waiting import Waiting, list_waiting
+
+# a lookup needs none of these: they are imported where they are used
+if TYPE_CHECKING:
+    from registry.chronicle import Event
+    from registry.difference import Difference, Preview
+    from registry.editions import Position
+    from registry.waiting import Waiting
 
 __all__ = ["Archive"]
 
@@ -80,6 +83,8 @@ class Archive(Reader):
         int
             A position.
         """
+        from registry.editions import find_position
+
         with self._lock, self._reading() as view:
             return find_position(view, place)
 
@@ -103,6 +108,8 @@ class Archive(Reader):
         BadInput
             If it stands on rules that this program does not have.
         """
+        from registry.editions import find_edition
+
         with self._lock, self._reading() as view:
             return find_edition(view, name)
 
@@ -114,6 +121,8 @@ class Archive(Reader):
 
     def queue(self) -> list[Waiting]:
         """What waits for review, oldest first."""
+        from registry.waiting import list_waiting
+
         with self._lock, self._reading() as view:
             return list_waiting(view)
 
@@ -164,6 +173,8 @@ class Archive(Reader):
         ...     [event.what for event in library.history("water-if97")]
         ['recorded', 'accepted']
         """
+        from registry.chronicle import list_events
+
         record = self.newest(key, kind).record
         with self._lock, self._reading() as view:
             return list_events(view, record.kind, record.key)
@@ -197,6 +208,9 @@ class Archive(Reader):
         ...     library.diff(1, 1).numbers
         ()
         """
+        from registry.difference import find_difference
+        from registry.editions import find_position
+
         with self._lock, self._reading() as view:
             one = view.at(find_position(view, before))
             two = view if after is None else view.at(find_position(view, after))
@@ -224,6 +238,8 @@ class Archive(Reader):
         RevisedMeanwhile
             If the newest revision is not the expected one.
         """
+        from registry.difference import find_preview
+
         newest = self.newest(record.key, record.kind)
         if expect is not None and newest.revision != expect:
             sides = record.content(), newest.record.content()

@@ -9,16 +9,18 @@ from __future__ import annotations
 import os
 from collections.abc import Callable, Iterable
 from pathlib import Path
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from registry.archive import Archive
 from registry.editions import plan_edition
 from registry.errors import BadInput
 from registry.holdings import Holdings, draft_of
-from registry.judgement import Plan, accept_at_once, plan_preference, plan_review, plan_withdrawal
-from registry.recording import plan_record, plan_revision
 from registry.records import Keeping, Record
 from registry.signature import Recorded, check_signature, now_utc
+
+# a lookup judges and records nothing: what does is imported where it is used
+if TYPE_CHECKING:
+    from registry.judgement import Plan
 
 __all__ = ["Library"]
 
@@ -61,6 +63,9 @@ class Library(Archive):
         LibraryBusy
             If another process writes for too long.
         """
+        from registry.judgement import accept_at_once
+        from registry.recording import plan_record
+
         why = reason or f"Recorded {record.kind} {record.key}"
         return self._append(
             author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept))
@@ -97,6 +102,9 @@ class Library(Archive):
             If there is no such record, nothing would change, or the record
             does not fit the library.
         """
+        from registry.judgement import accept_at_once
+        from registry.recording import plan_revision
+
         return self._append(
             author, reason, lambda held: plan_revision(held, record, expect, accept=accept_at_once(held, accept))
         )  # fmt: skip
@@ -135,6 +143,8 @@ class Library(Archive):
         RevisedMeanwhile
             If a newer revision waits than the one expected.
         """
+        from registry.judgement import plan_review
+
         standing = "accepted" if accept else "declined"
 
         def plan(held: Holdings) -> Plan:
@@ -171,6 +181,8 @@ class Library(Archive):
         UnknownKey, BadInput
             If there is nothing to withdraw, or its withdrawal waits already.
         """
+        from registry.judgement import accept_at_once, plan_withdrawal
+
         return self._append(
             author,
             reason,
@@ -203,6 +215,8 @@ class Library(Archive):
             If one of them is not recorded, they are for different things, the
             preference is recorded already, or it would close a circle.
         """
+        from registry.judgement import accept_at_once, plan_preference
+
         return self._append(
             author,
             reason,
