@@ -71,13 +71,13 @@ def test_an_upgrade_is_recorded_once(old_path):
         with library._file.reading() as view:
             (row,) = view.kind("library")
             assert (row.content["name"], row.content["started_at"]) == view.identity()
-            assert (row.content["kept_by"], row.change) == ("team", library.position)
+            assert (row.content["kept_by"], row.change) == ("team", view.position)
     before = old_path.read_bytes()
     assert upgrade_library(old_path, "a steward") is None
     assert old_path.read_bytes() == before
 
 
-def test_an_upgrade_without_its_record_is_completed(own_path, old_path, monkeypatch):
+def test_an_upgrade_without_its_record_is_completed(old_path):
     """A library of the newest schema that does not say yet which one it is says so after the next upgrade."""
     from registry.store.schema import upgrade_file
 
@@ -166,7 +166,7 @@ def _execute(path: Path, *statements: str) -> None:
 @pytest.mark.parametrize(
     ("statement", "why"),
     [
-        ("CREATE VIEW seen AS SELECT 1", "it holds the view 'seen', which rangebook did not make"),
+        ("CREATE VIEW seen AS SELECT 1", "it holds the view 'seen', not rangebook's own"),
         ("CREATE TRIGGER t AFTER INSERT ON link BEGIN DELETE FROM node; END", "it holds the trigger 't'"),
         ("PRAGMA user_version=0", "it has schema 0, which no rangebook made"),
         ("PRAGMA user_version=-3", "it has schema -3, which no rangebook made"),

@@ -195,13 +195,13 @@ def _check_whole(connection: sqlite3.Connection, path: Path, version: int, *, th
     # first: the page check evaluates expressions of the schema
     rows = connection.execute("SELECT type, name, tbl_name, sql FROM sqlite_master")
     if strange := next(_find_strangers(rows, SHAPES.get(version, {})), ""):
-        raise NotALibrary(str(path), f"it holds {strange}, which rangebook did not make")
+        raise NotALibrary(str(path), strange)
     if thorough and (damage := _find_damage(connection)):
         raise NotALibrary(str(path), f"SQLite says {quote_plainly(damage)}")
 
 
 def _find_strangers(rows: Iterable[tuple[object, ...]], shape: dict[str, str]) -> Iterator[str]:
-    """What a schema holds that is not the program's own."""
+    """What a schema holds that is not the program's own, a sentence each."""
     known = set(shape.values())
     for kind, name, table, sql in rows:
         if sql is None and kind == "index" and table in shape and str(name).startswith("sqlite_autoindex_"):
@@ -209,8 +209,8 @@ def _find_strangers(rows: Iterable[tuple[object, ...]], shape: dict[str, str]) -
         if (kind, name, sql) in _STATISTICS:
             continue
         if digest_object(str(kind), str(name), str(table), str(sql)) not in known:
-            changed = ", changed," if name in shape else ""
-            yield f"the {quote_plainly(str(kind), 20)} {quote(name)}{changed}"
+            named = f"the {quote_plainly(str(kind), 20)} {quote(name)}"
+            yield f"{named} is not as rangebook makes it" if name in shape else f"it holds {named}, not rangebook's own"
 
 
 def _find_damage(connection: sqlite3.Connection) -> str:
