@@ -49,7 +49,7 @@ SCHEMAS = {
     "record is an endless view": (
         ("DROP TABLE record", f"CREATE VIEW record AS {ENDLESS} {COLUMNS} FROM n"), "the view 'record' is not as"),
     "change is an endless view": (
-        ("DROP TABLE change", f"CREATE VIEW change AS {ENDLESS} {HEADERS} FROM n"), "the view 'change' is not as rangebook makes it"),
+        ("DROP TABLE change", f"CREATE VIEW change AS {ENDLESS} {HEADERS} FROM n"), "the view 'change' is not as"),
     "a view beside the tables": (("CREATE VIEW extra AS SELECT * FROM record",), "the view 'extra'"),
     "a trigger that deletes": (
         ("CREATE TRIGGER quiet AFTER INSERT ON record BEGIN DELETE FROM term; END",), "the trigger 'quiet'"),
