@@ -103,7 +103,7 @@ SCHEMAS = {
          *_rewrite("place TEXT", "place INTEGER", "record"),
          "PRAGMA writable_schema=ON",
          "UPDATE sqlite_master SET sql = rtrim(sql) || ' STRICT' WHERE name = 'record'"),
-        "SQLite says"),
+        "SQLite says non-INTEGER value in record.place"),
     "NULL where a value must be": (
         (*_rewrite("content TEXT NOT NULL", "content TEXT", "record"), "@reopen", "DROP TRIGGER record_no_update",
          "UPDATE record SET content = NULL WHERE id = 7", *_rewrite("content TEXT", "content TEXT NOT NULL", "record")),
