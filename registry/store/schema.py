@@ -6,7 +6,7 @@ import errno
 import os
 import sqlite3
 from collections.abc import Callable
-from contextlib import closing
+from contextlib import closing, suppress
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -54,6 +54,7 @@ def create_file(path: Path, name: str, now: str, fill: Callable[[Connection], ob
         raise FileExistsError(str(path))
     if path.parent.exists() and not path.parent.is_dir():
         raise NotADirectoryError(errno.ENOTDIR, "Not a directory", str(path.parent))
+    made = [folder for folder in (path.parent, *path.parent.parents) if not folder.exists()]
     path.parent.mkdir(parents=True, exist_ok=True)
     fresh = path.with_name(f".{path.name}.{name[:8]}.new")
     try:
@@ -69,6 +70,10 @@ def create_file(path: Path, name: str, now: str, fill: Callable[[Connection], ob
         mark_file(path)
     finally:
         fresh.unlink(missing_ok=True)
+        if not path.exists():
+            for folder in made:
+                with suppress(OSError):  # somebody else has put something there
+                    folder.rmdir()
 
 
 def _publish(fresh: Path, path: Path) -> None:
