@@ -80,7 +80,7 @@ def _describe(path: Path, before: bytes, told: dict[str, Any]) -> dict[str, Any]
     own = path.parent
     own.chmod(0o755)
     read_version(path)  # whoever reads next takes back what could not be taken back without room
-    named = {path.name, "package-1"}
+    names = (entry.relative_to(own) for entry in own.rglob("*"))
     return {
         **told,
         "identical": path.read_bytes() == before,

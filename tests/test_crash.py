@@ -61,7 +61,7 @@ def _check_refused(case: dict) -> None:
 
 
 def test_without_room_nothing_is_changed():
-    """With so many bytes to a file and no more, from far too few to enough: a message and nothing changed, or all done."""
+    """With so many bytes to a file and no more, from too few to enough: a message and nothing changed, or all done."""
     cases = run_script("hindering.py", "disk")
     refused: dict[str, int] = dict.fromkeys(REFUSALS, 0)
     done = dict(refused)

@@ -9,7 +9,9 @@ fixed 3.44.6 and 3.50.7 lines), in which WAL can lose committed writes.
 
 from __future__ import annotations
 
+import os
 import sqlite3
+import time
 from pathlib import Path
 from typing import Any
 from urllib.parse import quote
@@ -87,9 +89,41 @@ def open_engine(path: Path, *, write: bool = False, create: bool = False) -> Eng
 
     @event.listens_for(engine, "begin")
     def begin(connection: Any) -> None:
-        connection.exec_driver_sql("BEGIN IMMEDIATE" if write or create else "BEGIN")
+        if write or create:
+            _take_turn(connection)
+        else:
+            connection.exec_driver_sql("BEGIN")
 
     return engine
+
+
+def _take_turn(connection: Any) -> None:
+    """Begin to write as soon as no other process does."""
+    driver: sqlite3.Connection = connection.connection.driver_connection
+    driver.execute("PRAGMA busy_timeout=0")
+    try:
+        _execute_patiently(driver, "BEGIN IMMEDIATE")
+    except sqlite3.OperationalError:
+        connection.exec_driver_sql("BEGIN IMMEDIATE")  # says the same, as an error of the engine
+    finally:
+        driver.execute(f"PRAGMA busy_timeout={int(BUSY_SECONDS * 1000)}")
+
+
+def _execute_patiently(connection: sqlite3.Connection, statement: str) -> sqlite3.Cursor:
+    """Execute a statement once others let go of the file, within the time that a writer waits.
+
+    SQLite's own waiting asks more rarely the longer it lasts: those who come
+    later overtake, and where many write some wait for ever. Here each asks as
+    often as any other.
+    """
+    until = time.monotonic() + BUSY_SECONDS
+    while True:
+        try:
+            return connection.execute(statement)
+        except sqlite3.OperationalError as error:
+            if error.sqlite_errorcode & 0xFF != sqlite3.SQLITE_BUSY or time.monotonic() >= until:
+                raise
+        time.sleep(0.001 + os.urandom(1)[0] / 25_600)
 
 
 def _set_pragmas(connection: sqlite3.Connection, path: Path, write: bool) -> None:
@@ -97,7 +131,8 @@ def _set_pragmas(connection: sqlite3.Connection, path: Path, write: bool) -> Non
     wanted = {"foreign_keys": 1, "recursive_triggers": 1, "query_only": int(not write), **_HARD}
     if write:
         mode = "wal" if wal_is_safe(sqlite3.sqlite_version_info[:3]) else "delete"
-        found = connection.execute(f"PRAGMA journal_mode={mode}").fetchone()[0]
+        connection.execute("PRAGMA busy_timeout=0")
+        found = _execute_patiently(connection, f"PRAGMA journal_mode={mode}").fetchone()[0]
         if found != mode:
             raise NotALibrary(str(path), f"SQLite keeps journal mode {found}, not {mode}")
         wanted["synchronous"] = 2 if mode == "wal" else 3
