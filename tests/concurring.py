@@ -69,7 +69,7 @@ def record_many(path: Path, writer: int, changes: int) -> dict[str, list[Any]]:
 
 
 def read_until(path: Path, position: int) -> dict[str, list[Any]]:
-    """Open the library and read, again and again, until it has come to a position; the positions seen, and the waits."""
+    """Open the library and read, again and again, until it has come to a position; what was seen, and the waits."""
     positions: list[int] = []
     seconds: list[float] = []
     while not positions or positions[-1] < position:
@@ -102,7 +102,8 @@ def main() -> None:
         with open_library(path) as library:
             library.record(_source("wanted", "as it was"), author="a steward")
         for turn in range(1, numbers[0] + 1):
-            found.append(run_together([lambda w=w: revise_once(path, w, turn) for w in ("Ann", "Bert")], 0.02))
+            both = [lambda w=w, t=turn: revise_once(path, w, t) for w in ("Ann", "Bert")]
+            found.append(run_together(both, 0.02))
     print(json.dumps({"found": found, "took": time.perf_counter() - start}))
 
 

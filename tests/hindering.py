@@ -10,9 +10,12 @@ import json
 import os
 import resource
 import shutil
+import sqlite3
 import sys
 import tempfile
 from collections.abc import Callable, Iterator
+from contextlib import closing
+from itertools import chain
 from pathlib import Path
 from typing import Any
 
@@ -80,15 +83,18 @@ def _describe(path: Path, before: bytes, told: dict[str, Any]) -> dict[str, Any]
     own = path.parent
     own.chmod(0o755)
     read_version(path)  # whoever reads next takes back what could not be taken back without room
-    names = (entry.relative_to(own) for entry in own.rglob("*"))
     return {
         **told,
         "identical": path.read_bytes() == before,
         "faults": find_faults(path),
-        "left": sorted(
-            str(entry.relative_to(own)) for entry in own.rglob("*") if entry.parts[len(own.parts)] not in named
-        ),
+        "left": _list(path),
     }
+
+
+def _list(path: Path) -> list[str]:
+    """What lies beside the library, but for the package that is loaded."""
+    names = (entry.relative_to(path.parent) for entry in path.parent.rglob("*"))
+    return sorted(str(name) for name in names if name.parts[0] not in (path.name, "package-1"))
 
 
 def fill_disk(folder: Path) -> Iterator[dict[str, Any]]:
@@ -123,6 +129,29 @@ def forbid_writing(folder: Path) -> Iterator[dict[str, Any]]:
             yield {"operation": operation, "hindered": name, **_describe(path, before, told)}
 
 
+def leave_half_written(path: Path, target: Path) -> None:
+    """At `target` what a process leaves that dies while it writes pages: some are new, the journal has the old ones."""
+    with closing(sqlite3.connect(path, isolation_level=None)) as db:
+        db.execute("PRAGMA cache_size=1")  # pages are written before the commit
+        db.execute("BEGIN IMMEDIATE")
+        db.execute("CREATE TABLE half (a TEXT)")
+        for _ in range(200):
+            db.execute("INSERT INTO half VALUES (?)", ("x" * 1000,))
+        target.write_bytes(path.read_bytes())
+        target.with_name(f"{target.name}-journal").write_bytes(path.with_name(f"{path.name}-journal").read_bytes())
+        db.execute("ROLLBACK")
+
+
+def break_off(folder: Path) -> Iterator[dict[str, Any]]:
+    """A lookup where a dead writer's change would have to be taken back, and must not."""
+    path = _prepare(folder, "look")
+    leave_half_written(folder / "template.db", path)
+    path.parent.chmod(0o555)
+    told = attempt("look", path, _become_nobody)
+    path.parent.chmod(0o755)
+    yield {"operation": "look", "hindered": "broken off", **told, "left": _list(path)}
+
+
 def main() -> None:
     with tempfile.TemporaryDirectory() as name:
         folder = Path(name)
@@ -131,7 +160,8 @@ def main() -> None:
         # imports whatever is needed while that can be read
         for operation, perform in DOING.items():
             perform(_prepare(folder, operation), 1)
-        print(json.dumps([*(fill_disk if sys.argv[1] == "disk" else forbid_writing)(folder)]))
+        cases = fill_disk(folder) if sys.argv[1] == "disk" else chain(forbid_writing(folder), break_off(folder))
+        print(json.dumps([*cases]))
 
 
 if __name__ == "__main__":

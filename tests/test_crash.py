@@ -3,12 +3,16 @@
 from __future__ import annotations
 
 import json
+import os
 import subprocess
 import sys
 from pathlib import Path
 
 import pytest
 from crashing import OPERATIONS
+from hindering import leave_half_written
+
+from registry.opening import open_library
 
 TESTS = Path(__file__).parent
 ROUNDS = 75
@@ -25,7 +29,6 @@ def run_script(name: str, *arguments: object) -> dict:
 
 
 def _environment() -> dict[str, str]:
-    import os
 
     return {name: value for name, value in os.environ.items() if not name.startswith("RANGEBOOK")}
 
@@ -83,10 +86,46 @@ def test_without_room_nothing_is_changed():
 def test_without_permission_nothing_is_changed_and_lookups_go_on():
     """A file, a folder, or both that must only be read: every verb says so, a lookup answers, nothing is changed."""
     cases = run_script("hindering.py", "permission")
-    assert len(cases) == 17
+    assert len(cases) == 17 + 1
+    broken = cases.pop()
+    assert broken["error"] == "NotALibrary"
+    assert "a change was broken off and the file cannot be written to take it back" in broken["message"]
+    assert broken["left"] == ["library.db-journal"]
     for case in cases:
         assert case["faults"] == [], case
         if case["operation"] == "look":
             assert (case["change"], case["identical"], case["left"]) == (2, True, [])
         else:
             _check_refused(case)
+
+
+def test_what_a_dead_writer_left_is_taken_back_by_the_next_reader(own_path, tmp_path):
+    """Opening a library next to the journal of a broken-off change gives the library as it was, and no journal."""
+    whole = own_path.read_bytes()
+    left = tmp_path / "left" / "own.db"
+    left.parent.mkdir()
+    leave_half_written(own_path, left)
+    assert left.read_bytes() != whole
+    with open_library(left) as library:
+        assert library.lookup("water", 300.0).value > 0.0
+    assert left.read_bytes() == whole
+    assert [path.name for path in left.parent.iterdir()] == ["own.db"]
+
+
+def test_a_library_that_is_open_takes_back_what_a_dead_writer_left(own_path):
+    """A reader that was there before goes on, warm and cold."""
+    whole = own_path.read_bytes()
+    spare = own_path.with_name("spare.db")
+    spare.write_bytes(whole)
+    with open_library(own_path) as library:
+        before = library.lookup("water", 300.0).value
+        half = own_path.with_name("half.db")
+        leave_half_written(spare, half)
+        # into the same file, as a writer would have
+        with own_path.open("r+b") as file:
+            file.write(half.read_bytes())
+        half.with_name("half.db-journal").rename(own_path.with_name("own.db-journal"))
+        assert library.lookup("water", 300.0).value == before
+        assert library.lookup("ammonia", 250.0).value > 0.0
+    assert own_path.read_bytes() == whole
+    assert not own_path.with_name("own.db-journal").exists()
