@@ -13,7 +13,6 @@ import os
 import random
 import shutil
 import signal
-import statistics
 import sys
 import time
 from collections import Counter
@@ -138,24 +137,12 @@ def _perform(operation: str, path: Path, numbers: Iterator[int], times: int, pip
         for _ in range(times):
             number = next(numbers)
             os.write(pipe, b'{"begins": %d}\n' % number)
-            start = time.perf_counter()
-            change = OPERATIONS[operation](path, number)
-            told = {"change": change, "number": number, "seconds": time.perf_counter() - start}
+            told = {"change": OPERATIONS[operation](path, number), "number": number}
             os.write(pipe, json.dumps(told).encode() + b"\n")
     except BaseException as error:
         os.write(pipe, json.dumps({"fault": f"{type(error).__name__}: {error}"}).encode() + b"\n")
     finally:
         os._exit(0)
-
-
-def measure(operation: str, folder: Path, times: int = 9) -> float:
-    """The seconds that an operation takes in a process that is left alone."""
-    seconds: list[float] = []
-    for _ in range(1 if operation != "upgrade" else times):
-        path, numbers = _begin(operation, folder)
-        done, _ = Child(operation, path, numbers, times if operation != "upgrade" else 1).wait()
-        seconds += [line["seconds"] for line in done]
-    return statistics.median(seconds)
 
 
 def _begin(operation: str, folder: Path) -> tuple[Path, Iterator[int]]:
@@ -178,7 +165,7 @@ def _begin(operation: str, folder: Path) -> tuple[Path, Iterator[int]]:
 
 def crash(operation: str, folder: Path, rounds: int, drawn: random.Random) -> dict[str, Any]:
     """Kill a process in the middle of an operation, so many times."""
-    seconds = measure(operation, folder)
+    reach = 0.05  # the longest delay, seconds; it settles where a third of the rounds get something done
     counts: Counter[str] = Counter()
     faults: list[str] = []
     for turn in range(rounds):
@@ -188,7 +175,8 @@ def crash(operation: str, folder: Path, rounds: int, drawn: random.Random) -> di
             next_number = 1
         # more of them than the delay has room for
         child = Child(operation, path, count(next_number), 1 if operation == "upgrade" else 4)
-        done, inside = child.kill(drawn.uniform(0.0, (1.4 if operation == "upgrade" else 2.2) * seconds))
+        done, inside = child.kill(drawn.uniform(0.0, reach))
+        reach *= 0.9 if done else 1.05
         reported |= {line["change"]: line["number"] for line in done}
         next_number += len(done) + inside
         counts["reported"] += len(done)
@@ -198,7 +186,7 @@ def crash(operation: str, folder: Path, rounds: int, drawn: random.Random) -> di
             faults += [f"round {turn}: {fault}" for fault in examine(operation, path, reported)]
         except Exception as error:
             faults.append(f"round {turn}: {type(error).__name__}: {error}")
-    return {"rounds": rounds, "seconds": seconds, **counts, "faults": faults}
+    return {"rounds": rounds, "reach": reach, **counts, "faults": faults}
 
 
 def examine(operation: str, path: Path, reported: dict[int, int]) -> Iterator[str]:
