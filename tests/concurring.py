@@ -72,11 +72,15 @@ def read_until(path: Path, position: int) -> dict[str, list[Any]]:
     """Open the library and read, again and again, until it has come to a position; what was seen, and the waits."""
     positions: list[int] = []
     seconds: list[float] = []
-    while not positions or positions[-1] < position:
+    grown = time.monotonic()
+    # not for ever, if the writers have failed
+    while (not positions or positions[-1] < position) and time.monotonic() < grown + 40.0:
         start = time.perf_counter()
         with open_library(path) as library:
             positions.append(library.position)
             library.compounds()
+        if len(positions) > 1 and positions[-1] > positions[-2]:
+            grown = time.monotonic()
         seconds.append(time.perf_counter() - start)
         time.sleep(0.02)
     return {"positions": positions, "seconds": seconds}
