@@ -11,6 +11,7 @@ from registry.library import Library
 from registry.records import Keeping
 from registry.signature import check_signature, now_utc
 from registry.store.library_file import LibraryFile, locate
+from registry.store.tables import SCHEMA
 
 __all__ = ["default_place", "open_library", "start_library", "upgrade_library"]
 
@@ -118,19 +119,51 @@ def start_library(
     return Library(LibraryFile.open(path))
 
 
-def upgrade_library(place: str | os.PathLike[str]) -> Path | None:
+def upgrade_library(place: str | os.PathLike[str], author: str = "rangebook") -> Path | None:
     """Bring a library of an older program up to date, after a backup.
+
+    What was recorded stays as it is. A library that does not say yet who keeps
+    it is signed as kept by a team, in a change of its own.
 
     Parameters
     ----------
     place : path or URL
         The library.
+    author : str
+        Who upgrades it.
 
     Returns
     -------
     Path or None
         The backup; None if the library was up to date.
+
+    Raises
+    ------
+    LibraryUnreadable, LibraryBusy
+        If it cannot be read, or is being written for too long.
+    BadInput
+        If it cannot be written; nothing was changed.
     """
     from registry.store.schema import upgrade_file
 
-    return upgrade_file(locate(place))
+    check_signature(author, "upgrade")
+    path = locate(place)
+    backup = upgrade_file(path, finish=lambda connection: _sign(LibraryFile(path, connection), author))
+    if backup is None:
+        file = LibraryFile.open(path)
+        try:
+            _sign(file, author)
+        finally:
+            file.close()
+    return backup
+
+
+def _sign(file: LibraryFile, author: str) -> None:
+    """Record which library this is, if it does not say so yet."""
+    with file.reading() as view:
+        if view.states("library", ["library"]):
+            return
+    with file.writing() as (view, append):
+        name, started_at = view.identity()
+        keeping = Keeping(name=name, started_at=started_at, kept_by="team")
+        append(author.strip(), f"Upgraded to schema {SCHEMA}.", now_utc(), [draft_of(keeping)])

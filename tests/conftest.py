@@ -14,6 +14,17 @@ settings.register_profile("suite", derandomize=True, deadline=None, print_blob=T
 settings.load_profile("suite")
 
 
+@pytest.fixture(scope="session", autouse=True)
+def own_home(tmp_path_factory):
+    """No test, nor a process it starts, reads or writes in the home of whoever runs it."""
+    home = tmp_path_factory.mktemp("home")
+    with pytest.MonkeyPatch.context() as patch:
+        patch.setenv("HOME", str(home))
+        for name in ("XDG_STATE_HOME", "XDG_DATA_HOME", "XDG_CONFIG_HOME", "XDG_CACHE_HOME"):
+            patch.delenv(name, raising=False)
+        yield home
+
+
 def _make(factory, shelf: str) -> Path:
     path = factory.mktemp("shelf") / f"{shelf}.db"
     start_library(path, shelf).close()

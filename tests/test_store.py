@@ -610,18 +610,13 @@ def test_opening_again_in_one_process_drops_no_lock(own_path):
         assert "database is locked" in done.stderr
 
 
-def test_a_locked_library_is_busy_for_readers_and_upgrades_too(own_path, monkeypatch):
-    """A lookup, a warm lookup and an upgrade that find the file locked say so (exit code 4), and leave no backup."""
+def test_a_locked_library_is_busy_for_readers_too(own_path, monkeypatch):
+    """A lookup and a warm lookup that find the file locked say so (exit code 4)."""
     import registry.store.engine
 
     monkeypatch.setattr(registry.store.engine, "BUSY_SECONDS", 0.05)
     with open_library(own_path) as library, closing(sqlite3.connect(own_path, isolation_level=None)) as other:
         library.lookup("water", 300.0)
-        other.execute("PRAGMA user_version=0")
-        other.execute("BEGIN IMMEDIATE")
-        with pytest.raises(LibraryBusy):
-            schema.upgrade_file(own_path)
-        other.execute("ROLLBACK")
         other.execute("BEGIN EXCLUSIVE")
         with pytest.raises(LibraryBusy):
             library.lookup("water", 300.0)

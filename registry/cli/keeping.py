@@ -163,7 +163,7 @@ def _refuse_empty(package: str) -> None:
         raise BadInput("The name of the package is empty. Give a folder or a .zip with datapackage.json.")
 
 
-def upgrade(library: LibraryOption = None, as_json: JsonOption = False) -> None:
+def upgrade(author: AuthorOption = "", library: LibraryOption = None, as_json: JsonOption = False) -> None:
     """Bring a library of an older program up to date, after a backup beside it.
 
     Example: rangebook upgrade --library team.db
@@ -172,7 +172,7 @@ def upgrade(library: LibraryOption = None, as_json: JsonOption = False) -> None:
     from registry.opening import default_place, upgrade_library
 
     place = default_place() if library is None else library
-    backup = upgrade_library(place)
+    backup = upgrade_library(place, name_author(author))
     if as_json:
         print_json({"library": str(place), "upgraded": backup is not None, "backup": str(backup) if backup else None})
     elif backup is None:

@@ -1,6 +1,6 @@
 """Connections to a library's SQLite file.
 
-Readers open the file read-only; a writer takes the write lock at once (BEGIN
+A reader's connection takes no statement that writes; a writer takes the write lock at once (BEGIN
 IMMEDIATE), for a deferred lock that must be upgraded fails whatever the
 timeout. The journal is a rollback journal with synchronous=EXTRA unless
 SQLite is free of the WAL-reset bug (versions 3.7.0 to 3.51.2 but for the
@@ -9,7 +9,9 @@ fixed 3.44.6 and 3.50.7 lines), in which WAL can lose committed writes.
 
 from __future__ import annotations
 
+import os
 import sqlite3
+import time
 from pathlib import Path
 from typing import Any
 from urllib.parse import quote
@@ -19,10 +21,18 @@ from sqlalchemy.pool import StaticPool
 
 from registry.errors import NotALibrary
 
-__all__ = ["BUSY_SECONDS", "open_engine", "wal_is_safe"]
+__all__ = ["BUSY_SECONDS", "connect", "harden", "open_engine", "wal_is_safe"]
 
 BUSY_SECONDS = 30
 """How long a writer waits for another one."""
+
+_HARD = {"trusted_schema": 0, "cell_size_check": 1}
+_LIMITS = {
+    sqlite3.SQLITE_LIMIT_LENGTH: 2**27,  # bytes of a text or a row; the largest dataset known has a thousandth
+    sqlite3.SQLITE_LIMIT_ATTACHED: 0,
+    sqlite3.SQLITE_LIMIT_TRIGGER_DEPTH: 10,
+    sqlite3.SQLITE_LIMIT_WORKER_THREADS: 0,
+}
 
 
 def wal_is_safe(version: tuple[int, int, int]) -> bool:
@@ -34,6 +44,21 @@ def wal_is_safe(version: tuple[int, int, int]) -> bool:
     (False, True, True)
     """
     return version >= (3, 51, 3) or (3, 50, 7) <= version < (3, 51, 0) or (3, 44, 6) <= version < (3, 45, 0)
+
+
+def connect(path: Path, mode: str) -> sqlite3.Connection:
+    """A connection of the driver on a file; `mode` is ``ro``, ``rw`` or ``rwc``."""
+    # not through a database URL, which would decode the path a second time
+    uri = f"file:{quote(str(path))}?mode={mode}"
+    return sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS, check_same_thread=False)
+
+
+def harden(connection: sqlite3.Connection) -> None:
+    """Switch off what a file could bring along; the driver loads no extensions unless it is told to."""
+    for limit, value in _LIMITS.items():
+        connection.setlimit(limit, value)
+    for name, wanted in _HARD.items():
+        connection.execute(f"PRAGMA {name}={wanted}")
 
 
 def open_engine(path: Path, *, write: bool = False, create: bool = False) -> Engine:
@@ -53,14 +78,9 @@ def open_engine(path: Path, *, write: bool = False, create: bool = False) -> Eng
     sqlalchemy.Engine
         Its connections have the pragmas that a library needs.
     """
-    mode = "rwc" if create else "rw" if write else "ro"
-    # not through a database URL, which would decode the path a second time
-    uri = f"file:{quote(str(path))}?mode={mode}"
-    engine = create_engine(
-        "sqlite://",
-        creator=lambda: sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS, check_same_thread=False),
-        poolclass=StaticPool,
-    )
+    # not "ro": reading must be able to take back what a process left half-written that died
+    mode = "rwc" if create else "rw"
+    engine = create_engine("sqlite://", creator=lambda: connect(path, mode), poolclass=StaticPool)
 
     @event.listens_for(engine, "connect")
     def prepare(connection: Any, _: Any) -> None:
@@ -69,16 +89,50 @@ def open_engine(path: Path, *, write: bool = False, create: bool = False) -> Eng
 
     @event.listens_for(engine, "begin")
     def begin(connection: Any) -> None:
-        connection.exec_driver_sql("BEGIN IMMEDIATE" if write or create else "BEGIN")
+        if write or create:
+            _take_turn(connection)
+        else:
+            connection.exec_driver_sql("BEGIN")
 
     return engine
 
 
+def _take_turn(connection: Any) -> None:
+    """Begin to write as soon as no other process does."""
+    driver: sqlite3.Connection = connection.connection.driver_connection
+    driver.execute("PRAGMA busy_timeout=0")
+    try:
+        _execute_patiently(driver, "BEGIN IMMEDIATE")
+    except sqlite3.OperationalError:
+        connection.exec_driver_sql("BEGIN IMMEDIATE")  # says the same, as an error of the engine
+    finally:
+        driver.execute(f"PRAGMA busy_timeout={int(BUSY_SECONDS * 1000)}")
+
+
+def _execute_patiently(connection: sqlite3.Connection, statement: str) -> sqlite3.Cursor:
+    """Execute a statement once others let go of the file, within the time that a writer waits.
+
+    SQLite's own waiting asks more rarely the longer it lasts: those who come
+    later overtake, and where many write some wait for ever. Here each asks as
+    often as any other.
+    """
+    until = time.monotonic() + BUSY_SECONDS
+    while True:
+        try:
+            return connection.execute(statement)
+        except sqlite3.OperationalError as error:
+            if error.sqlite_errorcode & 0xFF != sqlite3.SQLITE_BUSY or time.monotonic() >= until:
+                raise
+        time.sleep(0.001 + os.urandom(1)[0] / 25_600)
+
+
 def _set_pragmas(connection: sqlite3.Connection, path: Path, write: bool) -> None:
-    wanted = {"foreign_keys": 1, "recursive_triggers": 1, "trusted_schema": 0, "cell_size_check": 1}
+    harden(connection)
+    wanted = {"foreign_keys": 1, "recursive_triggers": 1, "query_only": int(not write), **_HARD}
     if write:
         mode = "wal" if wal_is_safe(sqlite3.sqlite_version_info[:3]) else "delete"
-        found = connection.execute(f"PRAGMA journal_mode={mode}").fetchone()[0]
+        connection.execute("PRAGMA busy_timeout=0")
+        found = _execute_patiently(connection, f"PRAGMA journal_mode={mode}").fetchone()[0]
         if found != mode:
             raise NotALibrary(str(path), f"SQLite keeps journal mode {found}, not {mode}")
         wanted["synchronous"] = 2 if mode == "wal" else 3

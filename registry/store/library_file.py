@@ -11,15 +11,19 @@ from pathlib import Path
 from sqlalchemy import Connection, Engine
 from sqlalchemy.exc import DatabaseError, OperationalError
 
-from registry.errors import BadInput, LibraryBusy, NotALibrary, quote
+from registry.errors import BadInput, LibraryBusy, NotALibrary, RangebookError, quote
 from registry.merkle import root_from_nodes
 from registry.store import positions, reading
 from registry.store.engine import open_engine
 from registry.store.history import Change, Draft, append_change
 from registry.store.reading import Decision, Row, State
-from registry.store.schema import check_file, create_file
+from registry.store.recognition import check_file
+from registry.store.schema import create_file
 
 __all__ = ["LibraryFile", "View", "locate"]
+
+_UNWRITABLE = ("readonly", "full", "I/O", "unable to open")
+"""How SQLite says that a file, its folder or its disk takes nothing more."""
 
 Append = Callable[[str, str, str, Sequence[Draft]], Change]
 
@@ -150,7 +154,7 @@ class LibraryFile:
         """Make a library whose first content `fill` appends."""
         try:
             create_file(path, name, now, lambda connection: fill(cls(path, connection)))
-        except FileExistsError:
+        except (FileExistsError, RangebookError):
             raise
         except (OSError, OperationalError) as error:
             why = error.strerror if isinstance(error, OSError) else error.orig
@@ -199,7 +203,7 @@ class LibraryFile:
             text = str(error.orig)
             if "locked" in text or "busy" in text:
                 raise LibraryBusy(str(self.path)) from error
-            if isinstance(error, OperationalError) and ("readonly" in text or "full" in text or "I/O" in text):
+            if isinstance(error, OperationalError) and any(word in text for word in _UNWRITABLE):
                 raise BadInput(f"{self.path} cannot be written: {text}. Nothing was changed.") from error
             raise NotALibrary(str(self.path), f"SQLite says {text}") from error
 

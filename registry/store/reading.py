@@ -8,7 +8,7 @@ does not grow with the history.
 from __future__ import annotations
 
 import json
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Collection, Iterable, Iterator, Sequence
 from typing import Any, NamedTuple
 
 from sqlalchemy import Connection, TextClause, bindparam, select, text
@@ -183,11 +183,13 @@ def _chunks(items: Iterable[Any]) -> Iterator[list[Any]]:
         yield wanted[start : start + CHUNK]
 
 
-def _fetch_rows(connection: Connection, ids: Iterable[int]) -> dict[int, Row]:
+def _fetch_rows(connection: Connection, ids: Collection[int]) -> dict[int, Row]:
     found: dict[int, Row] = {}
     for chunk in _chunks(ids):
         for number, *columns in connection.execute(_BY_ID, {"ids": chunk}):
             found[number] = _restore(*columns)
+    if len(found) < len(set(ids)):
+        raise DamagedRow("what is derived from the records points at a record that is not there")
     return found
 
 
@@ -196,6 +198,8 @@ def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
     words: dict[int, Any] = {}
     for chunk in _chunks(number for _, *pair in found for number in pair if number):
         words.update({word.id: word for word in connection.execute(_DECISION_BY_ID, {"ids": chunk})})
+    if not all(newest for newest, _, _ in found):
+        raise DamagedRow("what is derived from the records points at a key that is not there")
     wanted = {newest for newest, _, _ in found} | {number for word in words.values() for number in word[4:6]}
     rows = _fetch_rows(connection, wanted)
 

@@ -1,9 +1,4 @@
-"""Making, recognising and upgrading library files.
-
-A file is looked at with the standard library's sqlite3 before anything else:
-what is no library, damaged, older or newer is told apart without loading the
-migration code.
-"""
+"""Making and upgrading library files."""
 
 from __future__ import annotations
 
@@ -11,82 +6,29 @@ import errno
 import os
 import sqlite3
 from collections.abc import Callable
-from contextlib import closing
+from contextlib import closing, suppress
 from pathlib import Path
-from urllib.parse import quote
+from typing import TYPE_CHECKING
 
 from sqlalchemy import Connection, insert, text
-from sqlalchemy.exc import OperationalError
+from sqlalchemy.exc import DatabaseError
 
-from registry.errors import LibraryBusy, NewerLibrary, NoLibrary, NotALibrary, OlderLibrary
-from registry.store.engine import BUSY_SECONDS, open_engine
+from registry.errors import BadInput, LibraryBusy, NewerLibrary, NotALibrary, RangebookError, quote
+from registry.store.engine import open_engine
+from registry.store.marks import mark_file
+from registry.store.recognition import check_shape, connect_plainly, read_version
 from registry.store.tables import APPLICATION_ID, METADATA, SCHEMA, library, trigger_statements
 
-__all__ = ["check_file", "create_file", "find_migrations", "upgrade_file"]
+if TYPE_CHECKING:
+    from alembic.config import Config
+
+__all__ = ["create_file", "find_migrations", "upgrade_file"]
 
 _MIGRATION_TABLE = (
     "CREATE TABLE alembic_version (version_num VARCHAR(32) NOT NULL, "
     "CONSTRAINT alembic_version_pkc PRIMARY KEY (version_num))"
 )
 """As Alembic makes it, so that a new library equals an upgraded one."""
-
-
-def read_version(path: Path) -> int:
-    """The schema number of a library file, whatever it is.
-
-    Raises
-    ------
-    NoLibrary
-        If nothing is there.
-    NotALibrary
-        If it is no SQLite file, damaged, or another program's database.
-    """
-    place = str(path)
-    if not path.exists():
-        raise NoLibrary(place)
-    if path.is_dir():
-        raise NotALibrary(place, "it is a folder")
-    # never open()ed: closing it would drop the locks that this process holds on the file
-    if path.stat().st_size == 0:
-        raise NotALibrary(place, "it is empty")
-    try:
-        with closing(_connect_plainly(path)) as connection:
-            application = connection.execute("PRAGMA application_id").fetchone()[0]
-            version = connection.execute("PRAGMA user_version").fetchone()[0]
-            tables = connection.execute("SELECT count(*) FROM sqlite_master WHERE name = 'change'").fetchone()[0]
-    except sqlite3.OperationalError as error:
-        if "locked" in str(error) or "busy" in str(error):
-            raise LibraryBusy(place) from error
-        raise NotALibrary(place, f"SQLite says {error}") from error
-    except (sqlite3.DatabaseError, UnicodeDecodeError) as error:
-        plain = "it is no SQLite file" if "is not a database" in str(error) else f"SQLite says {error}"
-        raise NotALibrary(place, plain) from error
-    if application != APPLICATION_ID or not tables:
-        raise NotALibrary(place, "it is another program's database")
-    return int(version)
-
-
-def _connect_plainly(path: Path) -> sqlite3.Connection:
-    uri = f"file:{quote(str(path))}?mode=ro"
-    connection = sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS)
-    connection.execute("PRAGMA trusted_schema=OFF")
-    connection.execute("PRAGMA cell_size_check=ON")
-    return connection
-
-
-def check_file(path: Path) -> None:
-    """Refuse a file that this program cannot read as a library.
-
-    Raises
-    ------
-    LibraryUnreadable
-        Of the kind that fits.
-    """
-    version = read_version(path)
-    if version > SCHEMA:
-        raise NewerLibrary(str(path), version, SCHEMA)
-    if version < SCHEMA:
-        raise OlderLibrary(str(path), version, SCHEMA)
 
 
 def create_file(path: Path, name: str, now: str, fill: Callable[[Connection], object]) -> None:
@@ -112,6 +54,7 @@ def create_file(path: Path, name: str, now: str, fill: Callable[[Connection], ob
         raise FileExistsError(str(path))
     if path.parent.exists() and not path.parent.is_dir():
         raise NotADirectoryError(errno.ENOTDIR, "Not a directory", str(path.parent))
+    made = [folder for folder in (path.parent, *path.parent.parents) if not folder.exists()]
     path.parent.mkdir(parents=True, exist_ok=True)
     fresh = path.with_name(f".{path.name}.{name[:8]}.new")
     try:
@@ -124,8 +67,13 @@ def create_file(path: Path, name: str, now: str, fill: Callable[[Connection], ob
         finally:
             engine.dispose()
         _publish(fresh, path)
+        mark_file(path)
     finally:
         fresh.unlink(missing_ok=True)
+        if not path.exists():
+            for folder in made:
+                with suppress(OSError):  # somebody else has put something there
+                    folder.rmdir()
 
 
 def _publish(fresh: Path, path: Path) -> None:
@@ -163,7 +111,9 @@ def find_migrations() -> Path:
     return shipped if shipped.is_dir() else package.parent / "migrations"
 
 
-def upgrade_file(path: Path, migrations: Path | None = None) -> Path | None:
+def upgrade_file(
+    path: Path, migrations: Path | None = None, finish: Callable[[Connection], object] | None = None
+) -> Path | None:
     """Bring an older library up to date, after a backup.
 
     Parameters
@@ -172,32 +122,59 @@ def upgrade_file(path: Path, migrations: Path | None = None) -> Path | None:
         The library file.
     migrations : Path, optional
         Folder of migration scripts; the program's own by default.
+    finish : callable, optional
+        Appends what an upgrade adds to the history, within the same
+        transaction.
 
     Returns
     -------
     Path or None
         The backup, or None if the library was up to date already.
 
+    Raises
+    ------
+    LibraryUnreadable
+        If it is no library, damaged, or of a newer program.
+    LibraryBusy
+        If another process is writing for too long.
+    BadInput
+        If the file or the folder cannot be written.
+
     Notes
     -----
     The backup goes through SQLite's backup API, which waits for writers. The
     migration runs in one transaction: it fails whole.
     """
-    from alembic import command
     from alembic.config import Config
     from alembic.script import ScriptDirectory
 
     version = read_version(path)
-    folder = migrations or find_migrations()
     config = Config()
-    config.set_main_option("script_location", str(folder).replace("%", "%%"))
-    head = ScriptDirectory.from_config(config).get_current_head()
-    newest = int(head or 0)
+    config.set_main_option("script_location", str(migrations or find_migrations()).replace("%", "%%"))
+    newest = int(ScriptDirectory.from_config(config).get_current_head() or 0)
     if version > newest:
         raise NewerLibrary(str(path), version, newest)
     if version == newest:
         return None
-    backup: Path | None = None
+    check_shape(path, version)
+    backups: list[Path] = []
+    try:
+        _migrate(path, (version, newest), config, finish, backups)
+    except BaseException as error:
+        for backup in backups:
+            backup.unlink()
+        if isinstance(error, DatabaseError | sqlite3.Error | OSError) and not isinstance(error, RangebookError):
+            raise _explain(path, error) from error
+        raise
+    return backups[0]
+
+
+def _migrate(
+    path: Path, versions: tuple[int, int], config: Config, finish: Callable[[Connection], object] | None,
+    backups: list[Path],
+) -> None:  # fmt: skip
+    from alembic import command
+
     engine = open_engine(path, write=True)
     try:
         with engine.connect() as connection:
@@ -205,32 +182,51 @@ def upgrade_file(path: Path, migrations: Path | None = None) -> Path | None:
             connection.connection.execute("PRAGMA foreign_keys=OFF")
             # the write lock is taken first: nobody records between the backup and the migration
             with connection.begin():
-                backup = _back_up(path, version)
+                _check_revision(connection, path, versions[0])
+                backups.append(_back_up(path, versions[0]))
                 config.attributes["connection"] = connection
                 command.upgrade(config, "head")
+                stamp_version(connection, versions[1])
+                if finish is not None:
+                    finish(connection)
                 broken = connection.exec_driver_sql("PRAGMA foreign_key_check").fetchall()
                 if broken:
                     raise NotALibrary(str(path), f"the upgrade left {len(broken)} dangling references")
-                stamp_version(connection, newest)
-    except OperationalError as error:
-        if "locked" in str(error.orig):
-            raise LibraryBusy(str(path)) from error
-        raise
-    except BaseException:
-        if backup is not None:
-            backup.unlink()
-        raise
     finally:
         engine.dispose()
-    return backup
+
+
+def _check_revision(connection: Connection, path: Path, version: int) -> None:
+    """The migration code goes by a table of its own."""
+    found = [str(row[0]) for row in connection.execute(text("SELECT version_num FROM alembic_version"))]
+    if found != [f"{version:04d}"]:
+        raise NotALibrary(str(path), f"it says that it has schema {version}, and {quote(', '.join(found))}")
+
+
+def _explain(path: Path, error: BaseException) -> RangebookError:
+    """A failed upgrade as what it means to a user; it was rolled back."""
+    inner = error.orig if isinstance(error, DatabaseError) else error
+    why = error.strerror if isinstance(error, OSError) else str(inner)
+    if "locked" in str(why):
+        return LibraryBusy(str(path))
+    if isinstance(inner, sqlite3.OperationalError | OSError):
+        return BadInput(f"{path} cannot be upgraded: {why}. Nothing was changed.")
+    return NotALibrary(str(path), f"it cannot be upgraded: SQLite says {why}")
 
 
 def _back_up(path: Path, version: int) -> Path:
-    target = path.with_name(f"{path.name}.schema-{version}.backup")
-    number = 1
-    while target.exists():
-        number += 1
-        target = path.with_name(f"{path.name}.schema-{version}.backup-{number}")
-    with closing(_connect_plainly(path)) as source, closing(sqlite3.connect(target)) as sink:
-        source.backup(sink)
-    return target
+    """A copy beside the library; it gets its name when it is whole."""
+    fresh = path.with_name(f".{path.name}.{os.urandom(4).hex()}.new")
+    try:
+        with closing(connect_plainly(path)) as source, closing(sqlite3.connect(fresh)) as sink:
+            source.backup(sink)
+        number = 1
+        while True:
+            target = path.with_name(f"{path.name}.schema-{version}.backup{f'-{number}' if number > 1 else ''}")
+            try:
+                _publish(fresh, target)
+                return target
+            except FileExistsError:
+                number += 1
+    finally:
+        fresh.unlink(missing_ok=True)
