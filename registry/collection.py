@@ -7,7 +7,7 @@ from contextlib import AbstractContextManager
 from typing import Any, Self
 
 from registry.dossier import Dossier, Entry
-from registry.entries import enter_all, enter_states, read_dossier, restore
+from registry.entries import enter_all, enter_newest, enter_states, read_dossier, restore
 from registry.errors import BadInput, UnknownKey, quote
 from registry.naming import nearest_names
 from registry.records import KINDS, Compound, Correlation
@@ -192,6 +192,35 @@ class Collection:
             keys = [row.key for kind in KINDS if kind not in _UNNAMED for row in view.kind(kind)]
             raise UnknownKey("record", key, nearest=nearest_names(key, [*keys, *view.terms()]))
 
+    def newest(self, key: str, kind: str = "") -> Entry[Any]:
+        """The newest revision under a key, whether it counts or waits.
+
+        Parameters
+        ----------
+        key : str
+            The key of a record.
+        kind : str
+            Needed where several kinds of record have the key; by default the
+            first that has it.
+
+        Returns
+        -------
+        Entry
+            With its own standing.
+
+        Raises
+        ------
+        UnknownKey
+            If there is none; carries the nearest keys.
+        """
+        with self._lock, self._reading() as view:
+            for each in [kind] if kind else KINDS:
+                states = view.states(each, [key])
+                if states:
+                    return enter_newest(states[0])
+            keys = [row.key for each in ([kind] if kind else KINDS) if each not in _UNNAMED for row in view.kind(each)]
+            raise UnknownKey(kind or "record", key, nearest=nearest_names(key, keys))
+
     def referring(self, kind: str, key: str) -> list[Entry[Any]]:
         """The records that refer to one record.
 
@@ -226,6 +255,22 @@ class Collection:
         with self._lock, self._reading() as view:
             rows = view.current("source", [key])
         return str(rows[0].content["citation"]) if rows else key
+
+    def change(self, number: int) -> Change:
+        """The header of one change.
+
+        Parameters
+        ----------
+        number : int
+            Its number.
+
+        Returns
+        -------
+        Change
+            Who, when and why.
+        """
+        with self._lock, self._reading() as view:
+            return view.change(number)
 
     def changes(self) -> list[Change]:
         """The headers of all changes, in order."""

@@ -4,15 +4,18 @@ from __future__ import annotations
 
 import re
 from datetime import UTC, date, datetime, timedelta
+from typing import TYPE_CHECKING
 
 from registry import rules
 from registry.entries import enter_newest
 from registry.errors import BadInput, UnknownKey, quote
 from registry.holdings import Holdings, draft_of
-from registry.judgement import Plan
 from registry.naming import nearest_names
 from registry.records import Edition
 from registry.store.library_file import View
+
+if TYPE_CHECKING:
+    from registry.judgement import Plan
 
 __all__ = ["Position", "find_edition", "find_position", "format_time", "plan_edition", "root_at"]
 
@@ -49,6 +52,8 @@ def plan_edition(holdings: Holdings, name: str, note: str) -> Plan:
     BadInput
         If there is an edition of that name, case aside.
     """
+    from registry.judgement import Plan
+
     view = holdings.view
     record = Edition(
         name=name, position=str(view.position), root=root_at(view, view.position), rules=str(rules.VERSION), note=note
@@ -113,11 +118,7 @@ def find_position(view: View, place: Position) -> int:
         raise BadInput(f"{quote(place)} is no position; an edition, a change or a date is allowed.")
     if isinstance(place, int):
         return _check_number(view, place)
-    text = (
-        place
-        if isinstance(place, str)
-        else (format_moment(place) if isinstance(place, datetime) else place.isoformat())
-    )
+    text = _as_text(place)
     if re.fullmatch(r"\d{1,15}", text, re.ASCII):
         return _check_number(view, int(text))
     if _DAY.fullmatch(text):
@@ -127,9 +128,11 @@ def find_position(view: View, place: Position) -> int:
     return int(find_edition(view, text).position)
 
 
-def format_moment(moment: datetime) -> str:
-    """A moment as text; one without a time zone is taken as UTC."""
-    return format_time(moment.astimezone(UTC) if moment.tzinfo else moment)
+def _as_text(place: str | date) -> str:
+    """A place as text; a moment without a time zone is taken as UTC."""
+    if isinstance(place, datetime):
+        return format_time(place.astimezone(UTC) if place.tzinfo else place)
+    return place if isinstance(place, str) else place.isoformat()
 
 
 def _check_number(view: View, number: int) -> int:

@@ -6,12 +6,25 @@ import dataclasses
 from collections.abc import Iterable, Mapping
 from typing import Any
 
+from registry.cells import LONG
 from registry.dossier import Dossier, Entry
-from registry.records import KINDS, REVIEWED, Record, Source
+from registry.records import KINDS, REVIEWED, Origin, Record, Source
 from registry.store.library_file import View
 from registry.store.reading import Decision, Row, State
 
-__all__ = ["enter_all", "enter_newest", "enter_states", "read_dossier", "restore", "word_cause"]
+__all__ = [
+    "enter_all",
+    "enter_newest",
+    "enter_states",
+    "follow_source",
+    "read_dossier",
+    "read_origin",
+    "rest_on",
+    "restore",
+    "withdrawn_sources",
+    "word_cause",
+    "word_source",
+]
 
 
 def restore(row: Row) -> Any:
@@ -30,11 +43,9 @@ def enter_newest(state: State) -> Entry[Any]:
     """The newest revision of a key, whether it counts or waits."""
     newest = state.newest
     if newest.kind not in REVIEWED:
-        return (
-            _with_decision(newest, state.decision)
-            if state.decision
-            else Entry(restore(newest), newest.revision, newest.change)
-        )
+        plain = Entry(restore(newest), newest.revision, newest.change)
+        # a source may have been withdrawn
+        return _with_decision(newest, state.decision) if state.decision else plain
     latest = state.latest
     if latest is None or latest.revision != newest.revision:
         return Entry(restore(newest), newest.revision, newest.change, "draft")
@@ -64,7 +75,7 @@ def enter_states(view: View, states: Iterable[State]) -> list[Entry[Any]]:
     entries = [enter_in_force(state) for state in states]
     cited = {source for entry in entries if entry.standing and (source := getattr(entry.record, "source", ""))}
     withdrawn = withdrawn_sources(view.states("source", cited)) if cited else {}
-    return [_withdraw(entry, withdrawn) for entry in entries]
+    return [follow_source(entry, withdrawn) for entry in entries]
 
 
 def withdrawn_sources(states: Iterable[State]) -> Mapping[str, Decision]:
@@ -76,11 +87,23 @@ def withdrawn_sources(states: Iterable[State]) -> Mapping[str, Decision]:
     }
 
 
-def _withdraw(entry: Entry[Any], sources: Mapping[str, Decision]) -> Entry[Any]:
+def word_source(source: str, reason: str) -> str:
+    """The note of what is withdrawn because its source is, at most as long as a note may be."""
+    return f"its source {source} is withdrawn: {reason}"[: LONG.limit].rstrip()
+
+
+def read_origin(view: View, change: int) -> Origin | None:
+    """Where the records of a change came from, if another library's package brought them."""
+    rows = view.added(change, Origin.kind)
+    return restore(rows[0]) if rows else None
+
+
+def follow_source(entry: Entry[Any], sources: Mapping[str, Decision]) -> Entry[Any]:
+    """An entry as it stands with its source: withdrawn, if that is among these."""
     decision = sources.get(getattr(entry.record, "source", ""))
     if decision is None or entry.record.kind not in REVIEWED or entry.standing in ("withdrawn", "declined"):
         return entry
-    note = f"its source {entry.record.source} is withdrawn: {word_cause(decision)}"
+    note = word_source(entry.record.source, word_cause(decision))
     return dataclasses.replace(
         entry, standing="withdrawn", standing_note=note, reviewed_in=decision.change, trial=False
     )
@@ -89,6 +112,12 @@ def _withdraw(entry: Entry[Any], sources: Mapping[str, Decision]) -> Entry[Any]:
 def enter_all(view: View, kind: str) -> list[Entry[Any]]:
     """Every record of a kind, by key, in the revision that counts."""
     return enter_states(view, view.states(kind))
+
+
+def rest_on(view: View, source: str) -> list[Entry[Any]]:
+    """Everything that counts or waits and rests on a source, by kind and key."""
+    entries = enter_states(view, view.linked("source", [source]))
+    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source == source]
 
 
 def read_dossier(view: View, key: str, *, drafts: bool = False) -> Dossier:
@@ -115,7 +144,7 @@ def read_dossier(view: View, key: str, *, drafts: bool = False) -> Dossier:
     withdrawn = withdrawn_sources(of_sources)
     of_kind: dict[str, list[Any]] = {kind: [] for kind in KINDS}
     for entry in entries:
-        of_kind[entry.record.kind].append(_withdraw(entry, withdrawn))
+        of_kind[entry.record.kind].append(follow_source(entry, withdrawn))
     sources: dict[str, Source] = {state.newest.key: restore(state.newest) for state in of_sources}
     return Dossier(
         compound, tuple(of_kind["correlation"]), tuple(of_kind["fixed-point"]), tuple(of_kind["dataset"]),

@@ -8,9 +8,11 @@
     |   |   `-- GaugePressure          a gauge unit without the local atmosphere
     |   |-- InvalidRecord              a record that breaks its invariants
     |   |-- InvalidPackage             a package with bad cells or bad files
+    |   |-- InvalidSheet               a record sheet with bad fields
     |   `-- UnknownKey (LookupError)   no record under that key or name
     |-- Refused (LookupError)          no correlation may answer
     |-- LibraryBusy (TimeoutError)     another writer holds the library
+    |-- Conflict                       records of a package that both sides have revised
     |-- RevisedMeanwhile               somebody else has revised a record since it was read
     `-- LibraryUnreadable (OSError)    there is no library that can be read
         |-- NoLibrary                  nothing is there
@@ -74,14 +76,14 @@ class GaugePressure(BadQuantity):
 
 @dataclass(frozen=True)
 class Problem:
-    """One thing wrong with one field of a record."""
+    """One thing wrong with one field of a record; no field where it is the whole."""
 
     field: str
     given: str
     allowed: str
 
     def __str__(self) -> str:
-        return f"{self.field}: {quote(self.given)} given; {self.allowed}"
+        return f"{self.field}: {quote(self.given)} given; {self.allowed}" if self.field else self.allowed
 
 
 class InvalidRecord(BadInput):
@@ -123,11 +125,24 @@ class InvalidPackage(BadInput):
     def __init__(self, place: str, problems: Sequence[CellProblem]) -> None:
         self.place = place
         self.problems = tuple(problems)
-        count = len(self.problems)
-        head = f"{place} cannot be loaded: {count} problem{'s' if count != 1 else ''}; nothing was changed."
-        shown = [f"  {problem}" for problem in self.problems[:SHOWN_PROBLEMS]]
-        more = [f"  ... and {count - SHOWN_PROBLEMS} more"] if count > SHOWN_PROBLEMS else []
-        super().__init__("\n".join([head, *shown, *more]))
+        super().__init__(_list_problems(f"{place} cannot be loaded", self.problems))
+
+
+def _list_problems(head: str, problems: Sequence[CellProblem | Problem]) -> str:
+    count = len(problems)
+    first = f"{head}: {count} problem{'s' if count != 1 else ''}; nothing was changed."
+    shown = [f"  {problem}" for problem in problems[:SHOWN_PROBLEMS]]
+    more = [f"  ... and {count - SHOWN_PROBLEMS} more"] if count > SHOWN_PROBLEMS else []
+    return "\n".join([first, *shown, *more])
+
+
+class InvalidSheet(BadInput):
+    """A record sheet that cannot be used; every bad field at once."""
+
+    def __init__(self, place: str, problems: Sequence[Problem]) -> None:
+        self.place = place
+        self.problems = tuple(problems)
+        super().__init__(_list_problems(f"{place} cannot be used", self.problems))
 
 
 class UnknownKey(BadInput, LookupError):
@@ -190,6 +205,65 @@ class RevisedMeanwhile(RangebookError):
             "Nothing was recorded. Look at it and start from it."
         )
         super().__init__("\n".join([head, *put_side_by_side(self.mine, self.theirs, f"revision {found}")]))
+
+
+@dataclass(frozen=True)
+class Clash:
+    """A record that two libraries have revised, each its own way.
+
+    Attributes
+    ----------
+    kind, key : str
+        The record.
+    mine, theirs : mapping
+        What the newest revision here says, and what the package says.
+    revision : int
+        The newest revision here.
+    author, recorded_at : str
+        Who recorded it, and when (UTC).
+    """
+
+    kind: str
+    key: str
+    mine: Mapping[str, object]
+    theirs: Mapping[str, object]
+    revision: int
+    author: str
+    recorded_at: str
+
+
+SHOWN_CLASHES = 20
+"""Conflicts that a message shows; the rest are counted."""
+
+
+class Conflict(RangebookError):
+    """A package with records that both sides have revised; nothing was loaded.
+
+    Attributes
+    ----------
+    place : str
+        The package.
+    conflicts : tuple of Clash
+        Every such record, by kind and key.
+    """
+
+    def __init__(self, place: str, conflicts: Sequence[Clash]) -> None:
+        self.place = place
+        self.conflicts = tuple(conflicts)
+        count = len(self.conflicts)
+        what = "1 record was" if count == 1 else f"{count} records were"
+        lines = [
+            f"{place} cannot be loaded as it is: {what} revised on both sides; nothing was loaded. "
+            "Say which counts, with a key or `all`: --ours KEY keeps what is here, "
+            "--theirs KEY takes what the package says, as a draft."
+        ]
+        for clash in self.conflicts[:SHOWN_CLASHES]:
+            when = f"{clash.recorded_at[:19]}Z"
+            lines.append(f"The {clash.kind} {clash.key}, here in revision {clash.revision} by {clash.author}, {when}:")
+            lines += put_side_by_side(clash.mine, clash.theirs, "the package")
+        if count > SHOWN_CLASHES:
+            lines.append(f"... and {count - SHOWN_CLASHES} more")
+        super().__init__("\n".join(lines))
 
 
 def put_side_by_side(mine: Mapping[str, object], theirs: Mapping[str, object], whose: str) -> list[str]:

@@ -6,7 +6,7 @@ from collections.abc import Iterable, Sequence
 from typing import Any
 
 from registry.dossier import Entry
-from registry.entries import enter_in_force, enter_newest
+from registry.entries import enter_in_force, enter_newest, follow_source, withdrawn_sources
 from registry.records import Preference, Record
 from registry.store.history import Draft, Effect
 from registry.store.library_file import View
@@ -45,6 +45,11 @@ class Holdings:
         """The revision that counts, or None."""
         state = self.state(kind, key)
         return enter_in_force(state) if state is not None else None
+
+    def follow_source(self, entry: Entry[Any]) -> Entry[Any]:
+        """An entry as it stands with its source: withdrawn, if that is."""
+        state = self.state("source", getattr(entry.record, "source", ""))
+        return follow_source(entry, withdrawn_sources([state])) if state is not None else entry
 
     def record(self, kind: str, key: str) -> Record | None:
         """The newest revision's record, or None."""

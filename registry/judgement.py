@@ -8,7 +8,6 @@ from typing import Any
 from registry.admission import check_kinship, find_cycle
 from registry.canonical import digest
 from registry.dossier import Entry
-from registry.entries import enter_in_force
 from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey, quote
 from registry.holdings import Holdings, draft_of
 from registry.naming import join_names
@@ -23,7 +22,6 @@ __all__ = [
     "plan_review",
     "plan_withdrawal",
     "propose_withdrawal",
-    "rest_on",
     "withdraw_at_once",
 ]
 
@@ -122,7 +120,20 @@ def plan_review(
     check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
     if isinstance(record, Preference) and standing == "accepted":
         _check_round(holdings, record)
+    if isinstance(record, Withdrawal) and standing == "accepted":
+        _check_aim(holdings, record)
     return Plan((judge(record, entry.revision, standing, note),), record, entry.revision)
+
+
+def _check_aim(holdings: Holdings, withdrawal: Withdrawal) -> None:
+    """What was accepted after the revision to be withdrawn is not taken out with it in silence."""
+    state = holdings.state(withdrawal.of_kind, withdrawal.of_key)
+    decided = state.decision.revision if state is not None and state.decision is not None else 0
+    if decided > int(withdrawal.of_revision):
+        raise BadInput(
+            f"The withdrawal is of revision {withdrawal.of_revision} of the {withdrawal.of_kind} {withdrawal.of_key}; "
+            f"revision {decided} was decided on since. Decline it; `rangebook withdraw` takes out what is in force."
+        )
 
 
 def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> Entry[Any]:
@@ -185,12 +196,6 @@ def plan_withdrawal(
     revision = next_revision(holdings, withdrawal)
     drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]
     return Plan(tuple(drafts), withdrawal, revision)
-
-
-def rest_on(holdings: Holdings, source: str) -> list[Entry[Any]]:
-    """Everything that counts or waits and rests on a source, by kind and key."""
-    entries = (enter_in_force(state) for state in holdings.view.linked("source", [source]))
-    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source == source]
 
 
 def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, accept: bool = False) -> Plan:

@@ -7,50 +7,22 @@ nowhere else.
 from __future__ import annotations
 
 import os
-from collections.abc import Callable
-from dataclasses import dataclass
-from datetime import UTC, datetime
+from collections.abc import Callable, Iterable
 from pathlib import Path
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from registry.archive import Archive
-from registry.cells import SIGNED, TEXT, complain
-from registry.editions import format_time, plan_edition
-from registry.entries import enter_all
-from registry.errors import BadInput, quote
+from registry.editions import plan_edition
+from registry.errors import BadInput
 from registry.holdings import Holdings, draft_of
-from registry.judgement import Plan, accept_at_once, plan_preference, plan_review, plan_withdrawal
-from registry.recording import plan_record, plan_revision
 from registry.records import Keeping, Record
-from registry.store.history import Change
+from registry.signature import Recorded, check_signature, now_utc
 
-__all__ = ["Library", "Recorded", "check_signature", "now_utc"]
+# a lookup judges and records nothing: what does is imported where it is used
+if TYPE_CHECKING:
+    from registry.judgement import Plan
 
-_DUMPED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset", "preference")
-
-
-def now_utc() -> str:
-    """The time now, UTC, ISO 8601 with microseconds."""
-    return format_time(datetime.now(UTC))
-
-
-@dataclass(frozen=True)
-class Recorded:
-    """What a verb has recorded.
-
-    Attributes
-    ----------
-    change : Change
-        The header of the change.
-    record : Record
-        The record that it is about.
-    revision : int
-        Its revision.
-    """
-
-    change: Change
-    record: Record
-    revision: int
+__all__ = ["Library"]
 
 
 class Library(Archive):
@@ -91,6 +63,9 @@ class Library(Archive):
         LibraryBusy
             If another process writes for too long.
         """
+        from registry.judgement import accept_at_once
+        from registry.recording import plan_record
+
         why = reason or f"Recorded {record.kind} {record.key}"
         return self._append(
             author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept))
@@ -127,6 +102,9 @@ class Library(Archive):
             If there is no such record, nothing would change, or the record
             does not fit the library.
         """
+        from registry.judgement import accept_at_once
+        from registry.recording import plan_revision
+
         return self._append(
             author, reason, lambda held: plan_revision(held, record, expect, accept=accept_at_once(held, accept))
         )  # fmt: skip
@@ -153,6 +131,11 @@ class Library(Archive):
         expect : int, optional
             The revision that was looked at.
 
+        Returns
+        -------
+        Recorded
+            The record that was reviewed.
+
         Raises
         ------
         UnknownKey, BadInput
@@ -160,10 +143,14 @@ class Library(Archive):
         RevisedMeanwhile
             If a newer revision waits than the one expected.
         """
+        from registry.judgement import plan_review
+
         standing = "accepted" if accept else "declined"
-        return self._append(
-            author, note, lambda held: plan_review(held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect)
-        )  # fmt: skip
+
+        def plan(held: Holdings) -> Plan:
+            return plan_review(held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect)
+
+        return self._append(author, note, plan)
 
     def withdraw(
         self, key: str, *, author: str, reason: str, cause: str = "other", kind: str = "", accept: bool = False
@@ -194,6 +181,8 @@ class Library(Archive):
         UnknownKey, BadInput
             If there is nothing to withdraw, or its withdrawal waits already.
         """
+        from registry.judgement import accept_at_once, plan_withdrawal
+
         return self._append(
             author,
             reason,
@@ -215,12 +204,19 @@ class Library(Archive):
             Accept it in the same change; only in a library that one person
             keeps.
 
+        Returns
+        -------
+        Recorded
+            The preference, a draft until it is reviewed.
+
         Raises
         ------
         UnknownKey, BadInput
             If one of them is not recorded, they are for different things, the
             preference is recorded already, or it would close a circle.
         """
+        from registry.judgement import accept_at_once, plan_preference
+
         return self._append(
             author,
             reason,
@@ -252,6 +248,13 @@ class Library(Archive):
     def keep(self, *, solo: bool, author: str) -> Recorded | None:
         """Say that one person keeps the library and reviews their own, or that a team does.
 
+        Parameters
+        ----------
+        solo : bool
+            True for one person.
+        author : str
+            Who says so.
+
         Returns
         -------
         Recorded or None
@@ -278,7 +281,7 @@ class Library(Archive):
 
     def load(
         self, path: str | os.PathLike[str], *, author: str, reason: str = "", accept: bool = False,
-        dry_run: bool = False,
+        ours: Iterable[str] = (), theirs: Iterable[str] = (), dry_run: bool = False,
     ) -> dict[str, Any]:  # fmt: skip
         """Load a package in one change: all of it or nothing.
 
@@ -294,6 +297,9 @@ class Library(Archive):
             Review the whole load at once: every record gets the standing that
             the package says. Without, what can change an answer arrives as a
             draft.
+        ours, theirs : iterable of str
+            Keys that both sides have revised: of ``ours`` what is here stays,
+            of ``theirs`` what the package says arrives; ``all`` for the rest.
         dry_run : bool
             Check everything and record nothing.
 
@@ -301,14 +307,20 @@ class Library(Archive):
         -------
         dict
             How many records were ``added``, ``revised``, ``reviewed``,
-            ``proposed`` (withdrawals that wait) and ``unchanged``; the number
-            of the ``change`` (0 if there was nothing to record); under
-            ``changed`` what was revised, reviewed or proposed, a line each.
+            ``proposed`` (withdrawals that wait), ``kept`` (conflicts in which
+            what is here stays) and ``unchanged``; the number of the
+            ``change`` (0 if there was nothing to record); under ``changed``
+            what was revised, reviewed or proposed, a line each.
 
         Raises
         ------
         InvalidPackage
             With every bad cell.
+        Conflict
+            If the package says what is new since an earlier position, both
+            sides have revised a record, and it is not named.
+        BadInput
+            If a key is named that is no conflict.
         LibraryBusy
             If another process writes for too long.
         """
@@ -319,44 +331,10 @@ class Library(Archive):
             raise BadInput("Accepting a whole load at once needs a note that says what was looked at.")
         if dry_run:
             with self._lock, self._reading() as view:
-                plan = plan_load(view, package, accept=accept)
+                plan = plan_load(view, package, accept=accept, ours=ours, theirs=theirs)
                 return {**plan.counts, "change": 0, "changed": plan.changed}
         who, why = check_signature(author, reason or f"Loaded {package.name[:200]}")
         with self._lock, self._file.writing() as (view, append):
-            plan = plan_load(view, package, accept=accept)
+            plan = plan_load(view, package, accept=accept, ours=ours, theirs=theirs)
             number = append(who, why, now_utc(), plan.drafts).number if plan.drafts else 0
         return {**plan.counts, "change": number, "changed": plan.changed}
-
-    def dump(self, path: str | os.PathLike[str]) -> dict[str, int]:
-        """Write everything that counts as a package.
-
-        Of a record with several revisions the one in force is written: a draft
-        that waits over an accepted revision stays behind.
-
-        Parameters
-        ----------
-        path : path
-            A folder that does not exist yet, or a name ending in .zip.
-
-        Returns
-        -------
-        dict of str to int
-            The number of rows of each file, and under ``waiting`` the drafts
-            that stayed behind, if any.
-        """
-        from registry.exchange.dumping import dump_items
-
-        with self._lock, self._reading() as view:
-            entries = [entry for kind in _DUMPED for entry in enter_all(view, kind)]
-        waiting = sum(entry.waiting > 0 for entry in entries)
-        rows = dump_items(Path(path), ((e.record, (e.standing, e.standing_note)) for e in entries))
-        return {**rows, "waiting": waiting} if waiting else rows
-
-
-def check_signature(author: str, reason: str) -> tuple[str, str]:
-    """Who and why, as they are recorded: plain text without blanks around it."""
-    signed = author.strip(), reason.strip()
-    for what, option, cell, text in zip(("author", "reason"), ("--as", "--note"), (TEXT, SIGNED), signed, strict=True):
-        if why := complain(cell, text, required=True):
-            raise BadInput(f"{quote(text)} is no {what} of a change ({option}): {why}")
-    return signed

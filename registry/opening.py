@@ -7,8 +7,9 @@ from pathlib import Path
 
 from registry.errors import BadInput
 from registry.holdings import draft_of
-from registry.library import Library, check_signature, now_utc
+from registry.library import Library
 from registry.records import Keeping
+from registry.signature import check_signature, now_utc
 from registry.store.library_file import LibraryFile, locate
 from registry.store.tables import SCHEMA
 

@@ -6,12 +6,9 @@ from registry.admission import check_identity, check_kinship, check_references, 
 from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey
 from registry.holdings import Holdings, draft_of
 from registry.judgement import Plan, judge
-from registry.records import REVIEWED, Record
+from registry.records import RECORDED, REVIEWED, Record
 
-__all__ = ["RECORDED", "plan_record", "plan_revision"]
-
-RECORDED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset")
-"""Kinds that people record; the others follow from what they decide."""
+__all__ = ["plan_record", "plan_revision"]
 
 
 def plan_record(holdings: Holdings, record: Record, *, accept: bool = False) -> Plan:

@@ -445,12 +445,26 @@ def test_a_preference_is_told_with_its_reason():
 
 
 def test_what_ends_an_accepted_revision():
-    """A withdrawal ends the revision before it; a draft and a declined one leave it in force."""
-    from registry.entries import in_force
+    """A withdrawal ends what was accepted; a newer draft and a declined revision leave it in force."""
+    from registry.entries import enter_in_force
+    from registry.store.reading import Decision, Row, State
 
-    old = invent_correlation(0, 200, 300, "compiled", "", "seen", "accepted")
-    for standing, revision in (("withdrawn", 2), ("accepted", 2), ("draft", 1), ("declined", 1)):
-        assert [e.revision for e in in_force([old, Entry(old.record, 2, 2, standing)])] == [revision]
+    content = invent_correlation(0, 200, 300, "compiled", "", "seen", "accepted").record.content()
+    one, two = (Row("correlation", "inventane-0", revision, revision, content) for revision in (1, 2))
+    said = Row("review", "invented", 1, 3, {"note": "invented"})
+    accepted, again = (Decision(revision, "accepted", 3, said) for revision in (1, 2))
+    withdrawn, declined = Decision(1, "withdrawn", 3, said), Decision(2, "declined", 3, said)
+    for state, expected in (
+        (State(two, one, accepted, accepted), (1, "accepted", 2)),
+        (State(two, one, accepted, declined), (1, "accepted", 0)),
+        (State(two, two, again, again), (2, "accepted", 0)),
+        (State(one, one, withdrawn, withdrawn), (1, "withdrawn", 0)),
+        (State(two, one, withdrawn, withdrawn), (1, "withdrawn", 2)),
+        (State(one, None, None, None), (1, "draft", 0)),
+        (State(two, None, None, declined), (2, "declined", 0)),
+    ):
+        entry = enter_in_force(state)
+        assert (entry.revision, entry.standing, entry.waiting) == expected
 
 
 def test_only_accepted_datasets_confirm(published):

@@ -7,9 +7,11 @@ import subprocess
 import sys
 
 import pytest
+import typer
 from test_exchange import _edit
 
-from registry.cli.app import app, main
+from registry.cli.app import main
+from registry.cli.commands import COMMANDS, Home
 from registry.opening import open_library
 
 ANSWER_KEYS = {
@@ -47,7 +49,7 @@ def test_lookup_json_has_the_promised_shape(run):
     document = json.loads(out)
     assert code == 3
     assert err == ""
-    assert list(document) == ["compound", "property", "answers", "refusals"]
+    assert list(document) == ["compound", "property", "answers", "refusals", "position", "as_of"]
     assert [a["temperature_K"] for a in document["answers"]] == [300.0, 298.15]
     for answer in document["answers"]:
         assert set(answer) == ANSWER_KEYS
@@ -231,8 +233,69 @@ def test_an_explicit_library_must_exist(tmp_path):
 
 def test_commands_are_the_ones_of_the_job():
     """No command is missing, and none is there that nobody asked for."""
-    names = {command.name for command in app.registered_commands}
-    assert names == {"lookup", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade"}
+    assert set(COMMANDS) == {
+        "lookup", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade",
+        "record", "revise", "review", "withdraw", "prefer", "queue", "history", "diff", "freeze", "editions", "verify",
+    }  # fmt: skip
+
+
+@pytest.mark.parametrize("command", COMMANDS)
+def test_only_the_command_asked_for_is_imported(command):
+    """A command loads its own module of commands and no other."""
+    homes = sorted({f"registry.cli.{home.module}" for home in COMMANDS.values()})
+    code = (
+        "import sys, contextlib; from registry.cli.app import main\n"
+        f"with contextlib.suppress(SystemExit): main([{command!r}, '--help'])\n"
+        f"print(*[name for name in {homes} if name in sys.modules], file=sys.stderr)"
+    )
+    done = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, timeout=60, check=True)
+    assert done.stderr.split() == [f"registry.cli.{COMMANDS[command].module}"]
+
+
+def test_help_lists_every_command_with_what_it_does(run):
+    """With no words or --help, each command stands with the first sentence of its help."""
+    _, out, _ = run("--help")
+    lines = out[out.index("Commands:") :].splitlines()[1:]
+    starts = [line.split()[0] for line in lines if line[2:3].strip()]
+    assert starts == list(COMMANDS)
+    assert "lookup    Look up a value at one or more temperatures." in out
+    assert run() == (2, "", out)
+
+
+def test_a_mistyped_command_is_answered_with_the_nearest(run):
+    """Exit code 2, and the command meant."""
+    code, out, err = run("lookpu", "water", "25C")
+    assert (code, out) == (2, "")
+    assert "No such command 'lookpu'. Did you mean 'lookup'?" in err
+
+
+def test_completion_offers_commands_and_the_options_of_one():
+    """What a shell asks for while somebody types is answered from the same table."""
+
+    def complete(line: str, number: int) -> list[str]:
+        done = _shell(_RANGEBOOK_COMPLETE="complete_bash", COMP_WORDS=line, COMP_CWORD=str(number))
+        return done.stdout.split()
+
+    assert complete("rangebook l", 1) == ["lookup", "list", "load"]
+    assert complete("rangebook lookup --un", 2) == ["--unit"]
+
+
+def test_a_command_may_have_subcommands(run, monkeypatch):
+    """A group is listed, told and run like a command; its subcommands are suggested too."""
+    from registry.cli import vocabulary
+
+    def build_group() -> typer.Typer:
+        group = typer.Typer(help="Try things.", no_args_is_help=True, rich_markup_mode=None)
+        group.command("one")(lambda: print("first"))
+        group.command("two")(lambda: print("second"))
+        return group
+
+    monkeypatch.setattr(vocabulary, "trying", build_group, raising=False)
+    monkeypatch.setitem(COMMANDS, "trial", Home("vocabulary", "trying", group=True))
+    assert run("trial", "two") == (0, "second\n", "")
+    assert "trial     Try things." in run("--help")[1]
+    assert "Usage: rangebook trial [OPTIONS] COMMAND" in run("trial", "-h")[1]
+    assert "Did you mean 'two'?" in run("trial", "tow")[2]
 
 
 def test_a_refusal_tells_distances_and_a_dump_what_waits(own_path, tmp_path, monkeypatch, capsys):
@@ -248,7 +311,7 @@ def test_a_refusal_tells_distances_and_a_dump_what_waits(own_path, tmp_path, mon
         library.dump(tmp_path / "package")
         _edit(tmp_path / "package" / "correlations.csv", "water-august", "note", "a draft")
         _edit(tmp_path / "package" / "correlations.csv", "water-august", "standing", "draft")
-        library.load(tmp_path / "package", author="somebody")
+        library.load(tmp_path / "package", author="somebody", reason="invented", accept=True)
     with pytest.raises(SystemExit):
         main(["dump", str(tmp_path / "dump")])
     assert "stayed behind: 1." in capsys.readouterr().out

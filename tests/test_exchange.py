@@ -25,6 +25,8 @@ from registry.records import KINDS, Correlation, Source
 from registry.shelves import find_shelf
 
 SHELVES = ("published", "scenario")
+REVIEWED = {"accept": True, "reason": "compared with the package"}
+"""A load that gives the standings of the package at once."""
 
 # the columns of correlations.csv that every package has, in order
 CORRELATION_COLUMNS = """
@@ -43,7 +45,7 @@ def test_dump_and_load_are_faithful(shelf, tmp_path, request):
     library = request.getfixturevalue(shelf)
     library.dump(tmp_path / "first")
     with start_library(tmp_path / "copy.db", "none") as copy:
-        counts = copy.load(tmp_path / "first", author="somebody")
+        counts = copy.load(tmp_path / "first", author="somebody", **REVIEWED)
         assert counts["unchanged"] == counts["revised"] == 0
         copy.dump(tmp_path / "second")
         assert _files_of(tmp_path / "first") == _files_of(tmp_path / "second")
@@ -74,7 +76,7 @@ def test_a_folder_and_a_zip_hold_the_same(shelf, tmp_path, request):
     with zipfile.ZipFile(tmp_path / "one.zip") as archive:
         assert {name: archive.read(name) for name in archive.namelist()} == _files_of(tmp_path / "folder")
     with start_library(tmp_path / "copy.db", "none") as copy:
-        assert copy.load(tmp_path / "one.zip", author="somebody")["change"] == 1
+        assert copy.load(tmp_path / "one.zip", author="somebody")["change"] == 2
 
 
 @pytest.mark.parametrize("shelf", SHELVES)
@@ -118,7 +120,7 @@ def test_only_what_differs_becomes_a_revision(own_path, tmp_path):
         _edit(table, "water-august", "note", "an edited note")
         _edit(table, "water-himmelblau", "standing", "withdrawn")
         _edit(table, "water-himmelblau", "standing_note", "an invented erratum")
-        counts = library.load(tmp_path / "package", author="somebody", reason="edited")
+        counts = library.load(tmp_path / "package", author="somebody", **REVIEWED)
         assert (counts["added"], counts["revised"], counts["reviewed"]) == (0, 1, 1)
         edited, withdrawn = library.entry("water-august"), library.entry("water-himmelblau")
         assert (edited.revision, edited.record.note, edited.standing) == (2, "an edited note", "accepted")
@@ -126,6 +128,20 @@ def test_only_what_differs_becomes_a_revision(own_path, tmp_path):
         assert library.entry("water-if97").revision == 1
         library.dump(tmp_path / "again")
         assert _files_of(tmp_path / "again") == _files_of(tmp_path / "package")
+
+
+def test_a_withdrawal_in_a_package_is_proposed_once(own_path, tmp_path):
+    """Loading the same package again, while its withdrawal waits for review, records nothing."""
+    with open_library(own_path) as library:
+        library.dump(tmp_path / "package")
+        table = tmp_path / "package" / "correlations.csv"
+        _edit(table, "water-himmelblau", "standing", "withdrawn")
+        _edit(table, "water-himmelblau", "standing_note", "an invented erratum")
+        first = library.load(tmp_path / "package", author="somebody")
+        assert (first["proposed"], len(library.queue())) == (1, 1)
+        again = library.load(tmp_path / "package", author="somebody")
+        assert (again["proposed"], again["change"]) == (0, 0)
+        assert [item.revision for item in library.queue()] == [1]
 
 
 def test_a_withdrawal_is_not_taken_back_in_silence(own_path, tmp_path):
@@ -136,15 +152,15 @@ def test_a_withdrawal_is_not_taken_back_in_silence(own_path, tmp_path):
         table = tmp_path / "withdrawing" / "correlations.csv"
         _edit(table, "water-himmelblau", "standing", "withdrawn")
         with pytest.raises(InvalidPackage, match="a record that is withdrawn says why"):
-            library.load(tmp_path / "withdrawing", author="somebody")
+            library.load(tmp_path / "withdrawing", author="somebody", **REVIEWED)
         _edit(table, "water-himmelblau", "standing_note", "an invented erratum")
-        counts = library.load(tmp_path / "withdrawing", author="somebody")
+        counts = library.load(tmp_path / "withdrawing", author="somebody", **REVIEWED)
         assert counts["changed"] == ("correlation water-himmelblau: accepted -> withdrawn",)
         with pytest.raises(InvalidPackage, match="to accept it again say why"):
-            library.load(tmp_path / "older", author="somebody")
+            library.load(tmp_path / "older", author="somebody", **REVIEWED)
         assert library.entry("water-himmelblau").standing == "withdrawn"
         _edit(tmp_path / "older" / "correlations.csv", "water-himmelblau", "standing_note", "the erratum was wrong")
-        assert library.load(tmp_path / "older", author="somebody")["reviewed"] == 1
+        assert library.load(tmp_path / "older", author="somebody", **REVIEWED)["reviewed"] == 1
         assert library.entry("water-himmelblau").standing == "accepted"
 
 
@@ -187,11 +203,10 @@ def test_a_draft_revision_leaves_the_accepted_one_in_force(own_path, tmp_path):
         table = tmp_path / "package" / "correlations.csv"
         key = before.correlation.key
         _edit(table, key, "note", "a draft of a correction")
-        _edit(table, key, "standing", "draft")
         library.load(tmp_path / "package", author="somebody")
         after = library.lookup("ethanol", 300.0)
         assert (after.correlation.key, after.revision, after.value) == (key, 1, before.value)
-        assert library.entry(key).revision == 2
+        assert (library.entry(key).revision, library.entry(key).waiting) == (1, 2)
 
 
 @pytest.mark.parametrize("shelf", SHELVES)
@@ -241,7 +256,7 @@ def test_the_columns_are_those_that_the_format_promises():
         "datasets.csv", "points.csv", "preferences.csv",
     }  # fmt: skip
     written = {getattr(file.record, "kind", "point") for file in FILES.values()}
-    assert written == {*KINDS, "point"} - {"review"}
+    assert written == {*KINDS, "point"} - {"review", "withdrawal", "edition", "library", "origin"}
 
 
 def test_columns_that_may_be_left_out_may_be_left_out(tmp_path):
@@ -309,7 +324,7 @@ def test_a_damaged_package_is_refused_whole_or_loads(data, tmp_path_factory):
         else:
             named = set()
         assert named <= {*FILES, "datapackage.json"}
-        assert library.position == (0 if named else 1)
+        assert library.position == (1 if named else 2)
 
 
 def test_the_descriptor_describes_every_column():
@@ -335,9 +350,9 @@ def test_an_edited_standing_note_is_a_review(own_path, tmp_path):
     with open_library(own_path) as library:
         library.dump(tmp_path / "package")
         _edit(tmp_path / "package" / "correlations.csv", "water-august", "standing_note", "looked at again")
-        assert library.load(tmp_path / "package", author="somebody")["reviewed"] == 1
+        assert library.load(tmp_path / "package", author="somebody", **REVIEWED)["reviewed"] == 1
         assert library.entry("water-august").standing_note == "looked at again"
-        assert library.load(tmp_path / "package", author="somebody")["change"] == 0
+        assert library.load(tmp_path / "package", author="somebody", **REVIEWED)["change"] == 0
 
 
 def test_a_new_revision_is_reviewed_anew(own_path, tmp_path):
@@ -347,7 +362,7 @@ def test_a_new_revision_is_reviewed_anew(own_path, tmp_path):
         table = tmp_path / "package" / "correlations.csv"
         for number in (2, 3):
             _edit(table, "water-august", "note", f"edit {number}")
-            library.load(tmp_path / "package", author="somebody")
+            library.load(tmp_path / "package", author="somebody", **REVIEWED)
             entry = library.entry("water-august")
             assert (entry.revision, entry.standing) == (number, "accepted")
 
@@ -363,7 +378,7 @@ def test_a_preference_stays_in_force_while_a_later_one_waits(later, tmp_path):
         _edit(table, key, "reason", "another reason")
         _edit(table, key, "standing", later)
         _edit(table, key, "standing_note", "invented")
-        library.load(_only(tmp_path / "package", "preferences.csv"), author="somebody")
+        library.load(_only(tmp_path / "package", "preferences.csv"), author="somebody", **REVIEWED)
         with open_library(tmp_path / "library.db") as again:
             assert again.dossier("tallowane").preferred() == before != frozenset()
 
@@ -382,7 +397,7 @@ def test_a_preference_in_force_counts_against_a_circle(tmp_path):
                 writer.writeheader()
                 writer.writerow(row)
             if row is declined:
-                library.load(package, author="somebody")
+                library.load(package, author="somebody", **REVIEWED)
         with pytest.raises(InvalidPackage, match="round in a circle"):
             library.load(package, author="somebody")
 
@@ -396,7 +411,7 @@ def test_loading_a_dump_back_adds_nothing_though_a_draft_waits(own_path, tmp_pat
         library.load(tmp_path / "package", author="somebody")
         library.dump(tmp_path / "again")
         assert library.load(tmp_path / "again", author="somebody")["change"] == 0
-        assert library.entry("water-august").revision == 2
+        assert (library.entry("water-august").revision, library.entry("water-august").waiting) == (1, 2)
 
 
 def test_one_bad_row_hides_no_dangling_reference(tmp_path):
@@ -416,7 +431,7 @@ def test_the_folder_one_stands_in_can_be_loaded(tmp_path, monkeypatch):
     """`rangebook load .` loads the package in the working folder."""
     with start_library(tmp_path / "library.db", "none") as library:
         monkeypatch.chdir(find_shelf("scenario"))
-        assert library.load(".", author="somebody")["change"] == 1
+        assert library.load(".", author="somebody")["change"] == 2
 
 
 def test_a_zip_with_an_entry_twice_is_refused(tmp_path):

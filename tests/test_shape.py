@@ -20,7 +20,7 @@ MODULES = sorted(
 
 LAYERS = (
     # what stands lower never imports what stands higher; within a layer, modules may import each other
-    {"refusals", "numerals", "rules", "canonical", "merkle", "naming", "polynomial"},
+    {"refusals", "numerals", "rules", "canonical", "merkle", "naming", "polynomial", "sampling"},
     {"errors"},
     {"quantities", "properties", "cells", "scales", "shelves"},
     {"display"},
@@ -31,25 +31,28 @@ LAYERS = (
     {"confirmation"},
     {"limits"},
     {"candidate"},
-    {"ranking", "evaluation"},
+    {"ranking", "evaluation", "deviation"},
     {"coverage"},
+    {"comparison"},
     {"verdicts"},
     {"answers"},
     {"store", "exchange"},
     {"entries"},
     {"holdings"},
-    {"judgement", "waiting"},
-    {"recording", "arrival", "editions"},
+    {"judgement", "waiting", "chronicle"},
+    {"difference"},
+    {"recording", "reconciliation", "arrival", "editions", "departure"},
     {"collection"},
     {"reader"},
     {"archive"},
+    {"signature"},
     {"library"},
     {"opening"},
     {"cli"},
 )
 NUMERIC = {
-    "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "verdicts",
-    "answers", "forms", "scales", "quantities", "records", "uncertainty",
+    "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
+    "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 

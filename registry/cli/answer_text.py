@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from registry.answers import Answer, Refusal
 from registry.cli.documents import value_in
-from registry.cli.screen import CAUTION, emphasize, print_facts, print_table, say, wrap
+from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
 from registry.display import format_number, format_plain
@@ -18,13 +18,15 @@ _BASIS = {"printed": "as printed", "assumed": "assumed, not printed", "memory": 
 _OBTAINED = {"seen": "seen in the source", "memory": "from memory"}
 
 
-def print_answers(coverage: Coverage, found: list[tuple[Asked, Answer | Refusal]], to: Unit | None, why: bool) -> None:
+def print_answers(
+    coverage: Coverage, label: str, found: list[tuple[Asked, Answer | Refusal]], to: Unit | None, why: bool
+) -> None:
     """A table of values, then what stands behind them, once for each correlation."""
     answers = [(asked, result) for asked, result in found if isinstance(result, Answer)]
     if not answers:
         return
     name = coverage.dossier.compound.record.name
-    say(emphasize(f"{name}: {PROPERTIES[coverage.property].title}"))
+    say(emphasize(f"{name}: {PROPERTIES[coverage.property].title}{name_past(label)}"))
     say()
     _print_values(answers, to)
     stories: dict[str, list[tuple[Asked, Answer]]] = {}
@@ -45,13 +47,18 @@ def _print_values(answers: list[tuple[Asked, Answer]], to: Unit | None) -> None:
         value, unit = value_in(answer, to)
         stated = answer.uncertainty_percent
         rows.append([
-            asked.text, f"{format_plain(answer.temperature)} K", format_number(value), unit.name,
+            asked.text, f"{format_plain(answer.temperature)} K", format_number(value), unit.name + _mark(answer),
             f"{stated:.3g} %" if stated is not None else "none",
             f"{answer.percent_per_kelvin:+.3g} %", f"x {answer.factor_per_10_kelvin:.4g}",
             answer.correlation.obtained, answer.correlation.key,
         ])  # fmt: skip
     headers = ["asked", "is", "value", "", "stated", "per K", "per 10 K", "obtained", "answered by"]
     print_table(headers, rows, right=(True, True, True, False, True, True, True))
+
+
+def _mark(answer: Answer) -> str:
+    """Beside the unit of a value that a draft gives."""
+    return "" if answer.standing == "accepted" else f" ({answer.standing.upper()})"
 
 
 def _print_story(told: list[tuple[Asked, Answer]]) -> None:

@@ -22,31 +22,35 @@ from typing import Annotated, Any, NoReturn
 
 import typer
 
-from registry.cli.browsing import coverage, list_records, show
-from registry.cli.keeping import dump, load, start, upgrade
-from registry.cli.looking import REFUSED, lookup
+from registry.cli.commands import CommandTable
 from registry.cli.screen import complain, print_json
-from registry.cli.vocabulary import forms
-from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, quote
+from registry.errors import (
+    BadInput,
+    Conflict,
+    LibraryBusy,
+    LibraryUnreadable,
+    RangebookError,
+    Refused,
+    RevisedMeanwhile,
+    quote,
+)
 
 __all__ = ["main"]
 
-EXIT_CODES = ((Refused, REFUSED), (LibraryBusy, 4), (LibraryUnreadable, 5), (RangebookError, 2))
+EXIT_CODES = (
+    (Refused, 3), (LibraryBusy, 4), (RevisedMeanwhile, 4), (Conflict, 4), (LibraryUnreadable, 5), (RangebookError, 2),
+)  # fmt: skip
 FAULT = 70
 
 app = typer.Typer(
     name="rangebook",
+    cls=CommandTable,
     no_args_is_help=True,
     rich_markup_mode=None,
     pretty_exceptions_enable=False,
     add_completion=True,
     context_settings={"help_option_names": ["-h", "--help"]},
 )
-for command, name in (
-    (lookup, "lookup"), (coverage, "coverage"), (list_records, "list"), (show, "show"),
-    (forms, "forms"), (start, "start"), (load, "load"), (dump, "dump"), (upgrade, "upgrade"),
-):  # fmt: skip
-    app.command(name)(command)
 
 
 def _print_version(wanted: bool) -> None:
@@ -112,10 +116,11 @@ def _refuse_surrogates(arguments: list[str]) -> None:
             raise BadInput(f"{quote(word)} is no text in UTF-8. Type it again, or set the terminal to UTF-8.")
 
 
-def _describe_error(kind: str, message: str, code: int, problems: Sequence[Any] = ()) -> dict[str, Any]:
+def _describe_error(kind: str, message: str, code: int, **listed: Sequence[Any]) -> dict[str, Any]:
     described: dict[str, Any] = {"kind": kind, "message": message, "exit_code": code}
-    if problems:
-        described["problems"] = [dataclasses.asdict(problem) for problem in problems]
+    for name, entries in listed.items():
+        if entries:
+            described[name] = [dataclasses.asdict(entry) for entry in entries]
     return {"error": described}
 
 
@@ -125,6 +130,7 @@ def _stop(given: list[str], error: Exception, code: int, message: str) -> NoRetu
         raise error
     if "--json" in given:
         with contextlib.suppress(OSError):  # there may be no room left to say it
-            print_json(_describe_error(type(error).__name__, message, code, getattr(error, "problems", ())))
+            listed = {name: getattr(error, name, ()) for name in ("problems", "conflicts")}
+            print_json(_describe_error(type(error).__name__, message, code, **listed))
     complain(message)
     sys.exit(code)

@@ -8,17 +8,23 @@ from typing import Annotated, Any
 import typer
 
 from registry.cli.options import (
+    AsOfOption,
+    DraftsOption,
+    EditionOption,
     JsonOption,
     LibraryOption,
     MetastableOption,
     PhaseOption,
     PropertyOption,
+    look_at,
     open_chosen,
 )
 
 
 def list_records(
     search: Annotated[str, typer.Argument(metavar="[TEXT]", help="Only compounds with this in a name.")] = "",
+    edition: EditionOption = "",
+    as_of: AsOfOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -26,10 +32,11 @@ def list_records(
 
     Example: rangebook list
     """
-    from registry.cli.screen import emphasize, print_json, print_table, say
+    from registry.cli.screen import emphasize, name_past, print_json, print_table, say
     from registry.properties import PROPERTIES
 
-    with open_chosen(library) as book:
+    with open_chosen(library) as opened:
+        book, label = look_at(opened, edition, as_of)
         wanted = search.casefold()
         compounds = [
             entry.record
@@ -50,10 +57,11 @@ def list_records(
             }
             for c in compounds
         ]  # fmt: skip
-        print_json({"library": place, "position": position, "compounds": rows})
+        print_json({"library": place, "position": position, "as_of": label or None, "compounds": rows})
         return
     short = ("vapour", "sublim.", "melting", "enthalpy", "density")
-    say(f"{emphasize(str(len(compounds)))} compounds in {place}, position {position}; accepted correlations for each.")
+    where = f"{place}, position {position}{name_past(label)}"
+    say(f"{emphasize(str(len(compounds)))} compounds in {where}; accepted correlations for each.")
     say()
     table = [
         [c.key, c.formula, c.cas, f"{c.grams_per_mole():.4f}", *(str(counts[c.key, p] or "") for p in PROPERTIES)]
@@ -64,6 +72,8 @@ def list_records(
 
 def show(
     key: Annotated[str, typer.Argument(help="Key of a compound, source, correlation, dataset or fixed point.")],
+    edition: EditionOption = "",
+    as_of: AsOfOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -75,10 +85,11 @@ def show(
     from registry.cli.record_text import print_record
     from registry.cli.screen import print_json
 
-    with open_chosen(library) as book:
+    with open_chosen(library) as opened:
+        book, label = look_at(opened, edition, as_of)
         entry = book.entry(key)
         related = book.referring(entry.record.kind, entry.key)
-        changes = {change.number: change for change in book.changes()}
+        changes = {number: book.change(number) for number in (entry.change, entry.reviewed_in) if number}
         if as_json:
             document = {**describe_entry(entry), "recorded": describe_change(changes[entry.change])}
             if entry.reviewed_in:
@@ -87,7 +98,7 @@ def show(
                 document["citation"] = book.source_citation(entry.record.source)
             print_json({**document, "referred_to_by": [describe_entry(other) for other in related]})
             return
-        print_record(book, entry, related, changes)
+        print_record(book, label, entry, related, changes)
 
 
 def coverage(
@@ -95,6 +106,9 @@ def coverage(
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
     metastable: MetastableOption = False,
+    drafts: DraftsOption = False,
+    edition: EditionOption = "",
+    as_of: AsOfOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -106,9 +120,10 @@ def coverage(
     from registry.cli.documents import describe_coverage
     from registry.cli.screen import print_json
 
-    with open_chosen(library) as book:
-        found = book.coverage(compound, property=prop, phase=phase or None, metastable=metastable)
+    with open_chosen(library) as opened:
+        book, label = look_at(opened, edition, as_of)
+        found = book.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         if as_json:
-            print_json(describe_coverage(found))
+            print_json({**describe_coverage(found), "position": found.dossier.position, "as_of": label or None})
         else:
-            print_coverage(found)
+            print_coverage(found, label)

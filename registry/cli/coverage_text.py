@@ -6,7 +6,7 @@ import math
 import sys
 
 from registry.candidate import Candidate
-from registry.cli.screen import emphasize, print_table, say, width
+from registry.cli.screen import emphasize, name_past, print_table, say, width
 from registry.coverage import Coverage, Stretch
 from registry.display import format_plain
 from registry.properties import PROPERTIES
@@ -19,10 +19,10 @@ _THIN = 1e-6
 _COLOURS = ("36", "33", "35", "32", "34", "31")
 
 
-def print_coverage(coverage: Coverage) -> None:
+def print_coverage(coverage: Coverage, label: str = "") -> None:
     """Bars, gaps, seams and phase limits of one property of a compound."""
     name = coverage.dossier.compound.record.name
-    say(emphasize(f"{name}: {PROPERTIES[coverage.property].title}, who answers where"))
+    say(emphasize(f"{name}: {PROPERTIES[coverage.property].title}, who answers where{name_past(label)}"))
     say()
     if not coverage.candidates:
         say(f"  No correlation is recorded for {coverage.property}.")
@@ -43,7 +43,7 @@ def _print_bars(coverage: Coverage) -> None:
     for number, candidate in enumerate(shown):
         bar = "".join(_mark(coverage, candidate, low, high, room, cell, marks) for cell in range(room))
         colour = _COLOURS[number % len(_COLOURS)] if _answers(coverage, candidate) else "2"
-        counted = candidate.counted.evidence if candidate.entry.accepted else candidate.entry.standing
+        counted = candidate.counted.evidence if candidate.entry.standing == "accepted" else candidate.entry.standing
         say(f"  {candidate.key.ljust(label)}  {emphasize(bar, colour)}  {counted}")
     _print_axis(low, high, room, label, marks)
     several = f"   {marks[4]} several phases" if any(s.phases for s in coverage.stretches) else ""

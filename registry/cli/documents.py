@@ -13,7 +13,15 @@ from registry.dossier import Entry
 from registry.limits import Limits
 from registry.quantities import UNITS, Unit, convert
 
-__all__ = ["describe_answer", "describe_change", "describe_coverage", "describe_entry", "describe_refusal", "value_in"]
+__all__ = [
+    "describe_answer",
+    "describe_change",
+    "describe_coverage",
+    "describe_entry",
+    "describe_fields",
+    "describe_refusal",
+    "value_in",
+]
 
 
 def value_in(answer: Answer, to: Unit | None) -> tuple[float, Unit]:
@@ -112,8 +120,14 @@ def describe_change(change: Any) -> dict[str, Any]:
     }
 
 
+def describe_fields(fields: Any) -> list[dict[str, Any]]:
+    """What differs field by field; null where there is nothing."""
+    return [{"field": f.name, "before": f.before or None, "after": f.after or None} for f in fields]
+
+
 def describe_entry(entry: Entry[Any]) -> dict[str, Any]:
     """A record with its revision, standing and change."""
     content = {"kind": entry.record.kind, "key": entry.key, **entry.record.content()}
     standing = {"standing": entry.standing, "standing_note": entry.standing_note} if entry.standing else {}
-    return {**content, "revision": entry.revision, "change": entry.change, **standing}
+    waiting = {"waiting": entry.waiting} if entry.waiting else {}
+    return {**content, "revision": entry.revision, "change": entry.change, **standing, **waiting}

@@ -6,13 +6,30 @@ from typing import Annotated
 
 import typer
 
-from registry.cli.options import AuthorOption, JsonOption, LibraryOption, name_author, open_chosen
+from registry.cli.options import (
+    AsOfOption,
+    AuthorOption,
+    EditionOption,
+    JsonOption,
+    LibraryOption,
+    look_at,
+    name_author,
+    open_chosen,
+)
 
 
 def start(
     shelf: Annotated[
         str, typer.Option("--shelf", metavar="published|scenario|none", help="What it begins with.")
     ] = "published",
+    solo: Annotated[
+        bool | None,
+        typer.Option(
+            "--solo/--team",
+            help="One person keeps it and reviews their own, or a team does; also for a library that is there.",
+            show_default=False,
+        ),
+    ] = None,
     author: AuthorOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
@@ -27,9 +44,12 @@ def start(
 
     place = default_place() if library is None else library
     try:
-        with start_library(place, shelf, name_author(author)) as book:
+        with start_library(place, shelf, name_author(author), solo=bool(solo)) as book:
             compounds, position = len(book.compounds()), book.position
     except FileExistsError:
+        if solo is not None:
+            _keep(place, solo, author, as_json)
+            return
         raise BadInput(f"Something is at {place} already; it was left as it is. Give another --library.") from None
     if as_json:
         print_json({"library": str(place), "shelf": shelf, "compounds": compounds, "position": position})
@@ -37,10 +57,41 @@ def start(
         say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
 
 
+def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
+    """Say of a library that is there who keeps it."""
+    from registry.cli.screen import print_json, say
+
+    with open_chosen(place) as book:
+        done = book.keep(solo=solo, author=name_author(author))
+    kept_by = "one person" if solo else "a team"
+    if as_json:
+        print_json({"library": str(place), "kept_by": kept_by, "change": done.change.number if done else None})
+    elif done is None:
+        say(f"{place} is kept by {kept_by} already.")
+    else:
+        say(f"Change {done.change.number}: {place} is kept by {kept_by}.")
+
+
+_TOLD = ("added", "revised", "reviewed", "proposed", "kept", "unchanged")
+_SELDOM = ("proposed", "kept")
+"""Counts that are told only where there are any."""
+
+
 def load(
     package: Annotated[str, typer.Argument(help="A folder or .zip with datapackage.json.")],
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Check everything, record nothing.")] = False,
-    note: Annotated[str, typer.Option("--note", help="Why it is loaded.", show_default=False)] = "",
+    accept: Annotated[
+        bool, typer.Option("--accept", help="Review the whole load at once; needs --note. Else it arrives as drafts.")
+    ] = False,
+    note: Annotated[str, typer.Option("--note", help="Why it is loaded; what was looked at.", show_default=False)] = "",
+    ours: Annotated[
+        list[str] | None,
+        typer.Option("--ours", metavar="KEY", help="Revised on both sides: keep what is here (all for the rest)."),
+    ] = None,
+    theirs: Annotated[
+        list[str] | None,
+        typer.Option("--theirs", metavar="KEY", help="Revised on both sides: take theirs (all for the rest)."),
+    ] = None,
     author: AuthorOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
@@ -53,11 +104,14 @@ def load(
 
     _refuse_empty(package)
     with open_chosen(library) as book:
-        counts = book.load(package, author=name_author(author), reason=note, dry_run=dry_run)
+        counts = book.load(
+            package, author=name_author(author), reason=note, accept=accept, ours=ours or (), theirs=theirs or (),
+            dry_run=dry_run,
+        )  # fmt: skip
     if as_json:
         print_json({"package": str(package), "dry_run": dry_run, **counts})
         return
-    told = ", ".join(f"{counts[word]} {word}" for word in ("added", "revised", "reviewed", "unchanged"))
+    told = ", ".join(f"{counts[word]} {word}" for word in _TOLD if counts[word] or word not in _SELDOM)
     for line in counts["changed"][:20]:
         say(f"  {line}")
     if len(counts["changed"]) > 20:
@@ -66,29 +120,38 @@ def load(
         say(f"{package} can be loaded: {told}. Nothing was recorded (--dry-run).")
     elif counts["change"]:
         say(f"Loaded {package} as change {counts['change']}: {told}.")
+        if not accept:
+            say("What can change an answer waits for review: `rangebook queue` lists it.")
     else:
         say(f"Everything in {package} is there already ({told}); nothing was recorded.")
 
 
 def dump(
     package: Annotated[str, typer.Argument(help="A new folder, or a new name ending in .zip.")],
+    since: Annotated[
+        str | None,
+        typer.Option("--since", metavar="EDITION|CHANGE|DATE", help="Only what is new since then.", show_default=False),
+    ] = None,
+    edition: EditionOption = "",
+    as_of: AsOfOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Write the whole library as an open Tabular Data Package.
+    """Write the whole library, or what is new, as an open Tabular Data Package.
 
-    Example: rangebook dump library.zip
+    Example: rangebook dump new.zip --since 2026-Q4
     """
-    from registry.cli.screen import print_json, say
+    from registry.cli.screen import name_past, print_json, say
 
     _refuse_empty(package)
     with open_chosen(library) as book:
-        rows = book.dump(package)
+        past, label = look_at(book, edition, as_of)
+        rows = past.dump(package, since)
     waiting = rows.pop("waiting", 0)
     if as_json:
-        print_json({"package": str(package), "rows": rows, "waiting": waiting})
+        print_json({"package": str(package), "as_of": label or None, "rows": rows, "waiting": waiting})
         return
-    say(f"Wrote {package}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
+    say(f"Wrote {package}{name_past(label)}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
         say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
 

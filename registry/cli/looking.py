@@ -7,11 +7,15 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import (
+    AsOfOption,
+    DraftsOption,
+    EditionOption,
     JsonOption,
     LibraryOption,
     MetastableOption,
     PhaseOption,
     PropertyOption,
+    look_at,
     open_chosen,
 )
 
@@ -36,6 +40,9 @@ def lookup(
         str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
     ] = "",
     metastable: MetastableOption = False,
+    drafts: DraftsOption = False,
+    edition: EditionOption = "",
+    as_of: AsOfOption = "",
     why: Annotated[bool, typer.Option("--why", help="Every candidate with its verdict.")] = False,
     library: LibraryOption = None,
     as_json: JsonOption = False,
@@ -54,14 +61,17 @@ def lookup(
     asked = read_temperatures(temperatures)
     with open_chosen(library) as book:
         to = _choose_unit(unit, atmosphere, prop)
-        coverage = book.coverage(compound, property=prop, phase=phase or None, metastable=metastable)
+        past, label = look_at(book, edition, as_of)
+        coverage = past.coverage(
+            compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts
+        )  # fmt: skip
         # all at the one position that this coverage was read at
         found = [(one, _answer(coverage, one)) for one in asked]
         refusals = [result for _, result in found if not isinstance(result, Answer)]
         if as_json:
-            print_json(_describe(coverage.dossier.compound.key, prop, found, to))
+            print_json(_describe(coverage, label, found, to))
         else:
-            print_answers(coverage, found, to, why)
+            print_answers(coverage, label, found, to, why)
             for refusal in refusals:
                 complain(f"Refused ({refusal.reason}): {refusal.explanation}")
     if refusals:
@@ -100,13 +110,15 @@ def _read_atmosphere(text: str) -> Any:
         raise BadQuantity(text, "the local atmosphere is an absolute pressure, such as 101.325kPa.") from None
 
 
-def _describe(compound: str, prop: str, found: list[tuple[Asked, Answer | Refusal]], to: Any) -> dict[str, Any]:
+def _describe(coverage: Coverage, label: str, found: list[tuple[Asked, Answer | Refusal]], to: Any) -> dict[str, Any]:
     from registry.answers import Answer
     from registry.cli.documents import describe_answer, describe_refusal
 
     return {
-        "compound": compound,
-        "property": prop,
+        "compound": coverage.dossier.compound.key,
+        "property": coverage.property,
         "answers": [describe_answer(result, to) for _, result in found if isinstance(result, Answer)],
         "refusals": [describe_refusal(result) for _, result in found if not isinstance(result, Answer)],
+        "position": coverage.dossier.position,
+        "as_of": label or None,
     }

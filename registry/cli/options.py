@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Annotated
 import typer
 
 if TYPE_CHECKING:
+    from registry.archive import Archive
     from registry.library import Library
 
 LibraryOption = Annotated[
@@ -30,6 +31,29 @@ PhaseOption = Annotated[
 MetastableOption = Annotated[
     bool, typer.Option("--metastable", help="Let metastable ranges answer that records state.")
 ]
+DraftsOption = Annotated[
+    bool, typer.Option("--drafts", help="Let drafts of correlations answer; every such value is marked.")
+]
+EditionOption = Annotated[
+    str, typer.Option("--edition", metavar="NAME", help="As the library was in this edition.", show_default=False)
+]
+AsOfOption = Annotated[
+    str,
+    typer.Option(
+        "--as-of",
+        metavar="DATE|CHANGE",
+        help="As the library was: at the end of a day (UTC), at a time such as 2026-12-01T12:00Z, or at a change.",
+        show_default=False,
+    ),
+]
+ReasonOption = Annotated[str, typer.Option("--reason", metavar="TEXT", help="Why.", show_default=False)]
+AcceptOption = Annotated[
+    bool, typer.Option("--accept", help="Accept it in the same change; in a library that one person keeps.")
+]
+KindOption = Annotated[
+    str,
+    typer.Option("--kind", metavar="KIND", help="The kind of record, where several have the key.", show_default=False),
+]
 AuthorOption = Annotated[
     str,
     typer.Option(
@@ -43,6 +67,21 @@ def open_chosen(place: str | None) -> Library:
     from registry.opening import open_library
 
     return open_library(place)
+
+
+def look_at(book: Library, edition: str, as_of: str) -> tuple[Archive, str]:
+    """The library as the options want it, and how its position is called; no text for the newest."""
+    if edition and as_of:
+        from registry.errors import BadInput
+
+        raise BadInput("Both --edition and --as-of were given. Give one of them.")
+    if edition:
+        found = book.edition(edition)
+        return book.at(int(found.position)), f"edition {found.name}, change {found.position}"
+    if as_of:
+        position = book.find_position(as_of)
+        return book.at(position), f"change {position}" if as_of == str(position) else f"{as_of}, change {position}"
+    return book, ""
 
 
 def name_author(given: str) -> str:

@@ -5,20 +5,23 @@ from __future__ import annotations
 import dataclasses
 from typing import Any
 
-from registry.cli.screen import emphasize, print_facts, print_table, say
+from registry.archive import Archive
+from registry.cli.screen import emphasize, name_past, print_facts, print_table, say
 from registry.dossier import Entry
+from registry.exchange.coefficients import join_coefficients
 from registry.forms.catalogue import FORMS
-from registry.library import Library
 from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
 
 __all__ = ["print_record"]
 
 
-def print_record(book: Library, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Any]) -> None:
+def print_record(
+    book: Archive, label: str, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Any]
+) -> None:
     """A record, who recorded it, and what refers to it."""
     record = entry.record
     standing = f", {entry.standing}" if entry.standing else ""
-    say(f"{emphasize(record.key)}: {record.kind}, revision {entry.revision}{standing}")
+    say(f"{emphasize(record.key)}: {record.kind}, revision {entry.revision}{standing}{name_past(label)}")
     source = getattr(record, "source", "")
     print_facts(
         [
@@ -26,6 +29,7 @@ def print_record(book: Library, entry: Entry[Any], related: list[Entry[Any]], ch
             ("citation", book.source_citation(source) if source else ""),
             ("review", _word_review(entry, changes)),
             ("recorded", _word_change(changes[entry.change])),
+            ("waiting", f"revision {entry.waiting} waits for review" if entry.waiting else ""),
         ]
     )
     if isinstance(record, Dataset):
@@ -61,7 +65,7 @@ def _correlation_facts(record: Correlation) -> list[tuple[str, str]]:
         ("property", f"{record.property}, {record.phase}"),
         ("form", f"{form.name} ({form.title})"),
         ("equation", form.equation),
-        ("coefficients", "; ".join(f"{name}={text}" for name, text in record.ordered_coefficients())),
+        ("coefficients", join_coefficients(record.ordered_coefficients())),
         ("units", f"T in {record.temperature_unit}, value in {record.value_unit}"),
         ("window", f"{record.window_min} to {record.window_max} {record.window_unit} ({record.window_basis})"),
         ("metastable", f"below {record.metastable_below}" if record.metastable_below else ""),

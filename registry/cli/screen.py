@@ -16,7 +16,18 @@ import textwrap
 from collections.abc import Iterable, Mapping, Sequence
 from typing import Any
 
-__all__ = ["CAUTION", "complain", "emphasize", "print_facts", "print_json", "print_table", "say", "width", "wrap"]
+__all__ = [
+    "CAUTION",
+    "complain",
+    "emphasize",
+    "name_past",
+    "print_facts",
+    "print_json",
+    "print_table",
+    "say",
+    "width",
+    "wrap",
+]
 
 CAUTION = (
     "Check the source and measured data before decisions on relief, storage, transport or exposure; "
@@ -51,6 +62,11 @@ def say(text: str = "") -> None:
         # the reader has gone: nothing more to say, and nothing to flush at exit
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         raise SystemExit(0) from None
+
+
+def name_past(label: str) -> str:
+    """What a heading says of the position that is looked at; nothing for the newest."""
+    return f", as of {label}" if label else ""
 
 
 def complain(text: str) -> None:

@@ -13,6 +13,7 @@ from typing import Any
 
 from registry import cells
 from registry.cells import Cell, choice
+from registry.exchange.coefficients import COEFFICIENTS
 from registry.records import (
     REVIEWED,
     STANDINGS,
@@ -29,8 +30,6 @@ from registry.records import (
 )
 
 __all__ = ["FILES", "Column", "File", "descriptor"]
-
-COEFFICIENTS = Cell("coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed.", limit=4000)
 
 
 @dataclass(frozen=True)
@@ -144,8 +143,16 @@ _ROWS = (
 FILES: dict[str, File] = {row.name: row for row in _ROWS}
 
 
-def descriptor(present: list[str]) -> dict[str, Any]:
+def descriptor(present: list[str], *, whole: bool = True) -> dict[str, Any]:
     """The `datapackage.json` of a package with these files.
+
+    Parameters
+    ----------
+    present : list of str
+        The files.
+    whole : bool
+        False for a part of a library, whose rows may refer to what the other
+        side has: no foreign keys are stated.
 
     Notes
     -----
@@ -156,7 +163,7 @@ def descriptor(present: list[str]) -> dict[str, Any]:
         "profile": "tabular-data-package",
         "name": "rangebook-library",
         "title": "Pure-compound temperature correlations with their sources",
-        "resources": [_resource(FILES[name], present) for name in present],
+        "resources": [_resource(FILES[name], present if whole else []) for name in present],
     }
 
 

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass
 from pathlib import Path
@@ -10,6 +9,7 @@ from pathlib import Path
 from registry.admission import Find, check_identity, check_kinship, check_references, check_value
 from registry.cells import KEY, complain
 from registry.errors import CellProblem, InvalidPackage, InvalidRecord, Problem
+from registry.exchange.coefficients import parse_coefficients
 from registry.exchange.layout import FILES, File
 from registry.exchange.package import read_package
 from registry.exchange.rows import Row, parse_rows
@@ -19,9 +19,6 @@ __all__ = ["Item", "read_items"]
 
 MOST_PROBLEMS = 10_000
 """Bad cells after which reading stops: a file of nothing but them says so early."""
-
-_COMMA = re.compile(r",\s*\w+\s*=")
-"""Coefficients parted by commas."""
 
 Points = dict[str, list[tuple[int, Point]]]
 
@@ -183,17 +180,13 @@ def _place_problem(file: File, row: Row, lines: list[int], problem: Problem) -> 
 
 
 def _parse_coefficients(file: File, row: Row, problems: list[CellProblem]) -> dict[str, str]:
-    """A=8.07131; B=1730.63 as names and texts; empty if it cannot be read."""
+    """Names and texts; empty if they cannot be read."""
     text = row.cells["coefficients"]
-    found: dict[str, str] = {}
-    for part in text.split(";"):
-        name, equals, value = (word.strip() for word in part.partition("="))
-        if not equals or not name or not value or name in found or _COMMA.search(value):
-            why = "coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed, each once."
-            problems.append(CellProblem(file.name, row.line, "coefficients", text, why))
-            return {}
-        found[name] = value
-    return found
+    try:
+        return parse_coefficients(text)
+    except ValueError as error:
+        problems.append(CellProblem(file.name, row.line, "coefficients", text, str(error)))
+        return {}
 
 
 def _check_together(

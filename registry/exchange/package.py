@@ -20,7 +20,7 @@ from typing import Any
 from registry.errors import BadInput, CellProblem, InvalidPackage, quote
 from registry.exchange.layout import FILES
 
-__all__ = ["read_package", "write_package"]
+__all__ = ["DESCRIPTOR", "read_descriptor", "read_package", "write_package"]
 
 DESCRIPTOR = "datapackage.json"
 LARGEST_FILE = 64 * 2**20
@@ -48,20 +48,36 @@ def read_package(path: Path) -> dict[str, bytes]:
         If it is no package, names a file outside itself, or unpacks to more
         than the limits.
     """
+    with _open(path) as source:
+        names = _resource_paths(path, source.read(DESCRIPTOR))
+        return {name: source.read(name) for name in names}
+
+
+def read_descriptor(path: Path) -> dict[str, Any]:
+    """What a package's descriptor says.
+
+    Raises
+    ------
+    InvalidPackage
+        If it is no package.
+    """
+    with _open(path) as source:
+        described: dict[str, Any] = _parse_descriptor(path, source.read(DESCRIPTOR))
+        return described
+
+
+def _open(path: Path) -> _Folder | _Zip:
     _refuse_nul(path)
     if not path.exists():
         raise BadInput(f"There is nothing at {path}. Give a folder or a .zip with {DESCRIPTOR}.")
     try:
-        source: _Folder | _Zip = _Folder(path) if path.is_dir() else _Zip(path)
+        return _Folder(path) if path.is_dir() else _Zip(path)
     except (zipfile.BadZipFile, NotImplementedError, UnicodeDecodeError) as error:
         raise _fault(
             path,
             path.name,
             f"it is no folder and no zip that can be read ({error}). Give the folder that holds {DESCRIPTOR}.",
         ) from None
-    with source:
-        names = _resource_paths(path, source.read(DESCRIPTOR))
-        return {name: source.read(name) for name in names}
 
 
 def _refuse_nul(path: Path) -> None:
@@ -75,12 +91,7 @@ def _fault(package: Path, file: str, why: str) -> InvalidPackage:
 
 def _resource_paths(package: Path, raw: bytes) -> list[str]:
     """The resources of a descriptor, checked against the layout."""
-    try:
-        described: Any = json.loads(raw.decode("utf-8-sig"))
-        resources = [resource["path"] for resource in described["resources"]]
-    except (ValueError, KeyError, TypeError, RecursionError):
-        why = "it must be JSON in UTF-8 with a list of resources that have a path."
-        raise _fault(package, DESCRIPTOR, why) from None
+    resources = [resource["path"] for resource in _parse_descriptor(package, raw)["resources"]]
     problems = [problem for entry in resources if (problem := _path_problem(entry))]
     if not problems:
         problems += [f"resource {quote(n)} is named twice." for n in dict.fromkeys(resources) if resources.count(n) > 1]
@@ -89,6 +100,17 @@ def _resource_paths(package: Path, raw: bytes) -> list[str]:
     if problems:
         raise InvalidPackage(str(package), [CellProblem(DESCRIPTOR, 0, "", "", why) for why in problems])
     return [name for name in FILES if name in resources]
+
+
+def _parse_descriptor(package: Path, raw: bytes) -> Any:
+    """A descriptor: an object whose resources have a path."""
+    try:
+        described: Any = json.loads(raw.decode("utf-8-sig"))
+        _ = [resource["path"] for resource in described["resources"]]
+    except (ValueError, KeyError, TypeError, RecursionError):
+        why = "it must be JSON in UTF-8 with a list of resources that have a path."
+        raise _fault(package, DESCRIPTOR, why) from None
+    return described
 
 
 def _path_problem(entry: Any) -> str:

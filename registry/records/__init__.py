@@ -17,6 +17,7 @@ __all__ = [
     "CAUSES",
     "EVIDENCE",
     "KINDS",
+    "RECORDED",
     "REVIEWED",
     "STANDINGS",
     "Compound",
@@ -45,6 +46,9 @@ KINDS: dict[str, type[Record]] = {
     )
 }  # fmt: skip
 """Every kind of record, by its name."""
+
+RECORDED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset")
+"""Kinds that people record; the others follow from what they decide."""
 
 REVIEWED = ("correlation", "fixed-point", "dataset", "preference", "withdrawal")
 """Kinds that can change an answer, and so have a standing."""

@@ -21,9 +21,12 @@ Effect = tuple[Revision, str, Revision | None]
 """What a record makes of a revision: which, its standing, and the record that says why if it is another one."""
 
 # statements are built once: building them costs three times their execution
-_LAST_CHANGE = select(change.c.number, change.c.recorded_at).order_by(change.c.number.desc()).limit(1)
-_LAST_RECORD = select(func.coalesce(func.max(record.c.id), 0))
-_LAST_STANDING = select(func.coalesce(func.max(standing.c.id), 0))
+_LAST = select(
+    select(func.max(change.c.number)).scalar_subquery().label("number"),
+    select(change.c.recorded_at).order_by(change.c.number.desc()).limit(1).scalar_subquery().label("recorded_at"),
+    select(func.max(record.c.id)).scalar_subquery().label("record"),
+    select(func.max(standing.c.id)).scalar_subquery().label("standing"),
+)
 _LAST_REVISION = select(func.max(record.c.revision)).where(
     record.c.kind == bindparam("kind"), record.c.key == bindparam("key")
 )
@@ -36,6 +39,8 @@ _LINKS_OF = select(link.c.role, link.c.to_kind, link.c.to_key).where(
 _HAS_TERM = select(func.count()).where(
     term.c.text == bindparam("text"), term.c.kind == bindparam("kind"), term.c.key == bindparam("key")
 )
+_INSERT_CHANGE, _INSERT_RECORD, _INSERT_NODE = insert(change), insert(record), insert(node)
+_INSERT_LINK, _INSERT_TERM, _INSERT_STANDING = insert(link), insert(term), insert(standing)
 _NODE = select(node.c.hash).where(node.c.level == bindparam("level"), node.c.place == bindparam("place"))
 
 
@@ -134,19 +139,19 @@ def append_change(
     Change
         The header as recorded.
     """
-    number, last_time = connection.execute(_LAST_CHANGE).one_or_none() or (0, "")
-    first_id = connection.execute(_LAST_RECORD).scalar_one() + 1
+    last = connection.execute(_LAST).one()
+    number, last_id, last_standing = last.number or 0, last.record or 0, last.standing or 0
     revisions = _latest_revisions(connection, {(draft.kind, draft.key) for draft in drafts})
-    rows = list(_number_records(drafts, number + 1, first_id, revisions))
+    rows = list(_number_records(drafts, number + 1, last_id + 1, revisions))
     root = root_of([hash_leaf(bytes.fromhex(row["digest"])) for row in rows]).hex()
-    header = Change(number + 1, author, reason, max(recorded_at, last_time), len(rows), root)
+    header = Change(number + 1, author, reason, max(recorded_at, last.recorded_at or ""), len(rows), root)
     columns = {name: getattr(header, name) for name in header.__dataclass_fields__}
-    connection.execute(insert(change), {**columns, "header": header.header().decode()})
+    connection.execute(_INSERT_CHANGE, {**columns, "header": header.header().decode()})
     if rows:
-        connection.execute(insert(record), rows)
+        connection.execute(_INSERT_RECORD, rows)
         _insert_links(connection, rows, drafts)
         _insert_terms(connection, rows, drafts)
-        _insert_standings(connection, rows, drafts)
+        _insert_standings(connection, rows, drafts, last_standing)
     _grow_tree(connection, number, hash_leaf(header.header()))
     return header
 
@@ -185,7 +190,7 @@ def _insert_links(connection: Connection, rows: Sequence[Mapping[str, Any]], dra
             new.setdefault((draft.kind, draft.key, *aim), row["change"])
     names = ("kind", "key", "role", "to_kind", "to_key", "change")
     if new:
-        connection.execute(insert(link), [dict(zip(names, (*of, at), strict=True)) for of, at in sorted(new.items())])
+        connection.execute(_INSERT_LINK, [dict(zip(names, (*of, at), strict=True)) for of, at in sorted(new.items())])
 
 
 def _insert_terms(connection: Connection, rows: Sequence[Mapping[str, Any]], drafts: Sequence[Draft]) -> None:
@@ -198,15 +203,16 @@ def _insert_terms(connection: Connection, rows: Sequence[Mapping[str, Any]], dra
                 new.setdefault((text, draft.kind, draft.key), row["change"])
     names = ("text", "kind", "key", "change")
     if new:
-        connection.execute(insert(term), [dict(zip(names, (*of, at), strict=True)) for of, at in sorted(new.items())])
+        connection.execute(_INSERT_TERM, [dict(zip(names, (*of, at), strict=True)) for of, at in sorted(new.items())])
 
 
-def _insert_standings(connection: Connection, rows: Sequence[Mapping[str, Any]], drafts: Sequence[Draft]) -> None:
+def _insert_standings(
+    connection: Connection, rows: Sequence[Mapping[str, Any]], drafts: Sequence[Draft], last: int
+) -> None:
     """What the records of a change make of revisions, which may be of the same change."""
     if not any(draft.effects for draft in drafts):
         return
     here = {(row["kind"], row["key"], row["revision"]): row["id"] for row in rows}
-    last = connection.execute(_LAST_STANDING).scalar_one()
 
     def find(revision: Revision) -> int:
         wanted = dict(zip(("kind", "key", "revision"), revision, strict=True))
@@ -220,7 +226,7 @@ def _insert_standings(connection: Connection, rows: Sequence[Mapping[str, Any]],
                 "record": find((kind, key, revision)), "cause": find(cause) if cause else row["id"],
                 "change": row["change"],
             })  # fmt: skip
-    connection.execute(insert(standing), new)
+    connection.execute(_INSERT_STANDING, new)
 
 
 def _grow_tree(connection: Connection, size: int, leaf: bytes) -> None:
@@ -228,4 +234,4 @@ def _grow_tree(connection: Connection, size: int, leaf: bytes) -> None:
         return bytes.fromhex(connection.execute(_NODE, {"level": level, "place": place}).scalar_one())
 
     added = new_nodes(size, leaf, node_at)
-    connection.execute(insert(node), [{"level": a, "place": b, "hash": c.hex()} for a, b, c in added])
+    connection.execute(_INSERT_NODE, [{"level": a, "place": b, "hash": c.hex()} for a, b, c in added])

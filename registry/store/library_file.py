@@ -13,7 +13,7 @@ from sqlalchemy.exc import DatabaseError, OperationalError
 
 from registry.errors import BadInput, LibraryBusy, NotALibrary, RangebookError, quote
 from registry.merkle import root_from_nodes
-from registry.store import reading
+from registry.store import positions, reading
 from registry.store.engine import open_engine
 from registry.store.history import Change, Draft, append_change
 from registry.store.reading import Decision, Row, State
@@ -57,6 +57,14 @@ class View:
         self._connection = connection
         self.position = position
 
+    def at(self, position: int) -> View:
+        """The library at an earlier position, in the same transaction."""
+        return View(self._connection, min(position, self.position))
+
+    def added(self, number: int, kind: str) -> list[Row]:
+        """The records of one kind that a change has added, in order."""
+        return reading.read_added(self._connection, number, kind)
+
     def kind(self, kind: str) -> list[Row]:
         """The newest revision of every record of a kind, by key."""
         return reading.read_kind(self._connection, kind, self.position)
@@ -95,31 +103,31 @@ class View:
 
     def changes(self) -> list[Change]:
         """The headers of all changes up to the position."""
-        return reading.read_changes(self._connection, self.position)
+        return positions.read_changes(self._connection, self.position)
 
     def change(self, number: int) -> Change:
         """The header of one change."""
-        return reading.read_change(self._connection, number)
+        return positions.read_change(self._connection, number)
 
     def changed(self, since: int) -> list[tuple[str, str]]:
         """Kind and key of every record that changes after `since` have added."""
-        return reading.read_changed(self._connection, since, self.position)
+        return positions.read_changed(self._connection, since, self.position)
 
     def find_position(self, time: str) -> int:
         """The last change recorded before a time, 0 if there is none; never after the position."""
-        return min(reading.find_position(self._connection, time), self.position)
+        return min(positions.find_position(self._connection, time), self.position)
 
     def identity(self) -> tuple[str, str]:
         """The random name of the library, and when it was started."""
-        return reading.read_identity(self._connection)
+        return positions.read_identity(self._connection)
 
     def root(self, size: int) -> bytes:
         """The Merkle root over the headers of the first `size` changes, from the stored nodes."""
-        return root_from_nodes(size, lambda level, place: reading.read_node(self._connection, level, place))
+        return root_from_nodes(size, lambda level, place: positions.read_node(self._connection, level, place))
 
 
 def _settle(connection: Connection, position: int | None) -> int:
-    newest = reading.read_position(connection)
+    newest = positions.read_position(connection)
     if position is not None and not 0 <= position <= newest:
         raise BadInput(f"The library has no position {position}; the newest is {newest}.")
     return newest if position is None else position
@@ -226,4 +234,4 @@ class LibraryFile:
         def append(author: str, reason: str, now: str, drafts: Sequence[Draft]) -> Change:
             return append_change(connection, author, reason, now, drafts)
 
-        return View(connection, reading.read_position(connection)), append
+        return View(connection, positions.read_position(connection)), append

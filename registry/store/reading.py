@@ -11,28 +11,22 @@ import json
 from collections.abc import Collection, Iterable, Iterator, Sequence
 from typing import Any, NamedTuple
 
-from sqlalchemy import Connection, Select, bindparam, func, select
+from sqlalchemy import Connection, TextClause, bindparam, select, text
 
 from registry.canonical import digest
-from registry.store.history import Change, envelope, fold_term
-from registry.store.tables import change, library, link, node, record, standing, term
+from registry.store.history import envelope, fold_term
+from registry.store.tables import record, standing, term
 
 __all__ = [
     "Decision",
     "Row",
     "State",
-    "find_position",
     "find_term",
-    "read_change",
-    "read_changed",
-    "read_changes",
+    "read_added",
     "read_current",
     "read_decisions",
-    "read_identity",
     "read_kind",
     "read_linked",
-    "read_node",
-    "read_position",
     "read_revisions",
     "read_states",
     "read_terms",
@@ -75,7 +69,7 @@ class State(NamedTuple):
     decision : Decision or None
         That acceptance or withdrawal.
     latest : Decision or None
-        The newest word on any revision, a declining one too.
+        The newest word on the newest revision, a declining one too.
     """
 
     newest: Row
@@ -91,68 +85,45 @@ _POSITION: Any = bindparam("position")
 _KIND: Any = bindparam("kind")
 _KEY: Any = bindparam("key")
 _KEYS: Any = bindparam("keys", expanding=True)
-_DECIDING = ("accepted", "withdrawn")
 CHUNK = 500
 """Keys or numbers that one statement takes."""
 
 _other = record.alias("other")
-_first = record.alias("first")
+
+# as SQL text: SQLAlchemy takes a millisecond to compile each of these from parts, a tenth of a whole first lookup
+_NEWEST = """(
+    SELECT other.{column} FROM record AS other
+    WHERE other.kind = aim.kind AND other.key = aim.key AND other.change <= :position
+    ORDER BY other.change DESC, other.revision DESC LIMIT 1)"""
+_WORD = """(
+    SELECT standing.id FROM standing
+    WHERE standing.kind = aim.kind AND standing.key = aim.key AND standing.change <= :position AND {which}
+    ORDER BY standing.change DESC, standing.id DESC LIMIT 1)"""
+_NEWEST_ID = _NEWEST.format(column="id")
+_DECIDED = _WORD.format(which="standing.standing IN ('accepted', 'withdrawn')")
+# no word on a revision is older than it: the search ends there, however many words there are on those before
+_LATEST = _WORD.format(
+    which=f"standing.record = {_NEWEST_ID} AND standing.change >= {_NEWEST.format(column='change')}"
+)  # fmt: skip
+_ALL_OF_KIND = "SELECT kind, key FROM record WHERE kind = :kind AND revision = 1 AND change <= :position"
+_SOME_OF_KIND = f"{_ALL_OF_KIND} AND key IN :keys"
+_LINKED = "SELECT DISTINCT kind, key FROM link WHERE to_kind = :to_kind AND to_key IN :keys AND change <= :position"
+_LINKED_OF_KIND = f"{_LINKED} AND kind = :kind"
+_NAMED = "SELECT kind, key FROM term WHERE text = :text AND change <= :position"
 
 
-def _newest_of(kind: Any, key: Any) -> Any:
-    """The newest revision of a key at the position, as a subquery."""
-    found = select(_other.c.id).where(_other.c.kind == kind, _other.c.key == key, _other.c.change <= _POSITION)
-    newest = found.order_by(_other.c.change.desc(), _other.c.revision.desc()).limit(1)
-    return newest.correlate(kind.table).scalar_subquery()
-
-
-def _word_on(kind: Any, key: Any, *among: str) -> Any:
-    """The newest word on a key at the position, as a subquery."""
-    found = select(standing.c.id).where(standing.c.kind == kind, standing.c.key == key, standing.c.change <= _POSITION)
-    if among:
-        found = found.where(standing.c.standing.in_(among))
-    newest = found.order_by(standing.c.change.desc(), standing.c.id.desc()).limit(1)
-    return newest.correlate(kind.table).scalar_subquery()
-
-
-def _states_of(kind: Any, key: Any) -> Select[Any]:
-    columns = _newest_of(kind, key), _word_on(kind, key, *_DECIDING), _word_on(kind, key)
-    return select(*columns).select_from(kind.table)
+def _of_aims(aims: str, *columns: str) -> TextClause:
+    """Numbers of rows about each kind and key that a statement gives, by kind and key."""
+    statement = text(f"SELECT {', '.join(columns)} FROM ({aims}) AS aim ORDER BY aim.kind, aim.key")
+    return statement.bindparams(_KEYS) if ":keys" in aims else statement
 
 
 # statements are built once: building them costs three times their execution
-_POSITION_NOW = select(func.coalesce(func.max(change.c.number), 0))
-_IDENTITY = select(library.c.name, library.c.started_at)
-_CHANGES = select(change).where(change.c.number <= _POSITION).order_by(change.c.number)
-_CHANGE = select(change).where(change.c.number == bindparam("number"))
-_UP_TO = (
-    select(change.c.number)
-    .where(change.c.recorded_at < bindparam("time"))
-    .order_by(change.c.recorded_at.desc(), change.c.number.desc())
-    .limit(1)
+_NEWEST_BY_KIND, _NEWEST_BY_KEYS = _of_aims(_ALL_OF_KIND, _NEWEST_ID), _of_aims(_SOME_OF_KIND, _NEWEST_ID)
+_BY_TERM = _of_aims(_NAMED, _NEWEST_ID)
+_STATES_BY_KIND, _STATES_BY_KEYS, _STATES_BY_LINK, _STATES_BY_LINK_OF_KIND = (
+    _of_aims(aims, _NEWEST_ID, _DECIDED, _LATEST) for aims in (_ALL_OF_KIND, _SOME_OF_KIND, _LINKED, _LINKED_OF_KIND)
 )
-_NODE = select(node.c.hash).where(node.c.level == bindparam("level"), node.c.place == bindparam("place"))
-_FIRST = (_first.c.kind == _KIND, _first.c.revision == 1, _first.c.change <= _POSITION)
-_NEWEST_BY_KIND = (
-    select(_newest_of(_first.c.kind, _first.c.key)).select_from(_first).where(*_FIRST).order_by(_first.c.key)
-)
-_NEWEST_BY_KEYS = _NEWEST_BY_KIND.where(_first.c.key.in_(_KEYS))
-_STATES_BY_KIND = _states_of(_first.c.kind, _first.c.key).where(*_FIRST).order_by(_first.c.key)
-_STATES_BY_KEYS = _STATES_BY_KIND.where(_first.c.key.in_(_KEYS))
-_aims = (
-    select(link.c.kind, link.c.key)
-    .where(link.c.to_kind == bindparam("to_kind"), link.c.to_key.in_(_KEYS), link.c.change <= _POSITION)
-    .distinct()
-    .subquery("aims")
-)
-_STATES_BY_LINK = _states_of(_aims.c.kind, _aims.c.key).order_by(_aims.c.kind, _aims.c.key)
-_STATES_BY_LINK_OF_KIND = _STATES_BY_LINK.where(_aims.c.kind == _KIND)
-_named = (
-    select(term.c.kind, term.c.key)
-    .where(term.c.text == bindparam("text"), term.c.change <= _POSITION)
-    .subquery("named")
-)
-_BY_TERM = select(_newest_of(_named.c.kind, _named.c.key)).select_from(_named).order_by(_named.c.kind, _named.c.key)
 _TERMS = select(term.c.text, term.c.kind, term.c.key).where(term.c.change <= _POSITION)
 _REVISIONS = (
     select(*_COLUMNS)
@@ -164,11 +135,8 @@ _WORDS = (
     .where(standing.c.kind == _KIND, standing.c.key == _KEY, standing.c.change <= _POSITION)
     .order_by(standing.c.id)
 )
-_CHANGED = (
-    select(record.c.kind, record.c.key)
-    .where(record.c.change > bindparam("since"), record.c.change <= _POSITION)
-    .distinct()
-    .order_by(record.c.kind, record.c.key)
+_ADDED = (
+    select(*_COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == _KIND).order_by(record.c.place)
 )
 _VERDICTS = ("accepted", "declined", "withdrawn")
 _WAITING = (
@@ -247,47 +215,13 @@ def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
     ]
 
 
-def read_position(connection: Connection) -> int:
-    """The number of the last change, 0 in an empty library."""
-    return int(connection.execute(_POSITION_NOW).scalar_one())
+def read_added(connection: Connection, number: int, kind: str) -> list[Row]:
+    """The records of one kind that a change has added, in order."""
+    found = connection.execute(_ADDED, {"number": number, "kind": kind})
+    return [_restore(*columns) for _, *columns in found]
 
 
-def find_position(connection: Connection, time: str) -> int:
-    """The number of the last change recorded before a time (UTC, ISO 8601); 0 if there is none."""
-    return connection.execute(_UP_TO, {"time": time}).scalar() or 0
-
-
-def read_identity(connection: Connection) -> tuple[str, str]:
-    """The random name of the library, and when it was started."""
-    name, started_at = connection.execute(_IDENTITY).one()
-    return name, started_at
-
-
-def _as_change(row: Any) -> Change:
-    return Change(**{name: row._mapping[name] for name in Change.__dataclass_fields__})
-
-
-def read_changes(connection: Connection, position: int) -> list[Change]:
-    """The headers of all changes up to a position, in order."""
-    return [_as_change(row) for row in connection.execute(_CHANGES, {"position": position})]
-
-
-def read_change(connection: Connection, number: int) -> Change:
-    """The header of one change."""
-    return _as_change(connection.execute(_CHANGE, {"number": number}).one())
-
-
-def read_changed(connection: Connection, since: int, position: int) -> list[tuple[str, str]]:
-    """Kind and key of every record that changes after one position, up to another, have added."""
-    return [(kind, key) for kind, key in connection.execute(_CHANGED, {"since": since, "position": position})]
-
-
-def read_node(connection: Connection, level: int, place: int) -> bytes:
-    """A complete node of the tree over the changes."""
-    return bytes.fromhex(connection.execute(_NODE, {"level": level, "place": place}).scalar_one())
-
-
-def _newest(connection: Connection, statement: Select[Any], **values: Any) -> list[Row]:
+def _newest(connection: Connection, statement: TextClause, **values: Any) -> list[Row]:
     ids = list(connection.execute(statement, values).scalars())
     rows = _fetch_rows(connection, ids)
     return [rows[number] for number in ids]
@@ -317,9 +251,8 @@ def read_decisions(connection: Connection, kind: str, key: str, position: int) -
     ids = list(connection.execute(_WORDS, {"kind": kind, "key": key, "position": position}).scalars())
     states: list[Decision] = []
     for chunk in _chunks(ids):
-        words = connection.execute(_DECISION_BY_ID, {"ids": chunk}).all()
+        words = sorted(connection.execute(_DECISION_BY_ID, {"ids": chunk}), key=lambda word: word.id)
         rows = _fetch_rows(connection, {word.cause for word in words})
-        words.sort(key=lambda word: word.id)
         states += [Decision(word.revision, word.standing, word.change, rows[word.cause]) for word in words]
     return states
 

@@ -25,7 +25,8 @@ def start_invented(folder: Path, correlations: Sequence[Correlation]) -> Library
     """A new library with one invented compound."""
     compound = correlations[0].compound
     library = start_library(folder / f"{compound}.db", "none")
-    library.load(write_package(folder / compound, correlations), author="benchmark", reason="Invented; not data.")
+    package = write_package(folder / compound, correlations)
+    library.load(package, author="benchmark", reason="Invented; not data.", accept=True)
     return library
 
 

@@ -24,6 +24,7 @@ ROOT = Path(__file__).resolve().parents[2]
 sys.path.append(str(ROOT))  # last: an installed package is measured rather than the tree
 
 from arrays import measure_five_windows, measure_keeping_memory, measure_three_forms  # noqa: E402
+from growth import measure_growth  # noqa: E402
 from processes import measure_process  # noqa: E402
 from scalars import measure_scalars  # noqa: E402
 from timing import TIMED, WARM  # noqa: E402
@@ -47,7 +48,7 @@ def describe_machine() -> dict[str, Any]:
 
 def measure_all(quick: bool) -> list[dict[str, Any]]:
     """Every entry, in libraries made for it in a temporary folder."""
-    size, calls, rounds, runs = (40_000, 50, 2, 3) if quick else (1_000_000, 2_000, 9, 41)
+    size, calls, rounds, runs, changes = (40_000, 50, 2, 3, 1_000) if quick else (1_000_000, 2_000, 9, 41, 100_000)
     with tempfile.TemporaryDirectory() as name:
         folder = Path(name).resolve()
         entries = [
@@ -55,6 +56,7 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
             *measure_five_windows(folder, size, rounds),
             *measure_process(folder, runs),
             *measure_scalars(folder, calls, rounds),
+            *measure_growth(folder, changes, rounds),
             *measure_keeping_memory(folder / "kept", size, rounds),
         ]
     return [{**entry, "holds": None if entry["bar"] is None else entry["ratio"] <= entry["bar"]} for entry in entries]
@@ -62,12 +64,12 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
 
 def format_table(entries: list[dict[str, Any]]) -> str:
     """Name, ratio with its spread, bar, and whether it holds."""
-    lines = [f"{'name':48}{'ratio':>8}{'spread':>16}{'bar':>6}  holds"]
+    lines = [f"{'name':58}{'ratio':>8}{'spread':>16}{'bar':>6}  holds"]
     for entry in entries:
         spread = f"{entry['ratio_lowest']:.3f}-{entry['ratio_highest']:.3f}"
         bar = "" if entry["bar"] is None else f"{entry['bar']:.1f}"
         holds = {True: "yes", False: "no", None: ""}[entry["holds"]]
-        lines.append(f"{entry['name']:48}{entry['ratio']:8.3f}{spread:>16}{bar:>6}  {holds}".rstrip())
+        lines.append(f"{entry['name']:58}{entry['ratio']:8.3f}{spread:>16}{bar:>6}  {holds}".rstrip())
     return "\n".join(lines)
 
 

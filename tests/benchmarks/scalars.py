@@ -68,7 +68,7 @@ def _watch_another_process(library: Library, folder: Path, place: Path) -> dict[
     values: list[float | None] = [_value(library, compound)]
     for name, record in (("first", first), ("revised", revised)):
         package = write_package(folder / name, [record, *FIVE_WINDOWS[1:]])
-        run_command(["load", str(package), "--as", "benchmark"], environment)
+        run_command(["load", str(package), "--as", "benchmark", "--accept", "--note", "Invented."], environment)
         values += [_value(library, compound), _value(library, compound)]
     before, *after = values
     holds = before is None and None not in after and after[0] == after[1] != after[2] == after[3]

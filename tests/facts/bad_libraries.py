@@ -17,9 +17,9 @@ LIBRARIES = (
     ("another program's", 5, _UNREADABLE + "it is another program's database. Nothing was changed."),
     ("damaged", 5, _UNREADABLE + "SQLite says database disk image is malformed. Nothing was changed."),
     ("truncated", 5, _UNREADABLE + "SQLite says database disk image is malformed. Nothing was changed."),
-    ("newer", 5, "{library} has schema 99, made by a newer rangebook; this one reads up to 1. "
+    ("newer", 5, "{library} has schema 99, made by a newer rangebook; this one reads up to 2. "
      "Install a newer rangebook; nothing was changed."),
-    ("older", 5, "{library} has schema 0; this rangebook needs 1. "
+    ("older", 5, "{library} has schema 0; this rangebook needs 2. "
      "`rangebook upgrade` brings it up to date, after a backup."),
     ("postgresql", 2, "postgresql libraries are not supported yet. Give a path or a sqlite:/// URL."),
     ("two slashes", 2,
