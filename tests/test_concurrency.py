@@ -69,6 +69,18 @@ def test_of_two_revisions_of_one_record_exactly_one_wins(empty_path):
     assert find_faults(empty_path) == []
 
 
+def test_the_command_that_comes_second_ends_with_4(empty_path):
+    """Ten times two `rangebook revise` at the same moment: one ends with 0, the other with 4 and both sides."""
+    report = run_script("concurring.py", "command", empty_path, 10)
+    for turn, pair in enumerate(report["found"], start=1):
+        first, second = sorted(pair, key=lambda found: found["code"])
+        assert (first["code"], second["code"]) == (0, 4)
+        assert f"was read in revision {turn}, but revision {turn + 1} is the newest now" in second["err"]
+        assert "yours: An invented report" in second["err"]
+    with open_library(empty_path) as library:
+        assert library.position == 12
+
+
 def test_threads_of_one_library_revise_one_after_the_other(empty_path):
     """Eight threads that revise through one open library: exactly one wins each time."""
 
