@@ -1,12 +1,15 @@
 """Many processes that write into one library at once, and report what became of it.
 
 As a script, ``python concurring.py record LIBRARY PROCESSES CHANGES`` lets each process record so many sources, and
-``python concurring.py revise LIBRARY TIMES`` lets two revise one source at the same moment, again and again. It prints
-one JSON object. The package is imported once; each process is forked and opens the library anew.
+``python concurring.py revise LIBRARY TIMES`` lets two revise one source at the same moment, again and again; with
+``command`` for ``revise`` they do so by the command line. It prints one JSON object. The package is imported once; each
+process is forked and opens the library anew.
 """
 
 from __future__ import annotations
 
+import contextlib
+import io
 import json
 import os
 import sys
@@ -94,11 +97,38 @@ def revise_once(path: Path, who: str, expect: int) -> dict[str, Any]:
     return {"change": done.change.number, "revision": done.revision}
 
 
+def command_once(path: Path, who: str, expect: int) -> dict[str, Any]:
+    """The same by the command; its exit code and messages."""
+    from registry.cli.app import main as run
+
+    words = ["revise", "wanted", "--set", f"citation=An invented report, as {who} found revision {expect}"]
+    out, err, code = io.StringIO(), io.StringIO(), 0
+    with contextlib.redirect_stdout(out), contextlib.redirect_stderr(err):
+        try:
+            run(
+                [
+                    *words,
+                    "--expect",
+                    str(expect),
+                    "--reason",
+                    "An invented erratum",
+                    "--as",
+                    who,
+                    "--library",
+                    str(path),
+                ]
+            )
+        except SystemExit as stop:
+            code = int(stop.code or 0)
+    return {"code": code, "err": err.getvalue()}
+
+
 def main() -> None:
+    revise = {"revise": revise_once, "command": command_once}.get(sys.argv[1])
     path, numbers = Path(sys.argv[2]), [int(word) for word in sys.argv[3:]]
     start = time.perf_counter()
     found: list[Any] = []
-    if sys.argv[1] == "record":
+    if revise is None:
         writers, changes = numbers
         works = [lambda w=w: record_many(path, w, changes) for w in range(writers)]
         found = run_together([*works, lambda: read_until(path, writers * changes + 1)])
@@ -106,7 +136,7 @@ def main() -> None:
         with open_library(path) as library:
             library.record(_source("wanted", "as it was"), author="a steward")
         for turn in range(1, numbers[0] + 1):
-            both = [lambda w=w, t=turn: revise_once(path, w, t) for w in ("Ann", "Bert")]
+            both = [lambda w=w, t=turn: revise(path, w, t) for w in ("Ann", "Bert")]
             found.append(run_together(both, 0.02))
     print(json.dumps({"found": found, "took": time.perf_counter() - start}))
 
