@@ -542,6 +542,19 @@ def test_a_damaged_row_is_told(own_path):
         library.lookup("water", 300.0)
 
 
+@pytest.mark.parametrize("cell", ["standing = 'withdrawn'", "revision = 2", "key = 'water-goff-1957'", "cause = 5"])
+def test_a_standing_changed_behind_the_back_is_told(cell, own_path):
+    """The log of standings is derived: where it does not say what the reviews say, nothing is answered by it."""
+    with closing(sqlite3.connect(own_path)) as db:
+        db.execute("DROP TRIGGER standing_no_update")
+        db.execute(f"UPDATE standing SET {cell} WHERE key = 'water-if97'")
+        db.commit()
+    with open_library(own_path) as library:
+        with pytest.raises(NotALibrary, match="is not what was recorded"):
+            library.entry("water-goff-1957" if "key" in cell else "water-if97")
+        assert library.lookup("ammonia", 300.0).value > 0.0
+
+
 def test_an_upgrade_that_leaves_dangling_references_is_taken_back(own_path, tmp_path):
     """Tables may be rebuilt with foreign keys off; what dangles afterwards stops the upgrade whole."""
     row = """op.execute("DROP TRIGGER term_no_insertion")

@@ -165,9 +165,7 @@ _WAITING = (
     .order_by(record.c.id)
 )
 _BY_ID = select(*_COLUMNS).where(record.c.id.in_(bindparam("ids", expanding=True)))
-_DECISION_BY_ID = select(
-    standing.c.id, standing.c.revision, standing.c.standing, standing.c.change, standing.c.record, standing.c.cause
-).where(standing.c.id.in_(bindparam("ids", expanding=True)))
+_DECISION_BY_ID = select(standing).where(standing.c.id.in_(bindparam("ids", expanding=True)))
 
 
 def _restore(kind: str, key: str, revision: int, number: int, content: str, expected: str) -> Row:
@@ -200,19 +198,38 @@ def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
         words.update({word.id: word for word in connection.execute(_DECISION_BY_ID, {"ids": chunk})})
     if not all(newest for newest, _, _ in found):
         raise DamagedRow("what is derived from the records points at a key that is not there")
-    wanted = {newest for newest, _, _ in found} | {number for word in words.values() for number in word[4:6]}
+    wanted = {newest for newest, _, _ in found} | _records_of(words.values())
     rows = _fetch_rows(connection, wanted)
 
     def decide(number: int | None) -> Decision | None:
-        if not number:
-            return None
-        word = words[number]
-        return Decision(word.revision, word.standing, word.change, rows[word.cause])
+        return _decide(words[number], rows) if number else None
 
     return [
         State(rows[newest], rows[words[decision].record] if decision else None, decide(decision), decide(latest))
         for newest, decision, latest in found
     ]
+
+
+def _records_of(words: Iterable[Any]) -> set[int]:
+    """The revisions that words are about, and the records they come from."""
+    return {number for word in words for number in (word.record, word.cause)}
+
+
+def _decide(word: Any, rows: dict[int, Row]) -> Decision:
+    """A word on a revision, which the record behind it must have said."""
+    judged, cause = rows.get(word.record), rows.get(word.cause)
+    about = word.kind, word.key, word.revision
+    if judged is None or cause is None or judged[:3] != about or not _says(cause, about, word.standing):
+        raise DamagedRow(f"what was decided on the {word.kind} {word.key!r} is not what was recorded")
+    return Decision(word.revision, word.standing, word.change, cause)
+
+
+def _says(cause: Row, about: tuple[str, str, int], verdict: str) -> bool:
+    content = cause.content
+    said = "withdrawn" if cause.kind == "withdrawal" else content.get("standing")
+    return (content.get("of_kind"), content.get("of_key"), content.get("of_revision"), said) == (
+        *about[:2], str(about[2]), verdict,
+    )  # fmt: skip
 
 
 def read_added(connection: Connection, number: int, kind: str) -> list[Row]:
@@ -252,8 +269,8 @@ def read_decisions(connection: Connection, kind: str, key: str, position: int) -
     states: list[Decision] = []
     for chunk in _chunks(ids):
         words = sorted(connection.execute(_DECISION_BY_ID, {"ids": chunk}), key=lambda word: word.id)
-        rows = _fetch_rows(connection, {word.cause for word in words})
-        states += [Decision(word.revision, word.standing, word.change, rows[word.cause]) for word in words]
+        rows = _fetch_rows(connection, _records_of(words))
+        states += [_decide(word, rows) for word in words]
     return states
 
 
