@@ -10,7 +10,10 @@ import hashlib
 import json
 from typing import Any
 
-__all__ = ["digest", "encode"]
+__all__ = ["digest", "encode", "encode_text"]
+
+# built once: json.dumps would build one at every call
+_ENCODER = json.JSONEncoder(sort_keys=True, separators=(",", ":"), ensure_ascii=False, allow_nan=False)
 
 
 def encode(content: Any) -> bytes:
@@ -21,7 +24,12 @@ def encode(content: Any) -> bytes:
     >>> encode({"B": "1730.63", "A": "8.07131"})
     b'{"A":"8.07131","B":"1730.63"}'
     """
-    return json.dumps(content, sort_keys=True, separators=(",", ":"), ensure_ascii=False, allow_nan=False).encode()
+    return encode_text(content).encode()
+
+
+def encode_text(content: Any) -> str:
+    """The canonical JSON as text, before it is UTF-8."""
+    return _ENCODER.encode(content)
 
 
 def digest(data: bytes) -> str:
