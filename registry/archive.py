@@ -2,12 +2,18 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+from typing import TYPE_CHECKING
+
 from registry.editions import Position, find_position
 from registry.entries import restore
 from registry.reader import Reader
 from registry.records import Edition
 from registry.store.history import Change
 from registry.waiting import Waiting, list_waiting
+
+if TYPE_CHECKING:
+    from registry.findings import Verification
 
 __all__ = ["Archive"]
 
@@ -74,3 +80,42 @@ class Archive(Reader):
         """What waits for review, oldest first."""
         with self._lock, self._reading() as view:
             return list_waiting(view)
+
+    def verify(self, against: str = "", progress: Callable[[int, int], None] | None = None) -> Verification:
+        """Recompute everything that is recorded, and hold it against what is stored.
+
+        Parameters
+        ----------
+        against : str
+            A root noted earlier, ``size:root``, whose history this library
+            must extend. Only that finds a history that was rewritten whole.
+        progress : callable, optional
+            ``progress(done, all)`` is told how many records were gone through.
+
+        Returns
+        -------
+        Verification
+            Whether the library holds, its root, and each record that is not
+            as it was recorded. The whole library is verified, also through a
+            view of its past.
+
+        Raises
+        ------
+        BadInput
+            If `against` is no root.
+        LibraryBusy
+            If another process holds the file for too long.
+        NotALibrary
+            If the file cannot be read at all.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     found = library.verify()
+        ...     library.verify(against=found.root).holds
+        True
+        """
+        from registry.verification import verify
+
+        return verify(self._file, against, progress)

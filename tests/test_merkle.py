@@ -36,7 +36,8 @@ PROOFS = {
 def _nodes(data: list[bytes]) -> dict[tuple[int, int], bytes]:
     nodes: dict[tuple[int, int], bytes] = {}
     for size, leaf in enumerate(data):
-        nodes |= {(a, b): c for a, b, c in new_nodes(size, hash_leaf(leaf), lambda a, b: nodes[a, b])}
+        for level, place, value in new_nodes(size, hash_leaf(leaf), lambda a, b: nodes[a, b]):
+            nodes[level, place] = value
     return nodes
 
 

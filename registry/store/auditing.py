@@ -1,0 +1,229 @@
+"""Rows as they stand, for verification: nothing is trusted, nothing is raised for what they hold.
+
+The driver's own cursors are read, table by table in the order of the changes,
+so that a library is gone through once and never held in memory.
+"""
+
+from __future__ import annotations
+
+import re
+import sqlite3
+from collections.abc import Iterable, Iterator
+from contextlib import closing, contextmanager
+from functools import lru_cache
+from pathlib import Path
+from typing import Any
+from urllib.parse import quote
+
+from sqlalchemy import create_engine
+
+from registry.errors import LibraryBusy, NotALibrary
+from registry.store.engine import BUSY_SECONDS, wal_is_safe
+from registry.store.schema import create_schema
+from registry.store.tables import SCHEMA
+
+__all__ = ["EXPECTED_VERSION", "Audit", "ByChange", "Undecodable", "expected_schema", "open_audit"]
+
+
+class Undecodable(Exception):
+    """Text that is no UTF-8."""
+
+
+Row = tuple[Any, ...]
+
+_STREAMS = {
+    "change": "SELECT number, author, reason, recorded_at, records, records_root, header FROM change ORDER BY number",
+    "record": "SELECT change, place, id, kind, key, revision, content, digest FROM record ORDER BY change, place, id",
+    "link": "SELECT change, kind, key, role, to_kind, to_key FROM link ORDER BY change",
+    "term": "SELECT change, text, kind, key FROM term ORDER BY change",
+    "standing": "SELECT change, id, kind, key, revision, standing, record, cause FROM standing ORDER BY change, id",
+}
+_NODES = "SELECT place, hash FROM node WHERE level IS ? ORDER BY place"
+_LEVELS = "SELECT DISTINCT level FROM node ORDER BY level"
+_RECORD = "SELECT id, content FROM record WHERE kind = ? AND key = ? AND revision = ?"
+
+
+class ByChange:
+    """Rows sorted by their first column, the number of a change, handed out change by change.
+
+    Attributes
+    ----------
+    strays : list of tuple
+        Rows passed over: of no change, or of one that was not asked for.
+    """
+
+    def __init__(self, rows: Iterable[Row]) -> None:
+        self._rows = iter(rows)
+        self._ahead: Row | None = next(self._rows, None)
+        self.strays: list[Row] = []
+
+    def take(self, number: int) -> list[Row]:
+        """The rows of one change; numbers are asked for in rising order."""
+        ahead = self._ahead
+        return (
+            []
+            if ahead is None or (ahead[0] != number and not _is_before(ahead[0], number))
+            else list(self.each(number))
+        )
+
+    def each(self, number: int) -> Iterator[Row]:
+        """The rows of one change one by one, to be gone through before more is asked for."""
+        while (ahead := self._ahead) is not None:
+            if ahead[0] != number:
+                if not _is_before(ahead[0], number):
+                    return
+                self.strays.append(ahead)
+            else:
+                yield ahead
+            self._ahead = next(self._rows, None)
+
+    def finish(self) -> list[Row]:
+        """All rows that were passed over or are left: normally none."""
+        if self._ahead is not None:
+            self.strays += [self._ahead, *self._rows]
+            self._ahead = None
+        return self.strays
+
+
+def _is_before(value: Any, number: int) -> bool:
+    # as SQLite sorts: NULL, then numbers, then text and blobs
+    return value is None or (isinstance(value, (int, float)) and value < number)
+
+
+class Audit:
+    """One read transaction on a library file.
+
+    Parameters
+    ----------
+    connection : sqlite3.Connection
+        Open, with a transaction begun.
+    """
+
+    def __init__(self, connection: sqlite3.Connection) -> None:
+        self._connection = connection
+
+    def _rows(self, statement: str, *values: Any) -> sqlite3.Cursor:
+        return self._connection.execute(statement, values)
+
+    def stream(self, table: str) -> sqlite3.Cursor:
+        """The rows of a table, in the order of the changes; the change comes first."""
+        return self._rows(_STREAMS[table])
+
+    def count(self, table: str) -> int:
+        """How many rows a table has."""
+        return int(self._rows(f"SELECT count(*) FROM {table}").fetchone()[0])
+
+    def nodes(self, level: int) -> sqlite3.Cursor:
+        """Place and hash of the stored nodes of one level, by place."""
+        return self._rows(_NODES, level)
+
+    def node(self, level: int, place: int) -> Any:
+        """One stored hash, None if there is none."""
+        found = self._rows("SELECT hash FROM node WHERE level = ? AND place = ?", level, place).fetchone()
+        return found[0] if found else None
+
+    def levels(self) -> list[Any]:
+        """Every level of which a node is stored."""
+        return [level for (level,) in self._rows(_LEVELS)]
+
+    def library(self) -> list[Row]:
+        """The rows that say which library this is: one."""
+        return self._rows("SELECT id, name, started_at FROM library ORDER BY id").fetchall()
+
+    def find_record(self, kind: str, key: str, revision: int) -> Row | None:
+        """The number and the content of one revision."""
+        found: Row | None = self._rows(_RECORD, kind, key, revision).fetchone()
+        return found
+
+    def version(self) -> list[Any]:
+        """The schema that the migrations stamped."""
+        return [value for (value,) in self._rows("SELECT version_num FROM alembic_version")]
+
+    def schema(self) -> dict[str, str]:
+        """Every table, index, trigger and view, as its statement."""
+        return _read_schema(self._connection)
+
+    def damages(self) -> Iterator[str]:
+        """What SQLite's own integrity check says against the file: normally nothing."""
+        return (str(line) for (line,) in self._rows("PRAGMA integrity_check") if line != "ok")
+
+    def dangling(self) -> Iterator[Row]:
+        """Table, row and the table it should refer to, for each reference that leads nowhere."""
+        return ((table, row, parent) for table, row, parent, _ in self._rows("PRAGMA foreign_key_check"))
+
+    def journal_remark(self) -> str:
+        """What is to be said of the file's journal: that it may lose what was written."""
+        mode = self._rows("PRAGMA journal_mode").fetchone()[0]
+        if mode == "wal" and not wal_is_safe(sqlite3.sqlite_version_info[:3]):
+            return (
+                f"The file is in WAL mode, and SQLite {sqlite3.sqlite_version} has the WAL-reset bug: it may lose "
+                "committed changes. The next change recorded with this rangebook sets the rollback journal."
+            )
+        return ""
+
+
+@contextmanager
+def open_audit(path: Path, *, any_text: bool = False) -> Iterator[Audit]:
+    """Read a library file as it stands, in one transaction.
+
+    Parameters
+    ----------
+    path : Path
+        The file, which must be there.
+    any_text : bool
+        Let text be no UTF-8; slower.
+
+    Raises
+    ------
+    Undecodable
+        If there is such text, and it is not let be.
+    LibraryBusy
+        If another process holds the file for too long.
+    NotALibrary
+        If SQLite cannot read it.
+    """
+    uri = f"file:{quote(str(path))}?mode=ro"
+    try:
+        with closing(sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS, isolation_level=None)) as connection:
+            if any_text:
+                connection.text_factory = lambda raw: raw.decode("utf-8", "surrogateescape")
+            connection.execute("PRAGMA trusted_schema=OFF")
+            connection.execute("PRAGMA cell_size_check=ON")
+            connection.execute("BEGIN")
+            connection.execute("SELECT count(*) FROM sqlite_master").fetchone()
+            yield Audit(connection)
+    except sqlite3.DatabaseError as error:
+        if "locked" in str(error) or "busy" in str(error):
+            raise LibraryBusy(str(path)) from error
+        if "Could not decode" in str(error):
+            raise Undecodable(str(error)) from error
+        raise NotALibrary(str(path), f"SQLite says {error}") from error
+
+
+def _read_schema(connection: sqlite3.Connection) -> dict[str, str]:
+    # what SQLite makes for itself has no statement, or a name of its own
+    found = connection.execute(
+        "SELECT type, name, sql FROM sqlite_master WHERE sql IS NOT NULL AND name NOT LIKE 'sqlite\\_%' ESCAPE '\\'"
+    )
+    return {f"{kind} {name}": _normalise(sql) for kind, name, sql in found}
+
+
+def _normalise(sql: str) -> str:
+    """A statement without what a migration may write otherwise: quotes and blanks."""
+    return re.sub(r"\s*([(),])\s*", r"\1", " ".join(sql.replace('"', "").split()))
+
+
+@lru_cache(maxsize=1)
+def expected_schema() -> dict[str, str]:
+    """Every table, index and trigger of a library, as its statement."""
+    engine = create_engine("sqlite://")
+    with engine.begin() as connection:
+        create_schema(connection)
+        driver: sqlite3.Connection = connection.connection.driver_connection  # type: ignore[assignment]
+        made = _read_schema(driver)
+    engine.dispose()
+    return made
+
+
+EXPECTED_VERSION = f"{SCHEMA:04d}"
+"""What the migrations stamp."""
