@@ -8,9 +8,10 @@ from __future__ import annotations
 
 import hashlib
 import json
+from json.encoder import encode_basestring
 from typing import Any
 
-__all__ = ["digest", "encode", "encode_text"]
+__all__ = ["digest", "encode", "encode_string", "encode_text"]
 
 # built once: json.dumps would build one at every call
 _ENCODER = json.JSONEncoder(sort_keys=True, separators=(",", ":"), ensure_ascii=False, allow_nan=False)
@@ -30,6 +31,11 @@ def encode(content: Any) -> bytes:
 def encode_text(content: Any) -> str:
     """The canonical JSON as text, before it is UTF-8."""
     return _ENCODER.encode(content)
+
+
+def encode_string(text: str) -> str:
+    """The canonical JSON of a text; anything else is a TypeError."""
+    return encode_basestring(text)
 
 
 def digest(data: bytes) -> str:

@@ -25,7 +25,8 @@ _COLUMNS = {
     "term": ("change", "text", "kind", "key"),
     "standing": ("change", "id", "kind", "key", "revision", "standing", "record", "cause"),
 }
-_ROLES = tuple(REFERRED.items())
+_ROLES = tuple(sorted(REFERRED.items()))
+_FIELDS = tuple(role for role, _ in _ROLES)
 _NAMED = frozenset(name for name, cls in KINDS.items() if cls.terms is not Record.terms)
 _LINKING = frozenset(
     name
@@ -52,13 +53,13 @@ class Derivation:
         self._audit = audit
         self._revisions = revisions
         self._report = report
-        self._stored = {table: ByChange(audit.stream(table)) for table in _COLUMNS}
         self._expected: dict[str, list[Stored]] = {table: [] for table in _COLUMNS}
+        self._tables = [(ByChange(audit.stream(table)), expected, table) for table, expected in self._expected.items()]
         # of each key what it refers to, all revisions together; equal ones are kept once
         self._aims: dict[str, dict[str, Aims]] = {kind: {} for kind in KINDS}
         self._pool: dict[Aims, Aims] = {}
         self._unresolved: list[tuple[Stored, Aims]] = []
-        self._former: dict[tuple[str, str], set[tuple[str, str]]] = {}
+        self._former: dict[tuple[str, str], set[Stored]] = {}
         self._texts: dict[tuple[str, str], set[str]] = {}
         self._words = 0
         self._judged: list[tuple[Stored, dict[str, Any]]] = []
@@ -74,34 +75,30 @@ class Derivation:
             Its content.
         """
         kind = row[3]
-        get = content.get
         if kind in _LINKING:
-            self._aim(row, tuple([get(role) for role in REFERRED]))
+            aims = tuple(map(content.get, _FIELDS))
+            known = self._pool.get(aims)
+            if known is None:
+                self._unresolved.append((row, aims))
+                known = self._pool[aims] = aims
+            of_kind = self._aims[kind]
+            before = of_kind.get(row[4])
+            if before is not known:
+                self._link(row, known, before)
+                of_kind[row[4]] = known
         if kind in _NAMED:
             self._name(row, content)
         if kind in _OF_A_REVISION:
             self._judged.append((row, content))
 
-    def _aim(self, row: Stored, aims: Aims) -> None:
-        known = self._pool.get(aims)
-        if known is None:
-            self._unresolved.append((row, aims))
-            known = self._pool[aims] = aims
-        of_kind = self._aims[row[3]]
-        before = of_kind.get(row[4])
-        if before is not known:
-            self._link(row, known, before)
-            of_kind[row[4]] = known
-
     def _link(self, row: Stored, aims: Aims, before: Aims | None) -> None:
         change, _, _, kind, key = row[:5]
-        new = [(role, to_kind, aim) for (role, to_kind), aim in zip(_ROLES, aims, strict=True) if aim]
+        new = [(change, kind, key, *role, aim) for role, aim in zip(_ROLES, aims, strict=True) if aim]
         if before is not None:
             met = self._former.setdefault((kind, key), set())
-            met |= {(role, aim) for (role, _), aim in zip(_ROLES, before, strict=True) if aim}
-            new = [link for link in new if (link[0], link[2]) not in met]
-        for role, to_kind, aim in new:
-            self._expected["link"].append((change, kind, key, role, to_kind, aim))
+            met |= {(*role, aim) for role, aim in zip(_ROLES, before, strict=True) if aim}
+            new = [link for link in new if link[3:] not in met]
+        self._expected["link"] += new
 
     def _name(self, row: Stored, content: dict[str, Any]) -> None:
         change, _, _, kind, key = row[:5]
@@ -116,16 +113,17 @@ class Derivation:
             self._resolve()
         if self._judged:
             self._judge(last_id)
-        for table, stored in self._stored.items():
-            expected, found = self._expected[table], stored.take(number)
-            if expected or found:
-                if len(found) != len(expected) or set(found) != set(expected):
+        for stored, expected, table in self._tables:
+            if expected or stored.number <= number:
+                found = stored.take(number)
+                # within a change the store sorts them, and SQLite need not keep that order
+                if found != expected and (len(found) != len(expected) or set(found) != set(expected)):
                     self._compare(table, expected, found)
                 expected.clear()
 
     def finish(self) -> None:
         """Whatever belongs to no change."""
-        for table, stored in self._stored.items():
+        for stored, _, table in self._tables:
             for row in stored.finish():
                 self._report_row(table, row, "is of a change that is not there")
 

@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterator
 from hashlib import sha256
 from typing import Any
 
-from registry.canonical import digest, encode_text
+from registry.canonical import digest, encode_string, encode_text
 from registry.derivation import Derivation
 from registry.findings import Finding, integer, show, text_of
 from registry.merkle import hash_leaf, root_of
@@ -60,6 +60,7 @@ class Inspection:
         self.editions: list[tuple[Stored, dict[str, Any]]] = []
         self._revisions: dict[str, dict[str, int]] = {kind: {} for kind in KINDS}
         self._derivation = Derivation(audit, self._revisions, report)
+        self._rows = ByChange(audit.stream("record"))
         self._first = 1
         self._firsts = [1]
         self._time = ""
@@ -67,7 +68,7 @@ class Inspection:
 
     def changes(self) -> Iterator[int]:
         """Go through the library; yields the number of each change when it is done."""
-        records = ByChange(self._audit.stream("record"))
+        records = self._rows
         most = 2 * self._audit.count("change") + FAR
         done = 0
         for row in self._audit.stream("change"):
@@ -78,23 +79,23 @@ class Inspection:
             while done + 1 < number:
                 done += 1
                 self._say_change(done, "the change is missing")
-                self._pass(done, None, records.each(done))
+                self._pass(done, None)
                 yield done
             done = number
-            self._pass(number, row, records.each(number))
+            self._pass(number, row)
             yield number
         for row in records.finish():
             self._say(row, f"it stands in change {show(row[0])}, which is not there")
         self._derivation.finish()
         self.tree.finish()
 
-    def _pass(self, number: int, header: Stored | None, rows: Iterator[Stored]) -> None:
+    def _pass(self, number: int, header: Stored | None) -> None:
         """One change: its records, what follows from them, its header."""
         digests: list[bytes] = []
         stored: list[Any] = []
         editions = len(self.editions)
         place = 0
-        for row in rows:
+        for row in self._rows.each(number):
             if place == 0:
                 self._begin(row[2])
             if row[1] != place:
@@ -104,6 +105,7 @@ class Inspection:
             place += 1
         if not digests:
             self._begin(None)
+        self._rows.advance(number)
         self.records += len(digests)
         said = header[4] if header is not None else place
         self._firsts = [self._first + place, self._first + len(digests)]
@@ -135,7 +137,7 @@ class Inspection:
             before = newest.get(key, 0)
             newest[key] = before + 1
             parsed = json.loads(content)
-            text = f'{{"content":{content},"key":{encode_text(key)},"kind":"{kind}","revision":{revision}}}'
+            text = f'{{"content":{content},"key":{encode_string(key)},"kind":"{kind}","revision":{revision}}}'
             found = sha256(text.encode())
             good = (
                 found.hexdigest() == stored
@@ -221,8 +223,8 @@ class Inspection:
         _, author, reason, at, records, records_root, header = row
         try:
             text = (
-                f'{{"author":{encode_text(author)},"number":{number},"reason":{encode_text(reason)},'
-                f'"recorded_at":{encode_text(at)},"records":{records},"records_root":"{records_root}"}}'
+                f'{{"author":{encode_string(author)},"number":{number},"reason":{encode_string(reason)},'
+                f'"recorded_at":{encode_string(at)},"records":{records},"records_root":"{records_root}"}}'
             )
             good = (
                 text == header

@@ -16,7 +16,7 @@ from registry.errors import BadInput, quote
 from registry.findings import Finding, Verification, show, text_of
 from registry.inspection import Inspection
 from registry.merkle import EMPTY_ROOT, consistency_holds, consistency_proof
-from registry.store.auditing import EXPECTED_VERSION, Audit, Undecodable, expected_schema, open_audit
+from registry.store.auditing import EXPECTED_VERSION, Audit, Damage, Undecodable, expected_schema, is_damage, open_audit
 from registry.store.library_file import LibraryFile
 
 __all__ = ["verify"]
@@ -93,12 +93,19 @@ class _Verifier:
         self._roots: dict[int, bytes] = {0: EMPTY_ROOT}
 
     def verify(self, noted: Noted | None, progress: Progress | None) -> Verification:
-        self._check_file()
-        self._check_history(noted, progress)
-        self._check_identity()
-        self._check_editions()
-        if noted is not None:
-            self._check_against(*noted)
+        checks = self._audit.start_checks()
+        try:
+            self._check_schema()
+            self._check_history(noted, progress)
+            self._check_identity()
+            self._check_editions()
+            if noted is not None:
+                self._check_against(*noted)
+        except Damage as error:
+            if not is_damage(error):
+                raise
+            self._say("file", f"SQLite cannot read on: {error}")
+        self._take_checks(*checks())
         if remark := self._audit.journal_remark():
             self._notes.append(remark)
         passed = self._inspection
@@ -110,8 +117,8 @@ class _Verifier:
     def _say(self, table: str, what: str, key: str = "") -> None:
         self._findings.append(Finding(table, None, "", key, None, None, what))
 
-    def _check_file(self) -> None:
-        """SQLite's own checks, and the statements that made the tables."""
+    def _check_schema(self) -> None:
+        """The statements that made the tables, indexes and triggers."""
         found, expected = self._audit.schema(), expected_schema()
         for name in sorted({*found, *expected}):
             if name not in found:
@@ -123,9 +130,11 @@ class _Verifier:
         if (version := self._audit.version()) != [EXPECTED_VERSION]:
             told = ", ".join(show(value) for value in version) or "nothing"
             self._say("alembic_version", f"it says {told}, and {EXPECTED_VERSION} was expected")
-        for line in self._audit.damages():
+
+    def _take_checks(self, damages: list[str], dangling: list[tuple[Any, ...]]) -> None:
+        for line in damages:
             self._say("file", f"SQLite's integrity check says: {text_of(line)}")
-        for table, row, parent in self._audit.dangling():
+        for table, row, parent, _ in dangling:
             self._say(text_of(table), f"row {row} refers to a {parent} that is not there", text_of(row))
 
     def _check_history(self, noted: Noted | None, progress: Progress | None) -> None:

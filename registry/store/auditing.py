@@ -6,11 +6,15 @@ so that a library is gone through once and never held in memory.
 
 from __future__ import annotations
 
+import math
 import re
 import sqlite3
-from collections.abc import Iterable, Iterator
-from contextlib import closing, contextmanager
-from functools import lru_cache
+from collections.abc import Callable, Iterable, Iterator
+from concurrent.futures import ThreadPoolExecutor
+from contextlib import ExitStack, closing, contextmanager
+from functools import lru_cache, partial
+from itertools import groupby
+from operator import itemgetter
 from pathlib import Path
 from typing import Any
 from urllib.parse import quote
@@ -22,7 +26,16 @@ from registry.store.engine import BUSY_SECONDS, wal_is_safe
 from registry.store.schema import create_schema
 from registry.store.tables import SCHEMA
 
-__all__ = ["EXPECTED_VERSION", "Audit", "ByChange", "Undecodable", "expected_schema", "open_audit"]
+__all__ = [
+    "EXPECTED_VERSION",
+    "Audit",
+    "ByChange",
+    "Damage",
+    "Undecodable",
+    "expected_schema",
+    "is_damage",
+    "open_audit",
+]
 
 
 class Undecodable(Exception):
@@ -30,6 +43,12 @@ class Undecodable(Exception):
 
 
 Row = tuple[Any, ...]
+
+Checked = tuple[list[str], list[Row]]
+"""What SQLite says against the file, and (table, row, table referred to, number) of references that lead nowhere."""
+
+Damage = sqlite3.DatabaseError
+"""What reading a damaged file raises."""
 
 _STREAMS = {
     "change": "SELECT number, author, reason, recorded_at, records, records_root, header FROM change ORDER BY number",
@@ -48,46 +67,49 @@ class ByChange:
 
     Attributes
     ----------
+    number : float
+        The change of the next row; as SQLite sorts, nothing comes before all
+        numbers and text after them.
     strays : list of tuple
         Rows passed over: of no change, or of one that was not asked for.
     """
 
     def __init__(self, rows: Iterable[Row]) -> None:
-        self._rows = iter(rows)
-        self._ahead: Row | None = next(self._rows, None)
+        self._groups = groupby(rows, itemgetter(0))
         self.strays: list[Row] = []
+        self._advance()
+
+    def _advance(self) -> None:
+        value, self._rows = next(self._groups, _END)
+        self.number = value if isinstance(value, (int, float)) else -math.inf if value is None else math.inf
 
     def take(self, number: int) -> list[Row]:
         """The rows of one change; numbers are asked for in rising order."""
-        ahead = self._ahead
-        return (
-            []
-            if ahead is None or (ahead[0] != number and not _is_before(ahead[0], number))
-            else list(self.each(number))
-        )
+        found = list(self.each(number))
+        if found:
+            self._advance()
+        return found
 
     def each(self, number: int) -> Iterator[Row]:
-        """The rows of one change one by one, to be gone through before more is asked for."""
-        while (ahead := self._ahead) is not None:
-            if ahead[0] != number:
-                if not _is_before(ahead[0], number):
-                    return
-                self.strays.append(ahead)
-            else:
-                yield ahead
-            self._ahead = next(self._rows, None)
+        """The rows of one change as they are read; `advance` must follow before more is asked for."""
+        while self.number < number:
+            self.strays += self._rows
+            self._advance()
+        return self._rows if self.number == number else iter(())
+
+    def advance(self, number: int) -> None:
+        """Go on to the next change."""
+        if self.number == number:
+            self._advance()
 
     def finish(self) -> list[Row]:
         """All rows that were passed over or are left: normally none."""
-        if self._ahead is not None:
-            self.strays += [self._ahead, *self._rows]
-            self._ahead = None
+        self.strays += self._rows
+        self.strays += [row for _, rows in self._groups for row in rows]
         return self.strays
 
 
-def _is_before(value: Any, number: int) -> bool:
-    # as SQLite sorts: NULL, then numbers, then text and blobs
-    return value is None or (isinstance(value, (int, float)) and value < number)
+_END: tuple[Any, Iterator[Row]] = ("", iter(()))
 
 
 class Audit:
@@ -97,10 +119,13 @@ class Audit:
     ----------
     connection : sqlite3.Connection
         Open, with a transaction begun.
+    check : callable
+        Starts SQLite's own checks, which go on beside the reading.
     """
 
-    def __init__(self, connection: sqlite3.Connection) -> None:
+    def __init__(self, connection: sqlite3.Connection, check: Callable[[], Callable[[], Checked]]) -> None:
         self._connection = connection
+        self.start_checks = check
 
     def _rows(self, statement: str, *values: Any) -> sqlite3.Cursor:
         return self._connection.execute(statement, values)
@@ -143,14 +168,6 @@ class Audit:
         """Every table, index, trigger and view, as its statement."""
         return _read_schema(self._connection)
 
-    def damages(self) -> Iterator[str]:
-        """What SQLite's own integrity check says against the file: normally nothing."""
-        return (str(line) for (line,) in self._rows("PRAGMA integrity_check") if line != "ok")
-
-    def dangling(self) -> Iterator[Row]:
-        """Table, row and the table it should refer to, for each reference that leads nowhere."""
-        return ((table, row, parent) for table, row, parent, _ in self._rows("PRAGMA foreign_key_check"))
-
     def journal_remark(self) -> str:
         """What is to be said of the file's journal: that it may lose what was written."""
         mode = self._rows("PRAGMA journal_mode").fetchone()[0]
@@ -182,22 +199,72 @@ def open_audit(path: Path, *, any_text: bool = False) -> Iterator[Audit]:
     NotALibrary
         If SQLite cannot read it.
     """
-    uri = f"file:{quote(str(path))}?mode=ro"
     try:
-        with closing(sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS, isolation_level=None)) as connection:
+        with ExitStack() as stack:
+            connection = stack.enter_context(_connect(path, BUSY_SECONDS))
             if any_text:
-                connection.text_factory = lambda raw: raw.decode("utf-8", "surrogateescape")
-            connection.execute("PRAGMA trusted_schema=OFF")
-            connection.execute("PRAGMA cell_size_check=ON")
-            connection.execute("BEGIN")
-            connection.execute("SELECT count(*) FROM sqlite_master").fetchone()
-            yield Audit(connection)
+                connection.text_factory = _decode
+            beside = _begin_beside(stack, path)
+            if beside is None:
+                yield Audit(connection, lambda: partial(_check, connection))
+                return
+            pool = stack.enter_context(ThreadPoolExecutor(1))
+            stack.callback(beside.interrupt)  # where reading has failed, nobody waits for the checks
+            yield Audit(connection, lambda: pool.submit(_check, beside).result)
     except sqlite3.DatabaseError as error:
-        if "locked" in str(error) or "busy" in str(error):
+        if _is_busy(error):
             raise LibraryBusy(str(path)) from error
         if "Could not decode" in str(error):
             raise Undecodable(str(error)) from error
         raise NotALibrary(str(path), f"SQLite says {error}") from error
+
+
+def is_damage(error: sqlite3.DatabaseError) -> bool:
+    """True if the file is to blame: it is not held by another process, and text has been let be."""
+    return not _is_busy(error) and "Could not decode" not in str(error)
+
+
+def _is_busy(error: sqlite3.DatabaseError) -> bool:
+    return "locked" in str(error) or "busy" in str(error)
+
+
+@contextmanager
+def _connect(path: Path, timeout: float) -> Iterator[sqlite3.Connection]:
+    uri = f"file:{quote(str(path))}?mode=ro"
+    with closing(
+        sqlite3.connect(uri, uri=True, timeout=timeout, isolation_level=None, check_same_thread=False)
+    ) as connection:
+        connection.execute("PRAGMA trusted_schema=OFF")
+        connection.execute("PRAGMA cell_size_check=ON")
+        connection.execute("BEGIN")
+        connection.execute("SELECT count(*) FROM sqlite_master").fetchone()
+        yield connection
+
+
+def _begin_beside(stack: ExitStack, path: Path) -> sqlite3.Connection | None:
+    """A second reader of the same state; None if a writer has come between, who waits for the first."""
+    try:
+        connection = stack.enter_context(_connect(path, 0.0))
+    except sqlite3.OperationalError:
+        return None
+    connection.text_factory = _decode
+    return connection
+
+
+def _decode(raw: bytes) -> str:
+    return raw.decode("utf-8", "surrogateescape")
+
+
+def _check(connection: sqlite3.Connection) -> Checked:
+    """SQLite's own integrity and foreign-key checks."""
+    damages: list[str] = []
+    dangling: list[Row] = []
+    try:
+        damages += [str(line) for (line,) in connection.execute("PRAGMA integrity_check") if line != "ok"]
+        dangling += connection.execute("PRAGMA foreign_key_check")
+    except sqlite3.DatabaseError as error:
+        damages.append(str(error))
+    return damages, dangling
 
 
 def _read_schema(connection: sqlite3.Connection) -> dict[str, str]:
