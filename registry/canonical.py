@@ -8,10 +8,11 @@ from __future__ import annotations
 
 import hashlib
 import json
+from collections.abc import Callable
 from json.encoder import encode_basestring
 from typing import Any
 
-__all__ = ["digest", "encode", "encode_string", "encode_text"]
+__all__ = ["digest", "encode", "encode_string", "encode_text", "is_canonical"]
 
 # built once: json.dumps would build one at every call
 _ENCODER = json.JSONEncoder(sort_keys=True, separators=(",", ":"), ensure_ascii=False, allow_nan=False)
@@ -33,9 +34,57 @@ def encode_text(content: Any) -> str:
     return _ENCODER.encode(content)
 
 
-def encode_string(text: str) -> str:
-    """The canonical JSON of a text; anything else is a TypeError."""
-    return encode_basestring(text)
+def is_canonical(text: str, content: Any) -> bool:
+    """Whether a text is the canonical JSON of what it was parsed into.
+
+    Parameters
+    ----------
+    text : str
+        JSON.
+    content : object
+        What it was parsed into.
+
+    Returns
+    -------
+    bool
+        As if the content were encoded again and compared; for objects of
+        plain texts at a third of the cost.
+
+    Examples
+    --------
+    >>> is_canonical('{"A":"8.07131"}', {"A": "8.07131"}), is_canonical('{"A": "8.07131"}', {"A": "8.07131"})
+    (True, False)
+    """
+    # where nothing is escaped, all that is open is the order of names, blanks and repeated names:
+    # the length shows the last two
+    if "\\" not in text and type(content) is dict and _plain_length(content) == len(text):
+        return True
+    return encode_text(content) == text
+
+
+def _plain_length(content: dict[str, Any]) -> int:
+    """Characters of the canonical JSON of an object of texts without escapes; -1 if it is not that, or not sorted."""
+    names = list(content)
+    if names != sorted(names):
+        return -1
+    length = 6 * len(names) + 1 + len("".join(names))
+    values = content.values()
+    if _TYPES.issuperset(map(type, values)):
+        for value in values:
+            if type(value) is dict:
+                inner = _plain_length(value)
+                if inner < 0:
+                    return -1
+                length += inner - 2 - len(value)
+        return length + sum(map(len, values))
+    return -1
+
+
+_TYPES = frozenset((str, dict))
+
+
+encode_string: Callable[[str], str] = encode_basestring
+"""The canonical JSON of a text; anything else is a TypeError."""
 
 
 def digest(data: bytes) -> str:

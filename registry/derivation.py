@@ -2,16 +2,16 @@
 
 from __future__ import annotations
 
+import contextlib
 import dataclasses
 import json
-from collections import Counter
 from collections.abc import Callable, Iterable
 from typing import Any
 
 from registry.findings import Finding, integer, show, text_of
 from registry.records import KINDS, Record, Review, Withdrawal
 from registry.records.record import REFERRED
-from registry.store.auditing import Audit, ByChange
+from registry.store.auditing import Audit, Matching
 from registry.store.history import fold_term
 
 __all__ = ["Derivation"]
@@ -25,14 +25,15 @@ _COLUMNS = {
     "term": ("change", "text", "kind", "key"),
     "standing": ("change", "id", "kind", "key", "revision", "standing", "record", "cause"),
 }
-_ROLES = tuple(sorted(REFERRED.items()))
-_FIELDS = tuple(role for role, _ in _ROLES)
-_NAMED = frozenset(name for name, cls in KINDS.items() if cls.terms is not Record.terms)
-_LINKING = frozenset(
-    name
+PACE = 200
+"""Changes after which stored rows are compared."""
+
+_ROLES = {
+    name: tuple(sorted(REFERRED.items() & {(f.name, REFERRED.get(f.name)) for f in dataclasses.fields(cls)}))  # type: ignore[arg-type]
     for name, cls in KINDS.items()
-    if any(field.name in REFERRED for field in dataclasses.fields(cls))  # type: ignore[arg-type]
-)
+}
+_NAMES = {kind: tuple(role for role, _ in roles) for kind, roles in _ROLES.items()}
+_NAMED = frozenset(name for name, cls in KINDS.items() if cls.terms is not Record.terms)
 _OF_A_REVISION = (Review.kind, Withdrawal.kind)
 
 
@@ -53,8 +54,9 @@ class Derivation:
         self._audit = audit
         self._revisions = revisions
         self._report = report
-        self._expected: dict[str, list[Stored]] = {table: [] for table in _COLUMNS}
-        self._tables = [(ByChange(audit.stream(table)), expected, table) for table, expected in self._expected.items()]
+        self._tables = {table: self._match(table) for table in _COLUMNS}
+        self._links: list[Stored] = []
+        self._terms: list[Stored] = []
         # of each key what it refers to, all revisions together; equal ones are kept once
         self._aims: dict[str, dict[str, Aims]] = {kind: {} for kind in KINDS}
         self._pool: dict[Aims, Aims] = {}
@@ -75,8 +77,9 @@ class Derivation:
             Its content.
         """
         kind = row[3]
-        if kind in _LINKING:
-            aims = tuple(map(content.get, _FIELDS))
+        names = _NAMES[kind]
+        if names:
+            aims = tuple(map(content.get, names))
             known = self._pool.get(aims)
             if known is None:
                 self._unresolved.append((row, aims))
@@ -93,19 +96,19 @@ class Derivation:
 
     def _link(self, row: Stored, aims: Aims, before: Aims | None) -> None:
         change, _, _, kind, key = row[:5]
-        new = [(change, kind, key, *role, aim) for role, aim in zip(_ROLES, aims, strict=True) if aim]
+        new = [(change, kind, key, role, to_kind, aim) for (role, to_kind), aim in zip(_ROLES[kind], aims) if aim]
         if before is not None:
             met = self._former.setdefault((kind, key), set())
-            met |= {(*role, aim) for role, aim in zip(_ROLES, before, strict=True) if aim}
-            new = [link for link in new if link[3:] not in met]
-        self._expected["link"] += new
+            met |= {(role, aim) for (role, _), aim in zip(_ROLES[kind], before) if aim}
+            new = [link for link in new if (link[3], link[5]) not in met]
+        self._links += new
 
     def _name(self, row: Stored, content: dict[str, Any]) -> None:
         change, _, _, kind, key = row[:5]
         met = self._texts.setdefault((kind, key), set())
         new = {fold_term(text) for text in KINDS[kind].restore(key, content).terms()} - met
         met |= new
-        self._expected["term"] += [(change, text, kind, key) for text in new]
+        self._terms += [(change, text, kind, key) for text in new]
 
     def settle(self, number: int, last_id: int) -> None:
         """Compare what a change implies with what is stored of it, once all its records were entered."""
@@ -113,23 +116,32 @@ class Derivation:
             self._resolve()
         if self._judged:
             self._judge(last_id)
-        for stored, expected, table in self._tables:
-            if expected or stored.number <= number:
-                found = stored.take(number)
-                # within a change the store sorts them, and SQLite need not keep that order
-                if found != expected and (len(found) != len(expected) or set(found) != set(expected)):
-                    self._compare(table, expected, found)
-                expected.clear()
+        for table, new in (("link", self._links), ("term", self._terms)):
+            if new:
+                if len(new) > 1:
+                    _sort(new)  # as the store does: equal runs are compared at once
+                self._tables[table].expected += new
+                new.clear()
+        if number % PACE == 0:
+            for matching in self._tables.values():
+                matching.settle(number)
 
-    def finish(self) -> None:
-        """Whatever belongs to no change."""
-        for stored, _, table in self._tables:
-            for row in stored.finish():
-                self._report_row(table, row, "is of a change that is not there")
+    def finish(self, number: int) -> None:
+        """Compare what is left, up to the last change and beyond."""
+        for matching in self._tables.values():
+            matching.settle(number)
+            matching.finish()
+
+    def _match(self, table: str) -> Matching:
+        return Matching(
+            self._audit.stream(table),
+            lambda row: self._report_row(table, row, "is missing"),
+            lambda row: self._report_row(table, row, "does not follow from the records"),
+        )  # fmt: skip
 
     def _resolve(self) -> None:
         for row, aims in self._unresolved:
-            for (role, to_kind), aim in zip(_ROLES, aims, strict=True):
+            for (role, to_kind), aim in zip(_ROLES[row[3]], aims):
                 if aim and aim not in self._revisions[to_kind]:
                     self._pool.pop(aims, None)  # whoever refers to it next is named too
                     self._say(row, f"its {role} is {show(aim)}, and no {to_kind} of that key stands there by then")
@@ -163,13 +175,7 @@ class Derivation:
                 self._say(row, f"it is about {_name_revision(revision)}, which does not stand there by then")
                 continue
             self._words += 1
-            self._expected["standing"].append((row[0], self._words, *revision, word, aim[0], why[0]))
-
-    def _compare(self, table: str, expected: list[Stored], found: list[Stored]) -> None:
-        for row in Counter(expected) - Counter(found):
-            self._report_row(table, row, "is missing")
-        for row in Counter(found) - Counter(expected):
-            self._report_row(table, row, "does not follow from the records")
+            self._tables["standing"].expected.append((row[0], self._words, *revision, word, aim[0], why[0]))
 
     def _report_row(self, table: str, row: Stored, what: str) -> None:
         named = dict(zip(_COLUMNS[table], row, strict=True))
@@ -184,6 +190,11 @@ class Derivation:
         self._report(
             Finding("record", integer(change), text_of(kind), text_of(key), integer(revision), integer(place), what)
         )
+
+
+def _sort(rows: list[Stored]) -> None:
+    with contextlib.suppress(TypeError):  # a tampered record may refer to anything
+        rows.sort()
 
 
 def _name_revision(about: Any) -> str:

@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterator
 from hashlib import sha256
 from typing import Any
 
-from registry.canonical import digest, encode_string, encode_text
+from registry.canonical import digest, encode_string, encode_text, is_canonical
 from registry.derivation import Derivation
 from registry.findings import Finding, integer, show, text_of
 from registry.merkle import hash_leaf, root_of
@@ -26,6 +26,7 @@ UNREADABLE = (ValueError, TypeError, KeyError, AttributeError, RecursionError)
 FAR = 1000
 """Missing changes that are looked for one by one, beyond as many as there are."""
 
+_DECODER = json.JSONDecoder()
 _FIELDS = tuple(Change.__dataclass_fields__)
 
 
@@ -86,7 +87,7 @@ class Inspection:
             yield number
         for row in records.finish():
             self._say(row, f"it stands in change {show(row[0])}, which is not there")
-        self._derivation.finish()
+        self._derivation.finish(done)
         self.tree.finish()
 
     def _pass(self, number: int, header: Stored | None) -> None:
@@ -107,10 +108,9 @@ class Inspection:
             self._begin(None)
         self._rows.advance(number)
         self.records += len(digests)
-        said = header[4] if header is not None else place
-        self._firsts = [self._first + place, self._first + len(digests)]
-        if isinstance(said, int):
-            self._firsts.append(self._first + said)
+        self._firsts = [self._first + place]
+        if header is not None and header[4] != place and isinstance(header[4], int):
+            self._firsts += [self._first + header[4], self._first + len(digests)]
         self._derivation.settle(number, self._first + place - 1)
         for row, content in self.editions[editions:]:
             self._check_edition(row, content)
@@ -136,7 +136,7 @@ class Inspection:
             newest = self._revisions[kind]
             before = newest.get(key, 0)
             newest[key] = before + 1
-            parsed = json.loads(content)
+            parsed, _ = _DECODER.raw_decode(content)
             text = f'{{"content":{content},"key":{encode_string(key)},"kind":"{kind}","revision":{revision}}}'
             found = sha256(text.encode())
             good = (
@@ -144,7 +144,7 @@ class Inspection:
                 and revision == before + 1
                 and at == place
                 and number == self._first + place
-                and encode_text(parsed) == content
+                and is_canonical(content, parsed)
             )
             self._derivation.enter(row, parsed)
             if kind == "edition":
@@ -227,10 +227,7 @@ class Inspection:
                 f'"recorded_at":{encode_string(at)},"records":{records},"records_root":"{records_root}"}}'
             )
             good = (
-                text == header
-                and records == len(digests)
-                and at >= self._time
-                and root_of([hash_leaf(found) for found in digests]).hex() == records_root
+                text == header and records == len(digests) and at >= self._time and _root_over(digests) == records_root
             )
             leaf = hash_leaf(text.encode())
         except UNREADABLE:

@@ -6,8 +6,8 @@ from collections.abc import Callable, Iterable
 from typing import Any
 
 from registry.findings import Finding, integer, show, text_of
-from registry.merkle import hash_leaf, new_nodes, root_from_nodes
-from registry.store.auditing import Audit, ByChange
+from registry.merkle import hash_leaf, hash_node, root_from_nodes
+from registry.store.auditing import RUN, Audit, Matching
 
 __all__ = ["Regrowth"]
 
@@ -33,8 +33,8 @@ class Regrowth:
         self._report = report
         self.size = 0
         # of each level the newest complete node: all that growing and the root take
-        self._newest: dict[int, bytes] = {}
-        self._stored: dict[int, ByChange] = {}
+        self._newest: list[bytes] = []
+        self._levels: list[Matching] = []
 
     def _node_at(self, level: int, _: int) -> bytes:
         return self._newest[level]
@@ -49,31 +49,37 @@ class Regrowth:
 
     def add(self, leaf: bytes) -> None:
         """One more leaf; each node that it completes is compared with the stored one."""
-        for level, place, value in new_nodes(self.size, leaf, self._node_at):
-            self._newest[level] = value
-            if level not in self._stored:
-                self._stored[level] = ByChange(self._audit.nodes(level))
-            found = self._stored[level].take(place)
-            expected = value.hex()
-            if found != [(place, expected)]:
-                self._compare(level, place, expected, found)
+        level, place, value = 0, self.size, leaf
+        while True:
+            if level == len(self._levels):
+                self._levels.append(self._match(level))
+                self._newest.append(value)
+            self._levels[level].expected.append((place, value.hex()))
+            left, self._newest[level] = self._newest[level], value
+            if not place & 1:
+                break
+            level, place, value = level + 1, place >> 1, hash_node(left, value)
         self.size += 1
+        if self.size % RUN == 0:
+            self._settle()
 
-    def _compare(self, level: int, place: int, expected: str, found: list[tuple[Any, ...]]) -> None:
-        if not found:
-            self._say(level, place, "it is missing")
-        for _, value in found:
-            if value != expected:
-                self._say(level, place, f"its hash is {show(value, 20)}, and the changes give {expected[:12]}...")
-        if len(found) > 1:
-            self._say(level, place, f"it stands there {len(found)} times")
+    def _settle(self) -> None:
+        for level, stored in enumerate(self._levels):
+            stored.settle((self.size >> level) - 1)
+
+    def _match(self, level: Any) -> Matching:
+        return Matching(
+            self._audit.nodes(level),
+            lambda row: self._say(level, row[0], f"{show(row[1], 20)} is expected there and is not stored"),
+            lambda row: self._say(level, row[0], f"{show(row[1], 20)} is stored there and does not follow"),
+        )  # fmt: skip
 
     def finish(self) -> None:
-        """Stored nodes that the tree does not have."""
-        for level in self._audit.levels():
-            stored = self._stored.get(level) or ByChange(self._audit.nodes(level))
-            for place, _ in stored.finish():
-                self._say(level, place, f"the tree over {self.size} changes has no such node")
+        """Compare what is left, and what is stored beyond the tree."""
+        self._settle()
+        beyond = [self._match(level) for level in self._audit.levels() if level not in range(len(self._levels))]
+        for stored in (*self._levels, *beyond):
+            stored.finish()
 
     def recorded_leaf(self, number: int) -> bytes:
         """The stored leaf of a change whose row is missing, so that the rest of the tree can be judged."""

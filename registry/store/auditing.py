@@ -9,6 +9,7 @@ from __future__ import annotations
 import math
 import re
 import sqlite3
+from collections import Counter
 from collections.abc import Callable, Iterable, Iterator
 from concurrent.futures import ThreadPoolExecutor
 from contextlib import ExitStack, closing, contextmanager
@@ -27,6 +28,7 @@ from registry.store.schema import create_schema
 from registry.store.tables import SCHEMA
 
 __all__ = [
+    "RUN",
     "EXPECTED_VERSION",
     "Audit",
     "ByChange",
@@ -53,8 +55,8 @@ Damage = sqlite3.DatabaseError
 _STREAMS = {
     "change": "SELECT number, author, reason, recorded_at, records, records_root, header FROM change ORDER BY number",
     "record": "SELECT change, place, id, kind, key, revision, content, digest FROM record ORDER BY change, place, id",
-    "link": "SELECT change, kind, key, role, to_kind, to_key FROM link ORDER BY change",
-    "term": "SELECT change, text, kind, key FROM term ORDER BY change",
+    "link": "SELECT change, kind, key, role, to_kind, to_key FROM link ORDER BY change, rowid",
+    "term": "SELECT change, text, kind, key FROM term ORDER BY change, rowid",
     "standing": "SELECT change, id, kind, key, revision, standing, record, cause FROM standing ORDER BY change, id",
 }
 _NODES = "SELECT place, hash FROM node WHERE level IS ? ORDER BY place"
@@ -83,13 +85,6 @@ class ByChange:
         value, self._rows = next(self._groups, _END)
         self.number = value if isinstance(value, (int, float)) else -math.inf if value is None else math.inf
 
-    def take(self, number: int) -> list[Row]:
-        """The rows of one change; numbers are asked for in rising order."""
-        found = list(self.each(number))
-        if found:
-            self._advance()
-        return found
-
     def each(self, number: int) -> Iterator[Row]:
         """The rows of one change as they are read; `advance` must follow before more is asked for."""
         while self.number < number:
@@ -110,6 +105,70 @@ class ByChange:
 
 
 _END: tuple[Any, Iterator[Row]] = ("", iter(()))
+
+
+class Matching:
+    """Rows that must be stored, in the order of their first column, against those that are.
+
+    Both are compared in long runs; only where a run differs they are told
+    apart one by one.
+
+    Parameters
+    ----------
+    stored : sqlite3.Cursor
+        The stored rows, in that order.
+    missing, extra : callable
+        Take a row that is not stored, and one that should not be.
+
+    Attributes
+    ----------
+    expected : list of tuple
+        To be appended to.
+    """
+
+    def __init__(self, stored: sqlite3.Cursor, missing: Callable[[Row], None], extra: Callable[[Row], None]) -> None:
+        self._stored = stored
+        self._missing = missing
+        self._extra = extra
+        self._found: list[Row] = []
+        self.expected: list[Row] = []
+
+    def settle(self, last: int) -> None:
+        """Compare everything whose first column is at most `last`; all of that must be expected by now."""
+        found, expected = self._found, self.expected
+        if len(found) < len(expected):
+            found += self._stored.fetchmany(len(expected) - len(found))
+        if found == expected:
+            found.clear()
+        else:
+            self._tell_apart(last)
+        expected.clear()
+
+    def _tell_apart(self, last: int) -> None:
+        found = self._found
+        while (more := self._stored.fetchmany(RUN)) and not _is_after(more[-1][0], last):
+            found += more
+        found += more
+        due, expected = Counter(row for row in found if not _is_after(row[0], last)), Counter(self.expected)
+        for row in expected - due:
+            self._missing(row)
+        for row in due - expected:
+            self._extra(row)
+        self._found = [row for row in found if _is_after(row[0], last)]
+
+    def finish(self) -> None:
+        """Report what is left."""
+        for row in (*self._found, *self._stored):
+            self._extra(row)
+
+
+RUN = 500
+"""Rows that are read at once."""
+
+
+def _is_after(value: Any, last: int) -> bool:
+    # as SQLite sorts: NULL, then numbers, then text and blobs
+    return value is not None and not (isinstance(value, (int, float)) and value <= last)
 
 
 class Audit:
