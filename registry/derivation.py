@@ -96,10 +96,14 @@ class Derivation:
 
     def _link(self, row: Stored, aims: Aims, before: Aims | None) -> None:
         change, _, _, kind, key = row[:5]
-        new = [(change, kind, key, role, to_kind, aim) for (role, to_kind), aim in zip(_ROLES[kind], aims) if aim]
+        new = [
+            (change, kind, key, role, to_kind, aim)
+            for (role, to_kind), aim in zip(_ROLES[kind], aims, strict=True)
+            if aim
+        ]
         if before is not None:
             met = self._former.setdefault((kind, key), set())
-            met |= {(role, aim) for (role, _), aim in zip(_ROLES[kind], before) if aim}
+            met |= {(role, aim) for (role, _), aim in zip(_ROLES[kind], before, strict=True) if aim}
             new = [link for link in new if (link[3], link[5]) not in met]
         self._links += new
 
@@ -141,7 +145,7 @@ class Derivation:
 
     def _resolve(self) -> None:
         for row, aims in self._unresolved:
-            for (role, to_kind), aim in zip(_ROLES[row[3]], aims):
+            for (role, to_kind), aim in zip(_ROLES[row[3]], aims, strict=True):
                 if aim and aim not in self._revisions[to_kind]:
                     self._pool.pop(aims, None)  # whoever refers to it next is named too
                     self._say(row, f"its {role} is {show(aim)}, and no {to_kind} of that key stands there by then")

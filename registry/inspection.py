@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import json
+import math
 from collections.abc import Callable, Iterator
 from hashlib import sha256
 from typing import Any
@@ -13,7 +14,7 @@ from registry.findings import Finding, integer, show, text_of
 from registry.merkle import hash_leaf, root_of
 from registry.records import KINDS
 from registry.regrowth import Regrowth
-from registry.store.auditing import Audit, ByChange
+from registry.store.auditing import Audit, is_after
 from registry.store.history import Change, envelope
 
 __all__ = ["UNREADABLE", "Inspection"]
@@ -26,7 +27,7 @@ UNREADABLE = (ValueError, TypeError, KeyError, AttributeError, RecursionError)
 FAR = 1000
 """Missing changes that are looked for one by one, beyond as many as there are."""
 
-_DECODER = json.JSONDecoder()
+_parse_first = json.JSONDecoder().raw_decode
 _FIELDS = tuple(Change.__dataclass_fields__)
 
 
@@ -61,7 +62,9 @@ class Inspection:
         self.editions: list[tuple[Stored, dict[str, Any]]] = []
         self._revisions: dict[str, dict[str, int]] = {kind: {} for kind in KINDS}
         self._derivation = Derivation(audit, self._revisions, report)
-        self._rows = ByChange(audit.stream("record"))
+        self._enter = self._derivation.enter
+        self._rows = audit.stream("record")
+        self._ahead = next(self._rows, None)
         self._first = 1
         self._firsts = [1]
         self._time = ""
@@ -69,7 +72,6 @@ class Inspection:
 
     def changes(self) -> Iterator[int]:
         """Go through the library; yields the number of each change when it is done."""
-        records = self._rows
         most = 2 * self._audit.count("change") + FAR
         done = 0
         for row in self._audit.stream("change"):
@@ -85,8 +87,7 @@ class Inspection:
             done = number
             self._pass(number, row)
             yield number
-        for row in records.finish():
-            self._say(row, f"it stands in change {show(row[0])}, which is not there")
+        self._pass_over(math.inf)
         self._derivation.finish(done)
         self.tree.finish()
 
@@ -94,31 +95,41 @@ class Inspection:
         """One change: its records, what follows from them, its header."""
         digests: list[bytes] = []
         stored: list[Any] = []
-        editions = len(self.editions)
-        place = 0
-        for row in self._rows.each(number):
-            if place == 0:
-                self._begin(row[2])
+        place, editions = 0, len(self.editions)
+        row = self._ahead
+        if row is not None and row[0] != number:
+            row = self._pass_over(number)
+        if row is None or row[0] != number or row[2] not in self._firsts:
+            self._first = self._firsts[0]
+        else:
+            # where the count of the change before and its rows differ, the next id tells which of them is right
+            self._first = row[2]
+        while row is not None and row[0] == number:
             if row[1] != place:
                 place = self._skip(row, place)
             digests.append(self._inspect(row, place))
             stored.append(row[7])
             place += 1
-        if not digests:
-            self._begin(None)
-        self._rows.advance(number)
+            row = next(self._rows, None)
+        self._ahead = row
         self.records += len(digests)
         self._firsts = [self._first + place]
         if header is not None and header[4] != place and isinstance(header[4], int):
             self._firsts += [self._first + header[4], self._first + len(digests)]
         self._derivation.settle(number, self._first + place - 1)
-        for row, content in self.editions[editions:]:
-            self._check_edition(row, content)
+        for edition, content in self.editions[editions:]:
+            self._check_edition(edition, content)
         self.tree.add(self._read_header(number, header, digests, stored))
 
-    def _begin(self, found: Any) -> None:
-        # where the count of the change before and its rows differ, the next id tells which of them is right
-        self._first = found if found in self._firsts else self._firsts[0]
+    def _pass_over(self, number: float) -> Stored | None:
+        """Records of no change, or of one that is not there: normally none."""
+        row = self._ahead
+        while row is not None and not is_after(row[0], number, equal=True):
+            self._say(row, f"it stands in change {show(row[0])}, which is not there")
+            self.records += 1
+            row = next(self._rows, None)
+        self._ahead = row
+        return row
 
     def _skip(self, row: Stored, place: int) -> int:
         """The place of a record that does not stand at the next one."""
@@ -131,30 +142,27 @@ class Inspection:
     def _inspect(self, row: Stored, place: int) -> bytes:
         """The digest of a record, recomputed; whatever is wrong with its row is reported."""
         _, at, number, kind, key, revision, content, stored = row
-        found = None
         try:
             newest = self._revisions[kind]
-            before = newest.get(key, 0)
-            newest[key] = before + 1
-            parsed, _ = _DECODER.raw_decode(content)
+            expected = newest[key] = newest.get(key, 0) + 1
+            parsed, _ = _parse_first(content)
             text = f'{{"content":{content},"key":{encode_string(key)},"kind":"{kind}","revision":{revision}}}'
             found = sha256(text.encode())
-            good = (
+            self._enter(row, parsed)
+            if (
                 found.hexdigest() == stored
-                and revision == before + 1
+                and revision == expected
                 and at == place
                 and number == self._first + place
                 and is_canonical(content, parsed)
-            )
-            self._derivation.enter(row, parsed)
-            if kind == "edition":
-                self.editions.append((row, parsed))
-            elif kind == "library":
-                self.keepings.append(parsed)
+            ):
+                if kind == "edition":
+                    self.editions.append((row, parsed))
+                elif kind == "library":
+                    self.keepings.append(parsed)
+                return found.digest()
         except UNREADABLE:
-            good = False
-        if good and found is not None:
-            return found.digest()
+            pass
         return self._diagnose(row, place)
 
     def _diagnose(self, row: Stored, place: int) -> bytes:
@@ -286,6 +294,8 @@ def _parse(header: Any) -> dict[str, Any] | None:
 
 
 def _root_over(digests: list[bytes]) -> str:
+    if len(digests) == 1:  # the root over one leaf is that leaf
+        return hash_leaf(digests[0]).hex()
     return root_of([hash_leaf(found) for found in digests]).hex()
 
 

@@ -10,12 +10,10 @@ import math
 import re
 import sqlite3
 from collections import Counter
-from collections.abc import Callable, Iterable, Iterator
+from collections.abc import Callable, Iterator
 from concurrent.futures import ThreadPoolExecutor
 from contextlib import ExitStack, closing, contextmanager
 from functools import lru_cache, partial
-from itertools import groupby
-from operator import itemgetter
 from pathlib import Path
 from typing import Any
 from urllib.parse import quote
@@ -28,13 +26,13 @@ from registry.store.schema import create_schema
 from registry.store.tables import SCHEMA
 
 __all__ = [
-    "RUN",
     "EXPECTED_VERSION",
+    "RUN",
     "Audit",
-    "ByChange",
     "Damage",
     "Undecodable",
     "expected_schema",
+    "is_after",
     "is_damage",
     "open_audit",
 ]
@@ -62,49 +60,6 @@ _STREAMS = {
 _NODES = "SELECT place, hash FROM node WHERE level IS ? ORDER BY place"
 _LEVELS = "SELECT DISTINCT level FROM node ORDER BY level"
 _RECORD = "SELECT id, content FROM record WHERE kind = ? AND key = ? AND revision = ?"
-
-
-class ByChange:
-    """Rows sorted by their first column, the number of a change, handed out change by change.
-
-    Attributes
-    ----------
-    number : float
-        The change of the next row; as SQLite sorts, nothing comes before all
-        numbers and text after them.
-    strays : list of tuple
-        Rows passed over: of no change, or of one that was not asked for.
-    """
-
-    def __init__(self, rows: Iterable[Row]) -> None:
-        self._groups = groupby(rows, itemgetter(0))
-        self.strays: list[Row] = []
-        self._advance()
-
-    def _advance(self) -> None:
-        value, self._rows = next(self._groups, _END)
-        self.number = value if isinstance(value, (int, float)) else -math.inf if value is None else math.inf
-
-    def each(self, number: int) -> Iterator[Row]:
-        """The rows of one change as they are read; `advance` must follow before more is asked for."""
-        while self.number < number:
-            self.strays += self._rows
-            self._advance()
-        return self._rows if self.number == number else iter(())
-
-    def advance(self, number: int) -> None:
-        """Go on to the next change."""
-        if self.number == number:
-            self._advance()
-
-    def finish(self) -> list[Row]:
-        """All rows that were passed over or are left: normally none."""
-        self.strays += self._rows
-        self.strays += [row for _, rows in self._groups for row in rows]
-        return self.strays
-
-
-_END: tuple[Any, Iterator[Row]] = ("", iter(()))
 
 
 class Matching:
@@ -146,15 +101,15 @@ class Matching:
 
     def _tell_apart(self, last: int) -> None:
         found = self._found
-        while (more := self._stored.fetchmany(RUN)) and not _is_after(more[-1][0], last):
+        while (more := self._stored.fetchmany(RUN)) and not is_after(more[-1][0], last):
             found += more
         found += more
-        due, expected = Counter(row for row in found if not _is_after(row[0], last)), Counter(self.expected)
+        due, expected = Counter(row for row in found if not is_after(row[0], last)), Counter(self.expected)
         for row in expected - due:
             self._missing(row)
         for row in due - expected:
             self._extra(row)
-        self._found = [row for row in found if _is_after(row[0], last)]
+        self._found = [row for row in found if is_after(row[0], last)]
 
     def finish(self) -> None:
         """Report what is left."""
@@ -166,9 +121,11 @@ RUN = 500
 """Rows that are read at once."""
 
 
-def _is_after(value: Any, last: int) -> bool:
-    # as SQLite sorts: NULL, then numbers, then text and blobs
-    return value is not None and not (isinstance(value, (int, float)) and value <= last)
+def is_after(value: Any, last: float, *, equal: bool = False) -> bool:
+    """Whether SQLite sorts a value after a number: NULL comes first, text and blobs last."""
+    if isinstance(value, (int, float)):
+        return value >= last if equal else value > last
+    return value is not None and last < math.inf
 
 
 class Audit:
