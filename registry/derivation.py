@@ -168,11 +168,16 @@ class Derivation:
         self._judged.clear()
 
     def _find(self, about: tuple[Any, Any, int], last_id: int) -> Stored | None:
-        found = self._audit.find_record(*about)
+        kind, key, revision = about
+        if not (isinstance(kind, str) and isinstance(key, str) and 0 < revision < 2**63):
+            return None
+        found = self._audit.find_record(kind, key, revision)
         return found if found is not None and found[0] <= last_id else None
 
     def _effect(self, row: Stored, effects: Iterable[Any], last_id: int) -> None:
         for revision, word, cause in effects:
+            if not isinstance(word, str):
+                raise TypeError(f"{word} is no standing")
             aim = self._find(revision, last_id)
             why = (row[2],) if cause is None else self._find(cause, last_id)
             if aim is None or why is None:

@@ -61,10 +61,6 @@ class Inspection:
         self.keepings: list[dict[str, Any]] = []
         self.editions: list[tuple[Stored, dict[str, Any]]] = []
         self._revisions: dict[str, dict[str, int]] = {kind: {} for kind in KINDS}
-        self._derivation = Derivation(audit, self._revisions, report)
-        self._enter = self._derivation.enter
-        self._rows = audit.stream("record")
-        self._ahead = next(self._rows, None)
         self._first = 1
         self._firsts = [1]
         self._time = ""
@@ -72,11 +68,15 @@ class Inspection:
 
     def changes(self) -> Iterator[int]:
         """Go through the library; yields the number of each change when it is done."""
+        self._derivation = Derivation(self._audit, self._revisions, self._report)
+        self._enter = self._derivation.enter
+        self._rows = self._audit.stream("record")
+        self._ahead: Stored | None = next(self._rows, None)
         most = 2 * self._audit.count("change") + FAR
         done = 0
         for row in self._audit.stream("change"):
             number = row[0]
-            if not done < number <= most:
+            if not isinstance(number, int) or not done < number <= most:
                 self._say_change(number, f"there is a change numbered {number} after change {done}")
                 continue
             while done + 1 < number:
@@ -87,9 +87,19 @@ class Inspection:
             done = number
             self._pass(number, row)
             yield number
+        while self._has_lost(done + 1):
+            done += 1
+            self._say_change(done, "the change is missing")
+            self._pass(done, None)
+            yield done
         self._pass_over(math.inf)
         self._derivation.finish(done)
         self.tree.finish()
+
+    def _has_lost(self, number: int) -> bool:
+        """True if a change after the last one has left records and its leaf behind."""
+        row = self._ahead if self._ahead is None or self._ahead[0] == number else self._pass_over(number)
+        return row is not None and row[0] == number and self._audit.node(0, number - 1) is not None
 
     def _pass(self, number: int, header: Stored | None) -> None:
         """One change: its records, what follows from them, its header."""
@@ -154,6 +164,7 @@ class Inspection:
                 and revision == expected
                 and at == place
                 and number == self._first + place
+                and type(parsed) is dict
                 and is_canonical(content, parsed)
             ):
                 if kind == "edition":
@@ -253,7 +264,7 @@ class Inspection:
         for name, value in columns.items():
             if said is not None and said.get(name) != value:
                 self._say_change(number, f"its {name} is {show(value)}, and its header says {show(said.get(name))}")
-        text = encode_text({name: text_of(v) if isinstance(v, bytes) else v for name, v in columns.items()})
+        text = encode_text({name: v if isinstance(v, int) else text_of(v) for name, v in columns.items()})
         if said is None or (said == columns and text != header):
             self._say_change(
                 number, f"its header is {show(header)}, and the canonical JSON of its columns was expected"
@@ -262,14 +273,17 @@ class Inspection:
             self._say_change(number, f"it holds {show(columns['records'])} records, and {len(digests)} stand there")
         if isinstance(row[3], str) and row[3] < self._time:
             self._say_change(number, f"it was recorded at {row[3]}, before the change before it, {self._time}")
+        if said == columns and isinstance(row[4], int) and row[4] > len(digests):
+            told = f"no record stands at place {len(digests)} and after, of {row[4]} recorded"
+            self._report(Finding("record", number, "", "", None, len(digests), told))
         # a record that is not what was recorded is named itself
         roots = [_root_over(digests), _root_over([_unhex(value) for value in stored])]
         if row[5] not in roots:
             told = f"the root over its records is {show(row[5], 20)}, and they give {roots[0][:12]}..."
             self._say_change(number, told)
-        if self._said == before:
+        if self._said == before and row[5] == roots[0]:
             self._say_change(number, "its row cannot be what rangebook recorded")
-        if said == columns:
+        if said == columns and isinstance(row[3], str):
             self._time = max(self._time, row[3])
         return self.tree.choose_leaf(number, [header, text])
 

@@ -19,6 +19,8 @@ ENTRIES = {
     "one temperature, water": 4.0,
     "one temperature, n-decane": 4.0,
     "one temperature, ethanol": 4.0,
+    "verify a history, 5 records a change": 3.0,
+    "verify a history, 1 record a change": 3.0,
     "three forms, random order, memory kept": None,
     "three forms, touching chosen too, memory kept": None,
     "five Antoine windows, random order, memory kept": None,

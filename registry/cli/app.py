@@ -26,6 +26,7 @@ from registry.cli.browsing import coverage, list_records, show
 from registry.cli.keeping import dump, load, start, upgrade
 from registry.cli.looking import REFUSED, lookup
 from registry.cli.screen import complain, print_json
+from registry.cli.verifying import verify
 from registry.cli.vocabulary import forms
 from registry.errors import BadInput, LibraryBusy, LibraryUnreadable, RangebookError, Refused, quote
 
@@ -45,6 +46,7 @@ app = typer.Typer(
 for command, name in (
     (lookup, "lookup"), (coverage, "coverage"), (list_records, "list"), (show, "show"),
     (forms, "forms"), (start, "start"), (load, "load"), (dump, "dump"), (upgrade, "upgrade"),
+    (verify, "verify"),
 ):  # fmt: skip
     app.command(name)(command)
 

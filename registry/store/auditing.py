@@ -288,7 +288,7 @@ def _read_schema(connection: sqlite3.Connection) -> dict[str, str]:
     found = connection.execute(
         "SELECT type, name, sql FROM sqlite_master WHERE sql IS NOT NULL AND name NOT LIKE 'sqlite\\_%' ESCAPE '\\'"
     )
-    return {f"{kind} {name}": _normalise(sql) for kind, name, sql in found}
+    return {f"{kind} {name}": _normalise(str(sql)) for kind, name, sql in found}
 
 
 def _normalise(sql: str) -> str:

@@ -85,7 +85,7 @@ def _measure(place: Path, records: int, size: int, rounds: int) -> dict[str, Any
         found = library.verify()
         noticed = _tamper(place, library)
     return {
-        "name": f"verify {records} records, {size} a change", "bar": 3.0, **measured.describe(),
+        "name": f"verify a history, {size} record{'s' * (size > 1)} a change", "bar": 3.0, **measured.describe(),
         "reference": REFERENCE, "records": found.records, "changes": found.changes,
         "bytes_per_change": place.stat().st_size / found.changes,
         "verified": {"untouched": found.holds, "tampered_is_noticed": noticed, "holds": found.holds and noticed},

@@ -24,6 +24,7 @@ ROOT = Path(__file__).resolve().parents[2]
 sys.path.append(str(ROOT))  # last: an installed package is measured rather than the tree
 
 from arrays import measure_five_windows, measure_keeping_memory, measure_three_forms  # noqa: E402
+from history import measure_verifying  # noqa: E402
 from processes import measure_process  # noqa: E402
 from scalars import measure_scalars  # noqa: E402
 from timing import TIMED, WARM  # noqa: E402
@@ -31,6 +32,7 @@ from timing import TIMED, WARM  # noqa: E402
 METHOD = (
     f"A round is {WARM} unmeasured and {TIMED} timed calls of ours, then as many of the reference; the ratio is the "
     "median over rounds of the medians' ratio. Whole processes are run in turn; the ratio is that of the medians. "
+    "Verifying is timed once a round, and the reference once after it. "
     "The entries with memory kept are measured after all others, with an allocator that gives nothing back."
 )
 
@@ -47,7 +49,7 @@ def describe_machine() -> dict[str, Any]:
 
 def measure_all(quick: bool) -> list[dict[str, Any]]:
     """Every entry, in libraries made for it in a temporary folder."""
-    size, calls, rounds, runs = (40_000, 50, 2, 3) if quick else (1_000_000, 2_000, 9, 41)
+    size, calls, rounds, runs, records = (40_000, 50, 2, 3, 1_000) if quick else (1_000_000, 2_000, 9, 41, 100_000)
     with tempfile.TemporaryDirectory() as name:
         folder = Path(name).resolve()
         entries = [
@@ -55,6 +57,7 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
             *measure_five_windows(folder, size, rounds),
             *measure_process(folder, runs),
             *measure_scalars(folder, calls, rounds),
+            *measure_verifying(folder, records, rounds),
             *measure_keeping_memory(folder / "kept", size, rounds),
         ]
     return [{**entry, "holds": None if entry["bar"] is None else entry["ratio"] <= entry["bar"]} for entry in entries]
