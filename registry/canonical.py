@@ -67,31 +67,38 @@ def _plain_length(content: dict[str, Any]) -> int:
     names = tuple(content)
     frame = _FRAMES.get(names)
     if frame is None:
-        frame = _measure_frame(names)
-    texts = [value for value in content.values() if type(value) is str]
-    length = frame + len("".join(texts))
-    if len(texts) < len(names):
-        for value in content.values():
-            if type(value) is dict:
-                inner = _plain_length(value)
-                if inner < 0:
-                    return -1
-                length += inner - 2  # without the quotes that a text would have
-            elif type(value) is not str:
-                return -1
-    return length if frame > 0 else -1
+        frame = _measure_frame(names, content)
+    length, inner = frame
+    values = list(content.values())
+    for place in inner:
+        value = values.pop(place)
+        size = _plain_length(value) if type(value) is dict else -1
+        if size < 0:
+            return -1
+        length += size - 2  # without the quotes that a text would have
+    try:
+        return length + len("".join(values))
+    except TypeError:
+        return -1
 
 
-def _measure_frame(names: tuple[str, ...]) -> int:
-    """Characters around the values of an object whose names are sorted; -1 if they are not."""
-    frame = 6 * len(names) + 1 + len("".join(names)) if names == tuple(sorted(names)) else -1
-    if len(_FRAMES) < 10_000:
+def _measure_frame(names: tuple[str, ...], content: dict[str, Any]) -> _Frame:
+    inner = tuple(place for place, value in enumerate(content.values()) if type(value) is dict)[::-1]
+    is_sorted = names == tuple(sorted(names))
+    frame = 6 * len(names) + (1 if names else 2) + len("".join(names)) if is_sorted else _NEVER, inner
+    if len(_FRAMES) < MOST_FRAMES:
         _FRAMES[names] = frame
     return frame
 
 
-_FRAMES: dict[tuple[str, ...], int] = {(): 2}
-"""Of the objects met so far: most records of a kind have the same names."""
+_Frame = tuple[int, tuple[int, ...]]
+_FRAMES: dict[tuple[str, ...], _Frame] = {}
+"""By the names of an object: the characters around its values, and which of these are objects, last first.
+
+Most records of a kind have the same names.
+"""
+MOST_FRAMES = 10_000
+_NEVER = -(2**62)
 
 
 encode_string: Callable[[str], str] = encode_basestring

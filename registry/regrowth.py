@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Iterable
+from itertools import count
 from typing import Any
 
 from registry.findings import Finding, integer, show, text_of
@@ -35,12 +36,14 @@ class Regrowth:
         # of each level the newest complete node: all that growing and the root take
         self._newest: list[bytes] = []
         self._levels: list[Matching] = []
+        self._leaves: list[bytes] = []
 
     def _node_at(self, level: int, _: int) -> bytes:
         return self._newest[level]
 
     def root(self) -> bytes:
         """The root over the leaves so far."""
+        self._grow()
         return root_from_nodes(self.size, self._node_at)
 
     def noted(self) -> str:
@@ -48,24 +51,32 @@ class Regrowth:
         return f"{self.size}:{self.root().hex()}"
 
     def add(self, leaf: bytes) -> None:
-        """One more leaf; each node that it completes is compared with the stored one."""
-        level, place, value = 0, self.size, leaf
-        while True:
+        """One more leaf; the nodes that it completes are compared with the stored ones, many at once."""
+        self._leaves.append(leaf)
+        self.size += 1
+        if len(self._leaves) == RUN:
+            self._grow()
+
+    def _grow(self) -> None:
+        """Level by level the nodes that the new leaves complete."""
+        values, self._leaves = self._leaves, []
+        level, place = 0, self.size - len(values)
+        added: list[tuple[int, list[bytes]]] = []
+        while values:
+            added.append((place, values))
+            if level == len(self._newest):
+                self._newest.append(b"")
+            # an odd place has its left sibling there already
+            pairs = [self._newest[level], *values] if place & 1 else values
+            self._newest[level] = values[-1]
+            values = [hash_node(left, right) for left, right in zip(pairs[::2], pairs[1::2], strict=False)]
+            level, place = level + 1, place >> 1
+        # all are grown before any is compared: reading a damaged file may end here
+        for level, (place, values) in enumerate(added):
             if level == len(self._levels):
                 self._levels.append(self._match(level))
-                self._newest.append(value)
-            self._levels[level].expected.append((place, value.hex()))
-            left, self._newest[level] = self._newest[level], value
-            if not place & 1:
-                break
-            level, place, value = level + 1, place >> 1, hash_node(left, value)
-        self.size += 1
-        if self.size % RUN == 0:
-            self._settle()
-
-    def _settle(self) -> None:
-        for level, stored in enumerate(self._levels):
-            stored.settle((self.size >> level) - 1)
+            self._levels[level].expected += zip(count(place), [value.hex() for value in values])
+            self._levels[level].settle((self.size >> level) - 1)
 
     def _match(self, level: Any) -> Matching:
         return Matching(
@@ -76,7 +87,7 @@ class Regrowth:
 
     def finish(self) -> None:
         """Compare what is left, and what is stored beyond the tree."""
-        self._settle()
+        self._grow()
         beyond = [self._match(level) for level in self._audit.levels() if level not in range(len(self._levels))]
         for stored in (*self._levels, *beyond):
             stored.finish()
