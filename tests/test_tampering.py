@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import dataclasses
 import json
 import random
 import re
@@ -20,6 +21,7 @@ from histories import tell_history
 from registry.cli.app import main
 from registry.errors import BadInput
 from registry.findings import Finding, Verification
+from registry.merkle import hash_leaf
 from registry.opening import open_library, start_library
 from registry.store.history import Draft
 from registry.store.library_file import LibraryFile
@@ -240,6 +242,7 @@ ODD = [
     Draft("nonsense", "a", {"b": "c"}),
     Draft("edition", "e", ["no object"]),
     Draft("edition", "e", {"name": "e", "position": "7", "root": 5}),
+    Draft("edition", "e", {"name": "e", "position": "12", "root": "12:" + "0" * 64}),
     Draft("library", "library", "text"),
     Draft("correlation", "k", {"compound": ["water"]}),
     Draft("correlation", "k", {"compound": 5, "source": {"a": "b"}}),
@@ -266,6 +269,25 @@ def test_what_no_record_can_say_is_a_finding(draft, libraries, tmp_path):
         ("record", 13, draft.kind, draft.key)
     }  # fmt: skip
     assert all(len(finding.what) < 250 for finding in found.findings)
+
+
+def test_a_time_before_the_one_before_is_a_finding(libraries, tmp_path):
+    """A last change set back in time, with its header and its leaf right, is named."""
+    path = Path(shutil.copy(libraries[0], tmp_path / "early.db"))
+    with open_library(path) as library, library._file.writing() as (_, append):
+        change = append("somebody", "late", NOW, [Draft("source", "s", {"citation": "invented"})])
+    assert _verify(path).holds
+    header = dataclasses.replace(change, recorded_at="1999-01-01T00:00:00.000000Z").header()
+    with closing(sqlite3.connect(path)) as db:
+        db.execute("DROP TRIGGER change_no_update")
+        db.execute("DROP TRIGGER node_no_update")
+        early = ("1999-01-01T00:00:00.000000Z", header.decode())
+        db.execute("UPDATE change SET recorded_at = ?, header = ? WHERE number = 13", early)
+        db.execute("UPDATE node SET hash = ? WHERE level = 0 AND place = 12", (hash_leaf(header).hex(),))
+        db.commit()
+    (finding,) = (finding for finding in _verify(path).findings if finding.table != "schema")
+    assert (finding.table, finding.change) == ("change", 13)
+    assert "before the change before it" in finding.what
 
 
 def test_a_history_rewritten_whole_is_found_by_a_noted_root_only(libraries, tmp_path):
