@@ -271,6 +271,20 @@ def test_what_no_record_can_say_is_a_finding(draft, libraries, tmp_path):
     assert all(len(finding.what) < 250 for finding in found.findings)
 
 
+def test_an_edition_with_another_root_is_a_finding(libraries, tmp_path):
+    """An edition says the root and the position that the history had before it."""
+    path = Path(shutil.copy(libraries[0], tmp_path / "edition.db"))
+    wrong = Draft("edition", "e", {"name": "e", "position": "7", "root": "12:" + "0" * 64})
+    with open_library(path) as library, library._file.writing() as (_, append):
+        append("somebody", "frozen by hand", NOW, [wrong])
+    told = [finding.what for finding in _verify(path).findings]
+    assert len(told) == 4
+    assert told[0] == "it names position '7', and was frozen at 12"
+    assert told[1].startswith("its root is '12:000")
+    assert told[2] == "its history does not begin with that of the edition 'after'"
+    assert told[3] == "the library's history does not begin with its own"
+
+
 def test_a_time_before_the_one_before_is_a_finding(libraries, tmp_path):
     """A last change set back in time, with its header and its leaf right, is named."""
     path = Path(shutil.copy(libraries[0], tmp_path / "early.db"))
