@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+from collections.abc import Callable
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
@@ -18,6 +19,7 @@ if TYPE_CHECKING:
     from registry.chronicle import Event
     from registry.difference import Difference, Preview
     from registry.editions import Position
+    from registry.findings import Verification
     from registry.waiting import Waiting
 
 __all__ = ["Archive"]
@@ -281,3 +283,42 @@ class Archive(Reader):
         items = ((e.record, (e.standing, e.standing_note)) for e in entries)
         rows = dump_items(Path(path), items, provenance)
         return {**rows, "waiting": waiting} if waiting else rows
+
+    def verify(self, against: str = "", progress: Callable[[int, int], None] | None = None) -> Verification:
+        """Recompute everything that is recorded, and hold it against what is stored.
+
+        Parameters
+        ----------
+        against : str
+            A root noted earlier, ``size:root``, whose history this library
+            must extend. Only that finds a history that was rewritten whole.
+        progress : callable, optional
+            ``progress(done, all)`` is told how many records were gone through.
+
+        Returns
+        -------
+        Verification
+            Whether the library holds, its root, and each record that is not
+            as it was recorded. The whole library is verified, also through a
+            view of its past.
+
+        Raises
+        ------
+        BadInput
+            If `against` is no root.
+        LibraryBusy
+            If another process holds the file for too long.
+        NotALibrary
+            If the file cannot be read at all.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     found = library.verify()
+        ...     library.verify(against=found.root).holds
+        True
+        """
+        from registry.verification import verify
+
+        return verify(self._file, against, progress)

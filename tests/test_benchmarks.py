@@ -25,6 +25,8 @@ ENTRIES = {
     "lookup, long history of one compound, just opened": 1.3,
     "lookup, long history of one compound, half-way back": 1.3,
     "lookup, long history of one compound, warm": 1.3,
+    "verify a history, 5 records a change": 3.0,
+    "verify a history, 1 record a change": 3.0,
     "three forms, random order, memory kept": None,
     "three forms, touching chosen too, memory kept": None,
     "five Antoine windows, random order, memory kept": None,

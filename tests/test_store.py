@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import hashlib
 import json
 import re
@@ -18,7 +19,7 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from sqlalchemy import insert
 
-from registry.canonical import encode
+from registry.canonical import encode, is_canonical
 from registry.errors import BadInput, LibraryBusy, NewerLibrary, NotALibrary, OlderLibrary
 from registry.merkle import hash_leaf, new_nodes, root_from_nodes, root_of
 from registry.opening import open_library, start_library
@@ -87,6 +88,32 @@ texts = st.text(st.characters(exclude_categories=("Cs",)), max_size=30)
 def test_canonical_json_is_rfc_8785(content):
     """Sorted compact JSON of text and integers equals RFC 8785, by an independent implementation."""
     assert encode(content) == rfc8785.dumps(content)
+
+
+plain = st.dictionaries(st.text("abZ_0é", max_size=3), st.text("ab é,:", max_size=4) | st.just({"b": "c", "d": ""}))
+
+
+@settings(max_examples=500)
+@given(
+    plain | st.dictionaries(st.text('ab\\"', max_size=3), texts | st.integers() | st.lists(plain, max_size=2) | plain),
+    st.sampled_from(("canonical", "unsorted", "blanks", "ascii")),
+    st.integers(0, 10**6),
+    st.sampled_from(("", " ", ",", "0", '"a":"b",', "\\u0061")),
+)
+def test_canonical_text_is_told_from_any_other(content, how, at, more):
+    """The quick check says what encoding again says: for other orders, blanks, escapes and insertions anywhere."""
+    text = encode(content).decode()
+    if how == "unsorted":
+        text = json.dumps(dict(reversed(content.items())), separators=(",", ":"), ensure_ascii=False)
+    elif how != "canonical":
+        text = json.dumps(
+            content, sort_keys=True, ensure_ascii=how == "ascii", separators=None if how == "blanks" else (",", ":")
+        )
+    at %= len(text) + 1
+    for tried in (text, text[:at] + more + text[at:]):
+        with contextlib.suppress(ValueError):
+            parsed = json.loads(tried)
+            assert is_canonical(tried, parsed) == (encode(parsed).decode() == tried)
 
 
 def test_recorded_digests_and_roots_follow_from_the_records(published_path):

@@ -46,6 +46,7 @@ COMMANDS: dict[str, Home] = {
     "diff": Home("past", "diff"),
     "freeze": Home("freezing", "freeze"),
     "editions": Home("freezing", "editions"),
+    "verify": Home("verifying", "verify"),
     "start": Home("keeping", "start"),
     "load": Home("keeping", "load"),
     "dump": Home("keeping", "dump"),

@@ -26,6 +26,9 @@ SCALE = choice(*SCALES)
 EVIDENCE_WORD = choice(*EVIDENCE)
 OBTAINED_WORD = choice(*OBTAINED)
 
+REFERRED = {"compound": "compound", "source": "source", "correlation": "correlation", "over": "correlation"}
+"""Fields that name another record, each with the kind of what it names."""
+
 
 class Reference(NamedTuple):
     """What a record refers to: the field, and the record meant."""
@@ -84,8 +87,7 @@ class Record:
 
     def references(self) -> tuple[Reference, ...]:
         """The records this one refers to, which must exist in the library."""
-        names = {"compound": "compound", "source": "source", "correlation": "correlation", "over": "correlation"}
-        pairs = ((role, kind, getattr(self, role, "")) for role, kind in names.items())
+        pairs = ((role, kind, getattr(self, role, "")) for role, kind in REFERRED.items())
         return tuple(Reference(role, kind, key) for role, kind, key in pairs if key)
 
     def terms(self) -> tuple[str, ...]:

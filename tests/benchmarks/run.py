@@ -25,6 +25,7 @@ sys.path.append(str(ROOT))  # last: an installed package is measured rather than
 
 from arrays import measure_five_windows, measure_keeping_memory, measure_three_forms  # noqa: E402
 from growth import measure_growth  # noqa: E402
+from history import measure_verifying  # noqa: E402
 from processes import measure_process  # noqa: E402
 from scalars import measure_scalars  # noqa: E402
 from timing import TIMED, WARM  # noqa: E402
@@ -32,6 +33,7 @@ from timing import TIMED, WARM  # noqa: E402
 METHOD = (
     f"A round is {WARM} unmeasured and {TIMED} timed calls of ours, then as many of the reference; the ratio is the "
     "median over rounds of the medians' ratio. Whole processes are run in turn; the ratio is that of the medians. "
+    "Verifying is timed once a round, and the reference once after it. "
     "The entries with memory kept are measured after all others, with an allocator that gives nothing back."
 )
 
@@ -57,6 +59,7 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
             *measure_process(folder, runs),
             *measure_scalars(folder, calls, rounds),
             *measure_growth(folder, changes, rounds),
+            *measure_verifying(folder, changes, rounds),
             *measure_keeping_memory(folder / "kept", size, rounds),
         ]
     return [{**entry, "holds": None if entry["bar"] is None else entry["ratio"] <= entry["bar"]} for entry in entries]
