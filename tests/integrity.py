@@ -10,15 +10,24 @@ from contextlib import closing
 from pathlib import Path
 
 from registry.merkle import hash_leaf, root_from_nodes, root_of
+from registry.opening import open_library
+from registry.store.tables import SCHEMA
 
 
 def find_faults(path: Path) -> list[str]:
     """What is wrong with a library of schema 2 or 1: nothing, in a whole one.
 
-    Everything is recomputed from what is stored, with the standard library's JSON and SHA-256.
+    Everything is recomputed from what is stored, with the standard library's JSON and SHA-256; and `verify` holds.
     """
     with closing(sqlite3.connect(f"file:{path}?mode=ro", uri=True)) as db:
-        return [*_check_pages(db), *_check_records(db), *_check_changes(db)]
+        found = [*_check_pages(db), *_check_records(db), *_check_changes(db)]
+        newest = db.execute("PRAGMA user_version").fetchone()[0] == SCHEMA
+    return [*found, *(_verify(path) if newest else ())]
+
+
+def _verify(path: Path) -> Iterator[str]:
+    with open_library(path) as library:
+        yield from (f"verify: {finding}" for finding in library.verify().findings)
 
 
 def _check_pages(db: sqlite3.Connection) -> Iterator[str]:

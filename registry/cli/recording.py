@@ -51,7 +51,11 @@ def build_record_group() -> typer.Typer:
         rich_markup_mode=None,
         pretty_exceptions_enable=False,
         add_completion=False,
-        help="Record something new: from options, from a file, or by answering questions on a terminal.",
+        help=(
+            "Record something new: from options, from a file, or by answering questions on a terminal.\n\n"
+            "Each kind has its own options and takes --json: rangebook record correlation --help.\n\n"
+            "Example: rangebook record correlation --template"
+        ),
         context_settings={"help_option_names": ["-h", "--help"]},
     )
     for kind in RECORDED:

@@ -67,12 +67,12 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
 
 def format_table(entries: list[dict[str, Any]]) -> str:
     """Name, ratio with its spread, bar, and whether it holds."""
-    lines = [f"{'name':58}{'ratio':>8}{'spread':>16}{'bar':>6}  holds"]
+    lines = [f"{'name':64}{'ratio':>8}{'spread':>16}{'bar':>6}  holds"]
     for entry in entries:
         spread = f"{entry['ratio_lowest']:.3f}-{entry['ratio_highest']:.3f}"
         bar = "" if entry["bar"] is None else f"{entry['bar']:.1f}"
         holds = {True: "yes", False: "no", None: ""}[entry["holds"]]
-        lines.append(f"{entry['name']:58}{entry['ratio']:8.3f}{spread:>16}{bar:>6}  {holds}".rstrip())
+        lines.append(f"{entry['name']:64}{entry['ratio']:8.3f}{spread:>16}{bar:>6}  {holds}".rstrip())
     return "\n".join(lines)
 
 
