@@ -241,13 +241,15 @@ class Register:
             before = ("draft", "")
             revision = self._add(state, name, content, author)
             if not accept and name[0] in REVIEWED and standing in ("declined", "withdrawn"):
-                self._records += 1  # a note on arrival, which decides nothing
+                # a note on arrival, which decides nothing
+                self._say(state, name, revision, "draft", f"{standing} in the package: {note}")
         else:
             before, revision = held.verdict(), held.newest
         if name[0] not in REVIEWED:
             return
         if accept:
-            decides = standing != "draft" and (standing, note) != before
+            # what is decided here is not undone by a draft elsewhere; a draft's note is taken over
+            decides = (standing, note) != before and (standing != "draft" or before[0] == "draft")
             if decides and standing == "withdrawn":
                 key, number = self._propose(state, name, revision, note, author)
                 self._say(state, key, number, "accepted", "")
@@ -255,7 +257,9 @@ class Register:
                 self._say(state, name, revision, standing, note)
         elif standing == "withdrawn" and before[0] == "accepted":
             waiting = state.get(("withdrawal", f"withdrawal:{name[0]}:{name[1]}"))
-            if waiting is None or not waiting.waits:
+            same = waiting and waiting.last == {"of": name, "revision": revision, "reason": note}
+            # nor again where somebody has decided on just that
+            if waiting is None or not (waiting.waits or same):
                 self._propose(state, name, revision, note, author)
 
     @staticmethod

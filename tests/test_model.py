@@ -134,6 +134,12 @@ class TeamsLibrary(RuleBasedStateMachine):
                 lambda: self.library.record(record, author=author, reason=MARK, accept=accept),
                 lambda: self.model.record(name, content, author, accept),
             )
+        self.settle(name, odd in (1, 2, 3, 4))
+
+    def settle(self, name: Name, wanted: bool) -> None:
+        """Somebody else accepts at once what now waits."""
+        if wanted and name in self.model.state and self.model.state[name].waits:
+            self.review(name, True, False, "Looked at it.")
 
     def review(self, name: Name, accept: bool, own: bool, note: str) -> None:
         kind, key = name
@@ -161,8 +167,8 @@ class TeamsLibrary(RuleBasedStateMachine):
     def ended(self) -> list[Name]:
         return [name for name, held in self.model.state.items() if held.verdict()[0] in ("declined", "withdrawn")]
 
-    @rule(data=st.data(), author=people, accept=at_once, reason=notes)
-    def withdraw(self, data: Any, author: str, accept: bool, reason: str) -> None:
+    @rule(data=st.data(), author=people, accept=at_once, reason=notes, settled=st.booleans())
+    def withdraw(self, data: Any, author: str, accept: bool, reason: str, settled: bool) -> None:
         """Withdraw a correlation, fixed point, preference or source."""
         kinds = sorted({name[0] for name in self.model.state} - {"withdrawal"})
         among = data.draw(st.sampled_from(kinds))
@@ -172,9 +178,10 @@ class TeamsLibrary(RuleBasedStateMachine):
             lambda: self.library.withdraw(key, author=author, reason=reason, kind=kind, accept=accept),
             lambda: self.model.withdraw(name, author, reason, accept),
         )
+        self.settle(("withdrawal", f"withdrawal:{kind}:{key}"), settled)
 
-    @rule(data=st.data(), odd=seldom, author=people, accept=at_once)
-    def prefer(self, data: Any, odd: int, author: str, accept: bool) -> None:
+    @rule(data=st.data(), odd=seldom, author=people, accept=at_once, settled=st.booleans())
+    def prefer(self, data: Any, odd: int, author: str, accept: bool, settled: bool) -> None:
         """Prefer one correlation over another; refused across compounds, in a circle, twice."""
         there = [key for key in CORRELATIONS if ("correlation", key) in self.model.state]
         one = data.draw(st.sampled_from(there))
@@ -185,18 +192,17 @@ class TeamsLibrary(RuleBasedStateMachine):
             lambda: self.library.prefer(one, other, author=author, reason=MARK, accept=accept),
             lambda: self.model.prefer(one, other, author, MARK, accept),
         )
+        self.settle(("preference", f"{one}-over-{other}"), settled)
 
     @rule(number=st.integers(1, 60), upper=st.booleans(), author=people)
     def freeze(self, number: int, upper: bool, author: str) -> None:
-        """Freeze an edition; a name is taken whatever its case."""
+        """Freeze an edition, whose name is taken whatever its case; or one person keeps the library, or a team does."""
         name = f"{'Edition' if upper else 'edition'}-{number}"
-        self.both(lambda: self.library.freeze(name, author=author, note=MARK), lambda: self.model.freeze(name))
-
-    @rule(odd=seldom, author=people)
-    def keep(self, odd: int, author: str) -> None:
-        """One person keeps the library from now on, or a team; seldom as it is said already."""
-        solo = self.model.solo is (odd == 9)
-        self.both(lambda: self.library.keep(solo=solo, author=author), lambda: self.model.keep(solo))
+        if number % 4:
+            self.both(lambda: self.library.freeze(name, author=author, note=MARK), lambda: self.model.freeze(name))
+        else:
+            solo = self.model.solo is (number % 16 == 0)
+            self.both(lambda: self.library.keep(solo=solo, author=author), lambda: self.model.keep(solo))
 
     @rule(data=st.data(), author=people, accept=st.booleans())
     def load(self, data: Any, author: str, accept: bool) -> None:
