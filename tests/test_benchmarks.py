@@ -93,7 +93,7 @@ def test_the_table_shows_every_measurement(run):
     found, printed = run
     heading, *lines = printed.splitlines()
     assert heading.split() == ["name", "ratio", "spread", "bar", "holds"]
-    assert [line[:58].strip() for line in lines] == [entry["name"] for entry in found["entries"]]
+    assert [line[:64].strip() for line in lines] == [entry["name"] for entry in found["entries"]]
 
 
 def test_the_machine_is_described(run):
