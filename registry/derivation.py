@@ -11,8 +11,9 @@ from typing import Any
 from registry.findings import Finding, integer, show, text_of
 from registry.records import KINDS, Record, Review, Withdrawal
 from registry.records.record import REFERRED
-from registry.store.auditing import Audit, Matching
+from registry.store.auditing import Audit
 from registry.store.history import fold_term
+from registry.store.matching import Matching
 
 __all__ = ["Derivation"]
 

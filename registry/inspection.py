@@ -14,8 +14,9 @@ from registry.findings import Finding, integer, show, text_of
 from registry.merkle import hash_leaf, root_of
 from registry.records import KINDS
 from registry.regrowth import Regrowth
-from registry.store.auditing import Audit, is_after
+from registry.store.auditing import Audit
 from registry.store.history import Change, envelope
+from registry.store.matching import is_after
 
 __all__ = ["UNREADABLE", "Inspection"]
 

@@ -8,7 +8,8 @@ from typing import Any
 
 from registry.findings import Finding, integer, show, text_of
 from registry.merkle import hash_leaf, hash_node, root_from_nodes
-from registry.store.auditing import RUN, Audit, Matching
+from registry.store.auditing import Audit
+from registry.store.matching import RUN, Matching
 
 __all__ = ["Regrowth"]
 
