@@ -7,9 +7,9 @@ from typing import Any
 
 from registry.dossier import Entry
 from registry.editions import Position, find_position, root_at
-from registry.entries import enter_all, enter_states, restore, withdrawn_sources, word_cause
+from registry.entries import enter_all, enter_states, rest_on, restore, withdrawn_sources, word_cause
 from registry.exchange.provenance import Provenance, digest_content
-from registry.records import REVIEWED, Source, Withdrawal
+from registry.records import Source, Withdrawal
 from registry.store.library_file import View
 from registry.store.reading import Decision
 
@@ -46,7 +46,7 @@ def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provena
     """
     then = view.at(find_position(view, since))
     touched, judged = _find_touched(view, then.position)
-    entries = _enter(view, touched | _find_resting(view, judged))
+    entries = _enter(view, touched | {(entry.record.kind, entry.key) for entry in rest_on(view, judged)})
     bases: dict[str, dict[str, str]] = {}
     earlier: dict[str, dict[str, list[str]]] = {}
     for entry in _enter(then, {(e.record.kind, e.key) for e in entries}):
@@ -76,15 +76,6 @@ def _aim_of(review: dict[str, Any]) -> tuple[str, str]:
     if kind == Withdrawal.kind:
         _, kind, key = key.split(":", 2)
     return kind, key
-
-
-def _find_resting(view: View, sources: set[str]) -> Names:
-    resting = enter_states(view, view.linked("source", sources)) if sources else []
-    return {
-        (entry.record.kind, entry.key)
-        for entry in resting
-        if entry.record.kind in REVIEWED and entry.record.source in sources
-    }
 
 
 def _enter(view: View, names: Iterable[tuple[str, str]]) -> list[Entry[Any]]:

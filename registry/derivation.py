@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import contextlib
-import dataclasses
 import json
 from collections.abc import Callable, Iterable
 from typing import Any
@@ -30,8 +29,8 @@ PACE = 200
 """Changes after which stored rows are compared."""
 
 _ROLES = {
-    name: tuple(sorted(REFERRED.items() & {(f.name, REFERRED.get(f.name)) for f in dataclasses.fields(cls)}))  # type: ignore[arg-type]
-    for name, cls in KINDS.items()
+    kind: tuple((role, to_kind) for role, to_kind in sorted(REFERRED.items()) if hasattr(cls, role))
+    for kind, cls in KINDS.items()
 }
 _NAMES = {kind: tuple(role for role, _ in roles) for kind, roles in _ROLES.items()}
 _NAMED = frozenset(name for name, cls in KINDS.items() if cls.terms is not Record.terms)
@@ -196,10 +195,7 @@ class Derivation:
         ))  # fmt: skip
 
     def _say(self, row: Stored, what: str) -> None:
-        change, place, _, kind, key, revision = row[:6]
-        self._report(
-            Finding("record", integer(change), text_of(kind), text_of(key), integer(revision), integer(place), what)
-        )
+        self._report(Finding.of_record(row, what))
 
 
 def _sort(rows: list[Stored]) -> None:

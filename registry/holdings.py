@@ -7,12 +7,11 @@ from typing import Any
 
 from registry.dossier import Entry
 from registry.entries import enter_in_force, enter_newest, follow_source, withdrawn_sources
-from registry.records import Preference, Record
-from registry.store.history import Draft, Effect
+from registry.records import Record
 from registry.store.library_file import View
 from registry.store.reading import State
 
-__all__ = ["Holdings", "draft_of"]
+__all__ = ["Holdings"]
 
 Pair = tuple[str, str]
 
@@ -80,16 +79,7 @@ class Holdings:
             for state in self.view.linked("correlation", ahead, "preference"):
                 counting, newest = enter_in_force(state), enter_newest(state)
                 if counting.key not in ended:
-                    near |= {_pair(e.record) for e in (counting, newest) if e.standing in ("accepted", "draft")}
+                    near |= {e.record.pair for e in (counting, newest) if e.standing in ("accepted", "draft")}
             found |= near
             ahead = {key for pair in near for key in pair} - seen
         return found
-
-
-def _pair(record: Preference) -> Pair:
-    return record.correlation, record.over
-
-
-def draft_of(record: Record, effects: Sequence[Effect] = ()) -> Draft:
-    """A record as the store appends it."""
-    return Draft(record.kind, record.key, record.content(), record.references(), record.terms(), effects)

@@ -2,21 +2,21 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from typing import Any
 
 from registry.admission import check_kinship, find_cycle
 from registry.canonical import digest
+from registry.cells import KEY
 from registry.dossier import Entry
 from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey, quote
-from registry.holdings import Holdings, draft_of
+from registry.holdings import Holdings
 from registry.naming import join_names
+from registry.plan import Plan, draft_of
 from registry.records import REVIEWED, Preference, Record, Review, Withdrawal
 from registry.store.history import Draft
 
 __all__ = [
-    "Plan",
-    "is_solo",
+    "accept_at_once",
     "judge",
     "plan_preference",
     "plan_review",
@@ -27,25 +27,6 @@ __all__ = [
 
 WITHDRAWN = ("correlation", "fixed-point", "dataset", "preference", "source")
 """Kinds that can be withdrawn."""
-
-
-@dataclass(frozen=True)
-class Plan:
-    """What a decision or a recording would append.
-
-    Attributes
-    ----------
-    drafts : tuple of Draft
-        The records, in order.
-    record : Record
-        The record it is about.
-    revision : int
-        Its revision.
-    """
-
-    drafts: tuple[Draft, ...]
-    record: Record
-    revision: int
 
 
 def judge(record: Record, revision: int, standing: str, note: str) -> Draft:
@@ -70,24 +51,24 @@ def _withdraw(record: Record, revision: int, cause: str, reason: str) -> Withdra
 def withdraw_at_once(holdings: Holdings, record: Record, revision: int, cause: str, reason: str) -> list[Draft]:
     """A withdrawal together with its acceptance."""
     withdrawal = _withdraw(record, revision, cause, reason)
-    return [draft_of(withdrawal), judge(withdrawal, next_revision(holdings, withdrawal), "accepted", "")]
+    return [draft_of(withdrawal), judge(withdrawal, _next_revision(holdings, withdrawal), "accepted", "")]
 
 
-def next_revision(holdings: Holdings, record: Record) -> int:
+def _next_revision(holdings: Holdings, record: Record) -> int:
     """The revision that a record would become."""
     state = holdings.state(record.kind, record.key)
     return state.newest.revision + 1 if state is not None else 1
 
 
-def is_solo(holdings: Holdings) -> bool:
+def _is_solo(holdings: Holdings) -> bool:
     """True if the library says that one person keeps it."""
     state = holdings.state("library", "library")
     return state is not None and state.newest.content["kept_by"] == "one-person"
 
 
-def check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
+def _check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
     """Nobody reviews what they recorded themselves, but where one person keeps the library."""
-    if author.casefold() == reviewer.casefold() and not is_solo(holdings):
+    if author.casefold() == reviewer.casefold() and not _is_solo(holdings):
         raise BadInput(
             f"{what} was recorded by {author}, and somebody else must review it. "
             "A library that one person keeps says so once: `rangebook start --solo`."
@@ -117,7 +98,7 @@ def plan_review(
             record.kind, record.key, expect, entry.revision, before.content if before else {}, record.content()
         )
     what = f"Revision {entry.revision} of the {record.kind} {record.key}"
-    check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
+    _check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
     if isinstance(record, Preference) and standing == "accepted":
         _check_round(holdings, record)
     if isinstance(record, Withdrawal) and standing == "accepted":
@@ -193,7 +174,7 @@ def plan_withdrawal(
     if before is not None and before.standing == "draft":
         raise BadInput(f"A withdrawal of the {record.kind} {key} waits for review already: {before.record.reason}")
     withdrawal = _withdraw(record, entry.revision, cause, reason)
-    revision = next_revision(holdings, withdrawal)
+    revision = _next_revision(holdings, withdrawal)
     drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]
     return Plan(tuple(drafts), withdrawal, revision)
 
@@ -219,13 +200,13 @@ def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, acc
     if before is not None and before.standing in ("accepted", "draft"):
         raise BadInput(f"{key} is preferred over {over} already ({before.standing}): {before.record.reason}")
     _check_round(holdings, record)
-    revision = next_revision(holdings, record)
+    revision = _next_revision(holdings, record)
     drafts = [draft_of(record), *([judge(record, revision, "accepted", "")] if accept else [])]
     return Plan(tuple(drafts), record, revision)
 
 
 def _check_round(holdings: Holdings, record: Preference) -> None:
-    pairs = holdings.preferences([record.correlation, record.over]) | {(record.correlation, record.over)}
+    pairs = holdings.preferences([record.correlation, record.over]) | {record.pair}
     if cycle := find_cycle(sorted(pairs)):
         raise BadInput(
             f"The preferences would go round in a circle: {' over '.join(cycle)}. Withdraw one of them first."
@@ -233,14 +214,17 @@ def _check_round(holdings: Holdings, record: Preference) -> None:
 
 
 def _name_preference(key: str, over: str) -> str:
-    """A key of at most 80 characters for a pair."""
+    """A key for a pair; where both are long, cut, with so much of a digest that two pairs never share it."""
     name = f"{key}-over-{over}"
-    return name if len(name) <= 80 else f"{name[:63]}-{digest(name.encode())[:16]}"
+    if len(name) <= KEY.limit:
+        return name
+    mark = digest(name.encode())[:16]
+    return f"{name[: KEY.limit - 1 - len(mark)]}-{mark}"
 
 
 def accept_at_once(holdings: Holdings, wanted: bool) -> bool:
     """Whether what is recorded is accepted with it, which only the single keeper of a library may ask for."""
-    if wanted and not is_solo(holdings):
+    if wanted and not _is_solo(holdings):
         raise BadInput(
             "Recording and accepting in one go is for a library that one person keeps (`rangebook start --solo`). "
             "Here somebody else reviews it: `rangebook review`."

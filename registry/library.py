@@ -9,20 +9,19 @@ from __future__ import annotations
 import os
 from collections.abc import Callable, Iterable
 from pathlib import Path
-from typing import TYPE_CHECKING, Any
+from typing import Any
 
 from registry.archive import Archive
 from registry.editions import plan_edition
 from registry.errors import BadInput
-from registry.holdings import Holdings, draft_of
+from registry.holdings import Holdings
+from registry.plan import Plan, draft_of
 from registry.records import Keeping, Record
 from registry.signature import Recorded, check_signature, now_utc
 
-# a lookup judges and records nothing: what does is imported where it is used
-if TYPE_CHECKING:
-    from registry.judgement import Plan
-
 __all__ = ["Library"]
+
+# a lookup judges and records nothing: what does is imported where it is used
 
 
 class Library(Archive):

@@ -6,8 +6,8 @@ import os
 from pathlib import Path
 
 from registry.errors import BadInput
-from registry.holdings import draft_of
 from registry.library import Library
+from registry.plan import draft_of
 from registry.records import Keeping
 from registry.signature import check_signature, now_utc
 from registry.store.library_file import LibraryFile, locate

@@ -2,13 +2,17 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 from registry.admission import check_identity, check_kinship, check_references, check_value
+from registry.dossier import Entry
 from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey
-from registry.holdings import Holdings, draft_of
-from registry.judgement import Plan, judge
+from registry.holdings import Holdings
+from registry.judgement import judge
+from registry.plan import Plan, draft_of
 from registry.records import RECORDED, REVIEWED, Record
 
-__all__ = ["plan_record", "plan_revision"]
+__all__ = ["check_expected", "plan_record", "plan_revision"]
 
 
 def plan_record(holdings: Holdings, record: Record, *, accept: bool = False) -> Plan:
@@ -60,15 +64,25 @@ def plan_revision(holdings: Holdings, record: Record, expect: int | None = None,
     newest = holdings.newest(record.kind, record.key)
     if newest is None:
         raise UnknownKey(record.kind, record.key)
-    if expect is not None and newest.revision != expect:
-        raise RevisedMeanwhile(
-            record.kind, record.key, expect, newest.revision, record.content(), newest.record.content()
-        )
+    check_expected(newest, record, expect)
     if newest.record == record:
         raise BadInput(f"The {record.kind} {record.key} is just so already, in revision {newest.revision}.")
     if problems := list(check_identity(record, newest.record)):
         raise InvalidRecord(record.kind, record.key, problems)
     return _plan(holdings, record, newest.revision + 1, accept)
+
+
+def check_expected(newest: Entry[Any], record: Record, expect: int | None) -> None:
+    """Refuse what was made from another revision than the newest.
+
+    Raises
+    ------
+    RevisedMeanwhile
+        With both sides.
+    """
+    if expect is not None and newest.revision != expect:
+        sides = record.content(), newest.record.content()
+        raise RevisedMeanwhile(record.kind, record.key, expect, newest.revision, *sides)
 
 
 def _check_kind(record: Record) -> None:
