@@ -347,3 +347,9 @@ def test_a_withdrawal_does_not_take_out_what_was_accepted_after_it(library):
     library.withdraw("brindovane-new", **WHEN)
     library.review("brindovane-new", kind="withdrawal", accept=True, **LOOK)
     assert library.entry("brindovane-new").standing == "withdrawn"
+
+
+def test_who_starts_a_library_is_signed_like_anybody_else(tmp_path):
+    """Blanks around the name are no part of it, as in every later change."""
+    with start_library(tmp_path / "own.db", "none", " ann ") as library:
+        assert library.change(1).author == "ann"
