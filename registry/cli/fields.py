@@ -68,7 +68,7 @@ class Field:
 def list_fields(cls: type[Record]) -> tuple[Field, ...]:
     """The fields of a record in order; points of a dataset are left to sheets and packages."""
     found = []
-    for field in dataclasses.fields(cls):  # type: ignore[arg-type]
+    for field in dataclasses.fields(cls):
         if field.name == "coefficients":
             found.append(Field(field.name, COEFFICIENTS, required=True))
         elif "cell" in field.metadata:

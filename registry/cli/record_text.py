@@ -54,7 +54,7 @@ def _facts(record: Record) -> list[tuple[str, str]]:
     if isinstance(record, Correlation):
         return _correlation_facts(record)
     skipped = {"key", "points"}
-    fields = [field.name for field in dataclasses.fields(record) if field.name not in skipped]  # type: ignore[arg-type]
+    fields = [field.name for field in dataclasses.fields(record) if field.name not in skipped]
     return [(name.replace("_", " "), str(getattr(record, name))) for name in fields]
 
 

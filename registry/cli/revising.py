@@ -156,7 +156,7 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
     from registry.exchange.coefficients import parse_coefficients
     from registry.naming import nearest_names
 
-    names = {field.name.replace("_", "-"): field.name for field in dataclasses.fields(record)}  # type: ignore[arg-type]
+    names = {field.name.replace("_", "-"): field.name for field in dataclasses.fields(record)}
     coefficients = dict(getattr(record, "coefficients", {}))
     changed: dict[str, Any] = {}
     for given in fields:
@@ -179,7 +179,7 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
             raise BadInput(f"A {record.kind} has no field {quote(name)}.{hint}")
     if hasattr(record, "coefficients"):
         changed["coefficients"] = {name: text for name, text in coefficients.items() if text}
-    return dataclasses.replace(record, **changed)  # type: ignore[type-var]
+    return dataclasses.replace(record, **changed)
 
 
 def _may_be(record: Any, name: str) -> bool:
