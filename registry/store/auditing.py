@@ -17,7 +17,7 @@ from typing import Any
 from sqlalchemy import create_engine
 
 from registry.errors import LibraryBusy, NotALibrary
-from registry.store.engine import BUSY_SECONDS, connect, is_busy, wal_is_safe
+from registry.store.engine import connect, is_busy, wal_is_safe
 from registry.store.matching import Row
 from registry.store.recognition import normalise_statement
 from registry.store.schema import create_schema
@@ -147,7 +147,7 @@ def open_audit(path: Path, *, any_text: bool = False) -> Iterator[Audit]:
     """
     try:
         with ExitStack() as stack:
-            connection = stack.enter_context(_connect(path, BUSY_SECONDS))
+            connection = stack.enter_context(_connect(path))
             if any_text:
                 connection.text_factory = _decode
             beside = _begin_beside(stack, path)
@@ -171,7 +171,7 @@ def is_damage(error: sqlite3.DatabaseError) -> bool:
 
 
 @contextmanager
-def _connect(path: Path, timeout: float) -> Iterator[sqlite3.Connection]:
+def _connect(path: Path, timeout: float | None = None) -> Iterator[sqlite3.Connection]:
     with closing(connect(path, "ro", timeout)) as connection:
         connection.isolation_level = None
         connection.execute("PRAGMA trusted_schema=OFF")

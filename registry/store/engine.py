@@ -57,11 +57,12 @@ def is_busy(error: BaseException) -> bool:
     return any(word in str(error) for word in ("locked", "busy"))
 
 
-def connect(path: Path, mode: str, timeout: float = BUSY_SECONDS) -> sqlite3.Connection:
-    """A connection of the driver on a file; `mode` is ``ro``, ``rw`` or ``rwc``."""
+def connect(path: Path, mode: str, timeout: float | None = None) -> sqlite3.Connection:
+    """A connection of the driver on a file; `mode` is ``ro``, ``rw`` or ``rwc``; it waits as long as a writer does."""
     # not through a database URL, which would decode the path a second time
     uri = f"file:{quote(str(path))}?mode={mode}"
-    return sqlite3.connect(uri, uri=True, timeout=timeout, check_same_thread=False)
+    wait = BUSY_SECONDS if timeout is None else timeout
+    return sqlite3.connect(uri, uri=True, timeout=wait, check_same_thread=False)
 
 
 def harden(connection: sqlite3.Connection) -> None:
