@@ -19,6 +19,7 @@ from registry.cli.options import (
     look_at,
     open_chosen,
 )
+from registry.cli.screen import emphasize, name_past, print_json, print_table, say
 
 
 def list_records(
@@ -32,7 +33,6 @@ def list_records(
 
     Example: rangebook list
     """
-    from registry.cli.screen import emphasize, name_past, print_json, print_table, say
     from registry.properties import PROPERTIES
 
     with open_chosen(library) as opened:
@@ -83,7 +83,6 @@ def show(
     """
     from registry.cli.documents import describe_change, describe_entry
     from registry.cli.record_text import print_record
-    from registry.cli.screen import print_json
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
@@ -118,7 +117,6 @@ def coverage(
     """
     from registry.cli.coverage_text import print_coverage
     from registry.cli.documents import describe_coverage
-    from registry.cli.screen import print_json
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)

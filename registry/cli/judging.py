@@ -19,6 +19,8 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
+from registry.cli.screen import emphasize, name_past, print_json, print_table, say
+from registry.errors import BadInput
 
 
 def review(
@@ -40,7 +42,6 @@ def review(
     Example: rangebook review ethanol-antoine-low --accept --note "checked against the printed table"
     """
     from registry.cli.recorded_text import print_recorded
-    from registry.errors import BadInput
 
     if accept is None:
         raise BadInput("No verdict was given. Give --accept or --decline.")
@@ -101,8 +102,6 @@ def prefer(
 
 
 def _need(reason: str) -> str:
-    from registry.errors import BadInput
-
     if not reason.strip():
         raise BadInput("Every decision says why: give --reason.")
     return reason
@@ -119,7 +118,6 @@ def queue(
     Example: rangebook queue
     """
     from registry.cli.documents import describe_change
-    from registry.cli.screen import emphasize, name_past, print_json, print_table, say
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)

@@ -16,6 +16,8 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
+from registry.cli.screen import name_past, print_json, say
+from registry.errors import BadInput
 
 
 def start(
@@ -38,8 +40,6 @@ def start(
 
     Example: rangebook start --shelf none --library team.db
     """
-    from registry.cli.screen import print_json, say
-    from registry.errors import BadInput
     from registry.opening import default_place, start_library
 
     place = default_place() if library is None else library
@@ -59,8 +59,6 @@ def start(
 
 def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
     """Say of a library that is there who keeps it."""
-    from registry.cli.screen import print_json, say
-
     with open_chosen(place) as book:
         done = book.keep(solo=solo, author=name_author(author))
     kept_by = "one person" if solo else "a team"
@@ -100,8 +98,6 @@ def load(
 
     Example: rangebook load handbook-2026.zip --dry-run
     """
-    from registry.cli.screen import print_json, say
-
     _refuse_empty(package)
     with open_chosen(library) as book:
         counts = book.load(
@@ -141,8 +137,6 @@ def dump(
 
     Example: rangebook dump new.zip --since 2026-Q4
     """
-    from registry.cli.screen import name_past, print_json, say
-
     _refuse_empty(package)
     with open_chosen(library) as book:
         past, label = look_at(book, edition, as_of)
@@ -157,8 +151,6 @@ def dump(
 
 
 def _refuse_empty(package: str) -> None:
-    from registry.errors import BadInput
-
     if not package:
         raise BadInput("The name of the package is empty. Give a folder or a .zip with datapackage.json.")
 
@@ -168,7 +160,6 @@ def upgrade(author: AuthorOption = "", library: LibraryOption = None, as_json: J
 
     Example: rangebook upgrade --library team.db
     """
-    from registry.cli.screen import print_json, say
     from registry.opening import default_place, upgrade_library
 
     place = default_place() if library is None else library

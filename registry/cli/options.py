@@ -7,6 +7,8 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from registry.errors import BadInput
+
 if TYPE_CHECKING:
     from registry.archive import Archive
     from registry.library import Library
@@ -72,8 +74,6 @@ def open_chosen(place: str | None) -> Library:
 def look_at(book: Library, edition: str, as_of: str) -> tuple[Archive, str]:
     """The library as the options want it, and how its position is called; no text for the newest."""
     if edition and as_of:
-        from registry.errors import BadInput
-
         raise BadInput("Both --edition and --as-of were given. Give one of them.")
     if edition:
         found = book.edition(edition)

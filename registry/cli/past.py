@@ -7,10 +7,10 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import AsOfOption, EditionOption, JsonOption, KindOption, LibraryOption, look_at, open_chosen
+from registry.cli.screen import emphasize, name_past, print_facts, print_json, say
 
 if TYPE_CHECKING:
-    from registry.chronicle import Event, FieldChange, RecordChange
-    from registry.comparison import NumberChange
+    from registry.chronicle import Event, RecordChange
 
 
 def history(
@@ -25,8 +25,6 @@ def history(
 
     Example: rangebook history ethanol-antoine-low
     """
-    from registry.cli.screen import emphasize, name_past, print_json, say
-
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
         record = book.newest(key, kind).record
@@ -41,7 +39,7 @@ def history(
 
 
 def _print_event(event: Event) -> None:
-    from registry.cli.screen import print_facts, say
+    from registry.cli.difference_text import field_facts
 
     revision = f", revision {event.revision}" if event.revision else ""
     say()
@@ -50,11 +48,6 @@ def _print_event(event: Event) -> None:
     note = event.note if event.note != event.change.reason else ""
     facts = [("why", event.change.reason), ("note", note), ("from", event.origin)]
     print_facts([*facts, *field_facts(event.fields)], indent=4)
-
-
-def field_facts(fields: tuple[FieldChange, ...]) -> list[tuple[str, str]]:
-    """What differs field by field, as labels and texts."""
-    return [(f.name.replace("_", " "), f"{f.before or '(empty)'} -> {f.after or '(empty)'}") for f in fields]
 
 
 def _describe_event(event: Event) -> dict[str, Any]:
@@ -76,7 +69,8 @@ def diff(
 
     Example: rangebook diff 2026-Q3 2026-Q4
     """
-    from registry.cli.screen import emphasize, print_json, say
+    from registry.cli.difference_text import print_numbers
+    from registry.cli.documents import describe_number
 
     with open_chosen(library) as book:
         found = book.diff(before, after or None)
@@ -97,52 +91,8 @@ def diff(
     _print_records(found.records)
 
 
-def print_numbers(numbers: tuple[NumberChange, ...]) -> None:
-    """Where answers differ, as a table."""
-    from registry.cli.screen import print_table, say
-    from registry.display import format_plain
-
-    say()
-    if not numbers:
-        say("In numbers: every answer is the same.")
-        return
-    say("In numbers:")
-    rows = [
-        (
-            n.compound, n.property + (f", {n.phase}" if n.phase not in ("liquid", "solid") else ""),
-            f"{format_plain(n.low)} to {format_plain(n.high)} K", n.kind,
-            _percent(n.largest_percent) if n.kind == "changes" else "",
-            f"{n.at:.6g} K" if n.at is not None else "",
-            f"{n.mean_percent:.3g} %" if n.mean_percent is not None else "",
-            f"{_name(n.before) or 'nothing'} -> {_name(n.after) or 'nothing'}",
-        )
-        for n in numbers
-    ]  # fmt: skip
-    headers = ("compound", "property", "range", "answer", "largest", "at", "mean", "from -> to")
-    print_table(headers, rows, right=(False, False, False, False, True, True, True))
-
-
-def _percent(value: float | None) -> str:
-    return "no bound" if value is None else f"{value:+.3g} %"
-
-
-def _name(pairs: tuple[tuple[str, int], ...]) -> str:
-    return ", ".join(f"{key} r{revision}" for key, revision in pairs)
-
-
-def describe_number(change: NumberChange) -> dict[str, Any]:
-    """A range in which answers differ."""
-    return {
-        "compound": change.compound, "property": change.property, "phase": change.phase, "from_K": change.low,
-        "to_K": change.high, "kind": change.kind, "largest_percent": change.largest_percent, "at_K": change.at,
-        "mean_percent": change.mean_percent,
-        "before": [{"correlation": key, "revision": revision} for key, revision in change.before],
-        "after": [{"correlation": key, "revision": revision} for key, revision in change.after],
-    }  # fmt: skip
-
-
 def _print_records(records: tuple[RecordChange, ...]) -> None:
-    from registry.cli.screen import emphasize, print_facts, say
+    from registry.cli.difference_text import field_facts
 
     say()
     say(f"{len(records)} {'record differs' if len(records) == 1 else 'records differ'}:")

@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import JsonOption, LibraryOption, open_chosen
+from registry.cli.screen import emphasize, print_facts, print_json, say, wrap
 
 if TYPE_CHECKING:
     from registry.findings import Verification
@@ -39,8 +40,6 @@ def verify(
 
     Example: rangebook verify --against 12:5dc9da79a70659a9ad559cb701ded9a2ab9d823aad2f4960cfe370eff4604328
     """
-    from registry.cli.screen import print_json
-
     with open_chosen(library) as book:
         found = book.verify(against, _show_progress())
     if as_json:
@@ -73,8 +72,6 @@ def _describe(found: Verification, against: str) -> dict[str, Any]:
 
 
 def _print(found: Verification, against: str) -> None:
-    from registry.cli.screen import emphasize, print_facts, say, wrap
-
     count = len(found.findings)
     head = "holds" if found.holds else f"does not hold: {count} {'finding' if count == 1 else 'findings'}"
     say(emphasize(head))

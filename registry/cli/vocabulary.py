@@ -7,6 +7,8 @@ from typing import Annotated, Any
 import typer
 
 from registry.cli.options import JsonOption
+from registry.cli.screen import emphasize, print_facts, print_json, print_table, say
+from registry.errors import UnknownKey
 
 
 def forms(
@@ -17,8 +19,6 @@ def forms(
 
     Example: rangebook forms riedel
     """
-    from registry.cli.screen import emphasize, print_facts, print_json, print_table, say
-    from registry.errors import UnknownKey
     from registry.forms.catalogue import FORMS
     from registry.naming import nearest_names
 
