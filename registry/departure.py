@@ -59,7 +59,7 @@ def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provena
     withdrawn = _find_withdrawn(view, entries, judged)
     return entries, Provenance(
         name, root_at(view, view.position), str(since), root_at(view, then.position), bases, earlier, withdrawn
-    )  # fmt: skip
+    )
 
 
 def _find_touched(view: View, since: int) -> tuple[Names, set[str]]:

@@ -141,7 +141,7 @@ class Derivation:
             self._audit.stream(table),
             lambda row: self._report_row(table, row, "is missing"),
             lambda row: self._report_row(table, row, "does not follow from the records"),
-        )  # fmt: skip
+        )
 
     def _resolve(self) -> None:
         for row, aims in self._unresolved:

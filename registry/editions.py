@@ -52,7 +52,7 @@ def plan_edition(holdings: Holdings, name: str, note: str) -> Plan:
     view = holdings.view
     record = Edition(
         name=name, position=str(view.position), root=root_at(view, view.position), rules=str(rules.VERSION), note=note
-    )  # fmt: skip
+    )
     before = holdings.newest("edition", record.key)
     if before is not None:
         raise BadInput(

@@ -31,9 +31,7 @@ WITHDRAWN = ("correlation", "fixed-point", "dataset", "preference", "source")
 
 def judge(record: Record, revision: int, standing: str, note: str) -> Draft:
     """The review that gives a revision a standing."""
-    review = Review(
-        of_kind=record.kind, of_key=record.key, of_revision=str(revision), standing=standing, note=note
-    )  # fmt: skip
+    review = Review(of_kind=record.kind, of_key=record.key, of_revision=str(revision), standing=standing, note=note)
     return draft_of(review, review.effects(record.content()))
 
 
@@ -43,9 +41,7 @@ def propose_withdrawal(record: Record, revision: int, cause: str, reason: str) -
 
 
 def _withdraw(record: Record, revision: int, cause: str, reason: str) -> Withdrawal:
-    return Withdrawal(
-        of_kind=record.kind, of_key=record.key, of_revision=str(revision), cause=cause, reason=reason
-    )  # fmt: skip
+    return Withdrawal(of_kind=record.kind, of_key=record.key, of_revision=str(revision), cause=cause, reason=reason)
 
 
 def withdraw_at_once(holdings: Holdings, record: Record, revision: int, cause: str, reason: str) -> list[Draft]:

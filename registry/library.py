@@ -66,9 +66,7 @@ class Library(Archive):
         from registry.recording import plan_record
 
         why = reason or f"Recorded {record.kind} {record.key}"
-        return self._append(
-            author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept))
-        )  # fmt: skip
+        return self._append(author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept)))
 
     def revise(
         self, record: Record, *, author: str, reason: str, expect: int | None = None, accept: bool = False
@@ -106,7 +104,7 @@ class Library(Archive):
 
         return self._append(
             author, reason, lambda held: plan_revision(held, record, expect, accept=accept_at_once(held, accept))
-        )  # fmt: skip
+        )
 
     def review(
         self, key: str, *, accept: bool, author: str, note: str, kind: str = "", expect: int | None = None

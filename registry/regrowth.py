@@ -84,7 +84,7 @@ class Regrowth:
             self._audit.nodes(level),
             lambda row: self._say(level, row[0], f"{show(row[1], 20)} is expected there and is not stored"),
             lambda row: self._say(level, row[0], f"{show(row[1], 20)} is stored there and does not follow"),
-        )  # fmt: skip
+        )
 
     def finish(self) -> None:
         """Compare what is left, and what is stored beyond the tree."""

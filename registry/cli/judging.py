@@ -48,9 +48,7 @@ def review(
     if not note.strip():
         raise BadInput("A review says what was looked at: give --note.")
     with open_chosen(library) as book:
-        done = book.review(
-            key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect
-        )  # fmt: skip
+        done = book.review(key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect)
         resting = book.resting(done.record) if accept else []
     print_recorded("accepted" if accept else "declined", done, as_json, resting=resting)
 
@@ -76,7 +74,7 @@ def withdraw(
     with open_chosen(library) as book:
         done = book.withdraw(
             key, author=name_author(author), reason=_need(reason), cause=cause, kind=kind, accept=accept
-        )  # fmt: skip
+        )
         resting = book.resting(done.record)
     print_recorded("withdrawn" if accept else "to be withdrawn", done, as_json, resting=resting, waits=not accept)
 

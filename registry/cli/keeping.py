@@ -73,6 +73,8 @@ def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
 _TOLD = ("added", "revised", "reviewed", "proposed", "kept", "unchanged")
 _SELDOM = ("proposed", "kept")
 """Counts that are told only where there are any."""
+SHOWN = 20
+"""Changed records that are printed; --json has all."""
 
 
 def load(
@@ -108,10 +110,10 @@ def load(
         print_json({"package": str(package), "dry_run": dry_run, **counts})
         return
     told = ", ".join(f"{counts[word]} {word}" for word in _TOLD if counts[word] or word not in _SELDOM)
-    for line in counts["changed"][:20]:
+    for line in counts["changed"][:SHOWN]:
         say(f"  {line}")
-    if len(counts["changed"]) > 20:
-        say(f"  ... and {len(counts['changed']) - 20} more; --json lists all")
+    if len(counts["changed"]) > SHOWN:
+        say(f"  ... and {len(counts['changed']) - SHOWN} more; --json lists all")
     if dry_run:
         say(f"{package} can be loaded: {told}. Nothing was recorded (--dry-run).")
     elif counts["change"]:

@@ -63,9 +63,7 @@ def lookup(
     with open_chosen(library) as book:
         to = _choose_unit(unit, atmosphere, prop)
         past, label = look_at(book, edition, as_of)
-        coverage = past.coverage(
-            compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts
-        )  # fmt: skip
+        coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         # all at the one position that this coverage was read at
         found = [(one, _answer(coverage, one)) for one in asked]
         refusals = [result for _, result in found if not isinstance(result, Answer)]

@@ -65,10 +65,7 @@ def build_record_group() -> typer.Typer:
 
 def _build(kind: str) -> Callable[..., None]:
     article = "a draft until it is reviewed" if kind in REVIEWED else "in force at once"
-    text = (
-        f"Record a {kind.replace('-', ' ')}; it is {article}.\n\n"
-        f"Example: rangebook record {kind} {_EXAMPLES[kind]}"
-    )  # fmt: skip
+    text = f"Record a {kind.replace('-', ' ')}; it is {article}.\n\nExample: rangebook record {kind} {_EXAMPLES[kind]}"
     return build_record_command(KINDS[kind], _run, text, _ADDED)
 
 
@@ -78,9 +75,7 @@ def _run(cls: type[Record], values: dict[str, Any], shared: dict[str, Any]) -> N
         return
     record = _make(cls, values, shared["sheet"])
     with open_chosen(shared["library"]) as book:
-        done = book.record(
-            record, author=name_author(shared["author"]), reason=shared["why"], accept=shared["accept"]
-        )  # fmt: skip
+        done = book.record(record, author=name_author(shared["author"]), reason=shared["why"], accept=shared["accept"])
     waits = cls.kind in REVIEWED and not shared["accept"]
     what = "recorded and accepted" if shared["accept"] and cls.kind in REVIEWED else "recorded"
     print_recorded(what, done, shared["as_json"], waits=waits)

@@ -31,7 +31,7 @@ __all__ = [
     "read_states",
     "read_terms",
     "read_waiting",
-]  # fmt: skip
+]
 
 
 class DamagedRow(Exception):
@@ -102,9 +102,7 @@ _WORD = """(
 _NEWEST_ID = _NEWEST.format(column="id")
 _DECIDED = _WORD.format(which="standing.standing IN ('accepted', 'withdrawn')")
 # no word on a revision is older than it: the search ends there, however many words there are on those before
-_LATEST = _WORD.format(
-    which=f"standing.record = {_NEWEST_ID} AND standing.change >= {_NEWEST.format(column='change')}"
-)  # fmt: skip
+_LATEST = _WORD.format(which=f"standing.record = {_NEWEST_ID} AND standing.change >= {_NEWEST.format(column='change')}")
 _ALL_OF_KIND = "SELECT kind, key FROM record WHERE kind = :kind AND revision = 1 AND change <= :position"
 _SOME_OF_KIND = f"{_ALL_OF_KIND} AND key IN :keys"
 _LINKED = "SELECT DISTINCT kind, key FROM link WHERE to_kind = :to_kind AND to_key IN :keys AND change <= :position"
