@@ -11,7 +11,8 @@ from registry.entries import enter_states, read_origin, word_cause
 from registry.records import REVIEWED, Correlation, Preference, Withdrawal
 from registry.store.history import Change
 from registry.store.library_file import View
-from registry.store.reading import Decision, Row
+from registry.store.reading import Decision
+from registry.store.rows import Row
 
 __all__ = [
     "Event",

@@ -10,7 +10,8 @@ from registry.cells import LONG
 from registry.dossier import Dossier, Entry
 from registry.records import KINDS, REVIEWED, Origin, Record, Source
 from registry.store.library_file import View
-from registry.store.reading import Decision, Row, State
+from registry.store.reading import Decision, State
+from registry.store.rows import Row
 
 __all__ = [
     "enter_all",

@@ -16,8 +16,9 @@ from registry.merkle import root_from_nodes
 from registry.store import positions, reading
 from registry.store.engine import is_busy, open_engine
 from registry.store.history import Change, Draft, append_change
-from registry.store.reading import Decision, Row, State
+from registry.store.reading import Decision, State
 from registry.store.recognition import check_file
+from registry.store.rows import DamagedRow, Row
 from registry.store.schema import create_file
 
 __all__ = ["LibraryFile", "View", "locate"]
@@ -198,7 +199,7 @@ class LibraryFile:
         """Database errors as what they mean to a user."""
         try:
             yield
-        except reading.DamagedRow as error:
+        except DamagedRow as error:
             raise NotALibrary(str(self.path), str(error)) from error
         except DatabaseError as error:
             text = str(error.orig)
