@@ -8,22 +8,20 @@ from typing import Any
 from registry.dossier import Entry
 from registry.editions import Position, find_position, root_at
 from registry.entries import enter_all, enter_states, rest_on, restore, withdrawn_sources, word_cause
+from registry.exchange.layout import PACKED
 from registry.exchange.provenance import Provenance, digest_content
 from registry.records import Source, Withdrawal
 from registry.store.library_file import View
 from registry.store.reading import Decision
 
-__all__ = ["DUMPED", "select_all", "select_since"]
-
-DUMPED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset", "preference")
-"""Kinds that a package holds."""
+__all__ = ["select_all", "select_since"]
 
 Names = set[tuple[str, str]]
 
 
 def select_all(view: View) -> list[Entry[Any]]:
     """Everything, each key in the revision that counts."""
-    return [entry for kind in DUMPED for entry in enter_all(view, kind)]
+    return [entry for kind in PACKED for entry in enter_all(view, kind)]
 
 
 def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provenance]:
@@ -65,7 +63,7 @@ def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provena
 def _find_touched(view: View, since: int) -> tuple[Names, set[str]]:
     """What changes after a position are about; and the sources among it that were judged."""
     added = view.changed(since)
-    touched = {(kind, key) for kind, key in added if kind in DUMPED}
+    touched = {(kind, key) for kind, key in added if kind in PACKED}
     aims = {_aim_of(row.content) for row in view.current("review", [key for kind, key in added if kind == "review"])}
     return touched | aims, {key for kind, key in aims if kind == Source.kind}
 
@@ -79,7 +77,7 @@ def _aim_of(review: dict[str, Any]) -> tuple[str, str]:
 
 
 def _enter(view: View, names: Iterable[tuple[str, str]]) -> list[Entry[Any]]:
-    of_kind = {kind: [key for each, key in names if each == kind] for kind in DUMPED}
+    of_kind = {kind: [key for each, key in names if each == kind] for kind in PACKED}
     return [entry for kind, keys in of_kind.items() for entry in enter_states(view, view.states(kind, keys))]
 
 

@@ -11,12 +11,13 @@ from registry.dossier import Entry
 from registry.exchange.coefficients import join_coefficients
 from registry.forms.catalogue import FORMS
 from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
+from registry.store.history import Change
 
 __all__ = ["print_record"]
 
 
 def print_record(
-    book: Archive, label: str, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Any]
+    book: Archive, label: str, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Change]
 ) -> None:
     """A record, who recorded it, and what refers to it."""
     record = entry.record
@@ -37,12 +38,12 @@ def print_record(
     _print_related(record, related)
 
 
-def _word_change(change: Any) -> str:
+def _word_change(change: Change) -> str:
     """A change as a line: number, author, time to the second, reason."""
     return f"change {change.number} by {change.author}, {change.recorded_at[:19]}Z: {change.reason}"
 
 
-def _word_review(entry: Entry[Any], changes: dict[int, Any]) -> str:
+def _word_review(entry: Entry[Any], changes: dict[int, Change]) -> str:
     if not entry.reviewed_in:
         return ""
     note = f" ({entry.standing_note})" if entry.standing_note else ""
