@@ -1,4 +1,4 @@
-"""Reviews, withdrawals and preferences: who may decide what, and what is appended."""
+"""Reviews, withdrawals, preferences, who keeps the library: who may decide what, and what is appended."""
 
 from __future__ import annotations
 
@@ -12,12 +12,13 @@ from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKe
 from registry.holdings import Holdings
 from registry.naming import join_names
 from registry.plan import Plan, draft_of
-from registry.records import REVIEWED, Preference, Record, Review, Withdrawal
+from registry.records import REVIEWED, Keeping, Preference, Record, Review, Withdrawal
 from registry.store.history import Draft
 
 __all__ = [
     "accept_at_once",
     "judge",
+    "plan_keeping",
     "plan_preference",
     "plan_review",
     "plan_withdrawal",
@@ -56,10 +57,24 @@ def _next_revision(holdings: Holdings, record: Record) -> int:
     return state.newest.revision + 1 if state is not None else 1
 
 
+def plan_keeping(holdings: Holdings, kept_by: str) -> Plan | None:
+    """Who keeps the library, ``team`` or ``one-person``; None if it says so already."""
+    if _kept_by(holdings) == kept_by:
+        return None
+    name, started_at = holdings.view.identity()
+    record = Keeping(name=name, started_at=started_at, kept_by=kept_by)
+    return Plan((draft_of(record),), record, _next_revision(holdings, record))
+
+
+def _kept_by(holdings: Holdings) -> str:
+    """Who keeps the library, as far as it says so."""
+    record = holdings.record(Keeping.kind, Keeping.kind)
+    return record.kept_by if isinstance(record, Keeping) else ""
+
+
 def _is_solo(holdings: Holdings) -> bool:
     """True if the library says that one person keeps it."""
-    state = holdings.state("library", "library")
-    return state is not None and state.newest.content["kept_by"] == "one-person"
+    return _kept_by(holdings) == "one-person"
 
 
 def _check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:

@@ -15,8 +15,8 @@ from registry.archive import Archive
 from registry.editions import plan_edition
 from registry.errors import BadInput
 from registry.holdings import Holdings
-from registry.plan import Plan, draft_of
-from registry.records import Keeping, Record
+from registry.plan import Plan
+from registry.records import Record
 from registry.signature import Recorded, check_signature, now_utc
 
 __all__ = ["Library"]
@@ -257,16 +257,15 @@ class Library(Archive):
         Recorded or None
             None if the library says so already.
         """
-        kept_by = "one-person" if solo else "team"
+        from registry.judgement import plan_keeping
+
         who, why = check_signature(author, f"The library is kept by {'one person' if solo else 'a team'}.")
         with self._lock, self._file.writing() as (view, append):
-            state = next(iter(view.states("library", ["library"])), None)
-            name, started_at = view.identity()
-            if state is not None and state.newest.content["kept_by"] == kept_by:
+            planned = plan_keeping(Holdings(view), "one-person" if solo else "team")
+            if planned is None:
                 return None
-            record = Keeping(name=name, started_at=started_at, kept_by=kept_by)
-            change = append(who, why, now_utc(), [draft_of(record)])
-            return Recorded(change, record, state.newest.revision + 1 if state is not None else 1)
+            change = append(who, why, now_utc(), planned.drafts)
+        return Recorded(change, planned.record, planned.revision)
 
     def _append(self, author: str, reason: str, plan: Callable[[Holdings], Plan]) -> Recorded:
         """One change: planned and appended under the write lock, whole or not at all."""

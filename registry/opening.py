@@ -6,6 +6,7 @@ import os
 from pathlib import Path
 
 from registry.errors import BadInput
+from registry.holdings import Holdings
 from registry.library import Library
 from registry.plan import draft_of
 from registry.records import Keeping
@@ -160,10 +161,11 @@ def upgrade_library(place: str | os.PathLike[str], author: str = "rangebook") ->
 
 def _sign(file: LibraryFile, author: str, reason: str) -> None:
     """Record which library this is, if it does not say so yet."""
+    from registry.judgement import plan_keeping
+
     with file.reading() as view:
-        if view.states("library", ["library"]):
+        if view.states(Keeping.kind, [Keeping.kind]):
             return
     with file.writing() as (view, append):
-        name, started_at = view.identity()
-        keeping = Keeping(name=name, started_at=started_at, kept_by="team")
-        append(author, reason, now_utc(), [draft_of(keeping)])
+        if planned := plan_keeping(Holdings(view), "team"):
+            append(author, reason, now_utc(), planned.drafts)

@@ -138,7 +138,7 @@ class Keeping(Record):
     kept_by: str = entry(choice("team", "one-person"))
 
     def _own_key(self) -> str:
-        return "library"
+        return self.kind  # there is one for each library
 
 
 @dataclass(frozen=True)
