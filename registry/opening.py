@@ -167,5 +167,8 @@ def _sign(file: LibraryFile, author: str, reason: str) -> None:
         if view.states(Keeping.kind, [Keeping.kind]):
             return
     with file.writing() as (view, append):
-        if planned := plan_keeping(Holdings(view), "team"):
+        held = Holdings(view)
+        # somebody may have said it since the look
+        planned = plan_keeping(held, "team") if held.state(Keeping.kind, Keeping.kind) is None else None
+        if planned is not None:
             append(author, reason, now_utc(), planned.drafts)

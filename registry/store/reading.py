@@ -239,13 +239,17 @@ def read_waiting(connection: Connection, kinds: Iterable[str], position: int) ->
     """Newest revisions without a verdict, oldest first, each with the note on its arrival."""
     ids = list(connection.execute(_WAITING, {"kinds": list(kinds), "position": position}).scalars())
     rows = fetch_rows(connection, ids)
-    found: list[tuple[Row, str]] = []
-    for number in ids:
-        row = rows[number]
-        words = read_decisions(connection, row.kind, row.key, position)
-        notes = [word.cause.content.get("note", "") for word in words if word.revision == row.revision]
-        found.append((row, notes[-1] if notes else ""))
-    return found
+    keys: dict[str, list[str]] = {}
+    for row in rows.values():
+        keys.setdefault(row.kind, []).append(row.key)
+    states = [state for kind, of_kind in keys.items() for state in read_states(connection, position, kind, of_kind)]
+    words = {state.newest[:2]: state.latest for state in states}
+
+    def note_on(row: Row) -> str:
+        word = words[row[:2]]
+        return "" if word is None else str(word.cause.content.get("note", ""))
+
+    return [(rows[number], note_on(rows[number])) for number in ids]
 
 
 def read_linked(
