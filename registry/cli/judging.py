@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import Annotated, Any
+from typing import TYPE_CHECKING, Annotated, Any
 
 import typer
 
@@ -19,6 +19,10 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
+
+if TYPE_CHECKING:
+    from registry.library import Library
+    from registry.signature import Recorded
 
 
 def review(
@@ -51,7 +55,26 @@ def review(
             key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect
         )  # fmt: skip
         resting = book.resting(done.record) if accept else []
-    print_recorded("accepted" if accept else "declined", done, as_json, resting=resting)
+        told = _word_verdict(book, done, accept)
+    print_recorded("accepted" if accept else "declined", done, as_json, told=told, resting=resting)
+
+
+def _word_verdict(book: Library, done: Recorded, accept: bool) -> str:
+    """What a verdict does: to accept a withdrawal takes a record out, to accept again brings it back."""
+    from registry.records import Withdrawal
+
+    if isinstance(done.record, Withdrawal):
+        return "withdrawn" if accept else "stays as it was: its withdrawal was declined"
+    if not accept:
+        return ""
+    verdicts = [
+        event for event in book.history(done.record.key, done.record.kind)
+        if event.revision == done.revision and event.what in ("accepted", "declined", "withdrawn")
+    ]  # fmt: skip
+    before = next((event for event in reversed(verdicts) if event.change.number < done.change.number), None)
+    if before is None or before.what == "accepted":
+        return ""
+    return f"accepted again; it was {before.what} ({before.note or before.change.reason})"
 
 
 def withdraw(

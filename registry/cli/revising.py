@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import dataclasses
 import os
 import shlex
@@ -71,6 +72,7 @@ def revise(
     Example: rangebook revise ethanol-antoine-low --set A=8.20417 --reason "misread digit"
     """
     from registry.cli.recorded_text import print_recorded
+    from registry.cli.rescue import keep_typed
     from registry.cli.screen import complain, print_json, say
     from registry.errors import BadInput
     from registry.exchange.sheets import write_sheet
@@ -81,7 +83,7 @@ def revise(
         remark = f"position {book.position} of {book.place}"
         text = write_sheet(newest.record, newest.revision, [remark])
         if export:
-            _export(text, export, as_json)
+            _export(text, export, key, as_json)
             return
         expect, record = _change(newest, text, sheet, fields or [], expect)
         if record is None:
@@ -89,23 +91,24 @@ def revise(
             if as_json:
                 print_json({"kind": newest.record.kind, "key": key, "change": None})
             return
-        preview = book.preview(record, expect)
-        if not as_json:
-            _print_preview(book, record, preview)
-        if dry_run:
-            _print_dry(record, preview, as_json)
-            return
-        reason = reason or _ask_reason()
-        if not reason.strip():
-            raise BadInput("A revision says why: give --reason. Nothing was recorded.")
-        done = book.revise(record, author=name_author(author), reason=reason, expect=expect, accept=accept)
+        with contextlib.nullcontext() if sheet or fields else keep_typed(record, expect, f"revise {key}"):
+            preview = book.preview(record, expect)
+            if not as_json:
+                _print_preview(book, record, preview)
+            if dry_run:
+                _print_dry(record, preview, as_json)
+                return
+            reason = reason or _ask_reason()
+            if not reason.strip():
+                raise BadInput("A revision says why: give --reason. Nothing was recorded.")
+            done = book.revise(record, author=name_author(author), reason=reason, expect=expect, accept=accept)
     if not as_json:
         say()
     waits = record.kind in REVIEWED and not accept
     print_recorded("revised and accepted" if accept else "revised", done, as_json, waits=waits)
 
 
-def _export(text: str, place: str, as_json: bool) -> None:
+def _export(text: str, place: str, key: str, as_json: bool) -> None:
     from registry.cli.screen import print_json, say
     from registry.errors import BadInput
 
@@ -117,7 +120,7 @@ def _export(text: str, place: str, as_json: bool) -> None:
     if as_json:
         print_json({"written": place})
     else:
-        say(f"Wrote {place}. Change it, then: rangebook revise KEY --file {place}")
+        say(f"Wrote {place}. Change it, then: rangebook revise {key} --file {place}")
 
 
 def _change(
@@ -154,7 +157,7 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
     """A record with some fields anew; a name that is no field is a coefficient."""
     from registry.errors import BadInput, quote
     from registry.exchange.coefficients import parse_coefficients
-    from registry.naming import nearest_names
+    from registry.naming import nearest_names, word_kind
 
     names = {field.name.replace("_", "-"): field.name for field in dataclasses.fields(record)}  # type: ignore[arg-type]
     coefficients = dict(getattr(record, "coefficients", {}))
@@ -162,7 +165,9 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
     for given in fields:
         name, equals, text = given.partition("=")
         field = names.get(name.replace("_", "-"), "")
-        if not equals or field in ("key", "points"):
+        if field in ("key", "points"):
+            raise BadInput(f"{quote(given)}: {_why_not_set(field)}")
+        if not equals:
             raise BadInput(f"{quote(given)} changes no field; FIELD=TEXT is allowed, such as note=seen or A=8.2.")
         if field == "coefficients":
             try:
@@ -176,10 +181,16 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
         else:
             near = nearest_names(name, [*names, *coefficients])
             hint = f" Nearest: {', '.join(near)}." if near else ""
-            raise BadInput(f"A {record.kind} has no field {quote(name)}.{hint}")
+            raise BadInput(f"A {word_kind(record.kind)} has no field {quote(name)}.{hint}")
     if hasattr(record, "coefficients"):
         changed["coefficients"] = {name: text for name, text in coefficients.items() if text}
     return dataclasses.replace(record, **changed)  # type: ignore[type-var]
+
+
+def _why_not_set(field: str) -> str:
+    if field == "key":
+        return "a key stays. `rangebook record` records something new, `rangebook withdraw` takes out what is wrong."
+    return "points are changed in the sheet of the dataset: --export PATH, then --file PATH."
 
 
 def _may_be(record: Any, name: str) -> bool:
@@ -193,7 +204,7 @@ def _may_be(record: Any, name: str) -> bool:
 def _edit(text: str, record: Record) -> Record:
     """The record as an editor leaves it; on a sheet that cannot be read, the editor opens again."""
     from registry.cli.questions import can_ask
-    from registry.cli.screen import complain
+    from registry.cli.rescue import tell_kept
     from registry.errors import BadInput
     from registry.exchange.sheets import gives_up, read_sheet
 
@@ -214,7 +225,7 @@ def _edit(text: str, record: Record) -> Record:
             _check_key(read, record)
         except BadInput as error:
             if not (can_ask() and _ask_again(str(error))):
-                complain(f"What you wrote is kept at {place}.")
+                tell_kept(str(place), f"revise {record.key}")
                 raise
             continue
         place.unlink()
@@ -259,10 +270,12 @@ def _print_preview(book: Library, record: Record, preview: Preview) -> None:
     """What changes in the record, in its values, and in the answers of the library once it is accepted."""
     from registry.cli.past import field_facts, print_numbers
     from registry.cli.screen import emphasize, print_facts, say
+    from registry.naming import word_kind
 
     if not preview.fields:
         return
-    say(emphasize(f"{record.key}: {record.kind}, revision {preview.before.revision} -> {preview.before.revision + 1}"))
+    before = preview.before.revision
+    say(emphasize(f"{record.key}: {word_kind(record.kind)}, revision {before} -> {before + 1}"))
     print_facts(field_facts(preview.fields))
     if preview.own is not None:
         say(_word_own(preview.own))
