@@ -131,3 +131,17 @@ def test_what_was_answered_is_kept_when_it_cannot_be_recorded(run, monkeypatch):
     kept.write_text(kept.read_text().replace('"water"', '"brindovane"'))
     assert run("record", "name", "--file", str(kept))[0] == 0
     kept.unlink()
+
+
+@pytest.mark.parametrize("columns", [60, 80, 110])
+def test_a_table_keeps_to_the_screen(columns, run, monkeypatch):
+    """Where the last column has no room beside the others it stands beneath them, headed the same way."""
+    monkeypatch.setenv("COLUMNS", str(columns))
+    out = run("revise", LOW, "--set", "A=22.15808", "--dry-run")[1]
+    head, row = (line for line in out.splitlines() if line.startswith("  compound") or line.startswith("  brindovane"))
+    beside = columns == 110
+    assert head.endswith("from -> to") is beside
+    assert f"{LOW} r1 ->" in row or not beside
+    assert f"\n      {LOW} r1 -> {LOW} r2\n" in out or beside
+    if columns >= 80:
+        assert max(len(line) for line in out.splitlines()) <= columns

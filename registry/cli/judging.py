@@ -23,6 +23,7 @@ from registry.cli.options import (
 if TYPE_CHECKING:
     from registry.library import Library
     from registry.signature import Recorded
+    from registry.waiting import Waiting
 
 
 def review(
@@ -131,6 +132,16 @@ def _need(reason: str) -> str:
     return reason
 
 
+def _name_waiting(waiting: Waiting) -> str:
+    """The key that `review` takes, with its revision; of a withdrawal what it takes out."""
+    from registry.records import Withdrawal
+
+    record = waiting.record
+    if isinstance(record, Withdrawal):
+        return f"{record.of_key} r{record.of_revision}"
+    return f"{record.key} r{waiting.revision}"
+
+
 def queue(
     edition: EditionOption = "",
     as_of: AsOfOption = "",
@@ -165,7 +176,7 @@ def queue(
     say()
     rows_shown = [
         [
-            w.change.recorded_at[:10], w.change.author, w.what, f"{w.record.key} r{w.revision}",
+            w.change.recorded_at[:10], w.change.author, w.what, _name_waiting(w),
             w.screening or "not screened", w.change.reason + (f" ({w.note})" if w.note else ""),
         ]
         for w in waiting

@@ -158,7 +158,10 @@ def dump(
         return
     say(f"Wrote {package}{name_past(label)}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
-        say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
+        say(
+            f"Drafts that wait over an accepted revision and stayed behind: {waiting}. "
+            "Once they are reviewed (`rangebook queue`), a new dump takes them along."
+        )
 
 
 def _refuse_empty(package: str) -> None:
