@@ -163,7 +163,8 @@ class UnknownKey(BadInput, LookupError):
         elif self.nearest:
             text = f"There is no {word_kind(kind)} {quote(given)}. Nearest: {', '.join(self.nearest)}."
         else:
-            text = f"There is no {word_kind(kind)} {quote(given)}. `rangebook list` shows what there is."
+            listed = "editions" if kind == "edition" else "list"
+            text = f"There is no {word_kind(kind)} {quote(given)}. `rangebook {listed}` shows what there is."
         super().__init__(text)
 
 

@@ -62,13 +62,17 @@ def test_a_verdict_on_a_withdrawal_is_not_taken_for_one_on_the_record(run):
         (("review", "brindovane", "--accept", "--note", "x"), "The compound brindovane is not reviewed: it counts as"),
         (("review", LOW[:-1], "--accept", "--note", "x"), f"There is no record {LOW[:-1]!r}. Nearest: {LOW}"),
         (("withdraw", "brindovane", *ERRATUM), "The compound brindovane is not withdrawn: it is corrected by"),
+        (("list", "--edition", "first"), "There is no edition 'first'. `rangebook editions` shows what there is."),
         (("withdraw", LOW, *ERRATUM, "--kind", "curve"), "--kind 'curve' given; compound, name, source"),
         (("revise", LOW, "--set", "A=22", "--expect", "7"), f"The correlation {LOW} has no revision 7; its newest is"),
         (
             ("review", "brindovane-cox-draft", "--accept", "--note", "x", "--expect", "3"),
             "has no revision 3; its newest",
         ),
-        (("record", "name", "--compound", "water", "--name", "ice"), "there is no compound with this key."),
+        (
+            ("record", "name", "--compound", "water", "--name", "ice"),
+            "no compound with this key. `rangebook record compound`",
+        ),
         (("revise", "tallowane-riedel-first", "--set", "reason=x", "--reason", "y"), "say it anew: `rangebook prefer`"),
     ],
 )
