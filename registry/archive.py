@@ -240,10 +240,10 @@ class Archive(Reader):
             If the newest revision is not the expected one.
         """
         from registry.difference import find_preview
-        from registry.recording import check_expected
+        from registry.holdings import check_expected
 
         newest = self.newest(record.key, record.kind)
-        check_expected(newest, record, expect)
+        check_expected(newest, expect, record.content())
         return find_preview(newest, record, self.dossier)
 
     def dump(self, path: str | os.PathLike[str], since: Position | None = None) -> dict[str, int]:

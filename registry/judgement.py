@@ -8,11 +8,11 @@ from registry.admission import check_kinship, find_cycle
 from registry.canonical import digest
 from registry.cells import KEY
 from registry.dossier import Entry
-from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey, quote
-from registry.holdings import Holdings
-from registry.naming import join_names
+from registry.errors import BadInput, InvalidRecord, UnknownKey, quote
+from registry.holdings import Holdings, check_expected
+from registry.naming import join_names, nearest_names, word_kind
 from registry.plan import Plan, draft_of
-from registry.records import REVIEWED, Keeping, Preference, Record, Review, Withdrawal
+from registry.records import RECORDED, REVIEWED, Keeping, Preference, Record, Review, Withdrawal
 from registry.store.history import Draft
 
 __all__ = [
@@ -105,10 +105,8 @@ def plan_review(
     record = entry.record
     if expect is not None and entry.revision != expect:
         before = next((r for r in holdings.view.revisions(record.kind, record.key) if r.revision == expect), None)
-        raise RevisedMeanwhile(
-            record.kind, record.key, expect, entry.revision, before.content if before else {}, record.content()
-        )
-    what = f"Revision {entry.revision} of the {record.kind} {record.key}"
+        check_expected(entry, expect, before.content if before else {})
+    what = f"Revision {entry.revision} of the {word_kind(record.kind)} {record.key}"
     _check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
     if isinstance(record, Preference) and standing == "accepted":
         _check_round(holdings, record)
@@ -132,7 +130,7 @@ def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> 
     """What waits under a key; to be accepted again, what was declined or withdrawn."""
     found = [entry for entry in _entries_under(holdings, key) if kind in ("", entry.record.kind)]
     if not found:
-        raise UnknownKey(kind or "record", key)
+        raise _miss(holdings, key, kind, "reviewed", "counts as soon as it is recorded")
     waiting = [entry for entry in found if entry.standing == "draft"]
     ended = [entry for entry in found if entry.standing in ("declined", "withdrawn")]
     if not waiting and standing == "accepted":
@@ -141,11 +139,22 @@ def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> 
     if len(waiting) == 1:
         return waiting[0]
     if waiting:
-        several = join_names((f"the {entry.record.kind} {entry.key}" for entry in waiting), "and")
-        raise BadInput(f"{several} wait for review. Say which with --kind, or give the key of the withdrawal.")
-    shown = join_names((f"revision {e.revision} of the {e.record.kind} {e.key} is {e.standing}" for e in found), "and")
+        several = join_names((f"the {word_kind(entry.record.kind)} {entry.key}" for entry in waiting), "and")
+        raise BadInput(f"Both wait for review: {several}. Say which with --kind, or give the key of the withdrawal.")
+    shown = join_names(
+        (f"revision {e.revision} of the {word_kind(e.record.kind)} {e.key} is {e.standing}" for e in found), "and"
+    )
     hint = " `rangebook withdraw` takes out what is in force." if standing == "declined" else ""
     raise BadInput(f"Nothing under {quote(key)} waits for review: {shown}.{hint}")
+
+
+def _miss(holdings: Holdings, key: str, kind: str, done: str, instead: str) -> BadInput:
+    """What to say where nothing under a key can be reviewed or withdrawn: it is of another kind, or not there."""
+    for each in [kind] if kind else RECORDED:
+        if holdings.state(each, key) is not None:
+            return BadInput(f"The {word_kind(each)} {key} is not {done}: it {instead}.")
+    recorded = {row.key for each in ([kind] if kind else WITHDRAWN) for row in holdings.view.kind(each)}
+    return UnknownKey(kind or "record", key, nearest=nearest_names(key, recorded))
 
 
 def _entries_under(holdings: Holdings, key: str) -> list[Entry[Any]]:
@@ -174,16 +183,18 @@ def plan_withdrawal(
     kinds = [kind] if kind else list(WITHDRAWN)
     found = [entry for each in kinds if (entry := holdings.counting(each, key)) is not None]
     if not found:
-        raise UnknownKey(kind or "record", key)
+        raise _miss(holdings, key, kind, "withdrawn", "is corrected by `rangebook revise`")
     if len(found) > 1:
         raise BadInput(f"{quote(key)} may be a {join_names(e.record.kind for e in found)}. Say which with --kind.")
     entry = found[0]
     record = entry.record
     if entry.standing == "withdrawn":
-        raise BadInput(f"The {record.kind} {key} is withdrawn already: {entry.standing_note}")
+        raise BadInput(f"The {word_kind(record.kind)} {key} is withdrawn already: {entry.standing_note}")
     before = holdings.newest("withdrawal", Withdrawal.key_for(record.kind, key))
     if before is not None and before.standing == "draft":
-        raise BadInput(f"A withdrawal of the {record.kind} {key} waits for review already: {before.record.reason}")
+        raise BadInput(
+            f"A withdrawal of the {word_kind(record.kind)} {key} waits for review already: {before.record.reason}"
+        )
     withdrawal = _withdraw(record, entry.revision, cause, reason)
     revision = _next_revision(holdings, withdrawal)
     drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]

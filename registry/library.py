@@ -15,6 +15,7 @@ from registry.archive import Archive
 from registry.editions import plan_edition
 from registry.errors import BadInput
 from registry.holdings import Holdings
+from registry.naming import word_kind
 from registry.plan import Plan
 from registry.records import Record
 from registry.signature import Recorded, check_signature, now_utc
@@ -65,7 +66,7 @@ class Library(Archive):
         from registry.judgement import accept_at_once
         from registry.recording import plan_record
 
-        why = reason or f"Recorded {record.kind} {record.key}"
+        why = reason or f"Recorded {word_kind(record.kind)} {record.key}"
         return self._append(author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept)))
 
     def revise(

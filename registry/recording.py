@@ -2,17 +2,15 @@
 
 from __future__ import annotations
 
-from typing import Any
-
 from registry.admission import check_identity, check_kinship, check_references, check_value
-from registry.dossier import Entry
-from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey
-from registry.holdings import Holdings
+from registry.errors import BadInput, InvalidRecord, UnknownKey
+from registry.holdings import Holdings, check_expected
 from registry.judgement import judge
+from registry.naming import word_kind
 from registry.plan import Plan, draft_of
 from registry.records import RECORDED, REVIEWED, Record
 
-__all__ = ["check_expected", "plan_record", "plan_revision"]
+__all__ = ["plan_record", "plan_revision"]
 
 
 def plan_record(holdings: Holdings, record: Record, *, accept: bool = False) -> Plan:
@@ -28,9 +26,10 @@ def plan_record(holdings: Holdings, record: Record, *, accept: bool = False) -> 
     _check_kind(record)
     taken = holdings.state(record.kind, record.key)
     if taken is not None:
+        changed = f" `rangebook revise {record.key}` changes it." if record.kind != "name" else ""
         raise BadInput(
-            f"The {record.kind} {record.key} is recorded already, in revision {taken.newest.revision}. "
-            f"`rangebook revise {record.key}` changes it."
+            f"The {word_kind(record.kind)} {record.key} is recorded already, in revision {taken.newest.revision}."
+            f"{changed}"
         )
     return _plan(holdings, record, 1, accept)
 
@@ -64,30 +63,18 @@ def plan_revision(holdings: Holdings, record: Record, expect: int | None = None,
     newest = holdings.newest(record.kind, record.key)
     if newest is None:
         raise UnknownKey(record.kind, record.key)
-    check_expected(newest, record, expect)
+    check_expected(newest, expect, record.content())
     if newest.record == record:
-        raise BadInput(f"The {record.kind} {record.key} is just so already, in revision {newest.revision}.")
+        raise BadInput(f"The {word_kind(record.kind)} {record.key} is just so already, in revision {newest.revision}.")
     if problems := list(check_identity(record, newest.record)):
         raise InvalidRecord(record.kind, record.key, problems)
     return _plan(holdings, record, newest.revision + 1, accept)
 
 
-def check_expected(newest: Entry[Any], record: Record, expect: int | None) -> None:
-    """Refuse what was made from another revision than the newest.
-
-    Raises
-    ------
-    RevisedMeanwhile
-        With both sides.
-    """
-    if expect is not None and newest.revision != expect:
-        sides = record.content(), newest.record.content()
-        raise RevisedMeanwhile(record.kind, record.key, expect, newest.revision, *sides)
-
-
 def _check_kind(record: Record) -> None:
     if record.kind not in RECORDED:
-        raise BadInput(f"A {record.kind} is not recorded by hand: it follows from what people decide.")
+        instead = " Withdraw it, and say it anew: `rangebook prefer`." if record.kind == "preference" else ""
+        raise BadInput(f"A {record.kind} is not recorded by hand: it follows from what people decide.{instead}")
 
 
 def _plan(holdings: Holdings, record: Record, revision: int, accept: bool) -> Plan:

@@ -158,7 +158,7 @@ def test_a_draft_and_a_withdrawal_that_both_wait_are_told_apart(library):
     record = library.newest("brindovane-kirchhoff").record
     library.revise(dataclasses.replace(record, note="invented note"), **WHEN)
     library.withdraw("brindovane-kirchhoff", **WHEN)
-    with pytest.raises(BadInput, match=r"wait for review\. Say which with --kind"):
+    with pytest.raises(BadInput, match=r"Both wait for review: .*\. Say which with --kind"):
         library.review("brindovane-kirchhoff", accept=True, **LOOK)
     assert library.review("brindovane-kirchhoff", accept=True, kind="withdrawal", **LOOK).record.kind == "withdrawal"
     assert library.review("brindovane-kirchhoff", accept=True, **LOOK).record.kind == "correlation"

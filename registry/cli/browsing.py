@@ -61,7 +61,8 @@ def list_records(
         return
     short = ("vapour", "sublim.", "melting", "enthalpy", "density")
     where = f"{place}, position {position}{name_past(label)}"
-    say(f"{emphasize(str(len(compounds)))} compounds in {where}; accepted correlations for each.")
+    word = "compound" if len(compounds) == 1 else "compounds"
+    say(f"{emphasize(str(len(compounds)))} {word} in {where}; accepted correlations for each.")
     say()
     table = [
         [c.key, c.formula, c.cas, f"{c.grams_per_mole():.4f}", *(str(counts[c.key, p] or "") for p in PROPERTIES)]

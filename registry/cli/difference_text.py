@@ -8,6 +8,7 @@ from registry.comparison import SAME, NumberChange
 from registry.deviation import Deviation
 from registry.difference import Preview
 from registry.display import format_plain
+from registry.naming import word_kind
 from registry.records import Record
 
 __all__ = ["field_facts", "print_numbers", "print_preview"]
@@ -52,7 +53,8 @@ def print_preview(record: Record, preview: Preview) -> None:
     """What changes in the record, in its values, and in the answers of the library once it is accepted."""
     if not preview.fields:
         return
-    say(emphasize(f"{record.key}: {record.kind}, revision {preview.before.revision} -> {preview.before.revision + 1}"))
+    before = preview.before.revision
+    say(emphasize(f"{record.key}: {word_kind(record.kind)}, revision {before} -> {before + 1}"))
     print_facts(field_facts(preview.fields))
     if preview.own is not None:
         say(_word_own(preview.own))

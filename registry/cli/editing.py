@@ -9,6 +9,7 @@ import tempfile
 from pathlib import Path
 
 from registry.cli.questions import ask_on_terminal, can_ask
+from registry.cli.rescue import tell_kept
 from registry.cli.screen import complain
 from registry.errors import BadInput
 from registry.exchange.sheets import Sheet, gives_up, read_sheet
@@ -55,7 +56,7 @@ def edit_record(text: str, record: Record) -> Record:
             read = read_edited(edited, str(place), record).record
         except BadInput as error:
             if not (can_ask() and _ask_again(str(error))):
-                complain(f"What you wrote is kept at {place}.")
+                tell_kept(str(place), f"revise {record.key}")
                 raise
             continue
         place.unlink()

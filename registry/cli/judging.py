@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import Annotated, Any
+from typing import TYPE_CHECKING, Annotated, Any
 
 import typer
 
@@ -21,6 +21,11 @@ from registry.cli.options import (
 )
 from registry.cli.screen import emphasize, name_past, print_json, print_table, say
 from registry.errors import BadInput
+
+if TYPE_CHECKING:
+    from registry.library import Library
+    from registry.signature import Recorded
+    from registry.waiting import Waiting
 
 
 def review(
@@ -50,7 +55,26 @@ def review(
     with open_chosen(library) as book:
         done = book.review(key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect)
         resting = book.resting(done.record) if accept else []
-    print_recorded("accepted" if accept else "declined", done, as_json, resting=resting)
+        told = _word_verdict(book, done, accept)
+    print_recorded("accepted" if accept else "declined", done, as_json, told=told, resting=resting)
+
+
+def _word_verdict(book: Library, done: Recorded, accept: bool) -> str:
+    """What a verdict does: to accept a withdrawal takes a record out, to accept again brings it back."""
+    from registry.records import Withdrawal
+
+    if isinstance(done.record, Withdrawal):
+        return "withdrawn" if accept else "stays as it was: its withdrawal was declined"
+    if not accept:
+        return ""
+    verdicts = [
+        event for event in book.history(done.record.key, done.record.kind)
+        if event.revision == done.revision and event.what in ("accepted", "declined", "withdrawn")
+    ]  # fmt: skip
+    before = next((event for event in reversed(verdicts) if event.change.number < done.change.number), None)
+    if before is None or before.what == "accepted":
+        return ""
+    return f"accepted again; it was {before.what} ({before.note or before.change.reason})"
 
 
 def withdraw(
@@ -105,6 +129,16 @@ def _need(reason: str) -> str:
     return reason
 
 
+def _name_waiting(waiting: Waiting) -> str:
+    """The key that `review` takes, with its revision; of a withdrawal what it takes out."""
+    from registry.records import Withdrawal
+
+    record = waiting.record
+    if isinstance(record, Withdrawal):
+        return f"{record.of_key} r{record.of_revision}"
+    return f"{record.key} r{waiting.revision}"
+
+
 def queue(
     edition: EditionOption = "",
     as_of: AsOfOption = "",
@@ -138,7 +172,7 @@ def queue(
     say()
     rows_shown = [
         [
-            w.change.recorded_at[:10], w.change.author, w.what, f"{w.record.key} r{w.revision}",
+            w.change.recorded_at[:10], w.change.author, w.what, _name_waiting(w),
             w.screening or "not screened", w.change.reason + (f" ({w.note})" if w.note else ""),
         ]
         for w in waiting

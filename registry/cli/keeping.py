@@ -46,15 +46,20 @@ def start(
     try:
         with start_library(place, shelf, name_author(author), solo=bool(solo)) as book:
             compounds, position = len(book.compounds()), book.position
+            kept_by = "one person" if solo else "a team"
     except FileExistsError:
         if solo is not None:
             _keep(place, solo, author, as_json)
             return
         raise BadInput(f"Something is at {place} already; it was left as it is. Give another --library.") from None
     if as_json:
-        print_json({"library": str(place), "shelf": shelf, "compounds": compounds, "position": position})
-    else:
-        say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
+        print_json(
+            {"library": str(place), "shelf": shelf, "compounds": compounds, "position": position, "kept_by": kept_by}
+        )
+        return
+    say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
+    if solo:
+        say("It is kept by one person, who may review their own.")
 
 
 def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
@@ -149,7 +154,10 @@ def dump(
         return
     say(f"Wrote {package}{name_past(label)}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
-        say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
+        say(
+            f"Drafts that wait over an accepted revision and stayed behind: {waiting}. "
+            "Once they are reviewed (`rangebook queue`), a new dump takes them along."
+        )
 
 
 def _refuse_empty(package: str) -> None:

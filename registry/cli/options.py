@@ -52,10 +52,25 @@ ReasonOption = Annotated[str, typer.Option("--reason", metavar="TEXT", help="Why
 AcceptOption = Annotated[
     bool, typer.Option("--accept", help="Accept it in the same change; in a library that one person keeps.")
 ]
+
+
+def _check_kind(kind: str) -> str:
+    from registry.errors import BadInput, quote
+    from registry.naming import join_names
+    from registry.records import KINDS
+
+    if kind and kind not in KINDS:
+        raise BadInput(f"--kind {quote(kind)} given; {join_names(KINDS)} is allowed.")
+    return kind
+
+
 KindOption = Annotated[
     str,
-    typer.Option("--kind", metavar="KIND", help="The kind of record, where several have the key.", show_default=False),
-]
+    typer.Option(
+        "--kind", metavar="KIND", help="The kind of record, where several have the key.", show_default=False,
+        callback=_check_kind,
+    ),
+]  # fmt: skip
 AuthorOption = Annotated[
     str,
     typer.Option(

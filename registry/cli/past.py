@@ -25,6 +25,8 @@ def history(
 
     Example: rangebook history ethanol-antoine-low
     """
+    from registry.naming import word_kind
+
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
         record = book.newest(key, kind).record
@@ -33,7 +35,7 @@ def history(
         described = [_describe_event(event) for event in events]
         print_json({"kind": record.kind, "key": record.key, "as_of": label or None, "events": described})
         return
-    say(emphasize(f"{record.key}: {record.kind}{name_past(label)}"))
+    say(emphasize(f"{record.key}: {word_kind(record.kind)}{name_past(label)}"))
     for event in events:
         _print_event(event)
 
@@ -93,13 +95,15 @@ def diff(
 
 def _print_records(records: tuple[RecordChange, ...]) -> None:
     from registry.cli.difference_text import field_facts
+    from registry.naming import word_kind
 
     say()
     say(f"{len(records)} {'record differs' if len(records) == 1 else 'records differ'}:")
     for change in records:
-        revisions = f"r{change.before} -> r{change.after}" if change.before else f"r{change.after}"
-        standing = change.standing_after and f", {change.standing_after}"
-        say(f"  {emphasize(change.what)}  {change.kind} {change.key}  {revisions}{standing}")
+        numbers = dict.fromkeys(number for number in (change.before, change.after) if number)
+        revisions = " -> ".join(f"r{number}" for number in numbers)
+        standing = f", {change.standing_after}" if change.standing_after not in ("", change.what) else ""
+        say(f"  {emphasize(change.what)}  {word_kind(change.kind)} {change.key}  {revisions}{standing}")
         print_facts([*field_facts(change.fields), ("note", change.note)], indent=6)
 
 

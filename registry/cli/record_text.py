@@ -10,6 +10,7 @@ from registry.cli.screen import emphasize, name_past, print_facts, print_table, 
 from registry.dossier import Entry
 from registry.exchange.coefficients import join_coefficients
 from registry.forms.catalogue import FORMS
+from registry.naming import word_kind
 from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
 from registry.store.history import Change
 
@@ -22,7 +23,7 @@ def print_record(
     """A record, who recorded it, and what refers to it."""
     record = entry.record
     standing = f", {entry.standing}" if entry.standing else ""
-    say(f"{emphasize(record.key)}: {record.kind}, revision {entry.revision}{standing}{name_past(label)}")
+    say(f"{emphasize(record.key)}: {word_kind(record.kind)}, revision {entry.revision}{standing}{name_past(label)}")
     source = getattr(record, "source", "")
     print_facts(
         [
@@ -46,7 +47,8 @@ def _word_change(change: Change) -> str:
 def _word_review(entry: Entry[Any], changes: dict[int, Change]) -> str:
     if not entry.reviewed_in:
         return ""
-    note = f" ({entry.standing_note})" if entry.standing_note else ""
+    why = entry.standing_note
+    note = f" ({why})" if why and why != changes[entry.reviewed_in].reason else ""
     return f"{entry.standing}{note} in {_word_change(changes[entry.reviewed_in])}"
 
 

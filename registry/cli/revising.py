@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import dataclasses
 from typing import TYPE_CHECKING, Annotated, Any
 
@@ -66,6 +67,7 @@ def revise(
     from registry.cli.difference_text import print_preview
     from registry.cli.documents import describe_preview
     from registry.cli.recorded_text import print_recorded
+    from registry.cli.rescue import keep_typed
     from registry.exchange.sheets import write_sheet
     from registry.records import REVIEWED
 
@@ -74,7 +76,7 @@ def revise(
         remark = f"position {book.position} of {book.place}"
         text = write_sheet(newest.record, newest.revision, [remark])
         if export:
-            _export(text, export, as_json)
+            _export(text, export, key, as_json)
             return
         expect, record = _change(newest, text, sheet, fields or [], expect)
         if record is None:
@@ -82,26 +84,27 @@ def revise(
             if as_json:
                 print_json({"kind": newest.record.kind, "key": key, "change": None})
             return
-        preview = book.preview(record, expect)
-        if not as_json:
-            print_preview(record, preview)
-        if dry_run and as_json:
-            print_json(describe_preview(record, preview))
-        elif dry_run:
-            say("Nothing was recorded (--dry-run).")
-        if dry_run:
-            return
-        reason = reason or _ask_reason()
-        if not reason.strip():
-            raise BadInput("A revision says why: give --reason. Nothing was recorded.")
-        done = book.revise(record, author=name_author(author), reason=reason, expect=expect, accept=accept)
+        with contextlib.nullcontext() if sheet or fields else keep_typed(record, expect, f"revise {key}"):
+            preview = book.preview(record, expect)
+            if not as_json:
+                print_preview(record, preview)
+            if dry_run and as_json:
+                print_json(describe_preview(record, preview))
+            elif dry_run:
+                say("Nothing was recorded (--dry-run).")
+            if dry_run:
+                return
+            reason = reason or _ask_reason()
+            if not reason.strip():
+                raise BadInput("A revision says why: give --reason. Nothing was recorded.")
+            done = book.revise(record, author=name_author(author), reason=reason, expect=expect, accept=accept)
     if not as_json:
         say()
     waits = record.kind in REVIEWED and not accept
     print_recorded("revised and accepted" if accept else "revised", done, as_json, waits=waits)
 
 
-def _export(text: str, place: str, as_json: bool) -> None:
+def _export(text: str, place: str, key: str, as_json: bool) -> None:
     try:
         with open(place, "x", encoding="utf-8") as file:
             file.write(text)
@@ -110,7 +113,7 @@ def _export(text: str, place: str, as_json: bool) -> None:
     if as_json:
         print_json({"written": place})
     else:
-        say(f"Wrote {place}. Change it, then: rangebook revise KEY --file {place}")
+        say(f"Wrote {place}. Change it, then: rangebook revise {key} --file {place}")
 
 
 def _change(newest: Any, text: str, sheet: str, fields: list[str], expect: int | None) -> tuple[int, Record | None]:
@@ -135,7 +138,7 @@ def _change(newest: Any, text: str, sheet: str, fields: list[str], expect: int |
 def _set_fields(record: Record, fields: list[str]) -> Record:
     """A record with some fields anew; a name that is no field is a coefficient."""
     from registry.exchange.coefficients import parse_coefficients
-    from registry.naming import nearest_names
+    from registry.naming import nearest_names, word_kind
 
     names = {field.name.replace("_", "-"): field.name for field in dataclasses.fields(record)}
     coefficients = dict(getattr(record, "coefficients", {}))
@@ -143,7 +146,9 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
     for given in fields:
         name, equals, text = given.partition("=")
         field = names.get(name.replace("_", "-"), "")
-        if not equals or field in ("key", "points"):
+        if field in ("key", "points"):
+            raise BadInput(f"{quote(given)}: {_why_not_set(field)}")
+        if not equals:
             raise BadInput(f"{quote(given)} changes no field; FIELD=TEXT is allowed, such as note=seen or A=8.2.")
         if field == "coefficients":
             try:
@@ -157,10 +162,16 @@ def _set_fields(record: Record, fields: list[str]) -> Record:
         else:
             near = nearest_names(name, [*names, *coefficients])
             hint = f" Nearest: {', '.join(near)}." if near else ""
-            raise BadInput(f"A {record.kind} has no field {quote(name)}.{hint}")
+            raise BadInput(f"A {word_kind(record.kind)} has no field {quote(name)}.{hint}")
     if hasattr(record, "coefficients"):
         changed["coefficients"] = {name: text for name, text in coefficients.items() if text}
     return dataclasses.replace(record, **changed)
+
+
+def _why_not_set(field: str) -> str:
+    if field == "key":
+        return "a key stays. `rangebook record` records something new, `rangebook withdraw` takes out what is wrong."
+    return "points are changed in the sheet of the dataset: --export PATH, then --file PATH."
 
 
 def _may_be(record: Any, name: str) -> bool:
