@@ -208,7 +208,8 @@ class RevisedMeanwhile(RangebookError):
         self.theirs = dict(theirs)
         head = (
             f"The {word_kind(kind)} {key} was read in revision {expected}, but revision {found} is the newest now. "
-            "Nothing was recorded. Look at it and start from it."
+            "Nothing was recorded. Take over what is right in it, and say that revision (in a sheet: revision = "
+            f"{found}; else --expect {found})."
         )
         super().__init__("\n".join([head, *put_side_by_side(self.mine, self.theirs, f"revision {found}")]))
 

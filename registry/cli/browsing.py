@@ -112,7 +112,7 @@ def coverage(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Map temperature to the correlation that answers there, with gaps and seams.
+    """Map temperature to who answers there, with gaps and seams.
 
     Example: rangebook coverage ethanol
     """

@@ -27,9 +27,9 @@ def freeze(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Name the position of the library: an edition that answers the same for ever.
+    """Name the position of the library: an edition.
 
-    Note its root outside the library: `rangebook verify --against ROOT` then shows that the past was not rewritten.
+    It answers the same for ever. Note its root outside the library: `rangebook verify --against ROOT` then shows that the past was not rewritten.
 
     Example: rangebook freeze 2026-Q4 --note "basis of project 1207"
     """
@@ -52,7 +52,7 @@ def editions(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """List the editions, oldest first, each with its root and rules version.
+    """List the editions with their roots, oldest first.
 
     Example: rangebook editions
     """

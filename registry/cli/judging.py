@@ -35,14 +35,16 @@ def review(
     expect: Annotated[
         int | None, typer.Option("--expect", metavar="N", help="The revision that was looked at.", show_default=False)
     ] = None,
+    again: Annotated[bool, typer.Option("--again", help="Accept what was declined or withdrawn.")] = False,
     kind: KindOption = "",
     author: AuthorOption = "",
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Accept or decline what waits for review, or accept again what was declined or withdrawn.
+    """Accept or decline what waits for review.
 
-    Somebody else than the author reviews, but in a library that one person keeps (rangebook start --solo).
+    Somebody else than the author reviews, but in a library that one person keeps (rangebook start --solo). With
+    --again what was declined or withdrawn is accepted after all.
 
     Example: rangebook review ethanol-antoine-low --accept --note "checked against the printed table"
     """
@@ -168,13 +170,19 @@ def queue(
     if not waiting:
         say(f"Nothing waits for review{name_past(label)}.")
         return
+    screened = any(w.screening for w in waiting)
     say(f"{emphasize(str(len(waiting)))} {'waits' if len(waiting) == 1 else 'wait'} for review{name_past(label)}.")
     say()
-    rows_shown = [
+    print_table(
+        ("since", "by", "what", "key", "screening", "why") if screened else ("since", "by", "what", "key", "why"),
         [
-            w.change.recorded_at[:10], w.change.author, w.what, _name_waiting(w),
-            w.screening or "not screened", w.change.reason + (f" ({w.note})" if w.note else ""),
-        ]
-        for w in waiting
-    ]  # fmt: skip
-    print_table(("since", "by", "what", "key", "screening", "why"), rows_shown)
+            [
+                w.change.recorded_at[:10], w.change.author, w.what, _name_waiting(w),
+                *([w.screening or "not screened"] if screened else []),
+                w.change.reason + (f" ({w.note})" if w.note else ""),
+            ]
+            for w in waiting
+        ],
+    )  # fmt: skip
+    say()
+    say("`rangebook history KEY` tells what is proposed; `rangebook review KEY --accept` or `--decline` decides it.")

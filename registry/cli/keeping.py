@@ -36,7 +36,7 @@ def start(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Start a new library: with the published shelf, the invented scenario, or empty.
+    """Start a new library, with a shelf or empty.
 
     Example: rangebook start --shelf none --library team.db
     """
@@ -140,7 +140,7 @@ def dump(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Write the whole library, or what is new, as an open Tabular Data Package.
+    """Write the library, or what is new in it, as a package.
 
     Example: rangebook dump new.zip --since 2026-Q4
     """
@@ -166,7 +166,7 @@ def _refuse_empty(package: str) -> None:
 
 
 def upgrade(author: AuthorOption = "", library: LibraryOption = None, as_json: JsonOption = False) -> None:
-    """Bring a library of an older program up to date, after a backup beside it.
+    """Bring an older library up to date, after a backup.
 
     Example: rangebook upgrade --library team.db
     """

@@ -21,7 +21,7 @@ def history(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Tell everything that happened to a record: who, when, why, and what changed field by field.
+    """Tell who did what to a record, when and why.
 
     Example: rangebook history ethanol-antoine-low
     """
@@ -67,7 +67,7 @@ def diff(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Compare two positions: first what it means in numbers, then record by record.
+    """Compare two positions, first in numbers.
 
     Example: rangebook diff 2026-Q3 2026-Q4
     """

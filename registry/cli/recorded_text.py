@@ -63,4 +63,4 @@ def _name(record: Record, revision: int) -> str:
 
 
 def _review_key(record: Record) -> str:
-    return record.of_key if isinstance(record, Withdrawal) else record.key
+    return f"{record.of_key} --kind withdrawal" if isinstance(record, Withdrawal) else record.key

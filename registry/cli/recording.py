@@ -54,7 +54,8 @@ def build_record_group() -> typer.Typer:
         pretty_exceptions_enable=False,
         add_completion=False,
         help=(
-            "Record something new: from options, from a file, or by answering questions on a terminal.\n\n"
+            "Record something new.\n\n"
+            "From options, from a file, or by answering questions on a terminal.\n\n"
             "Each kind has its own options and takes --json: rangebook record correlation --help.\n\n"
             "Example: rangebook record correlation --template"
         ),

@@ -58,9 +58,9 @@ def revise(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Revise a record: opens it in $EDITOR, shows what changes in it and in the numbers, and appends a revision.
+    """Append a revision of a record.
 
-    Nothing is edited in place. Somebody who revised it meanwhile is not overwritten (exit code 4).
+    Opens it in $EDITOR, and shows what changes in it and in the numbers. Nothing is edited in place. Somebody who revised it meanwhile is not overwritten (exit code 4).
 
     Example: rangebook revise ethanol-antoine-low --set A=8.20417 --reason "misread digit"
     """

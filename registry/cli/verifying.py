@@ -33,7 +33,7 @@ def verify(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:  # fmt: skip
-    """Recompute everything recorded, and name each record that is not what was recorded.
+    """Recompute everything, and name what does not hold.
 
     Somebody who rewrites the whole file consistently makes another library that holds: only a root noted elsewhere
     (--against) finds that.

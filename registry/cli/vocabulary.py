@@ -15,7 +15,7 @@ def forms(
     name: Annotated[str, typer.Argument(metavar="[NAME]", help="A form, or part of a name.")] = "",
     as_json: JsonOption = False,
 ) -> None:
-    """List the equation forms with their equations, or tell one of them whole.
+    """List the equation forms, or tell one of them whole.
 
     Example: rangebook forms riedel
     """
