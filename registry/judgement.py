@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import unicodedata
 from dataclasses import dataclass
 from typing import Any
 
@@ -12,7 +13,7 @@ from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKe
 from registry.holdings import Holdings, draft_of
 from registry.naming import join_names
 from registry.records import REVIEWED, Preference, Record, Review, Withdrawal
-from registry.store.history import Draft
+from registry.store.history import Draft, fold_term
 
 __all__ = [
     "Plan",
@@ -87,11 +88,16 @@ def is_solo(holdings: Holdings) -> bool:
 
 def check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
     """Nobody reviews what they recorded themselves, but where one person keeps the library."""
-    if author.casefold() == reviewer.casefold() and not is_solo(holdings):
+    if _fold_name(author) == _fold_name(reviewer) and not is_solo(holdings):
         raise BadInput(
             f"{what} was recorded by {author}, and somebody else must review it. "
             "A library that one person keeps says so once: `rangebook start --solo`."
         )
+
+
+def _fold_name(name: str) -> str:
+    """A person's name as it is compared: case, runs and kinds of blanks and widths of letters aside."""
+    return fold_term(unicodedata.normalize("NFKC", fold_term(name)))
 
 
 def plan_review(

@@ -347,3 +347,12 @@ def test_a_withdrawal_does_not_take_out_what_was_accepted_after_it(library):
     library.withdraw("brindovane-new", **WHEN)
     library.review("brindovane-new", kind="withdrawal", accept=True, **LOOK)
     assert library.entry("brindovane-new").standing == "withdrawn"
+
+
+@pytest.mark.parametrize("same", ["ANN  SMITH", "Ann\u00a0Smith", "Ann\u2003Smith", "\uff21nn Smith"])
+def test_a_name_written_another_way_is_the_same_person(same, library):
+    """Case, runs and kinds of blanks, and wide letters do not make another reviewer."""
+    library.record(FIRST, author="Ann Smith")
+    with pytest.raises(BadInput, match="somebody else must review it"):
+        library.review(FIRST.key, accept=True, author=same, note="invented")
+    library.review(FIRST.key, accept=True, author="Bob Smith", note="invented")
