@@ -21,7 +21,7 @@ from registry.cli.options import (
 def freeze(
     name: Annotated[str, typer.Argument(help="Letters, digits, '-', '_' and '.'; no number and no date.")],
     note: Annotated[str, typer.Option("--note", metavar="TEXT", help="What it is for.", show_default=False)] = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -48,8 +48,8 @@ def freeze(
 
 
 def editions(
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

@@ -29,7 +29,7 @@ def review(
         int | None, typer.Option("--expect", metavar="N", help="The revision that was looked at.", show_default=False)
     ] = None,
     kind: KindOption = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -62,7 +62,7 @@ def withdraw(
     ] = "other",
     accept: AcceptOption = False,
     kind: KindOption = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -85,7 +85,7 @@ def prefer(
     over: Annotated[str, typer.Option("--over", metavar="KEY", help="The one it goes before, wherever both cover.")],
     reason: ReasonOption = "",
     accept: AcceptOption = False,
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -109,8 +109,8 @@ def _need(reason: str) -> str:
 
 
 def queue(
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

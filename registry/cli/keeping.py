@@ -30,7 +30,7 @@ def start(
             show_default=False,
         ),
     ] = None,
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -57,7 +57,7 @@ def start(
         say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
 
 
-def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
+def _keep(place: str, solo: bool, author: str | None, as_json: bool) -> None:
     """Say of a library that is there who keeps it."""
     from registry.cli.screen import print_json, say
 
@@ -92,7 +92,7 @@ def load(
         list[str] | None,
         typer.Option("--theirs", metavar="KEY", help="Revised on both sides: take theirs (all for the rest)."),
     ] = None,
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -132,8 +132,8 @@ def dump(
         str | None,
         typer.Option("--since", metavar="EDITION|CHANGE|DATE", help="Only what is new since then.", show_default=False),
     ] = None,
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -163,7 +163,7 @@ def _refuse_empty(package: str) -> None:
         raise BadInput("The name of the package is empty. Give a folder or a .zip with datapackage.json.")
 
 
-def upgrade(author: AuthorOption = "", library: LibraryOption = None, as_json: JsonOption = False) -> None:
+def upgrade(author: AuthorOption = None, library: LibraryOption = None, as_json: JsonOption = False) -> None:
     """Bring a library of an older program up to date, after a backup beside it.
 
     Example: rangebook upgrade --library team.db

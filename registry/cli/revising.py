@@ -60,7 +60,7 @@ def revise(
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Show what would change, record nothing.")] = False,
     accept: AcceptOption = False,
     kind: KindOption = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
