@@ -137,10 +137,10 @@ class _Plan:
         if how is Relation.KEPT:
             self.counts["kept"] += 1
             return
-        item = self._part_from_source(item)
         record = item.record
         newest = self._holdings.newest(record.kind, record.key)
         counting = self._holdings.counting(record.kind, record.key)
+        item = self._part_from_source(item, counting)
         if newest is None or counting is None:
             self.counts["added"] += 1
             yield from self._append(item, 1)
@@ -159,8 +159,10 @@ class _Plan:
                     item, dataclasses.replace(counting, record=record, revision=newest.revision + 1)
                 )
 
-    def _part_from_source(self, item: Item) -> Item:
+    def _part_from_source(self, item: Item, counting: Entry[Any] | None) -> Item:
         """A row that is withdrawn only because its source is: the withdrawal of the source comes by itself."""
+        if self._accept and counting is not None and counting.standing == "accepted" and counting.record != item.record:
+            return item  # as a draft it would let the revision before it go on answering
         source = getattr(item.record, "source", "")
         said = self._provenance.withdrawn.get(source) if self._provenance is not None else None
         if said is not None and (item.standing, item.standing_note) == ("withdrawn", word_source(source, said[1])):
