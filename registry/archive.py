@@ -282,12 +282,12 @@ class Archive(Reader):
         rows = dump_items(Path(path), items, provenance)
         return {**rows, "waiting": waiting} if waiting else rows
 
-    def verify(self, against: str = "", progress: Callable[[int, int], None] | None = None) -> Verification:
+    def verify(self, against: str | None = None, progress: Callable[[int, int], None] | None = None) -> Verification:
         """Recompute everything that is recorded, and hold it against what is stored.
 
         Parameters
         ----------
-        against : str
+        against : str, optional
             A root noted earlier, ``size:root``, whose history this library
             must extend. Only that finds a history that was rewritten whole.
         progress : callable, optional

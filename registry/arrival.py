@@ -138,10 +138,10 @@ class _Plan:
         if how is Relation.KEPT:
             self.counts["kept"] += 1
             return
-        item = self._part_from_source(item)
         record = item.record
         newest = self._holdings.newest(record.kind, record.key)
         counting = self._holdings.counting(record.kind, record.key)
+        item = self._part_from_source(item)
         if newest is None or counting is None:
             self.counts["added"] += 1
             yield from self._append(item, 1)
@@ -160,8 +160,15 @@ class _Plan:
                     item, dataclasses.replace(counting, record=record, revision=newest.revision + 1)
                 )
 
+    def _ends_another(self, record: Record) -> bool:
+        """True if the load is accepted, and another revision is in force here so far."""
+        counting = self._holdings.counting(record.kind, record.key)
+        return self._accept and counting is not None and counting.standing == "accepted" and counting.record != record
+
     def _part_from_source(self, item: Item) -> Item:
         """A row that is withdrawn only because its source is: the withdrawal of the source comes by itself."""
+        if self._ends_another(item.record):
+            return item  # as a draft it would let the revision before it go on answering
         source = getattr(item.record, "source", "")
         said = self._provenance.withdrawn.get(source) if self._provenance is not None else None
         if said is not None and (item.standing, item.standing_note) == ("withdrawn", word_source(source, said[1])):
@@ -199,7 +206,8 @@ class _Plan:
     def _review(self, item: Item, entry: Entry[Any]) -> Iterator[Draft]:
         """The standing of a revision that is here already, or of one that follows it here."""
         drafts: list[Draft] = []
-        entry = self._holdings.follow_source(entry)
+        if not self._ends_another(item.record):
+            entry = self._holdings.follow_source(entry)
         if item.record.kind in REVIEWED:
             if self._accept and entry.record == item.record:
                 drafts = list(self._settle(item, entry.revision, (entry.standing, entry.standing_note)))

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import dataclasses
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from typing import Any
@@ -146,7 +147,8 @@ def list_events(view: View, kind: str, key: str) -> list[Event]:
         of its sources, and preferences that name it.
     """
     revisions = view.revisions(kind, key)
-    events = [*_list_revisions(view, revisions), *_list_words(view, kind, key), *_list_proposals(view, kind, key)]
+    # what was proposed and decided in one change is told in that order
+    events = [*_list_revisions(view, revisions), *_list_proposals(view, kind, key), *_list_words(view, kind, key)]
     if kind in REVIEWED:
         for source in {row.content["source"] for row in revisions if "source" in row.content}:
             events += _list_source_words(view, source)
@@ -199,8 +201,10 @@ def _list_preferences(view: View, key: str) -> Iterator[Event]:
     for state in view.linked("correlation", [key], Preference.kind):
         row = state.newest
         pair = f"{row.content['correlation']} over {row.content['over']}"
-        first = view.revisions(Preference.kind, row.key)[0]
-        yield Event(view.change(first.change), "preference recorded", 0, f"{pair}: {first.content['reason']}")
+        for one in view.revisions(Preference.kind, row.key):
+            yield Event(view.change(one.change), "preference recorded", 0, f"{pair}: {one.content['reason']}")
+        for event in _list_proposals(view, Preference.kind, row.key):
+            yield dataclasses.replace(event, what=f"preference {event.what}", revision=0, note=f"{pair}: {event.note}")
         for decision in view.decisions(Preference.kind, row.key):
             said = ": ".join(filter(None, (pair, word_cause(decision))))
             yield Event(view.change(decision.change), f"preference {decision.standing}", 0, said)

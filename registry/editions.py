@@ -4,6 +4,8 @@ from __future__ import annotations
 
 import re
 from datetime import UTC, date, datetime, timedelta
+from operator import index
+from typing import Any
 
 from registry import rules
 from registry.entries import enter_newest
@@ -31,7 +33,8 @@ def format_time(moment: datetime) -> str:
     >>> format_time(datetime(2026, 12, 1, tzinfo=UTC))
     '2026-12-01T00:00:00.000000Z'
     """
-    return moment.strftime("%Y-%m-%dT%H:%M:%S.%fZ")
+    # not strftime, which on some systems writes years before 1000 without their zeros
+    return moment.replace(tzinfo=None).isoformat(timespec="microseconds") + "Z"
 
 
 def root_at(view: View, size: int) -> str:
@@ -109,24 +112,34 @@ def find_position(view: View, place: Position) -> int:
     BadInput
         If there is no such change, or nothing was recorded by then.
     """
-    if isinstance(place, bool):
-        raise BadInput(f"{quote(place)} is no position; an edition, a change or a date is allowed.")
-    if isinstance(place, int):
-        return _check_number(view, place)
+    if not isinstance(place, str | date):
+        return _check_number(view, _as_number(place))
     text = _as_text(place)
     if re.fullmatch(r"\d{1,15}", text, re.ASCII):
         return _check_number(view, int(text))
     if _DAY.fullmatch(text):
-        return _find_before(view, text, _read_day(text) + timedelta(days=1))
+        return _find_before(view, text, _read_day(text), timedelta(days=1))
     if _MOMENT.fullmatch(text):
-        return _find_before(view, text, _read_moment(text) + timedelta(microseconds=1))
+        return _find_before(view, text, _read_moment(text), timedelta(microseconds=1))
     return int(find_edition(view, text).position)
+
+
+def _as_number(place: Any) -> int:
+    try:
+        if not isinstance(place, bool):
+            return index(place)
+    except TypeError:
+        pass
+    raise BadInput(f"{quote(place)} is no position; an edition, a change or a date is allowed.")
 
 
 def _as_text(place: str | date) -> str:
     """A place as text; a moment without a time zone is taken as UTC."""
     if isinstance(place, datetime):
-        return format_time(place.astimezone(UTC) if place.tzinfo else place)
+        try:
+            return format_time(place.astimezone(UTC) if place.tzinfo else place)
+        except OverflowError:
+            raise BadInput(f"{quote(place.isoformat())} is no time: in UTC it is beyond the year 9999.") from None
     return place if isinstance(place, str) else place.isoformat()
 
 
@@ -150,7 +163,12 @@ def _read_moment(text: str) -> datetime:
         raise BadInput(f"{quote(text)} is no time; a UTC time such as 2026-12-01T12:00Z is allowed.") from None
 
 
-def _find_before(view: View, text: str, bound: datetime) -> int:
+def _find_before(view: View, text: str, start: datetime, length: timedelta) -> int:
+    """The last change before the end of a day or moment."""
+    try:
+        bound = start + length
+    except OverflowError:  # the last day there is
+        bound = datetime.max
     found = view.find_position(format_time(bound))
     if not found:
         first = view.change(1).recorded_at[:19] if view.position else "never"

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import unicodedata
 from typing import Any
 
 from registry.admission import check_kinship, find_cycle
@@ -13,7 +14,7 @@ from registry.holdings import Holdings, check_expected
 from registry.naming import join_names, nearest_names, word_kind
 from registry.plan import Plan, draft_of
 from registry.records import RECORDED, REVIEWED, Keeping, Preference, Record, Review, Withdrawal
-from registry.store.history import Draft
+from registry.store.history import Draft, fold_term
 
 __all__ = [
     "accept_at_once",
@@ -79,17 +80,23 @@ def _is_solo(holdings: Holdings) -> bool:
 
 def _check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
     """Nobody reviews what they recorded themselves, but where one person keeps the library."""
-    if author.casefold() == reviewer.casefold() and not _is_solo(holdings):
+    if _fold_name(author) == _fold_name(reviewer) and not _is_solo(holdings):
         raise BadInput(
             f"{what} was recorded by {author}, and somebody else must review it. "
             "A library that one person keeps says so once: `rangebook start --solo`."
         )
 
 
+def _fold_name(name: str) -> str:
+    """A person's name as it is compared: case, runs and kinds of blanks and widths of letters aside."""
+    return fold_term(unicodedata.normalize("NFKC", fold_term(name)))
+
+
 def plan_review(
-    holdings: Holdings, key: str, standing: str, note: str, reviewer: str, *, kind: str = "", expect: int | None = None
-) -> Plan:
-    """The review of what waits under a key, or the reinstatement of what was declined or withdrawn.
+    holdings: Holdings, key: str, standing: str, note: str, reviewer: str, *, kind: str = "",
+    expect: int | None = None, again: bool = False,
+) -> Plan:  # fmt: skip
+    """The review of what waits under a key; `again` for what was declined or withdrawn.
 
     Raises
     ------
@@ -101,7 +108,7 @@ def plan_review(
     RevisedMeanwhile
         If the revision that waits is not the one expected.
     """
-    entry = _find_reviewable(holdings, key, standing, kind)
+    entry = _find_reviewable(holdings, key, standing, kind, again)
     record = entry.record
     if expect is not None and entry.revision != expect:
         before = next((r for r in holdings.view.revisions(record.kind, record.key) if r.revision == expect), None)
@@ -126,14 +133,14 @@ def _check_aim(holdings: Holdings, withdrawal: Withdrawal) -> None:
         )
 
 
-def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> Entry[Any]:
-    """What waits under a key; to be accepted again, what was declined or withdrawn."""
+def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str, again: bool) -> Entry[Any]:
+    """What waits under a key; what was declined or withdrawn, to be accepted again."""
     found = [entry for entry in _entries_under(holdings, key) if kind in ("", entry.record.kind)]
     if not found:
         raise _miss(holdings, key, kind, "reviewed", "counts as soon as it is recorded")
     waiting = [entry for entry in found if entry.standing == "draft"]
     ended = [entry for entry in found if entry.standing in ("declined", "withdrawn")]
-    if not waiting and standing == "accepted":
+    if again and standing == "accepted":
         # a withdrawal that was accepted is not reviewed again: what it withdrew is
         waiting = [entry for entry in ended if entry.record.kind != "withdrawal" or len(ended) == 1]
     if len(waiting) == 1:
@@ -144,7 +151,11 @@ def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> 
     shown = join_names(
         (f"revision {e.revision} of the {word_kind(e.record.kind)} {e.key} is {e.standing}" for e in found), "and"
     )
-    hint = " `rangebook withdraw` takes out what is in force." if standing == "declined" else ""
+    hint = ""
+    if standing == "declined":
+        hint = " `rangebook withdraw` takes out what is in force."
+    elif ended:
+        hint = " To accept after all what was declined or withdrawn, add --again."
     raise BadInput(f"Nothing under {quote(key)} waits for review: {shown}.{hint}")
 
 

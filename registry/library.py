@@ -108,8 +108,9 @@ class Library(Archive):
         )
 
     def review(
-        self, key: str, *, accept: bool, author: str, note: str, kind: str = "", expect: int | None = None
-    ) -> Recorded:
+        self, key: str, *, accept: bool, author: str, note: str, kind: str = "", expect: int | None = None,
+        again: bool = False,
+    ) -> Recorded:  # fmt: skip
         """Accept or decline what waits for review, or accept again what was declined or withdrawn.
 
         Parameters
@@ -128,6 +129,8 @@ class Library(Archive):
             Needed where several records have the key.
         expect : int, optional
             The revision that was looked at.
+        again : bool
+            Accept what was declined or withdrawn.
 
         Returns
         -------
@@ -146,7 +149,9 @@ class Library(Archive):
         standing = "accepted" if accept else "declined"
 
         def plan(held: Holdings) -> Plan:
-            return plan_review(held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect)
+            return plan_review(
+                held, key, standing, note.strip(), author.strip(), kind=kind, expect=expect, again=again
+            )  # fmt: skip
 
         return self._append(author, note, plan)
 

@@ -30,14 +30,14 @@ STEPS = 200
 """How often progress is told."""
 
 
-def verify(file: LibraryFile, against: str = "", progress: Progress | None = None) -> Verification:
+def verify(file: LibraryFile, against: str | None = None, progress: Progress | None = None) -> Verification:
     """Verify a library in one read transaction.
 
     Parameters
     ----------
     file : LibraryFile
         The library.
-    against : str
+    against : str, optional
         A root noted earlier, ``size:root``, whose history this library must
         extend.
     progress : callable, optional
@@ -57,7 +57,7 @@ def verify(file: LibraryFile, against: str = "", progress: Progress | None = Non
     NotALibrary
         If SQLite cannot read the file at all.
     """
-    noted = read_root(against) if against else None
+    noted = read_root(against) if against is not None else None
     with _collecting_nothing():
         try:
             with open_audit(file.path) as audit:

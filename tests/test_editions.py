@@ -5,6 +5,7 @@ from __future__ import annotations
 import dataclasses
 from datetime import UTC, date, datetime, timedelta, timezone
 
+import numpy as np
 import pytest
 
 from registry import rules
@@ -104,6 +105,26 @@ def test_a_date_means_the_last_change_at_or_before_its_end(library):
     for bad in (0, 5, -1, "0", "99", "2030-02-30", "2030-01-01T25:00Z", True):
         with pytest.raises(BadInput):
             library.at(bad)
+
+
+def test_dates_at_the_ends_of_the_calendar(library):
+    """The last day there is means the newest change; years before 1000 are before any change."""
+    for late in ("9999-12-31", "9999-12-31T23:59:59.999999Z", date.max, datetime.max):
+        assert library.find_position(late) == library.position
+    west = timezone(timedelta(hours=-5))
+    for early in ("0001-01-01", "0300-01-01", "0999-12-31", "0999-12-31T12:00Z", date.min, datetime.min):
+        with pytest.raises(BadInput, match="Nothing was recorded by"):
+            library.find_position(early)
+    with pytest.raises(BadInput, match="is no time"):
+        library.find_position(datetime.max.replace(tzinfo=west))
+
+
+@pytest.mark.parametrize("place", [None, 1.5, b"1", [1], True])
+def test_what_is_no_position_is_told(place, library):
+    """Only an edition, a change or a date is a position; a whole number of NumPy is a change."""
+    with pytest.raises(BadInput, match="is no position; an edition, a change or a date is allowed"):
+        library.at(place)
+    assert library.find_position(np.int64(1)) == 1
 
 
 def test_a_view_only_reads_and_ends_with_its_library(library):

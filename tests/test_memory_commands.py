@@ -304,3 +304,18 @@ def test_a_preference_is_recorded_and_reviewed(run):
     key = "brindovane-kirchhoff-over-brindovane-new"
     assert run("review", key, "--accept", "--note", "x", "--as", "bob")[0] == 0
     assert "A steward's preference sets brindovane-new aside" in run("lookup", "brindovane", "380K")[1]
+
+
+@pytest.mark.parametrize(
+    "words",
+    [
+        ("verify", "--against", ""), ("list", "--as-of", ""), ("lookup", "brindovane", "350K", "--edition", ""),
+        ("queue", "--as-of", "", "--edition", "start"), ("diff", "1", ""), ("freeze", "q", "--note", "n", "--as", ""),
+    ],
+    ids=" ".join,
+)  # fmt: skip
+def test_an_option_left_empty_is_not_one_left_out(words, run):
+    """A variable that was not set does not turn a question about the past into one about today."""
+    code, out, err = run(*words)
+    assert (code, out) == (2, "")
+    assert err

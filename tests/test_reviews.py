@@ -353,3 +353,29 @@ def test_who_starts_a_library_is_signed_like_anybody_else(tmp_path):
     """Blanks around the name are no part of it, as in every later change."""
     with start_library(tmp_path / "own.db", "none", " ann ") as library:
         assert library.change(1).author == "ann"
+
+
+@pytest.mark.parametrize("same", ["ANN  SMITH", "Ann\u00a0Smith", "Ann\u2003Smith", "\uff21nn Smith"])
+def test_a_name_written_another_way_is_the_same_person(same, library):
+    """Case, runs and kinds of blanks, and wide letters do not make another reviewer."""
+    library.record(FIRST, author="Ann Smith")
+    with pytest.raises(BadInput, match="somebody else must review it"):
+        library.review(FIRST.key, accept=True, author=same, note="invented")
+    library.review(FIRST.key, accept=True, author="Bob Smith", note="invented")
+
+
+def test_a_history_tells_every_proposal_of_a_preference(library):
+    """Also its withdrawal that waits, and that it was proposed again."""
+    one, other = "brindovane-kirchhoff", "brindovane-antoine-low"
+    name = library.prefer(one, other, author="ann", reason="first").record.key
+    library.review(name, accept=True, author="bob", note="looked")
+    library.withdraw(name, author="ann", reason="no more")
+    library.review(name, kind="withdrawal", accept=True, author="bob", note="looked again")
+    library.prefer(one, other, author="cid", reason="second")
+    told = [(e.change.author, e.what, e.note) for e in library.history(one) if "preference" in e.what]
+    pair = f"{one} over {other}"
+    assert told[0] == ("ann", "preference recorded", f"{pair}: first")
+    assert told[1][1] == "preference accepted"
+    assert told[2] == ("ann", "preference withdrawal proposed", f"{pair}: other: no more")
+    assert told[3][1] == "preference withdrawn"
+    assert told[4] == ("cid", "preference recorded", f"{pair}: second")

@@ -387,6 +387,28 @@ def test_a_withdrawn_source_travels_as_one(accept, sites, tmp_path):
     assert a.load(tmp_path / "whole", author="ann")["change"] == 0
 
 
+@pytest.mark.parametrize("source_before", [False, True])
+@pytest.mark.parametrize("as_draft_before", [False, True])
+def test_a_revision_on_a_withdrawn_source_ends_the_one_before(as_draft_before, source_before, sites, tmp_path):
+    """Where A answers no more, B does not go on with the revision that A has replaced."""
+    a, b = sites
+    source = dataclasses.replace(a.newest(a.entry(KEY).record.source).record, key="invented-reprint")
+    a.record(source, author="ann")
+    a.revise(dataclasses.replace(a.entry(KEY).record, source=source.key), author="ann", reason="from the reprint")
+    a.review(KEY, accept=True, author="ada", note="compared with the page")
+    a.withdraw(source.key, author="ann", reason="an invented retraction", cause="retraction")
+    a.review(source.key, kind="withdrawal", accept=True, author="ada", note="it is retracted")
+    a.dump(tmp_path / "package", since="start")
+    if as_draft_before:
+        b.load(tmp_path / "package", author="bob")
+        assert b.entry(KEY).waiting == 2
+    if as_draft_before and source_before:
+        b.review(source.key, kind="withdrawal", accept=True, author="bea", note="it is retracted")
+    b.load(tmp_path / "package", author="bob", accept=True, reason="the retraction")
+    assert (b.entry(KEY).revision, b.entry(KEY).standing) == (2, "withdrawn")
+    assert _answers(b) == _answers(a)
+
+
 def test_accept_reviews_the_whole_load(sites, tmp_path):
     """With --accept the standings of the package count at once; it needs a note."""
     a, b = sites

@@ -44,7 +44,7 @@ def libraries(tmp_path_factory) -> list[Path]:
     return [folder / "told.db", folder / "started.db"]
 
 
-def _verify(path: Path, against: str = "") -> Verification:
+def _verify(path: Path, against: str | None = None) -> Verification:
     return verify(LibraryFile(path), against)
 
 
@@ -333,7 +333,7 @@ def test_a_longer_history_extends_a_noted_root_and_a_shorter_one_does_not(librar
         assert finding.what.endswith("it has 12 changes")
 
 
-@pytest.mark.parametrize("against", ["12", "12:abc", "x:" + "0" * 64, "-1:" + "0" * 64, "1:" + "g" * 64, " "])
+@pytest.mark.parametrize("against", ["12", "12:abc", "x:" + "0" * 64, "-1:" + "0" * 64, "1:" + "g" * 64, " ", ""])
 def test_what_is_no_root_is_refused(against, libraries):
     """A malformed root is bad input, not a finding."""
     with open_library(libraries[0]) as library, pytest.raises(BadInput, match="no root of a history"):

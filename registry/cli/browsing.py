@@ -24,8 +24,8 @@ from registry.cli.screen import emphasize, name_past, print_json, print_table, s
 
 def list_records(
     search: Annotated[str, typer.Argument(metavar="[TEXT]", help="Only compounds with this in a name.")] = "",
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -73,8 +73,8 @@ def list_records(
 
 def show(
     key: Annotated[str, typer.Argument(help="Key of a compound, source, correlation, dataset or fixed point.")],
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -107,8 +107,8 @@ def coverage(
     phase: PhaseOption = "",
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

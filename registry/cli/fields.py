@@ -33,7 +33,7 @@ __all__ = [
 Run = Callable[[type[Record], dict[str, Any], dict[str, Any]], None]
 
 SHARED: dict[str, tuple[Any, Any]] = {
-    "author": (AuthorOption, ""),
+    "author": (AuthorOption, None),
     "library": (LibraryOption, None),
     "as_json": (JsonOption, False),
 }

@@ -23,13 +23,14 @@ from registry.errors import BadInput
 def freeze(
     name: Annotated[str, typer.Argument(help="Letters, digits, '-', '_' and '.'; no number and no date.")],
     note: Annotated[str, typer.Option("--note", metavar="TEXT", help="What it is for.", show_default=False)] = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Name the position of the library: an edition.
 
-    It answers the same for ever. Note its root outside the library: `rangebook verify --against ROOT` then shows that the past was not rewritten.
+    It answers the same for ever. Note its root outside the library: `rangebook verify --against ROOT` then shows that
+    the past was not rewritten.
 
     Example: rangebook freeze 2026-Q4 --note "basis of project 1207"
     """
@@ -47,8 +48,8 @@ def freeze(
 
 
 def editions(
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

@@ -37,7 +37,7 @@ def review(
     ] = None,
     again: Annotated[bool, typer.Option("--again", help="Accept what was declined or withdrawn.")] = False,
     kind: KindOption = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -55,7 +55,9 @@ def review(
     if not note.strip():
         raise BadInput("A review says what was looked at: give --note.")
     with open_chosen(library) as book:
-        done = book.review(key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect)
+        done = book.review(
+            key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect, again=again
+        )
         resting = book.resting(done.record) if accept else []
         told = _word_verdict(book, done, accept)
     print_recorded("accepted" if accept else "declined", done, as_json, told=told, resting=resting)
@@ -87,7 +89,7 @@ def withdraw(
     ] = "other",
     accept: AcceptOption = False,
     kind: KindOption = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -110,7 +112,7 @@ def prefer(
     over: Annotated[str, typer.Option("--over", metavar="KEY", help="The one it goes before, wherever both cover.")],
     reason: ReasonOption = "",
     accept: AcceptOption = False,
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -142,8 +144,8 @@ def _name_waiting(waiting: Waiting) -> str:
 
 
 def queue(
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

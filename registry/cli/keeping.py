@@ -32,7 +32,7 @@ def start(
             show_default=False,
         ),
     ] = None,
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -62,7 +62,7 @@ def start(
         say("It is kept by one person, who may review their own.")
 
 
-def _keep(place: str, solo: bool, author: str, as_json: bool) -> None:
+def _keep(place: str, solo: bool, author: str | None, as_json: bool) -> None:
     """Say of a library that is there who keeps it."""
     with open_chosen(place) as book:
         done = book.keep(solo=solo, author=name_author(author))
@@ -97,7 +97,7 @@ def load(
         list[str] | None,
         typer.Option("--theirs", metavar="KEY", help="Revised on both sides: take theirs (all for the rest)."),
     ] = None,
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -135,8 +135,8 @@ def dump(
         str | None,
         typer.Option("--since", metavar="EDITION|CHANGE|DATE", help="Only what is new since then.", show_default=False),
     ] = None,
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -165,7 +165,7 @@ def _refuse_empty(package: str) -> None:
         raise BadInput("The name of the package is empty. Give a folder or a .zip with datapackage.json.")
 
 
-def upgrade(author: AuthorOption = "", library: LibraryOption = None, as_json: JsonOption = False) -> None:
+def upgrade(author: AuthorOption = None, library: LibraryOption = None, as_json: JsonOption = False) -> None:
     """Bring an older library up to date, after a backup.
 
     Example: rangebook upgrade --library team.db

@@ -37,10 +37,11 @@ DraftsOption = Annotated[
     bool, typer.Option("--drafts", help="Let drafts of correlations answer; every such value is marked.")
 ]
 EditionOption = Annotated[
-    str, typer.Option("--edition", metavar="NAME", help="As the library was in this edition.", show_default=False)
+    str | None,
+    typer.Option("--edition", metavar="NAME", help="As the library was in this edition.", show_default=False),
 ]
 AsOfOption = Annotated[
-    str,
+    str | None,
     typer.Option(
         "--as-of",
         metavar="DATE|CHANGE",
@@ -72,7 +73,7 @@ KindOption = Annotated[
     ),
 ]  # fmt: skip
 AuthorOption = Annotated[
-    str,
+    str | None,
     typer.Option(
         "--as", metavar="NAME", help="Who is acting; else RANGEBOOK_AUTHOR, else your login.", show_default=False
     ),
@@ -86,23 +87,25 @@ def open_chosen(place: str | None) -> Library:
     return open_library(place)
 
 
-def look_at(book: Library, edition: str, as_of: str) -> tuple[Archive, str]:
+def look_at(book: Library, edition: str | None, as_of: str | None) -> tuple[Archive, str]:
     """The library as the options want it, and how its position is called; no text for the newest."""
-    if edition and as_of:
+    # an empty text is a variable that was not set, not a wish for the newest
+    if edition is not None and as_of is not None:
         raise BadInput("Both --edition and --as-of were given. Give one of them.")
-    if edition:
+    if edition is not None:
         found = book.edition(edition)
         return book.at(int(found.position)), f"edition {found.name}, change {found.position}"
-    if as_of:
+    if as_of is not None:
         position = book.find_position(as_of)
         return book.at(position), f"change {position}" if as_of == str(position) else f"{as_of}, change {position}"
     return book, ""
 
 
-def name_author(given: str) -> str:
+def name_author(given: str | None) -> str:
     """Who is acting."""
-    name = given or os.environ.get("RANGEBOOK_AUTHOR", "")
-    if name:
+    if given is not None:
+        return given
+    if name := os.environ.get("RANGEBOOK_AUTHOR", ""):
         return name
     import getpass
 

@@ -16,8 +16,8 @@ if TYPE_CHECKING:
 def history(
     key: Annotated[str, typer.Argument(help="Key of a record.")],
     kind: KindOption = "",
-    edition: EditionOption = "",
-    as_of: AsOfOption = "",
+    edition: EditionOption = None,
+    as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -63,7 +63,9 @@ def _describe_event(event: Event) -> dict[str, Any]:
 
 def diff(
     before: Annotated[str, typer.Argument(metavar="A", help="An edition, a change or a date.")],
-    after: Annotated[str, typer.Argument(metavar="[B]", help="Another one; the newest if none is given.")] = "",
+    after: Annotated[
+        str | None, typer.Argument(metavar="[B]", help="Another one; the newest if none is given.")
+    ] = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
@@ -75,7 +77,7 @@ def diff(
     from registry.cli.documents import describe_number
 
     with open_chosen(library) as book:
-        found = book.diff(before, after or None)
+        found = book.diff(before, after)
     if as_json:
         print_json(
             {

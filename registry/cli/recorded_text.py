@@ -8,7 +8,7 @@ from typing import Any
 from registry.cli.screen import print_json, print_table, say
 from registry.dossier import Entry
 from registry.naming import word_kind
-from registry.records import REVIEWED, Preference, Record, Withdrawal
+from registry.records import REVIEWED, Preference, Record, Source, Withdrawal
 from registry.signature import Recorded
 
 __all__ = ["print_recorded"]
@@ -46,7 +46,8 @@ def print_recorded(
         return
     say(f"Change {done.change.number}: {_name(done.record, done.revision)} {told or what}.")
     if resting:
-        taken = "go with it once it is reviewed" if waits else "went with it"
+        went = "came back" if isinstance(done.record, Source) else "went"
+        taken = "go with it once it is reviewed" if waits else f"{went} with it"
         say(f"{len(resting)} {'record rests' if len(resting) == 1 else 'records rest'} on it and {taken}:")
         print_table(("kind", "key", "standing"), [(word_kind(e.record.kind), e.key, e.standing) for e in resting])
     if waits and done.record.kind in REVIEWED:

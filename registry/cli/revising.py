@@ -54,13 +54,14 @@ def revise(
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Show what would change, record nothing.")] = False,
     accept: AcceptOption = False,
     kind: KindOption = "",
-    author: AuthorOption = "",
+    author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Append a revision of a record.
 
-    Opens it in $EDITOR, and shows what changes in it and in the numbers. Nothing is edited in place. Somebody who revised it meanwhile is not overwritten (exit code 4).
+    Opens it in $EDITOR, and shows what changes in it and in the numbers. Nothing is edited in place, and somebody who
+    revised it meanwhile is not overwritten (exit code 4).
 
     Example: rangebook revise ethanol-antoine-low --set A=8.20417 --reason "misread digit"
     """

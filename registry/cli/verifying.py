@@ -24,12 +24,12 @@ SHOWN = 50
 
 def verify(
     against: Annotated[
-        str,
+        str | None,
         typer.Option(
             "--against", metavar="SIZE:ROOT", help="A root noted earlier, which this library must extend.",
             show_default=False,
         ),
-    ] = "",
+    ] = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:  # fmt: skip
@@ -64,14 +64,14 @@ def _show_progress() -> Callable[[int, int], None] | None:
     return show
 
 
-def _describe(found: Verification, against: str) -> dict[str, Any]:
+def _describe(found: Verification, against: str | None) -> dict[str, Any]:
     import dataclasses
 
     described = dataclasses.asdict(found)
     return {**described, **({"against": against} if against else {})}
 
 
-def _print(found: Verification, against: str) -> None:
+def _print(found: Verification, against: str | None) -> None:
     count = len(found.findings)
     head = "holds" if found.holds else f"does not hold: {count} {'finding' if count == 1 else 'findings'}"
     say(emphasize(head))
@@ -80,7 +80,7 @@ def _print(found: Verification, against: str) -> None:
         ("changes", str(found.changes)),
         ("records", str(found.records)),
         ("editions", str(found.editions)),
-        ("extends", against if found.holds else ""),
+        ("extends", against if against and found.holds else ""),
     ])  # fmt: skip
     for finding in found.findings[:SHOWN]:
         say(f"  {wrap(str(finding), 4)}")
