@@ -12,6 +12,7 @@ import numpy as np
 
 from registry.curve import Curve
 from registry.errors import Problem
+from registry.naming import word_kind
 from registry.numerals import parse_number
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
@@ -30,7 +31,9 @@ def check_references(record: Record, find: Find, where: str = "") -> Iterator[Pr
     """Everything a record refers to is there."""
     for role, kind, key in record.references():
         if find(kind, key) is None:
-            yield Problem(role, key, f"there is no {kind} with this key{where}.")
+            # where others arrive with it, the missing one belongs into the same package
+            ahead = "" if where else f" `rangebook record {kind}` records one first."
+            yield Problem(role, key, f"there is no {word_kind(kind)} with this key{where}.{ahead}")
 
 
 def check_identity(record: Record, before: Record | None) -> Iterator[Problem]:

@@ -9,7 +9,6 @@ from typing import TYPE_CHECKING, Any
 
 from registry.dossier import Entry
 from registry.entries import rest_on, restore
-from registry.errors import RevisedMeanwhile
 from registry.reader import Reader
 from registry.records import Edition, Record, Source, Withdrawal
 from registry.store.history import Change
@@ -145,7 +144,7 @@ class Archive(Reader):
         if isinstance(record, Withdrawal) and record.of_kind == Source.kind:
             source = record.of_key
         with self._lock, self._reading() as view:
-            return rest_on(view, source) if source else []
+            return rest_on(view, [source]) if source else []
 
     def history(self, key: str, kind: str = "") -> list[Event]:
         """Everything that happened to a record, in order.
@@ -241,11 +240,10 @@ class Archive(Reader):
             If the newest revision is not the expected one.
         """
         from registry.difference import find_preview
+        from registry.holdings import check_expected
 
         newest = self.newest(record.key, record.kind)
-        if expect is not None and newest.revision != expect:
-            sides = record.content(), newest.record.content()
-            raise RevisedMeanwhile(record.kind, record.key, expect, newest.revision, *sides)
+        check_expected(newest, expect, record.content())
         return find_preview(newest, record, self.dossier)
 
     def dump(self, path: str | os.PathLike[str], since: Position | None = None) -> dict[str, int]:

@@ -17,8 +17,9 @@ from registry.errors import CellProblem, Conflict, InvalidPackage, quote
 from registry.exchange.loading import Item, read_items
 from registry.exchange.package import DESCRIPTOR
 from registry.exchange.provenance import PROPERTY, Provenance, read_provenance
-from registry.holdings import Holdings, draft_of
+from registry.holdings import Holdings
 from registry.judgement import judge, propose_withdrawal, withdraw_at_once
+from registry.plan import draft_of
 from registry.reconciliation import Relation, compare, describe_clash, settle
 from registry.records import REVIEWED, Origin, Preference, Record, Source
 from registry.store.history import Draft
@@ -199,8 +200,8 @@ class _Plan:
         if self._accept:
             yield from self._settle(item, revision, ("draft", ""))
         elif item.standing in ("declined", "withdrawn"):
-            said = f"{item.standing} in the package: {item.standing_note}"[: LONG.limit].rstrip()
-            yield judge(item.record, revision, "draft", said)
+            said = f"{item.standing} in the package: {item.standing_note}"
+            yield judge(item.record, revision, "draft", LONG.fit(said))
 
     def _review(self, item: Item, entry: Entry[Any]) -> Iterator[Draft]:
         """The standing of a revision that is here already, or of one that follows it here."""
@@ -224,7 +225,7 @@ class _Plan:
         """The withdrawal of what is in force here, unless that very withdrawal was proposed before."""
         if entry.standing != "accepted":
             return
-        reason = f"{before}{item.standing_note}"[: LONG.limit].rstrip()
+        reason = LONG.fit(f"{before}{item.standing_note}")
         proposal = propose_withdrawal(entry.record, entry.revision, "other", reason)
         if not self._is_known(proposal):
             self.counts["proposed"] += 1
@@ -279,21 +280,16 @@ class _Plan:
 
 def _check_preferences(items: list[Item], holdings: Holdings, package: Path) -> None:
     """Refuse preferences that would go round in a circle, with those recorded and those that wait."""
-    loaded = [item for item in items if isinstance(item.record, Preference)]
+    loaded = [(item.record, item.standing) for item in items if isinstance(item.record, Preference)]
     if not loaded:
         return
-    mine = {_pair(item) for item in loaded if item.standing in ("accepted", "draft")}
+    mine = {record.pair for record, standing in loaded if standing in ("accepted", "draft")}
     # what a load accepts or withdraws ends the revisions before it; a draft does not
-    ended = [item.record.key for item in loaded if item.standing in ("accepted", "withdrawn")]
+    ended = [record.key for record, standing in loaded if standing in ("accepted", "withdrawn")]
     pairs = mine | holdings.preferences({key for pair in mine for key in pair}, ended)
     if cycle := find_cycle(sorted(pairs)):
         why = f"the preferences, with those recorded already, go round in a circle: {' over '.join(cycle)}."
         raise InvalidPackage(str(package), [CellProblem("preferences.csv", 0, "", "", why)])
-
-
-def _pair(item: Item) -> tuple[str, str]:
-    assert isinstance(item.record, Preference)
-    return item.record.correlation, item.record.over
 
 
 def _check_standings(rows: Sequence[tuple[Item, Relation | None]], holdings: Holdings, package: Path) -> None:

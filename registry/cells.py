@@ -12,7 +12,7 @@ from collections.abc import Callable
 from dataclasses import dataclass
 
 from registry.naming import join_names, nearest_names
-from registry.numerals import parse_number
+from registry.numerals import is_number
 
 __all__ = ["Cell", "choice", "complain", "word"]
 
@@ -52,6 +52,10 @@ class Cell:
     values: tuple[str, ...] = ()
     prose: bool = False
     suggest: bool = True
+
+    def fit(self, text: str) -> str:
+        """A text made by the program, cut to the longest that may stand here."""
+        return text[: self.limit].rstrip()
 
 
 def complain(cell: Cell, text: str, required: bool) -> str:
@@ -101,14 +105,6 @@ def word(allowed: str, *values: str, suggest: bool = True) -> Cell:
     return Cell(allowed, values.__contains__, values=values, suggest=suggest)
 
 
-def _is_number(text: str) -> bool:
-    try:
-        parse_number(text)
-    except ValueError:
-        return False
-    return True
-
-
 def cas_digit_holds(text: str) -> bool:
     """True if a CAS number has its form and its check digit.
 
@@ -152,7 +148,7 @@ KEY = _pattern(
 TEXT = Cell("text is allowed.", prose=True)
 LONG = Cell("text is allowed.", limit=4000, prose=True)
 SIGNED = Cell("text is allowed.", limit=4000)
-NUMBER = Cell("a number with a decimal point, such as 8.07131, is allowed.", _is_number, limit=60)
+NUMBER = Cell("a number with a decimal point, such as 8.07131, is allowed.", is_number, limit=60)
 YEAR = _pattern("a year of four digits is allowed.", r"[12]\d{3}")
 DOI = _pattern("a DOI such as 10.1063/1.555926 is allowed.", r"10\.\d{4,9}/\S+")
 URL = _pattern("an http or https address is allowed.", r"https?://[!-~]+")

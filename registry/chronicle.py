@@ -12,7 +12,8 @@ from registry.entries import enter_states, read_origin, word_cause
 from registry.records import REVIEWED, Correlation, Preference, Withdrawal
 from registry.store.history import Change
 from registry.store.library_file import View
-from registry.store.reading import Decision, Row
+from registry.store.reading import Decision
+from registry.store.rows import Row
 
 __all__ = [
     "Event",
@@ -253,7 +254,9 @@ def _touched(before: View, after: View) -> dict[str, set[str]]:
 
 
 def _compare_entries(one: Entry[Any] | None, two: Entry[Any] | None) -> Iterator[RecordChange]:
-    record = (two or one).record  # type: ignore[union-attr]
+    entry = two or one
+    assert entry is not None
+    record = entry.record
     before, after = (one.revision if one else 0), (two.revision if two else 0)
     standings = one.standing if one else "", two.standing if two else ""
     waits = two is not None and two.waiting and two.waiting != (one.waiting if one else 0)

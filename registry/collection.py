@@ -13,7 +13,7 @@ from registry.naming import nearest_names
 from registry.records import KINDS, Compound, Correlation
 from registry.store.history import Change, fold_term
 from registry.store.library_file import LibraryFile, View
-from registry.store.reading import Row
+from registry.store.rows import Row
 
 __all__ = ["Collection"]
 

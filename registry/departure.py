@@ -7,23 +7,21 @@ from typing import Any
 
 from registry.dossier import Entry
 from registry.editions import Position, find_position, root_at
-from registry.entries import enter_all, enter_states, restore, withdrawn_sources, word_cause
+from registry.entries import enter_all, enter_states, rest_on, restore, withdrawn_sources, word_cause
+from registry.exchange.layout import PACKED
 from registry.exchange.provenance import Provenance, digest_content
-from registry.records import REVIEWED, Source, Withdrawal
+from registry.records import Source, Withdrawal
 from registry.store.library_file import View
 from registry.store.reading import Decision
 
-__all__ = ["DUMPED", "select_all", "select_since"]
-
-DUMPED = ("compound", "name", "source", "correlation", "fixed-point", "printed-value", "dataset", "preference")
-"""Kinds that a package holds."""
+__all__ = ["select_all", "select_since"]
 
 Names = set[tuple[str, str]]
 
 
 def select_all(view: View) -> list[Entry[Any]]:
     """Everything, each key in the revision that counts."""
-    return [entry for kind in DUMPED for entry in enter_all(view, kind)]
+    return [entry for kind in PACKED for entry in enter_all(view, kind)]
 
 
 def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provenance]:
@@ -46,7 +44,7 @@ def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provena
     """
     then = view.at(find_position(view, since))
     touched, judged = _find_touched(view, then.position)
-    entries = _enter(view, touched | _find_resting(view, judged))
+    entries = _enter(view, touched | {(entry.record.kind, entry.key) for entry in rest_on(view, judged)})
     bases: dict[str, dict[str, str]] = {}
     earlier: dict[str, dict[str, list[str]]] = {}
     for entry in _enter(then, {(e.record.kind, e.key) for e in entries}):
@@ -59,13 +57,13 @@ def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provena
     withdrawn = _find_withdrawn(view, entries, judged)
     return entries, Provenance(
         name, root_at(view, view.position), str(since), root_at(view, then.position), bases, earlier, withdrawn
-    )  # fmt: skip
+    )
 
 
 def _find_touched(view: View, since: int) -> tuple[Names, set[str]]:
     """What changes after a position are about; and the sources among it that were judged."""
     added = view.changed(since)
-    touched = {(kind, key) for kind, key in added if kind in DUMPED}
+    touched = {(kind, key) for kind, key in added if kind in PACKED}
     aims = {_aim_of(row.content) for row in view.current("review", [key for kind, key in added if kind == "review"])}
     return touched | aims, {key for kind, key in aims if kind == Source.kind}
 
@@ -78,17 +76,8 @@ def _aim_of(review: dict[str, Any]) -> tuple[str, str]:
     return kind, key
 
 
-def _find_resting(view: View, sources: set[str]) -> Names:
-    resting = enter_states(view, view.linked("source", sources)) if sources else []
-    return {
-        (entry.record.kind, entry.key)
-        for entry in resting
-        if entry.record.kind in REVIEWED and entry.record.source in sources
-    }
-
-
 def _enter(view: View, names: Iterable[tuple[str, str]]) -> list[Entry[Any]]:
-    of_kind = {kind: [key for each, key in names if each == kind] for kind in DUMPED}
+    of_kind = {kind: [key for each, key in names if each == kind] for kind in PACKED}
     return [entry for kind, keys in of_kind.items() for entry in enter_states(view, view.states(kind, keys))]
 
 

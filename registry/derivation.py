@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import contextlib
-import dataclasses
 import json
 from collections.abc import Callable, Iterable
 from typing import Any
@@ -11,8 +10,9 @@ from typing import Any
 from registry.findings import Finding, integer, show, text_of
 from registry.records import KINDS, Record, Review, Withdrawal
 from registry.records.record import REFERRED
-from registry.store.auditing import Audit, Matching
+from registry.store.auditing import Audit
 from registry.store.history import fold_term
+from registry.store.matching import Matching
 
 __all__ = ["Derivation"]
 
@@ -29,8 +29,8 @@ PACE = 200
 """Changes after which stored rows are compared."""
 
 _ROLES = {
-    name: tuple(sorted(REFERRED.items() & {(f.name, REFERRED.get(f.name)) for f in dataclasses.fields(cls)}))  # type: ignore[arg-type]
-    for name, cls in KINDS.items()
+    kind: tuple((role, to_kind) for role, to_kind in sorted(REFERRED.items()) if hasattr(cls, role))
+    for kind, cls in KINDS.items()
 }
 _NAMES = {kind: tuple(role for role, _ in roles) for kind, roles in _ROLES.items()}
 _NAMED = frozenset(name for name, cls in KINDS.items() if cls.terms is not Record.terms)
@@ -141,7 +141,7 @@ class Derivation:
             self._audit.stream(table),
             lambda row: self._report_row(table, row, "is missing"),
             lambda row: self._report_row(table, row, "does not follow from the records"),
-        )  # fmt: skip
+        )
 
     def _resolve(self) -> None:
         for row, aims in self._unresolved:
@@ -195,10 +195,7 @@ class Derivation:
         ))  # fmt: skip
 
     def _say(self, row: Stored, what: str) -> None:
-        change, place, _, kind, key, revision = row[:6]
-        self._report(
-            Finding("record", integer(change), text_of(kind), text_of(key), integer(revision), integer(place), what)
-        )
+        self._report(Finding.of_record(row, what))
 
 
 def _sort(rows: list[Stored]) -> None:

@@ -96,7 +96,7 @@ class Dossier:
 
     def preference_reasons(self) -> dict[tuple[str, str], str]:
         """The reason of each accepted preference, by its pair of keys."""
-        return {(e.record.correlation, e.record.over): e.record.reason for e in self.preferences if e.accepted}
+        return {e.record.pair: e.record.reason for e in self.preferences if e.accepted}
 
     def year(self, source: str) -> int:
         """The year of a source, 0 if it states none."""

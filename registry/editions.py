@@ -5,18 +5,16 @@ from __future__ import annotations
 import re
 from datetime import UTC, date, datetime, timedelta
 from operator import index
-from typing import TYPE_CHECKING, Any
+from typing import Any
 
 from registry import rules
 from registry.entries import enter_newest
 from registry.errors import BadInput, UnknownKey, quote
-from registry.holdings import Holdings, draft_of
+from registry.holdings import Holdings
 from registry.naming import nearest_names
+from registry.plan import Plan, draft_of
 from registry.records import Edition
 from registry.store.library_file import View
-
-if TYPE_CHECKING:
-    from registry.judgement import Plan
 
 __all__ = ["Position", "find_edition", "find_position", "format_time", "plan_edition", "root_at"]
 
@@ -54,12 +52,10 @@ def plan_edition(holdings: Holdings, name: str, note: str) -> Plan:
     BadInput
         If there is an edition of that name, case aside.
     """
-    from registry.judgement import Plan
-
     view = holdings.view
     record = Edition(
         name=name, position=str(view.position), root=root_at(view, view.position), rules=str(rules.VERSION), note=note
-    )  # fmt: skip
+    )
     before = holdings.newest("edition", record.key)
     if before is not None:
         raise BadInput(

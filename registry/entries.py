@@ -3,17 +3,19 @@
 from __future__ import annotations
 
 import dataclasses
-from collections.abc import Iterable, Mapping
+from collections.abc import Collection, Iterable, Mapping
 from typing import Any
 
 from registry.cells import LONG
 from registry.dossier import Dossier, Entry
 from registry.records import KINDS, REVIEWED, Origin, Record, Source
 from registry.store.library_file import View
-from registry.store.reading import Decision, Row, State
+from registry.store.reading import Decision, State
+from registry.store.rows import Row
 
 __all__ = [
     "enter_all",
+    "enter_in_force",
     "enter_newest",
     "enter_states",
     "follow_source",
@@ -73,9 +75,14 @@ def enter_in_force(state: State) -> Entry[Any]:
 def enter_states(view: View, states: Iterable[State]) -> list[Entry[Any]]:
     """The revision of each key that counts; what rests on a withdrawn source is withdrawn with it."""
     entries = [enter_in_force(state) for state in states]
-    cited = {source for entry in entries if entry.standing and (source := getattr(entry.record, "source", ""))}
-    withdrawn = withdrawn_sources(view.states("source", cited)) if cited else {}
+    withdrawn = withdrawn_sources(_cited_sources(view, entries))
     return [follow_source(entry, withdrawn) for entry in entries]
+
+
+def _cited_sources(view: View, entries: Iterable[Entry[Any]]) -> list[State]:
+    """The sources of what has a standing, and may lose it with its source."""
+    cited = {source for entry in entries if entry.standing and (source := getattr(entry.record, "source", ""))}
+    return view.states("source", cited) if cited else []
 
 
 def withdrawn_sources(states: Iterable[State]) -> Mapping[str, Decision]:
@@ -89,7 +96,7 @@ def withdrawn_sources(states: Iterable[State]) -> Mapping[str, Decision]:
 
 def word_source(source: str, reason: str) -> str:
     """The note of what is withdrawn because its source is, at most as long as a note may be."""
-    return f"its source {source} is withdrawn: {reason}"[: LONG.limit].rstrip()
+    return LONG.fit(f"its source {source} is withdrawn: {reason}")
 
 
 def read_origin(view: View, change: int) -> Origin | None:
@@ -114,10 +121,10 @@ def enter_all(view: View, kind: str) -> list[Entry[Any]]:
     return enter_states(view, view.states(kind))
 
 
-def rest_on(view: View, source: str) -> list[Entry[Any]]:
-    """Everything that counts or waits and rests on a source, by kind and key."""
-    entries = enter_states(view, view.linked("source", [source]))
-    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source == source]
+def rest_on(view: View, sources: Collection[str]) -> list[Entry[Any]]:
+    """Everything that counts or waits and rests on one of some sources."""
+    entries = enter_states(view, view.linked("source", sources))
+    return [entry for entry in entries if entry.record.kind in REVIEWED and entry.record.source in sources]
 
 
 def read_dossier(view: View, key: str, *, drafts: bool = False) -> Dossier:
@@ -139,8 +146,7 @@ def read_dossier(view: View, key: str, *, drafts: bool = False) -> Dossier:
     entries = [enter_in_force(state) for state in states]
     if drafts:
         entries = [_let_answer(entry, state) for entry, state in zip(entries, states, strict=True)]
-    cited = {source for entry in entries if entry.standing and (source := getattr(entry.record, "source", ""))}
-    of_sources = view.states("source", cited) if cited else []
+    of_sources = _cited_sources(view, entries)
     withdrawn = withdrawn_sources(of_sources)
     of_kind: dict[str, list[Any]] = {kind: [] for kind in KINDS}
     for entry in entries:

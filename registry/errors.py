@@ -29,6 +29,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
+from registry.naming import word_kind
 from registry.refusals import Refusal
 
 
@@ -83,7 +84,11 @@ class Problem:
     allowed: str
 
     def __str__(self) -> str:
-        return f"{self.field}: {quote(self.given)} given; {self.allowed}" if self.field else self.allowed
+        if not self.field:
+            return self.allowed
+        # of an empty text the reason says that it is empty
+        given = f"{quote(self.given)} given; " if self.given else ""
+        return f"{self.field}: {given}{self.allowed}"
 
 
 class InvalidRecord(BadInput):
@@ -94,7 +99,7 @@ class InvalidRecord(BadInput):
         self.key = key
         self.problems = tuple(problems)
         listed = " ".join(f"{problem}" for problem in self.problems)
-        super().__init__(f"The {kind} {quote(key)} cannot be recorded. {listed}")
+        super().__init__(f"The {word_kind(kind)} {quote(key)} cannot be recorded. {listed}")
 
 
 @dataclass(frozen=True)
@@ -156,9 +161,10 @@ class UnknownKey(BadInput, LookupError):
         if self.several:
             text = f"{quote(given)} may mean {' or '.join(self.several)}. Use one of these keys."
         elif self.nearest:
-            text = f"There is no {kind} {quote(given)}. Nearest: {', '.join(self.nearest)}."
+            text = f"There is no {word_kind(kind)} {quote(given)}. Nearest: {', '.join(self.nearest)}."
         else:
-            text = f"There is no {kind} {quote(given)}. `rangebook list` shows what there is."
+            listed = "editions" if kind == "edition" else "list"
+            text = f"There is no {word_kind(kind)} {quote(given)}. `rangebook {listed}` shows what there is."
         super().__init__(text)
 
 
@@ -201,8 +207,9 @@ class RevisedMeanwhile(RangebookError):
         self.mine = dict(mine)
         self.theirs = dict(theirs)
         head = (
-            f"The {kind} {key} was read in revision {expected}, but revision {found} is the newest now. "
-            "Nothing was recorded. Look at it and start from it."
+            f"The {word_kind(kind)} {key} was read in revision {expected}, but revision {found} is the newest now. "
+            "Nothing was recorded. Take over what is right in it, and say that revision (in a sheet: revision = "
+            f"{found}; else --expect {found})."
         )
         super().__init__("\n".join([head, *put_side_by_side(self.mine, self.theirs, f"revision {found}")]))
 
@@ -259,7 +266,9 @@ class Conflict(RangebookError):
         ]
         for clash in self.conflicts[:SHOWN_CLASHES]:
             when = f"{clash.recorded_at[:19]}Z"
-            lines.append(f"The {clash.kind} {clash.key}, here in revision {clash.revision} by {clash.author}, {when}:")
+            lines.append(
+                f"The {word_kind(clash.kind)} {clash.key}, here in revision {clash.revision} by {clash.author}, {when}:"
+            )
             lines += put_side_by_side(clash.mine, clash.theirs, "the package")
         if count > SHOWN_CLASHES:
             lines.append(f"... and {count - SHOWN_CLASHES} more")

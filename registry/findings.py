@@ -35,6 +35,12 @@ class Finding:
     place: int | None
     what: str
 
+    @classmethod
+    def of_record(cls, row: tuple[Any, ...], what: str) -> Finding:
+        """A finding about a stored record, whose row begins with change, place, id, kind, key, revision."""
+        change, place, _, kind, key, revision = row[:6]
+        return cls("record", integer(change), text_of(kind), text_of(key), integer(revision), integer(place), what)
+
     def __str__(self) -> str:
         record = f"{self.kind} {self.key}".strip() + (f" revision {self.revision}" if self.revision else "")
         place = "" if self.place is None or not self.change or self.table == "node" else f", place {self.place}"

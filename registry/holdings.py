@@ -2,17 +2,18 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from typing import Any
 
 from registry.dossier import Entry
 from registry.entries import enter_in_force, enter_newest, follow_source, withdrawn_sources
-from registry.records import Preference, Record
-from registry.store.history import Draft, Effect
+from registry.errors import BadInput, RevisedMeanwhile
+from registry.naming import word_kind
+from registry.records import Record
 from registry.store.library_file import View
 from registry.store.reading import State
 
-__all__ = ["Holdings", "draft_of"]
+__all__ = ["Holdings", "check_expected"]
 
 Pair = tuple[str, str]
 
@@ -80,16 +81,37 @@ class Holdings:
             for state in self.view.linked("correlation", ahead, "preference"):
                 counting, newest = enter_in_force(state), enter_newest(state)
                 if counting.key not in ended:
-                    near |= {_pair(e.record) for e in (counting, newest) if e.standing in ("accepted", "draft")}
+                    near |= {e.record.pair for e in (counting, newest) if e.standing in ("accepted", "draft")}
             found |= near
             ahead = {key for pair in near for key in pair} - seen
         return found
 
 
-def _pair(record: Preference) -> Pair:
-    return record.correlation, record.over
+def check_expected(newest: Entry[Any], expect: int | None, mine: Mapping[str, object]) -> None:
+    """What was made from a revision is recorded only while that is the newest.
 
+    Parameters
+    ----------
+    newest : Entry
+        The newest revision.
+    expect : int or None
+        The revision it was made from; None checks nothing.
+    mine : mapping
+        What is to be recorded.
 
-def draft_of(record: Record, effects: Sequence[Effect] = ()) -> Draft:
-    """A record as the store appends it."""
-    return Draft(record.kind, record.key, record.content(), record.references(), record.terms(), effects)
+    Raises
+    ------
+    BadInput
+        If there never was such a revision.
+    RevisedMeanwhile
+        If there is a newer one.
+    """
+    record = newest.record
+    if expect is None or expect == newest.revision:
+        return
+    if not 0 < expect < newest.revision:
+        raise BadInput(
+            f"The {word_kind(record.kind)} {record.key} has no revision {expect}; its newest is revision "
+            f"{newest.revision}. `rangebook history {record.key}` lists them."
+        )
+    raise RevisedMeanwhile(record.kind, record.key, expect, newest.revision, mine, record.content())

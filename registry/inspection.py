@@ -10,14 +10,15 @@ from typing import Any
 
 from registry.canonical import digest, encode_string, encode_text, is_canonical
 from registry.derivation import Derivation
-from registry.findings import Finding, integer, show, text_of
+from registry.findings import Finding, show, text_of
 from registry.merkle import hash_leaf, root_of
 from registry.records import KINDS
 from registry.regrowth import Regrowth
-from registry.store.auditing import Audit, is_after
+from registry.store.auditing import Audit
 from registry.store.history import Change, envelope
+from registry.store.matching import is_after
 
-__all__ = ["UNREADABLE", "Inspection"]
+__all__ = ["Inspection"]
 
 Stored = tuple[Any, ...]
 
@@ -288,11 +289,8 @@ class Inspection:
         return self.tree.choose_leaf(number, [header, text])
 
     def _say(self, row: Stored, what: str) -> None:
-        change, place, _, kind, key, revision = row[:6]
         self._said += 1
-        self._report(Finding(
-            "record", integer(change), text_of(kind), text_of(key), integer(revision), integer(place), what
-        ))  # fmt: skip
+        self._report(Finding.of_record(row, what))
 
     def _say_change(self, number: int, what: str) -> None:
         self._said += 1

@@ -1,24 +1,25 @@
-"""Reviews, withdrawals and preferences: who may decide what, and what is appended."""
+"""Reviews, withdrawals, preferences, who keeps the library: who may decide what, and what is appended."""
 
 from __future__ import annotations
 
 import unicodedata
-from dataclasses import dataclass
 from typing import Any
 
 from registry.admission import check_kinship, find_cycle
 from registry.canonical import digest
+from registry.cells import KEY
 from registry.dossier import Entry
-from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey, quote
-from registry.holdings import Holdings, draft_of
-from registry.naming import join_names
-from registry.records import REVIEWED, Preference, Record, Review, Withdrawal
+from registry.errors import BadInput, InvalidRecord, UnknownKey, quote
+from registry.holdings import Holdings, check_expected
+from registry.naming import join_names, nearest_names, word_kind
+from registry.plan import Plan, draft_of
+from registry.records import RECORDED, REVIEWED, Keeping, Preference, Record, Review, Withdrawal
 from registry.store.history import Draft, fold_term
 
 __all__ = [
-    "Plan",
-    "is_solo",
+    "accept_at_once",
     "judge",
+    "plan_keeping",
     "plan_preference",
     "plan_review",
     "plan_withdrawal",
@@ -30,30 +31,9 @@ WITHDRAWN = ("correlation", "fixed-point", "dataset", "preference", "source")
 """Kinds that can be withdrawn."""
 
 
-@dataclass(frozen=True)
-class Plan:
-    """What a decision or a recording would append.
-
-    Attributes
-    ----------
-    drafts : tuple of Draft
-        The records, in order.
-    record : Record
-        The record it is about.
-    revision : int
-        Its revision.
-    """
-
-    drafts: tuple[Draft, ...]
-    record: Record
-    revision: int
-
-
 def judge(record: Record, revision: int, standing: str, note: str) -> Draft:
     """The review that gives a revision a standing."""
-    review = Review(
-        of_kind=record.kind, of_key=record.key, of_revision=str(revision), standing=standing, note=note
-    )  # fmt: skip
+    review = Review(of_kind=record.kind, of_key=record.key, of_revision=str(revision), standing=standing, note=note)
     return draft_of(review, review.effects(record.content()))
 
 
@@ -63,32 +43,44 @@ def propose_withdrawal(record: Record, revision: int, cause: str, reason: str) -
 
 
 def _withdraw(record: Record, revision: int, cause: str, reason: str) -> Withdrawal:
-    return Withdrawal(
-        of_kind=record.kind, of_key=record.key, of_revision=str(revision), cause=cause, reason=reason
-    )  # fmt: skip
+    return Withdrawal(of_kind=record.kind, of_key=record.key, of_revision=str(revision), cause=cause, reason=reason)
 
 
 def withdraw_at_once(holdings: Holdings, record: Record, revision: int, cause: str, reason: str) -> list[Draft]:
     """A withdrawal together with its acceptance."""
     withdrawal = _withdraw(record, revision, cause, reason)
-    return [draft_of(withdrawal), judge(withdrawal, next_revision(holdings, withdrawal), "accepted", "")]
+    return [draft_of(withdrawal), judge(withdrawal, _next_revision(holdings, withdrawal), "accepted", "")]
 
 
-def next_revision(holdings: Holdings, record: Record) -> int:
+def _next_revision(holdings: Holdings, record: Record) -> int:
     """The revision that a record would become."""
     state = holdings.state(record.kind, record.key)
     return state.newest.revision + 1 if state is not None else 1
 
 
-def is_solo(holdings: Holdings) -> bool:
+def plan_keeping(holdings: Holdings, kept_by: str) -> Plan | None:
+    """Who keeps the library, ``team`` or ``one-person``; None if it says so already."""
+    if _kept_by(holdings) == kept_by:
+        return None
+    name, started_at = holdings.view.identity()
+    record = Keeping(name=name, started_at=started_at, kept_by=kept_by)
+    return Plan((draft_of(record),), record, _next_revision(holdings, record))
+
+
+def _kept_by(holdings: Holdings) -> str:
+    """Who keeps the library, as far as it says so."""
+    record = holdings.record(Keeping.kind, Keeping.kind)
+    return record.kept_by if isinstance(record, Keeping) else ""
+
+
+def _is_solo(holdings: Holdings) -> bool:
     """True if the library says that one person keeps it."""
-    state = holdings.state("library", "library")
-    return state is not None and state.newest.content["kept_by"] == "one-person"
+    return _kept_by(holdings) == "one-person"
 
 
-def check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
+def _check_reviewer(holdings: Holdings, author: str, reviewer: str, what: str) -> None:
     """Nobody reviews what they recorded themselves, but where one person keeps the library."""
-    if _fold_name(author) == _fold_name(reviewer) and not is_solo(holdings):
+    if _fold_name(author) == _fold_name(reviewer) and not _is_solo(holdings):
         raise BadInput(
             f"{what} was recorded by {author}, and somebody else must review it. "
             "A library that one person keeps says so once: `rangebook start --solo`."
@@ -119,11 +111,9 @@ def plan_review(
     record = entry.record
     if expect is not None and entry.revision != expect:
         before = next((r for r in holdings.view.revisions(record.kind, record.key) if r.revision == expect), None)
-        raise RevisedMeanwhile(
-            record.kind, record.key, expect, entry.revision, before.content if before else {}, record.content()
-        )
-    what = f"Revision {entry.revision} of the {record.kind} {record.key}"
-    check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
+        check_expected(entry, expect, before.content if before else {})
+    what = f"Revision {entry.revision} of the {word_kind(record.kind)} {record.key}"
+    _check_reviewer(holdings, holdings.view.change(entry.change).author, reviewer, what)
     if isinstance(record, Preference) and standing == "accepted":
         _check_round(holdings, record)
     if isinstance(record, Withdrawal) and standing == "accepted":
@@ -146,7 +136,7 @@ def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> 
     """What waits under a key; to be accepted again, what was declined or withdrawn."""
     found = [entry for entry in _entries_under(holdings, key) if kind in ("", entry.record.kind)]
     if not found:
-        raise UnknownKey(kind or "record", key)
+        raise _miss(holdings, key, kind, "reviewed", "counts as soon as it is recorded")
     waiting = [entry for entry in found if entry.standing == "draft"]
     ended = [entry for entry in found if entry.standing in ("declined", "withdrawn")]
     if not waiting and standing == "accepted":
@@ -155,11 +145,22 @@ def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str) -> 
     if len(waiting) == 1:
         return waiting[0]
     if waiting:
-        several = join_names((f"the {entry.record.kind} {entry.key}" for entry in waiting), "and")
-        raise BadInput(f"{several} wait for review. Say which with --kind, or give the key of the withdrawal.")
-    shown = join_names((f"revision {e.revision} of the {e.record.kind} {e.key} is {e.standing}" for e in found), "and")
+        several = join_names((f"the {word_kind(entry.record.kind)} {entry.key}" for entry in waiting), "and")
+        raise BadInput(f"Both wait for review: {several}. Say which with --kind, or give the key of the withdrawal.")
+    shown = join_names(
+        (f"revision {e.revision} of the {word_kind(e.record.kind)} {e.key} is {e.standing}" for e in found), "and"
+    )
     hint = " `rangebook withdraw` takes out what is in force." if standing == "declined" else ""
     raise BadInput(f"Nothing under {quote(key)} waits for review: {shown}.{hint}")
+
+
+def _miss(holdings: Holdings, key: str, kind: str, done: str, instead: str) -> BadInput:
+    """What to say where nothing under a key can be reviewed or withdrawn: it is of another kind, or not there."""
+    for each in [kind] if kind else RECORDED:
+        if holdings.state(each, key) is not None:
+            return BadInput(f"The {word_kind(each)} {key} is not {done}: it {instead}.")
+    recorded = {row.key for each in ([kind] if kind else WITHDRAWN) for row in holdings.view.kind(each)}
+    return UnknownKey(kind or "record", key, nearest=nearest_names(key, recorded))
 
 
 def _entries_under(holdings: Holdings, key: str) -> list[Entry[Any]]:
@@ -188,18 +189,20 @@ def plan_withdrawal(
     kinds = [kind] if kind else list(WITHDRAWN)
     found = [entry for each in kinds if (entry := holdings.counting(each, key)) is not None]
     if not found:
-        raise UnknownKey(kind or "record", key)
+        raise _miss(holdings, key, kind, "withdrawn", "is corrected by `rangebook revise`")
     if len(found) > 1:
         raise BadInput(f"{quote(key)} may be a {join_names(e.record.kind for e in found)}. Say which with --kind.")
     entry = found[0]
     record = entry.record
     if entry.standing == "withdrawn":
-        raise BadInput(f"The {record.kind} {key} is withdrawn already: {entry.standing_note}")
+        raise BadInput(f"The {word_kind(record.kind)} {key} is withdrawn already: {entry.standing_note}")
     before = holdings.newest("withdrawal", Withdrawal.key_for(record.kind, key))
     if before is not None and before.standing == "draft":
-        raise BadInput(f"A withdrawal of the {record.kind} {key} waits for review already: {before.record.reason}")
+        raise BadInput(
+            f"A withdrawal of the {word_kind(record.kind)} {key} waits for review already: {before.record.reason}"
+        )
     withdrawal = _withdraw(record, entry.revision, cause, reason)
-    revision = next_revision(holdings, withdrawal)
+    revision = _next_revision(holdings, withdrawal)
     drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]
     return Plan(tuple(drafts), withdrawal, revision)
 
@@ -225,13 +228,13 @@ def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, acc
     if before is not None and before.standing in ("accepted", "draft"):
         raise BadInput(f"{key} is preferred over {over} already ({before.standing}): {before.record.reason}")
     _check_round(holdings, record)
-    revision = next_revision(holdings, record)
+    revision = _next_revision(holdings, record)
     drafts = [draft_of(record), *([judge(record, revision, "accepted", "")] if accept else [])]
     return Plan(tuple(drafts), record, revision)
 
 
 def _check_round(holdings: Holdings, record: Preference) -> None:
-    pairs = holdings.preferences([record.correlation, record.over]) | {(record.correlation, record.over)}
+    pairs = holdings.preferences([record.correlation, record.over]) | {record.pair}
     if cycle := find_cycle(sorted(pairs)):
         raise BadInput(
             f"The preferences would go round in a circle: {' over '.join(cycle)}. Withdraw one of them first."
@@ -239,14 +242,17 @@ def _check_round(holdings: Holdings, record: Preference) -> None:
 
 
 def _name_preference(key: str, over: str) -> str:
-    """A key of at most 80 characters for a pair."""
+    """A key for a pair; where both are long, cut, with so much of a digest that two pairs never share it."""
     name = f"{key}-over-{over}"
-    return name if len(name) <= 80 else f"{name[:63]}-{digest(name.encode())[:16]}"
+    if len(name) <= KEY.limit:
+        return name
+    mark = digest(name.encode())[:16]
+    return f"{name[: KEY.limit - 1 - len(mark)]}-{mark}"
 
 
 def accept_at_once(holdings: Holdings, wanted: bool) -> bool:
     """Whether what is recorded is accepted with it, which only the single keeper of a library may ask for."""
-    if wanted and not is_solo(holdings):
+    if wanted and not _is_solo(holdings):
         raise BadInput(
             "Recording and accepting in one go is for a library that one person keeps (`rangebook start --solo`). "
             "Here somebody else reviews it: `rangebook review`."

@@ -9,20 +9,20 @@ from __future__ import annotations
 import os
 from collections.abc import Callable, Iterable
 from pathlib import Path
-from typing import TYPE_CHECKING, Any
+from typing import Any
 
 from registry.archive import Archive
 from registry.editions import plan_edition
 from registry.errors import BadInput
-from registry.holdings import Holdings, draft_of
-from registry.records import Keeping, Record
+from registry.holdings import Holdings
+from registry.naming import word_kind
+from registry.plan import Plan
+from registry.records import Record
 from registry.signature import Recorded, check_signature, now_utc
 
-# a lookup judges and records nothing: what does is imported where it is used
-if TYPE_CHECKING:
-    from registry.judgement import Plan
-
 __all__ = ["Library"]
+
+# a lookup judges and records nothing: what does is imported where it is used
 
 
 class Library(Archive):
@@ -66,10 +66,8 @@ class Library(Archive):
         from registry.judgement import accept_at_once
         from registry.recording import plan_record
 
-        why = reason or f"Recorded {record.kind} {record.key}"
-        return self._append(
-            author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept))
-        )  # fmt: skip
+        why = reason or f"Recorded {word_kind(record.kind)} {record.key}"
+        return self._append(author, why, lambda held: plan_record(held, record, accept=accept_at_once(held, accept)))
 
     def revise(
         self, record: Record, *, author: str, reason: str, expect: int | None = None, accept: bool = False
@@ -107,7 +105,7 @@ class Library(Archive):
 
         return self._append(
             author, reason, lambda held: plan_revision(held, record, expect, accept=accept_at_once(held, accept))
-        )  # fmt: skip
+        )
 
     def review(
         self, key: str, *, accept: bool, author: str, note: str, kind: str = "", expect: int | None = None
@@ -260,16 +258,15 @@ class Library(Archive):
         Recorded or None
             None if the library says so already.
         """
-        kept_by = "one-person" if solo else "team"
+        from registry.judgement import plan_keeping
+
         who, why = check_signature(author, f"The library is kept by {'one person' if solo else 'a team'}.")
         with self._lock, self._file.writing() as (view, append):
-            state = next(iter(view.states("library", ["library"])), None)
-            name, started_at = view.identity()
-            if state is not None and state.newest.content["kept_by"] == kept_by:
+            planned = plan_keeping(Holdings(view), "one-person" if solo else "team")
+            if planned is None:
                 return None
-            record = Keeping(name=name, started_at=started_at, kept_by=kept_by)
-            change = append(who, why, now_utc(), [draft_of(record)])
-            return Recorded(change, record, state.newest.revision + 1 if state is not None else 1)
+            change = append(who, why, now_utc(), planned.drafts)
+        return Recorded(change, planned.record, planned.revision)
 
     def _append(self, author: str, reason: str, plan: Callable[[Holdings], Plan]) -> Recorded:
         """One change: planned and appended under the write lock, whole or not at all."""

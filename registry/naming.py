@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable
 
-__all__ = ["join_names", "nearest_names"]
+__all__ = ["join_names", "nearest_names", "word_kind"]
 
 
 def nearest_names(text: str, names: Iterable[str], count: int = 3) -> list[str]:
@@ -34,3 +34,14 @@ def join_names(names: Iterable[str], word: str = "or") -> str:
     """
     *rest, last = list(names)
     return f"{', '.join(rest)} {word} {last}" if rest else last
+
+
+def word_kind(kind: str) -> str:
+    """A kind of record as a sentence says it.
+
+    Examples
+    --------
+    >>> word_kind("fixed-point")
+    'fixed point'
+    """
+    return kind.replace("-", " ")

@@ -10,7 +10,7 @@ from __future__ import annotations
 import re
 from fractions import Fraction
 
-__all__ = ["last_digit_unit", "parse_number", "to_float"]
+__all__ = ["is_number", "last_digit_unit", "parse_number", "to_float"]
 
 # 1 to 40 digits: no printed coefficient has more, and int() stays quick
 _DECIMAL = re.compile(r"[+-]?(?:\d{1,40}(?:\.\d{0,40})?|\.\d{1,40})(?:[eE][+-]?\d{1,3})?", re.ASCII)
@@ -63,6 +63,15 @@ def parse_number(text: str) -> Fraction:
 def _magnitude(value: Fraction) -> int:
     """About the decimal exponent, without a logarithm of huge integers."""
     return len(str(abs(value.numerator))) - len(str(value.denominator))
+
+
+def is_number(text: str) -> bool:
+    """True if a text is a printed number."""
+    try:
+        parse_number(text)
+    except ValueError:
+        return False
+    return True
 
 
 def to_float(text: str) -> float:

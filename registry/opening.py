@@ -6,8 +6,9 @@ import os
 from pathlib import Path
 
 from registry.errors import BadInput
-from registry.holdings import draft_of
+from registry.holdings import Holdings
 from registry.library import Library
+from registry.plan import draft_of
 from registry.records import Keeping
 from registry.signature import check_signature, now_utc
 from registry.store.library_file import LibraryFile, locate
@@ -103,7 +104,7 @@ def start_library(
 
     if shelf not in _REASONS:
         raise BadInput(f"There is no shelf {shelf!r}; the shelves are {', '.join(_REASONS)}.")
-    check_signature(author, "start")
+    who, why = check_signature(author, _REASONS[shelf])
     path = locate(place)
     name = os.urandom(16).hex()
 
@@ -113,7 +114,7 @@ def start_library(
     def fill(file: LibraryFile) -> None:
         with file.writing() as (view, append):
             loaded = plan_load(view, find_shelf(shelf), accept=True).drafts if shelf != "none" else ()
-            append(author, _REASONS[shelf], started_at, [draft_of(keeping), *loaded])
+            append(who, why, started_at, [draft_of(keeping), *loaded])
 
     LibraryFile.create(path, name, started_at, fill)
     return Library(LibraryFile.open(path))
@@ -146,24 +147,28 @@ def upgrade_library(place: str | os.PathLike[str], author: str = "rangebook") ->
     """
     from registry.store.schema import upgrade_file
 
-    check_signature(author, "upgrade")
+    who, why = check_signature(author, f"Upgraded to schema {SCHEMA}.")
     path = locate(place)
-    backup = upgrade_file(path, finish=lambda connection: _sign(LibraryFile(path, connection), author))
+    backup = upgrade_file(path, finish=lambda connection: _sign(LibraryFile(path, connection), who, why))
     if backup is None:
         file = LibraryFile.open(path)
         try:
-            _sign(file, author)
+            _sign(file, who, why)
         finally:
             file.close()
     return backup
 
 
-def _sign(file: LibraryFile, author: str) -> None:
+def _sign(file: LibraryFile, author: str, reason: str) -> None:
     """Record which library this is, if it does not say so yet."""
+    from registry.judgement import plan_keeping
+
     with file.reading() as view:
-        if view.states("library", ["library"]):
+        if view.states(Keeping.kind, [Keeping.kind]):
             return
     with file.writing() as (view, append):
-        name, started_at = view.identity()
-        keeping = Keeping(name=name, started_at=started_at, kept_by="team")
-        append(author.strip(), f"Upgraded to schema {SCHEMA}.", now_utc(), [draft_of(keeping)])
+        held = Holdings(view)
+        # somebody may have said it since the look
+        planned = plan_keeping(held, "team") if held.state(Keeping.kind, Keeping.kind) is None else None
+        if planned is not None:
+            append(author, reason, now_utc(), planned.drafts)

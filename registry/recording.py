@@ -3,9 +3,11 @@
 from __future__ import annotations
 
 from registry.admission import check_identity, check_kinship, check_references, check_value
-from registry.errors import BadInput, InvalidRecord, RevisedMeanwhile, UnknownKey
-from registry.holdings import Holdings, draft_of
-from registry.judgement import Plan, judge
+from registry.errors import BadInput, InvalidRecord, UnknownKey
+from registry.holdings import Holdings, check_expected
+from registry.judgement import judge
+from registry.naming import word_kind
+from registry.plan import Plan, draft_of
 from registry.records import RECORDED, REVIEWED, Record
 
 __all__ = ["plan_record", "plan_revision"]
@@ -24,9 +26,10 @@ def plan_record(holdings: Holdings, record: Record, *, accept: bool = False) -> 
     _check_kind(record)
     taken = holdings.state(record.kind, record.key)
     if taken is not None:
+        changed = f" `rangebook revise {record.key}` changes it." if record.kind != "name" else ""
         raise BadInput(
-            f"The {record.kind} {record.key} is recorded already, in revision {taken.newest.revision}. "
-            f"`rangebook revise {record.key}` changes it."
+            f"The {word_kind(record.kind)} {record.key} is recorded already, in revision {taken.newest.revision}."
+            f"{changed}"
         )
     return _plan(holdings, record, 1, accept)
 
@@ -60,12 +63,9 @@ def plan_revision(holdings: Holdings, record: Record, expect: int | None = None,
     newest = holdings.newest(record.kind, record.key)
     if newest is None:
         raise UnknownKey(record.kind, record.key)
-    if expect is not None and newest.revision != expect:
-        raise RevisedMeanwhile(
-            record.kind, record.key, expect, newest.revision, record.content(), newest.record.content()
-        )
+    check_expected(newest, expect, record.content())
     if newest.record == record:
-        raise BadInput(f"The {record.kind} {record.key} is just so already, in revision {newest.revision}.")
+        raise BadInput(f"The {word_kind(record.kind)} {record.key} is just so already, in revision {newest.revision}.")
     if problems := list(check_identity(record, newest.record)):
         raise InvalidRecord(record.kind, record.key, problems)
     return _plan(holdings, record, newest.revision + 1, accept)
@@ -73,7 +73,8 @@ def plan_revision(holdings: Holdings, record: Record, expect: int | None = None,
 
 def _check_kind(record: Record) -> None:
     if record.kind not in RECORDED:
-        raise BadInput(f"A {record.kind} is not recorded by hand: it follows from what people decide.")
+        instead = " Withdraw it, and say it anew: `rangebook prefer`." if record.kind == "preference" else ""
+        raise BadInput(f"A {record.kind} is not recorded by hand: it follows from what people decide.{instead}")
 
 
 def _plan(holdings: Holdings, record: Record, revision: int, accept: bool) -> Plan:

@@ -8,7 +8,8 @@ from typing import Any
 
 from registry.findings import Finding, integer, show, text_of
 from registry.merkle import hash_leaf, hash_node, root_from_nodes
-from registry.store.auditing import RUN, Audit, Matching
+from registry.store.auditing import Audit
+from registry.store.matching import RUN, Matching
 
 __all__ = ["Regrowth"]
 
@@ -83,7 +84,7 @@ class Regrowth:
             self._audit.nodes(level),
             lambda row: self._say(level, row[0], f"{show(row[1], 20)} is expected there and is not stored"),
             lambda row: self._say(level, row[0], f"{show(row[1], 20)} is stored there and does not follow"),
-        )  # fmt: skip
+        )
 
     def finish(self) -> None:
         """Compare what is left, and what is stored beyond the tree."""

@@ -211,7 +211,7 @@ class _Verifier:
         return consistency_holds(first[0], second[0], first[1], second[1], proof)
 
     def _report_edition(self, row: tuple[Any, ...], what: str) -> None:
-        self._findings.append(Finding("record", row[0], row[3], text_of(row[4]), row[5], row[1], what))
+        self._findings.append(Finding.of_record(row, what))
 
     def _check_against(self, size: int, root: bytes) -> None:
         tree = self._inspection.tree

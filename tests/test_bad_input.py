@@ -547,7 +547,7 @@ def test_json_is_one_object_when_a_library_is_started(tmp_path, capsys):
     place = str(tmp_path / "new.db")
     code, out, err = run(capsys, "start", "--shelf", "none", "--json", "--library", place)
     assert (code, err) == (0, "")
-    assert json.loads(out) == {"library": place, "shelf": "none", "compounds": 0, "position": 1}
+    assert json.loads(out) == {"library": place, "shelf": "none", "compounds": 0, "position": 1, "kept_by": "a team"}
 
 
 def test_json_is_one_object_when_some_is_refused(published_path, capsys):

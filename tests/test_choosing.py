@@ -447,7 +447,8 @@ def test_a_preference_is_told_with_its_reason():
 def test_what_ends_an_accepted_revision():
     """A withdrawal ends what was accepted; a newer draft and a declined revision leave it in force."""
     from registry.entries import enter_in_force
-    from registry.store.reading import Decision, Row, State
+    from registry.store.reading import Decision, State
+    from registry.store.rows import Row
 
     content = invent_correlation(0, 200, 300, "compiled", "", "seen", "accepted").record.content()
     one, two = (Row("correlation", "inventane-0", revision, revision, content) for revision in (1, 2))

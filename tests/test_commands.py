@@ -314,7 +314,7 @@ def test_a_refusal_tells_distances_and_a_dump_what_waits(own_path, tmp_path, mon
         library.load(tmp_path / "package", author="somebody", reason="invented", accept=True)
     with pytest.raises(SystemExit):
         main(["dump", str(tmp_path / "dump")])
-    assert "stayed behind: 1." in capsys.readouterr().out
+    assert "stayed behind: 1. Once they are reviewed" in capsys.readouterr().out
 
 
 @pytest.mark.parametrize(("value", "unit"), [(99.999, "Pa"), (100.0, "kPa"), (1e7, "kPa"), (1.0001e7, "MPa")])

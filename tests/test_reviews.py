@@ -158,7 +158,7 @@ def test_a_draft_and_a_withdrawal_that_both_wait_are_told_apart(library):
     record = library.newest("brindovane-kirchhoff").record
     library.revise(dataclasses.replace(record, note="invented note"), **WHEN)
     library.withdraw("brindovane-kirchhoff", **WHEN)
-    with pytest.raises(BadInput, match=r"wait for review\. Say which with --kind"):
+    with pytest.raises(BadInput, match=r"Both wait for review: .*\. Say which with --kind"):
         library.review("brindovane-kirchhoff", accept=True, **LOOK)
     assert library.review("brindovane-kirchhoff", accept=True, kind="withdrawal", **LOOK).record.kind == "withdrawal"
     assert library.review("brindovane-kirchhoff", accept=True, **LOOK).record.kind == "correlation"
@@ -373,3 +373,9 @@ def test_a_history_tells_every_proposal_of_a_preference(library):
     assert told[2] == ("ann", "preference withdrawal proposed", f"{pair}: other: no more")
     assert told[3][1] == "preference withdrawn"
     assert told[4] == ("cid", "preference recorded", f"{pair}: second")
+
+
+def test_who_starts_a_library_is_signed_like_anybody_else(tmp_path):
+    """Blanks around the name are no part of it, as in every later change."""
+    with start_library(tmp_path / "own.db", "none", " ann ") as library:
+        assert library.change(1).author == "ann"

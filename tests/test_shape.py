@@ -37,7 +37,7 @@ LAYERS = (
     {"verdicts"},
     {"answers"},
     {"store", "exchange"},
-    {"entries"},
+    {"entries", "plan"},
     {"findings"},
     {"derivation", "regrowth"},
     {"inspection"},

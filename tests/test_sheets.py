@@ -13,6 +13,7 @@ from registry.cells import complain
 from registry.errors import InvalidSheet
 from registry.exchange.coefficients import join_coefficients, parse_coefficients
 from registry.exchange.loading import read_items
+from registry.exchange.sheet_fields import tell_allowed
 from registry.exchange.sheets import gives_up, read_sheet, write_sheet, write_template
 from registry.exchange.toml_text import quote_toml
 from registry.records import KINDS, RECORDED, Compound, CompoundName, Correlation, Dataset, Point, Source
@@ -128,7 +129,8 @@ def test_a_template_tells_what_each_field_takes():
         filled = [f for f in dataclasses.fields(KINDS[kind]) if "cell" in f.metadata]
         for field in filled:
             mark = "" if field.metadata["required"] else "optional: "
-            assert f'# {mark}{field.metadata["cell"].allowed}\n{field.name} = ""\n' in text
+            told = tell_allowed(field.name, field.metadata["cell"].allowed)
+            assert f'# {mark}{told}\n{field.name} = ""\n' in text
         needed = {field.name for field in filled if field.metadata["required"]}
         assert needed <= set(_problems(text)) <= needed | {"coefficients", "points.1.temperature", "points.1.value"}
 
@@ -251,7 +253,7 @@ def test_points_are_counted_as_a_person_counts():
     [
         ("", "", "", f"one of {', '.join(RECORDED)} is allowed."),
         ('kind = "review"', "", "review", f"one of {', '.join(RECORDED)} is allowed."),
-        ('kind = "source"', "compound", "source", "it is a compound that is asked for."),
+        ('kind = "source"', "compound", "source", 'a sheet of a compound is asked for; kind = "compound" is allowed.'),
         ("kind = source", "", "source", "a plain number on a line of its own, or text in quotes, is allowed."),
     ],
 )

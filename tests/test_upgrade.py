@@ -13,8 +13,8 @@ from integrity import find_faults
 from old_library import make_old_library, read_old_answers
 
 from registry.errors import BadInput, LibraryBusy, NotALibrary, OlderLibrary, Refused
-from registry.holdings import draft_of
 from registry.opening import open_library, start_library, upgrade_library
+from registry.plan import draft_of
 from registry.records import KINDS
 from registry.store.engine import open_engine
 from registry.store.history import append_change

@@ -131,6 +131,10 @@ def _stop(given: list[str], error: Exception, code: int, message: str) -> NoRetu
     if "--json" in given:
         with contextlib.suppress(OSError):  # there may be no room left to say it
             listed = {name: getattr(error, name, ()) for name in ("problems", "conflicts")}
-            print_json(_describe_error(type(error).__name__, message, code, **listed))
+            document = _describe_error(type(error).__name__, message, code, **listed)
+            if isinstance(error, RevisedMeanwhile):
+                names = ("key", "expected", "found", "mine", "theirs")
+                document["error"] |= {"of_kind": error.kind} | {name: getattr(error, name) for name in names}
+            print_json(document)
     complain(message)
     sys.exit(code)

@@ -19,6 +19,7 @@ from registry.cli.options import (
     look_at,
     open_chosen,
 )
+from registry.cli.screen import emphasize, name_past, print_json, print_table, say
 
 
 def list_records(
@@ -32,7 +33,6 @@ def list_records(
 
     Example: rangebook list
     """
-    from registry.cli.screen import emphasize, name_past, print_json, print_table, say
     from registry.properties import PROPERTIES
 
     with open_chosen(library) as opened:
@@ -61,7 +61,8 @@ def list_records(
         return
     short = ("vapour", "sublim.", "melting", "enthalpy", "density")
     where = f"{place}, position {position}{name_past(label)}"
-    say(f"{emphasize(str(len(compounds)))} compounds in {where}; accepted correlations for each.")
+    word = "compound" if len(compounds) == 1 else "compounds"
+    say(f"{emphasize(str(len(compounds)))} {word} in {where}; accepted correlations for each.")
     say()
     table = [
         [c.key, c.formula, c.cas, f"{c.grams_per_mole():.4f}", *(str(counts[c.key, p] or "") for p in PROPERTIES)]
@@ -83,7 +84,6 @@ def show(
     """
     from registry.cli.documents import describe_change, describe_entry
     from registry.cli.record_text import print_record
-    from registry.cli.screen import print_json
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
@@ -112,13 +112,12 @@ def coverage(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Map temperature to the correlation that answers there, with gaps and seams.
+    """Map temperature to who answers there, with gaps and seams.
 
     Example: rangebook coverage ethanol
     """
     from registry.cli.coverage_text import print_coverage
     from registry.cli.documents import describe_coverage
-    from registry.cli.screen import print_json
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 import dataclasses
 import math
-from typing import Any
+from collections.abc import Iterable
+from typing import TYPE_CHECKING, Any
 
 from registry.answers import Answer, Refusal
 from registry.coverage import Coverage, Stretch
@@ -12,6 +13,14 @@ from registry.display import suit_unit
 from registry.dossier import Entry
 from registry.limits import Limits
 from registry.quantities import UNITS, Unit, convert
+from registry.records import Record
+from registry.store.history import Change
+
+# a lookup compares nothing
+if TYPE_CHECKING:
+    from registry.chronicle import FieldChange
+    from registry.comparison import NumberChange
+    from registry.difference import Preview
 
 __all__ = [
     "describe_answer",
@@ -19,6 +28,8 @@ __all__ = [
     "describe_coverage",
     "describe_entry",
     "describe_fields",
+    "describe_number",
+    "describe_preview",
     "describe_refusal",
     "value_in",
 ]
@@ -110,7 +121,7 @@ def _describe_stretch(stretch: Stretch) -> dict[str, Any]:
     return {"from_K": stretch.low, "to_K": stretch.high, "correlation": entry.key, "revision": entry.revision}
 
 
-def describe_change(change: Any) -> dict[str, Any]:
+def describe_change(change: Change) -> dict[str, Any]:
     """Who changed the library, when and why."""
     return {
         "change": change.number,
@@ -120,9 +131,32 @@ def describe_change(change: Any) -> dict[str, Any]:
     }
 
 
-def describe_fields(fields: Any) -> list[dict[str, Any]]:
+def describe_fields(fields: Iterable[FieldChange]) -> list[dict[str, Any]]:
     """What differs field by field; null where there is nothing."""
     return [{"field": f.name, "before": f.before or None, "after": f.after or None} for f in fields]
+
+
+def describe_number(change: NumberChange) -> dict[str, Any]:
+    """A range in which answers differ."""
+    return {
+        "compound": change.compound, "property": change.property, "phase": change.phase, "from_K": change.low,
+        "to_K": change.high, "kind": change.kind, "largest_percent": change.largest_percent, "at_K": change.at,
+        "mean_percent": change.mean_percent,
+        "before": [{"correlation": key, "revision": revision} for key, revision in change.before],
+        "after": [{"correlation": key, "revision": revision} for key, revision in change.after],
+    }  # fmt: skip
+
+
+def describe_preview(record: Record, preview: Preview) -> dict[str, Any]:
+    """What a revision would change."""
+    own = preview.own
+    return {
+        "kind": record.kind, "key": record.key, "revision": preview.before.revision, "dry_run": True,
+        "fields": describe_fields(preview.fields),
+        "largest_percent": own.largest_percent if own else None, "at_K": own.at if own else None,
+        "mean_percent": own.mean_percent if own else None,
+        "numbers": [describe_number(change) for change in preview.numbers],
+    }  # fmt: skip
 
 
 def describe_entry(entry: Entry[Any]) -> dict[str, Any]:

@@ -4,7 +4,6 @@ from __future__ import annotations
 
 import dataclasses
 import inspect
-import re
 from collections.abc import Callable, Mapping
 from typing import Annotated, Any
 
@@ -14,8 +13,9 @@ from registry.cells import Cell, complain
 from registry.cli.options import AuthorOption, JsonOption, LibraryOption
 from registry.errors import BadInput, InvalidRecord, Problem
 from registry.exchange.coefficients import COEFFICIENTS, join_coefficients, parse_coefficients
+from registry.exchange.sheet_fields import tell_allowed
 from registry.forms.catalogue import FORMS
-from registry.naming import join_names
+from registry.naming import join_names, word_kind
 from registry.records import Record
 
 __all__ = [
@@ -61,14 +61,14 @@ class Field:
     @property
     def told(self) -> str:
         """What it may hold, in few words."""
-        allowed = re.sub(r",? (is|are) allowed", "", self.cell.allowed)
+        allowed = tell_allowed(self.name, self.cell.allowed)
         return allowed if self.required else f"optional; {allowed}"
 
 
 def list_fields(cls: type[Record]) -> tuple[Field, ...]:
     """The fields of a record in order; points of a dataset are left to sheets and packages."""
     found = []
-    for field in dataclasses.fields(cls):  # type: ignore[arg-type]
+    for field in dataclasses.fields(cls):
         if field.name == "coefficients":
             found.append(Field(field.name, COEFFICIENTS, required=True))
         elif "cell" in field.metadata:
@@ -170,7 +170,7 @@ def refuse_missing(cls: type[Record], values: Mapping[str, Any]) -> None:
     if missing := find_missing(cls, values):
         named = join_names([name_option(name) for name in missing], "and")
         raise BadInput(
-            f"The {cls.kind} lacks {named}. Give them as options or in a file; on a terminal they are asked."
+            f"The {word_kind(cls.kind)} lacks {named}. Give them as options or in a file; on a terminal they are asked."
         )
 
 

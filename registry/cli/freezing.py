@@ -16,6 +16,8 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
+from registry.cli.screen import emphasize, print_facts, print_json, say
+from registry.errors import BadInput
 
 
 def freeze(
@@ -25,21 +27,18 @@ def freeze(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Name the position of the library: an edition that answers the same for ever.
+    """Name the position of the library: an edition.
 
-    Note its root outside the library: `rangebook verify --against ROOT` then shows that the past was not rewritten.
+    It answers the same for ever. Note its root outside the library: `rangebook verify --against ROOT` then shows that the past was not rewritten.
 
     Example: rangebook freeze 2026-Q4 --note "basis of project 1207"
     """
-    from registry.cli.screen import print_json, say
-    from registry.errors import BadInput
-
     if not note.strip():
         raise BadInput("An edition says what it is for: give --note.")
     with open_chosen(library) as book:
         done = book.freeze(name, author=name_author(author), note=note)
     if as_json:
-        print_json({**_describe(done.record, done.change)})
+        print_json(_describe(done.record, done.change))
         return
     edition: Any = done.record
     where = f"change {edition.position}, rules {edition.rules}"
@@ -53,12 +52,10 @@ def editions(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """List the editions, oldest first, each with its root and rules version.
+    """List the editions with their roots, oldest first.
 
     Example: rangebook editions
     """
-    from registry.cli.screen import emphasize, print_facts, print_json, say
-
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
         found = book.editions()

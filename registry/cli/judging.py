@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from typing import Annotated, Any
+from typing import TYPE_CHECKING, Annotated, Any
 
 import typer
 
@@ -19,6 +19,13 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
+from registry.cli.screen import emphasize, name_past, print_json, print_table, say
+from registry.errors import BadInput
+
+if TYPE_CHECKING:
+    from registry.library import Library
+    from registry.signature import Recorded
+    from registry.waiting import Waiting
 
 
 def review(
@@ -28,30 +35,48 @@ def review(
     expect: Annotated[
         int | None, typer.Option("--expect", metavar="N", help="The revision that was looked at.", show_default=False)
     ] = None,
+    again: Annotated[bool, typer.Option("--again", help="Accept what was declined or withdrawn.")] = False,
     kind: KindOption = "",
     author: AuthorOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Accept or decline what waits for review, or accept again what was declined or withdrawn.
+    """Accept or decline what waits for review.
 
-    Somebody else than the author reviews, but in a library that one person keeps (rangebook start --solo).
+    Somebody else than the author reviews, but in a library that one person keeps (rangebook start --solo). With
+    --again what was declined or withdrawn is accepted after all.
 
     Example: rangebook review ethanol-antoine-low --accept --note "checked against the printed table"
     """
     from registry.cli.recorded_text import print_recorded
-    from registry.errors import BadInput
 
     if accept is None:
         raise BadInput("No verdict was given. Give --accept or --decline.")
     if not note.strip():
         raise BadInput("A review says what was looked at: give --note.")
     with open_chosen(library) as book:
-        done = book.review(
-            key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect
-        )  # fmt: skip
+        done = book.review(key, accept=accept, author=name_author(author), note=note, kind=kind, expect=expect)
         resting = book.resting(done.record) if accept else []
-    print_recorded("accepted" if accept else "declined", done, as_json, resting=resting)
+        told = _word_verdict(book, done, accept)
+    print_recorded("accepted" if accept else "declined", done, as_json, told=told, resting=resting)
+
+
+def _word_verdict(book: Library, done: Recorded, accept: bool) -> str:
+    """What a verdict does: to accept a withdrawal takes a record out, to accept again brings it back."""
+    from registry.records import Withdrawal
+
+    if isinstance(done.record, Withdrawal):
+        return "withdrawn" if accept else "stays as it was: its withdrawal was declined"
+    if not accept:
+        return ""
+    verdicts = [
+        event for event in book.history(done.record.key, done.record.kind)
+        if event.revision == done.revision and event.what in ("accepted", "declined", "withdrawn")
+    ]  # fmt: skip
+    before = next((event for event in reversed(verdicts) if event.change.number < done.change.number), None)
+    if before is None or before.what == "accepted":
+        return ""
+    return f"accepted again; it was {before.what} ({before.note or before.change.reason})"
 
 
 def withdraw(
@@ -75,7 +100,7 @@ def withdraw(
     with open_chosen(library) as book:
         done = book.withdraw(
             key, author=name_author(author), reason=_need(reason), cause=cause, kind=kind, accept=accept
-        )  # fmt: skip
+        )
         resting = book.resting(done.record)
     print_recorded("withdrawn" if accept else "to be withdrawn", done, as_json, resting=resting, waits=not accept)
 
@@ -101,11 +126,19 @@ def prefer(
 
 
 def _need(reason: str) -> str:
-    from registry.errors import BadInput
-
     if not reason.strip():
         raise BadInput("Every decision says why: give --reason.")
     return reason
+
+
+def _name_waiting(waiting: Waiting) -> str:
+    """The key that `review` takes, with its revision; of a withdrawal what it takes out."""
+    from registry.records import Withdrawal
+
+    record = waiting.record
+    if isinstance(record, Withdrawal):
+        return f"{record.of_key} r{record.of_revision}"
+    return f"{record.key} r{waiting.revision}"
 
 
 def queue(
@@ -119,7 +152,6 @@ def queue(
     Example: rangebook queue
     """
     from registry.cli.documents import describe_change
-    from registry.cli.screen import emphasize, name_past, print_json, print_table, say
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
@@ -138,13 +170,19 @@ def queue(
     if not waiting:
         say(f"Nothing waits for review{name_past(label)}.")
         return
+    screened = any(w.screening for w in waiting)
     say(f"{emphasize(str(len(waiting)))} {'waits' if len(waiting) == 1 else 'wait'} for review{name_past(label)}.")
     say()
-    rows_shown = [
+    print_table(
+        ("since", "by", "what", "key", "screening", "why") if screened else ("since", "by", "what", "key", "why"),
         [
-            w.change.recorded_at[:10], w.change.author, w.what, f"{w.record.key} r{w.revision}",
-            w.screening or "not screened", w.change.reason + (f" ({w.note})" if w.note else ""),
-        ]
-        for w in waiting
-    ]  # fmt: skip
-    print_table(("since", "by", "what", "key", "screening", "why"), rows_shown)
+            [
+                w.change.recorded_at[:10], w.change.author, w.what, _name_waiting(w),
+                *([w.screening or "not screened"] if screened else []),
+                w.change.reason + (f" ({w.note})" if w.note else ""),
+            ]
+            for w in waiting
+        ],
+    )  # fmt: skip
+    say()
+    say("`rangebook history KEY` tells what is proposed; `rangebook review KEY --accept` or `--decline` decides it.")

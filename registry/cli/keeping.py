@@ -16,6 +16,8 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
+from registry.cli.screen import name_past, print_json, say
+from registry.errors import BadInput
 
 
 def start(
@@ -34,33 +36,34 @@ def start(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Start a new library: with the published shelf, the invented scenario, or empty.
+    """Start a new library, with a shelf or empty.
 
     Example: rangebook start --shelf none --library team.db
     """
-    from registry.cli.screen import print_json, say
-    from registry.errors import BadInput
     from registry.opening import default_place, start_library
 
     place = default_place() if library is None else library
     try:
         with start_library(place, shelf, name_author(author), solo=bool(solo)) as book:
             compounds, position = len(book.compounds()), book.position
+            kept_by = "one person" if solo else "a team"
     except FileExistsError:
         if solo is not None:
             _keep(place, solo, author, as_json)
             return
         raise BadInput(f"Something is at {place} already; it was left as it is. Give another --library.") from None
     if as_json:
-        print_json({"library": str(place), "shelf": shelf, "compounds": compounds, "position": position})
-    else:
-        say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
+        print_json(
+            {"library": str(place), "shelf": shelf, "compounds": compounds, "position": position, "kept_by": kept_by}
+        )
+        return
+    say(f"Started {place} with {compounds} {'compound' if compounds == 1 else 'compounds'}, position {position}.")
+    if solo:
+        say("It is kept by one person, who may review their own.")
 
 
 def _keep(place: str, solo: bool, author: str | None, as_json: bool) -> None:
     """Say of a library that is there who keeps it."""
-    from registry.cli.screen import print_json, say
-
     with open_chosen(place) as book:
         done = book.keep(solo=solo, author=name_author(author))
     kept_by = "one person" if solo else "a team"
@@ -75,6 +78,8 @@ def _keep(place: str, solo: bool, author: str | None, as_json: bool) -> None:
 _TOLD = ("added", "revised", "reviewed", "proposed", "kept", "unchanged")
 _SELDOM = ("proposed", "kept")
 """Counts that are told only where there are any."""
+SHOWN = 20
+"""Changed records that are printed; --json has all."""
 
 
 def load(
@@ -100,8 +105,6 @@ def load(
 
     Example: rangebook load handbook-2026.zip --dry-run
     """
-    from registry.cli.screen import print_json, say
-
     _refuse_empty(package)
     with open_chosen(library) as book:
         counts = book.load(
@@ -112,10 +115,10 @@ def load(
         print_json({"package": str(package), "dry_run": dry_run, **counts})
         return
     told = ", ".join(f"{counts[word]} {word}" for word in _TOLD if counts[word] or word not in _SELDOM)
-    for line in counts["changed"][:20]:
+    for line in counts["changed"][:SHOWN]:
         say(f"  {line}")
-    if len(counts["changed"]) > 20:
-        say(f"  ... and {len(counts['changed']) - 20} more; --json lists all")
+    if len(counts["changed"]) > SHOWN:
+        say(f"  ... and {len(counts['changed']) - SHOWN} more; --json lists all")
     if dry_run:
         say(f"{package} can be loaded: {told}. Nothing was recorded (--dry-run).")
     elif counts["change"]:
@@ -137,12 +140,10 @@ def dump(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Write the whole library, or what is new, as an open Tabular Data Package.
+    """Write the library, or what is new in it, as a package.
 
     Example: rangebook dump new.zip --since 2026-Q4
     """
-    from registry.cli.screen import name_past, print_json, say
-
     _refuse_empty(package)
     with open_chosen(library) as book:
         past, label = look_at(book, edition, as_of)
@@ -153,22 +154,22 @@ def dump(
         return
     say(f"Wrote {package}{name_past(label)}: " + ", ".join(f"{name} {count}" for name, count in rows.items()) + ".")
     if waiting:
-        say(f"Drafts that wait over an accepted revision and stayed behind: {waiting}.")
+        say(
+            f"Drafts that wait over an accepted revision and stayed behind: {waiting}. "
+            "Once they are reviewed (`rangebook queue`), a new dump takes them along."
+        )
 
 
 def _refuse_empty(package: str) -> None:
-    from registry.errors import BadInput
-
     if not package:
         raise BadInput("The name of the package is empty. Give a folder or a .zip with datapackage.json.")
 
 
 def upgrade(author: AuthorOption = None, library: LibraryOption = None, as_json: JsonOption = False) -> None:
-    """Bring a library of an older program up to date, after a backup beside it.
+    """Bring an older library up to date, after a backup.
 
     Example: rangebook upgrade --library team.db
     """
-    from registry.cli.screen import print_json, say
     from registry.opening import default_place, upgrade_library
 
     place = default_place() if library is None else library

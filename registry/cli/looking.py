@@ -18,6 +18,8 @@ from registry.cli.options import (
     look_at,
     open_chosen,
 )
+from registry.cli.screen import complain, print_json
+from registry.errors import BadQuantity, GaugePressure, Refused
 
 if TYPE_CHECKING:
     from registry.answers import Answer, Refusal
@@ -55,16 +57,13 @@ def lookup(
     """
     from registry.answers import Answer
     from registry.cli.answer_text import print_answers
-    from registry.cli.screen import complain, print_json
     from registry.cli.temperatures import read_temperatures
 
     asked = read_temperatures(temperatures)
     with open_chosen(library) as book:
         to = _choose_unit(unit, atmosphere, prop)
         past, label = look_at(book, edition, as_of)
-        coverage = past.coverage(
-            compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts
-        )  # fmt: skip
+        coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         # all at the one position that this coverage was read at
         found = [(one, _answer(coverage, one)) for one in asked]
         refusals = [result for _, result in found if not isinstance(result, Answer)]
@@ -79,7 +78,6 @@ def lookup(
 
 
 def _answer(coverage: Coverage, asked: Asked) -> Answer | Refusal:
-    from registry.errors import Refused
     from registry.reader import answer_one
 
     try:
@@ -100,7 +98,6 @@ def _choose_unit(unit: str, atmosphere: str, prop: str) -> Any:
 
 
 def _read_atmosphere(text: str) -> Any:
-    from registry.errors import BadQuantity, GaugePressure
     from registry.quantities import parse_pressure
 
     text = text.replace("\u2212", "-")

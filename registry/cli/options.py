@@ -7,6 +7,8 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
+from registry.errors import BadInput
+
 if TYPE_CHECKING:
     from registry.archive import Archive
     from registry.library import Library
@@ -51,10 +53,25 @@ ReasonOption = Annotated[str, typer.Option("--reason", metavar="TEXT", help="Why
 AcceptOption = Annotated[
     bool, typer.Option("--accept", help="Accept it in the same change; in a library that one person keeps.")
 ]
+
+
+def _check_kind(kind: str) -> str:
+    from registry.errors import BadInput, quote
+    from registry.naming import join_names
+    from registry.records import KINDS
+
+    if kind and kind not in KINDS:
+        raise BadInput(f"--kind {quote(kind)} given; {join_names(KINDS)} is allowed.")
+    return kind
+
+
 KindOption = Annotated[
     str,
-    typer.Option("--kind", metavar="KIND", help="The kind of record, where several have the key.", show_default=False),
-]
+    typer.Option(
+        "--kind", metavar="KIND", help="The kind of record, where several have the key.", show_default=False,
+        callback=_check_kind,
+    ),
+]  # fmt: skip
 AuthorOption = Annotated[
     str | None,
     typer.Option(
@@ -74,8 +91,6 @@ def look_at(book: Library, edition: str | None, as_of: str | None) -> tuple[Arch
     """The library as the options want it, and how its position is called; no text for the newest."""
     # an empty text is a variable that was not set, not a wish for the newest
     if edition is not None and as_of is not None:
-        from registry.errors import BadInput
-
         raise BadInput("Both --edition and --as-of were given. Give one of them.")
     if edition is not None:
         found = book.edition(edition)

@@ -7,10 +7,10 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import AsOfOption, EditionOption, JsonOption, KindOption, LibraryOption, look_at, open_chosen
+from registry.cli.screen import emphasize, name_past, print_facts, print_json, say
 
 if TYPE_CHECKING:
-    from registry.chronicle import Event, FieldChange, RecordChange
-    from registry.comparison import NumberChange
+    from registry.chronicle import Event, RecordChange
 
 
 def history(
@@ -21,11 +21,11 @@ def history(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Tell everything that happened to a record: who, when, why, and what changed field by field.
+    """Tell who did what to a record, when and why.
 
     Example: rangebook history ethanol-antoine-low
     """
-    from registry.cli.screen import emphasize, name_past, print_json, say
+    from registry.naming import word_kind
 
     with open_chosen(library) as opened:
         book, label = look_at(opened, edition, as_of)
@@ -35,13 +35,13 @@ def history(
         described = [_describe_event(event) for event in events]
         print_json({"kind": record.kind, "key": record.key, "as_of": label or None, "events": described})
         return
-    say(emphasize(f"{record.key}: {record.kind}{name_past(label)}"))
+    say(emphasize(f"{record.key}: {word_kind(record.kind)}{name_past(label)}"))
     for event in events:
         _print_event(event)
 
 
 def _print_event(event: Event) -> None:
-    from registry.cli.screen import print_facts, say
+    from registry.cli.difference_text import field_facts
 
     revision = f", revision {event.revision}" if event.revision else ""
     say()
@@ -50,11 +50,6 @@ def _print_event(event: Event) -> None:
     note = event.note if event.note != event.change.reason else ""
     facts = [("why", event.change.reason), ("note", note), ("from", event.origin)]
     print_facts([*facts, *field_facts(event.fields)], indent=4)
-
-
-def field_facts(fields: tuple[FieldChange, ...]) -> list[tuple[str, str]]:
-    """What differs field by field, as labels and texts."""
-    return [(f.name.replace("_", " "), f"{f.before or '(empty)'} -> {f.after or '(empty)'}") for f in fields]
 
 
 def _describe_event(event: Event) -> dict[str, Any]:
@@ -74,11 +69,12 @@ def diff(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
-    """Compare two positions: first what it means in numbers, then record by record.
+    """Compare two positions, first in numbers.
 
     Example: rangebook diff 2026-Q3 2026-Q4
     """
-    from registry.cli.screen import emphasize, print_json, say
+    from registry.cli.difference_text import print_numbers
+    from registry.cli.documents import describe_number
 
     with open_chosen(library) as book:
         found = book.diff(before, after)
@@ -99,59 +95,17 @@ def diff(
     _print_records(found.records)
 
 
-def print_numbers(numbers: tuple[NumberChange, ...]) -> None:
-    """Where answers differ, as a table."""
-    from registry.cli.screen import print_table, say
-    from registry.display import format_plain
-
-    say()
-    if not numbers:
-        say("In numbers: every answer is the same.")
-        return
-    say("In numbers:")
-    rows = [
-        (
-            n.compound, n.property + (f", {n.phase}" if n.phase not in ("liquid", "solid") else ""),
-            f"{format_plain(n.low)} to {format_plain(n.high)} K", n.kind,
-            _percent(n.largest_percent) if n.kind == "changes" else "",
-            f"{n.at:.6g} K" if n.at is not None else "",
-            f"{n.mean_percent:.3g} %" if n.mean_percent is not None else "",
-            f"{_name(n.before) or 'nothing'} -> {_name(n.after) or 'nothing'}",
-        )
-        for n in numbers
-    ]  # fmt: skip
-    headers = ("compound", "property", "range", "answer", "largest", "at", "mean", "from -> to")
-    print_table(headers, rows, right=(False, False, False, False, True, True, True))
-
-
-def _percent(value: float | None) -> str:
-    return "no bound" if value is None else f"{value:+.3g} %"
-
-
-def _name(pairs: tuple[tuple[str, int], ...]) -> str:
-    return ", ".join(f"{key} r{revision}" for key, revision in pairs)
-
-
-def describe_number(change: NumberChange) -> dict[str, Any]:
-    """A range in which answers differ."""
-    return {
-        "compound": change.compound, "property": change.property, "phase": change.phase, "from_K": change.low,
-        "to_K": change.high, "kind": change.kind, "largest_percent": change.largest_percent, "at_K": change.at,
-        "mean_percent": change.mean_percent,
-        "before": [{"correlation": key, "revision": revision} for key, revision in change.before],
-        "after": [{"correlation": key, "revision": revision} for key, revision in change.after],
-    }  # fmt: skip
-
-
 def _print_records(records: tuple[RecordChange, ...]) -> None:
-    from registry.cli.screen import emphasize, print_facts, say
+    from registry.cli.difference_text import field_facts
+    from registry.naming import word_kind
 
     say()
     say(f"{len(records)} {'record differs' if len(records) == 1 else 'records differ'}:")
     for change in records:
-        revisions = f"r{change.before} -> r{change.after}" if change.before else f"r{change.after}"
-        standing = change.standing_after and f", {change.standing_after}"
-        say(f"  {emphasize(change.what)}  {change.kind} {change.key}  {revisions}{standing}")
+        numbers = dict.fromkeys(number for number in (change.before, change.after) if number)
+        revisions = " -> ".join(f"r{number}" for number in numbers)
+        standing = f", {change.standing_after}" if change.standing_after not in ("", change.what) else ""
+        say(f"  {emphasize(change.what)}  {word_kind(change.kind)} {change.key}  {revisions}{standing}")
         print_facts([*field_facts(change.fields), ("note", change.note)], indent=6)
 
 

@@ -10,18 +10,20 @@ from registry.cli.screen import emphasize, name_past, print_facts, print_table, 
 from registry.dossier import Entry
 from registry.exchange.coefficients import join_coefficients
 from registry.forms.catalogue import FORMS
+from registry.naming import word_kind
 from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
+from registry.store.history import Change
 
 __all__ = ["print_record"]
 
 
 def print_record(
-    book: Archive, label: str, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Any]
+    book: Archive, label: str, entry: Entry[Any], related: list[Entry[Any]], changes: dict[int, Change]
 ) -> None:
     """A record, who recorded it, and what refers to it."""
     record = entry.record
     standing = f", {entry.standing}" if entry.standing else ""
-    say(f"{emphasize(record.key)}: {record.kind}, revision {entry.revision}{standing}{name_past(label)}")
+    say(f"{emphasize(record.key)}: {word_kind(record.kind)}, revision {entry.revision}{standing}{name_past(label)}")
     source = getattr(record, "source", "")
     print_facts(
         [
@@ -37,15 +39,16 @@ def print_record(
     _print_related(record, related)
 
 
-def _word_change(change: Any) -> str:
+def _word_change(change: Change) -> str:
     """A change as a line: number, author, time to the second, reason."""
     return f"change {change.number} by {change.author}, {change.recorded_at[:19]}Z: {change.reason}"
 
 
-def _word_review(entry: Entry[Any], changes: dict[int, Any]) -> str:
+def _word_review(entry: Entry[Any], changes: dict[int, Change]) -> str:
     if not entry.reviewed_in:
         return ""
-    note = f" ({entry.standing_note})" if entry.standing_note else ""
+    why = entry.standing_note
+    note = f" ({why})" if why and why != changes[entry.reviewed_in].reason else ""
     return f"{entry.standing}{note} in {_word_change(changes[entry.reviewed_in])}"
 
 
@@ -54,7 +57,7 @@ def _facts(record: Record) -> list[tuple[str, str]]:
     if isinstance(record, Correlation):
         return _correlation_facts(record)
     skipped = {"key", "points"}
-    fields = [field.name for field in dataclasses.fields(record) if field.name not in skipped]  # type: ignore[arg-type]
+    fields = [field.name for field in dataclasses.fields(record) if field.name not in skipped]
     return [(name.replace("_", " "), str(getattr(record, name))) for name in fields]
 
 

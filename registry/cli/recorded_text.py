@@ -7,6 +7,7 @@ from typing import Any
 
 from registry.cli.screen import print_json, print_table, say
 from registry.dossier import Entry
+from registry.naming import word_kind
 from registry.records import REVIEWED, Preference, Record, Withdrawal
 from registry.signature import Recorded
 
@@ -14,8 +15,9 @@ __all__ = ["print_recorded"]
 
 
 def print_recorded(
-    what: str, done: Recorded, as_json: bool, *, resting: Sequence[Entry[Any]] = (), waits: bool = False
-) -> None:
+    what: str, done: Recorded, as_json: bool, *, told: str = "", resting: Sequence[Entry[Any]] = (),
+    waits: bool = False,
+) -> None:  # fmt: skip
     """One change: what became of which record, what else it takes along, and what comes next.
 
     Parameters
@@ -26,6 +28,8 @@ def print_recorded(
         The change.
     as_json : bool
         One JSON object instead of text.
+    told : str
+        The same in words for people, where a participle is not enough.
     resting : sequence of Entry
         What rests on a source that goes.
     waits : bool
@@ -40,23 +44,23 @@ def print_recorded(
             }
         )  # fmt: skip
         return
-    say(f"Change {done.change.number}: {_name(done.record, done.revision)} {what}.")
+    say(f"Change {done.change.number}: {_name(done.record, done.revision)} {told or what}.")
     if resting:
         taken = "go with it once it is reviewed" if waits else "went with it"
         say(f"{len(resting)} {'record rests' if len(resting) == 1 else 'records rest'} on it and {taken}:")
-        print_table(("kind", "key", "standing"), [(e.record.kind, e.key, e.standing) for e in resting])
+        print_table(("kind", "key", "standing"), [(word_kind(e.record.kind), e.key, e.standing) for e in resting])
     if waits and done.record.kind in REVIEWED:
         say(f"It waits for review: rangebook review {_review_key(done.record)} --accept --note ...")
 
 
 def _name(record: Record, revision: int) -> str:
     if isinstance(record, Withdrawal):
-        return f"the {record.of_kind} {record.of_key}"
+        return f"the {word_kind(record.of_kind)} {record.of_key}"
     if isinstance(record, Preference):
         return f"{record.correlation} over {record.over}"
     shown = f", revision {revision}," if revision > 1 else ""
-    return f"the {record.kind} {record.key}{shown}"
+    return f"the {word_kind(record.kind)} {record.key}{shown}"
 
 
 def _review_key(record: Record) -> str:
-    return record.of_key if isinstance(record, Withdrawal) else record.key
+    return f"{record.of_key} --kind withdrawal" if isinstance(record, Withdrawal) else record.key

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import contextlib
 import sys
 from collections.abc import Callable
 from pathlib import Path
@@ -13,7 +14,8 @@ from registry.cli.fields import SHARED, build_record_command, find_missing, refu
 from registry.cli.options import AcceptOption, ReasonOption, name_author, open_chosen
 from registry.cli.questions import ask_on_terminal, ask_record, can_ask
 from registry.cli.recorded_text import print_recorded
-from registry.cli.screen import complain, say
+from registry.cli.rescue import keep_typed
+from registry.cli.screen import complain, print_json, say
 from registry.errors import BadInput, quote
 from registry.exchange.sheets import read_sheet, write_template
 from registry.records import KINDS, RECORDED, REVIEWED, Dataset, Record
@@ -52,7 +54,8 @@ def build_record_group() -> typer.Typer:
         pretty_exceptions_enable=False,
         add_completion=False,
         help=(
-            "Record something new: from options, from a file, or by answering questions on a terminal.\n\n"
+            "Record something new.\n\n"
+            "From options, from a file, or by answering questions on a terminal.\n\n"
             "Each kind has its own options and takes --json: rangebook record correlation --help.\n\n"
             "Example: rangebook record correlation --template"
         ),
@@ -65,40 +68,44 @@ def build_record_group() -> typer.Typer:
 
 def _build(kind: str) -> Callable[..., None]:
     article = "a draft until it is reviewed" if kind in REVIEWED else "in force at once"
-    text = (
-        f"Record a {kind.replace('-', ' ')}; it is {article}.\n\n"
-        f"Example: rangebook record {kind} {_EXAMPLES[kind]}"
-    )  # fmt: skip
+    text = f"Record a {kind.replace('-', ' ')}; it is {article}.\n\nExample: rangebook record {kind} {_EXAMPLES[kind]}"
     return build_record_command(KINDS[kind], _run, text, _ADDED)
 
 
 def _run(cls: type[Record], values: dict[str, Any], shared: dict[str, Any]) -> None:
     if shared["template"]:
-        say(write_template(cls.kind).rstrip("\n"))
+        _print_template(cls.kind, shared["as_json"])
         return
-    record = _make(cls, values, shared["sheet"])
-    with open_chosen(shared["library"]) as book:
-        done = book.record(
-            record, author=name_author(shared["author"]), reason=shared["why"], accept=shared["accept"]
-        )  # fmt: skip
+    record, typed = _make(cls, values, shared["sheet"])
+    kept = keep_typed(record, 0, f"record {cls.kind}") if typed else contextlib.nullcontext()
+    with kept, open_chosen(shared["library"]) as book:
+        done = book.record(record, author=name_author(shared["author"]), reason=shared["why"], accept=shared["accept"])
     waits = cls.kind in REVIEWED and not shared["accept"]
     what = "recorded and accepted" if shared["accept"] and cls.kind in REVIEWED else "recorded"
     print_recorded(what, done, shared["as_json"], waits=waits)
 
 
-def _make(cls: type[Record], values: dict[str, Any], sheet: str) -> Record:
-    """The record: of a file, of options, or of answers where something is missing."""
+def _print_template(kind: str, as_json: bool) -> None:
+    text = write_template(kind)
+    if as_json:
+        print_json({"kind": kind, "sheet": text})
+    else:
+        say(text.rstrip("\n"))
+
+
+def _make(cls: type[Record], values: dict[str, Any], sheet: str) -> tuple[Record, bool]:
+    """The record: of a file, of options, or of answers where something is missing; and whether it was answered."""
     if sheet:
         if values:
             raise BadInput("Both --file and fields were given. Write the fields into the file.")
-        return read_sheet(read_text_file(sheet), "stdin" if sheet == "-" else sheet, cls.kind).record
+        return read_sheet(read_text_file(sheet), "stdin" if sheet == "-" else sheet, cls.kind).record, False
     if cls is Dataset:
         raise BadInput("A dataset has points: write a sheet (--template), and give it with --file.")
     if find_missing(cls, values):
         if can_ask():
-            return ask_record(cls, values, ask_on_terminal, complain)
+            return ask_record(cls, values, ask_on_terminal, complain), True
         refuse_missing(cls, values)
-    return cls(**values)
+    return cls(**values), False
 
 
 def read_text_file(place: str) -> str:

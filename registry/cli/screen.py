@@ -34,6 +34,9 @@ CAUTION = (
     "local codes and licensed practice come first."
 )
 
+LEAST = 24
+"""Columns that broken text takes at least."""
+
 
 def _is_terminal() -> bool:
     return sys.stdout is not None and sys.stdout.isatty()
@@ -96,7 +99,7 @@ def _finite(content: Any) -> Any:
 
 def wrap(text: str, indent: int, total: int | None = None) -> str:
     """Text broken to the screen, every line after the first indented."""
-    room = max(30, (total or width()) - indent)
+    room = max(LEAST, (total or width()) - indent)
     lines = textwrap.wrap(text, room, break_long_words=False, break_on_hyphens=False) or [""]
     return ("\n" + " " * indent).join(lines)
 
@@ -112,14 +115,19 @@ def print_facts(facts: Iterable[tuple[str, str]], indent: int = 2) -> None:
 def print_table(
     headers: Sequence[str], rows: Sequence[Sequence[str]], right: Sequence[bool] = (), indent: int = 2
 ) -> None:
-    """A table with columns as wide as they need; the last one wraps."""
+    """A table with columns as wide as they need; the last one wraps, or stands beneath where there is no room."""
     sides = [*right, *([False] * len(headers))][: len(headers)]
     widths = [max(len(str(row[i])) for row in (headers, *rows)) for i in range(len(headers))]
     margin = indent + sum(widths[:-1]) + 2 * (len(headers) - 1)
+    beneath = len(headers) > 1 and not sides[-1] and margin + min(LEAST, widths[-1]) > width()
     for number, row in enumerate((headers, *rows)):
-        cells = [
+        *cells, last = [
             cell.rjust(size) if side else cell.ljust(size) for cell, size, side in zip(row, widths, sides, strict=True)
         ]
-        last = wrap(row[-1], margin) if margin + len(row[-1]) > width() and not sides[-1] else cells[-1]
-        line = (" " * indent + "  ".join([*cells[:-1], last])).rstrip()
+        line = (" " * indent + "  ".join(cells)).rstrip()
+        if beneath:
+            line += f"\n{' ' * (indent + 4)}{wrap(row[-1], indent + 4)}".rstrip()
+        else:
+            last = wrap(row[-1], margin) if margin + len(row[-1]) > width() and not sides[-1] else last
+            line = (" " * indent + "  ".join([*cells, last])).rstrip()
         say(emphasize(line, "2") if number == 0 else line)

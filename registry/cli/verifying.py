@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import JsonOption, LibraryOption, open_chosen
+from registry.cli.screen import emphasize, print_facts, print_json, say, wrap
 
 if TYPE_CHECKING:
     from registry.findings import Verification
@@ -32,15 +33,13 @@ def verify(
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:  # fmt: skip
-    """Recompute everything recorded, and name each record that is not what was recorded.
+    """Recompute everything, and name what does not hold.
 
     Somebody who rewrites the whole file consistently makes another library that holds: only a root noted elsewhere
     (--against) finds that.
 
     Example: rangebook verify --against 12:5dc9da79a70659a9ad559cb701ded9a2ab9d823aad2f4960cfe370eff4604328
     """
-    from registry.cli.screen import print_json
-
     with open_chosen(library) as book:
         found = book.verify(against, _show_progress())
     if as_json:
@@ -73,8 +72,6 @@ def _describe(found: Verification, against: str | None) -> dict[str, Any]:
 
 
 def _print(found: Verification, against: str | None) -> None:
-    from registry.cli.screen import emphasize, print_facts, say, wrap
-
     count = len(found.findings)
     head = "holds" if found.holds else f"does not hold: {count} {'finding' if count == 1 else 'findings'}"
     say(emphasize(head))

@@ -7,18 +7,18 @@ from typing import Annotated, Any
 import typer
 
 from registry.cli.options import JsonOption
+from registry.cli.screen import emphasize, print_facts, print_json, print_table, say
+from registry.errors import UnknownKey
 
 
 def forms(
     name: Annotated[str, typer.Argument(metavar="[NAME]", help="A form, or part of a name.")] = "",
     as_json: JsonOption = False,
 ) -> None:
-    """List the equation forms with their equations, or tell one of them whole.
+    """List the equation forms, or tell one of them whole.
 
     Example: rangebook forms riedel
     """
-    from registry.cli.screen import emphasize, print_facts, print_json, print_table, say
-    from registry.errors import UnknownKey
     from registry.forms.catalogue import FORMS
     from registry.naming import nearest_names
 

@@ -29,7 +29,7 @@ from registry.records import (
     Source,
 )
 
-__all__ = ["FILES", "Column", "File", "descriptor"]
+__all__ = ["FILES", "PACKED", "Column", "File", "descriptor"]
 
 
 @dataclass(frozen=True)
@@ -141,6 +141,9 @@ _ROWS = (
 )
 
 FILES: dict[str, File] = {row.name: row for row in _ROWS}
+
+PACKED = tuple(file.kind for file in _ROWS if file.kind)
+"""Kinds of record that a package holds."""
 
 
 def descriptor(present: list[str], *, whole: bool = True) -> dict[str, Any]:

@@ -17,7 +17,7 @@ from registry import cells
 from registry.canonical import digest, encode
 from registry.cells import choice, complain
 from registry.errors import CellProblem, InvalidPackage, quote
-from registry.exchange.layout import FILES
+from registry.exchange.layout import PACKED
 from registry.exchange.package import DESCRIPTOR, read_descriptor
 from registry.records import CAUSES, Record
 
@@ -27,7 +27,6 @@ PROPERTY = "rangebook"
 """The name of the property in a descriptor."""
 
 _DIGEST = re.compile(r"[0-9a-f]{64}")
-_KINDS = frozenset(file.kind for file in FILES.values() if file.kind)
 _CAUSE = choice(*CAUSES)
 
 Digests = Mapping[str, Mapping[str, Sequence[str]]]
@@ -155,7 +154,7 @@ def _text_problems(holder: Any, place: str, **wanted: cells.Cell) -> Iterator[st
 
 def _holds_kinds(given: Any, holds: Any) -> bool:
     return isinstance(given, dict) and all(
-        kind in _KINDS and isinstance(of_kind, dict) and all(holds(value) for value in of_kind.values())
+        kind in PACKED and isinstance(of_kind, dict) and all(holds(value) for value in of_kind.values())
         for kind, of_kind in given.items()
     )
 

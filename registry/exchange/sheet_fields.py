@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import dataclasses
+import re
 from collections.abc import Mapping
 from typing import Any
 
@@ -13,9 +14,39 @@ from registry.exchange.toml_text import read_text
 from registry.naming import join_names, nearest_names
 from registry.records import Point, Record
 
-__all__ = ["build_record", "read_coefficients", "read_fields", "read_points", "text_fields"]
+__all__ = ["build_record", "read_coefficients", "read_fields", "read_points", "tell_allowed", "text_fields"]
 
 _TABLES = ("coefficients", "points")
+
+_PRINTED = "a number as printed, such as 273.15"
+_MEANT = {
+    "compound": "the key of a compound, such as water",
+    "correlation": "the key of a correlation, such as water-sr1-86",
+    "source": "the key of a source, such as handbook-a",
+    "locator": "where in the source: page, table or equation",
+    "citation": "the source as a reader would cite it",
+    "uncertainty": "as stated, such as 0.5 %; empty if not stated",
+    "window_min": _PRINTED,
+    "window_max": _PRINTED,
+    "temperature": _PRINTED,
+    "value": _PRINTED,
+    "molar_mass": "a number as printed, such as 46.068",
+    "metastable_below": "a temperature such as 273.16 K, below which the curve is for the metastable liquid",
+}
+"""What fields are for whose cells say no more than text, number or key."""
+
+
+def tell_allowed(name: str, allowed: str) -> str:
+    """What a field may hold, in words for whoever fills it in.
+
+    Examples
+    --------
+    >>> tell_allowed("locator", "text is allowed.")
+    'where in the source: page, table or equation'
+    >>> tell_allowed("unit", "one of g/mol is allowed.")
+    'one of g/mol'
+    """
+    return _MEANT.get(name) or re.sub(r",? (is|are) allowed", "", allowed).removesuffix(".")
 
 
 def text_fields(cls: Any) -> list[dataclasses.Field[str]]:

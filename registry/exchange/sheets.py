@@ -12,9 +12,16 @@ from dataclasses import dataclass
 from typing import Any
 
 from registry.errors import InvalidSheet, Problem
-from registry.exchange.sheet_fields import build_record, read_coefficients, read_fields, read_points, text_fields
+from registry.exchange.sheet_fields import (
+    build_record,
+    read_coefficients,
+    read_fields,
+    read_points,
+    tell_allowed,
+    text_fields,
+)
 from registry.exchange.toml_text import parse_toml, quote_toml, read_text
-from registry.naming import join_names
+from registry.naming import join_names, word_kind
 from registry.records import KINDS, RECORDED, Correlation, Dataset, Point, Record
 
 __all__ = ["Sheet", "gives_up", "read_sheet", "write_sheet", "write_template"]
@@ -71,7 +78,12 @@ def write_sheet(record: Record, revision: int = 0, remark: Sequence[str] = ()) -
     <BLANKLINE>
     """
     told = f", revision {revision}" if revision else ""
-    top = (f"The {record.kind} {record.key}{told}.", *remark, f"Change what is wrong, {HOW_TO_END}", HOW_TO_WRITE)
+    top = (
+        f"The {word_kind(record.kind)} {record.key}{told}.",
+        *remark,
+        f"Change what is wrong, {HOW_TO_END}",
+        HOW_TO_WRITE,
+    )
     lines = [*_comments(top), "", *_head(record.kind, revision)]
     lines += [_line(field.name, getattr(record, field.name)) for field in text_fields(type(record))]
     if isinstance(record, Correlation):
@@ -95,7 +107,7 @@ def write_template(kind: str) -> str:
         TOML.
     """
     cls = KINDS[kind]
-    top = (f"A new {kind}.", f"Fill it in, {HOW_TO_END}", HOW_TO_WRITE, 'What is optional may stay "".')
+    top = (f"A new {word_kind(kind)}.", f"Fill it in, {HOW_TO_END}", HOW_TO_WRITE, 'What is optional may stay "".')
     lines = [*_comments(top), "", *_head(kind, 0), *_empty_lines(cls)]
     if cls is Correlation:
         how = 'As printed, such as A = "8.07131"; `rangebook forms NAME` tells what a form takes.'
@@ -121,7 +133,7 @@ def _comments(lines: Iterable[str]) -> list[str]:
 def _empty_lines(cls: Any) -> Iterator[str]:
     for field in text_fields(cls):
         optional = "" if field.metadata["required"] else "optional: "
-        yield from _comments([optional + field.metadata["cell"].allowed])
+        yield from _comments([optional + tell_allowed(field.name, field.metadata["cell"].allowed)])
         yield _line(field.name, "")
 
 
@@ -205,7 +217,11 @@ def _read_kind(table: Mapping[str, Any], expected: str, problems: list[Problem])
     given, why = read_text(table.get("kind", expected))
     if not why and given in RECORDED and expected in ("", given):
         return given
-    allowed = f"it is a {expected} that is asked for." if expected else f"one of {', '.join(RECORDED)} is allowed."
+    allowed = (
+        f"a sheet of a {word_kind(expected)} is asked for; {_line('kind', expected)} is allowed."
+        if expected
+        else f"one of {', '.join(RECORDED)} is allowed."
+    )
     problems.append(Problem("kind", given, why or allowed))
     return ""
 

@@ -14,7 +14,7 @@ import tomllib
 import unicodedata
 from typing import Any
 
-from registry.numerals import parse_number
+from registry.numerals import is_number
 
 __all__ = ["parse_toml", "quote_toml", "read_text"]
 
@@ -75,7 +75,7 @@ def read_text(value: Any) -> tuple[str, str]:
         return _show(value), NUMBER_OR_TEXT
     if value.startswith(_BARE):
         typed = value.removeprefix(_BARE)
-        if not typed or _is_number(typed):
+        if not typed or is_number(typed):
             return typed, ""
         return typed, NUMBER_OR_TEXT
     if "\n" in value:
@@ -93,14 +93,6 @@ def quote_toml(text: str) -> str:
     """
     # JSON escapes as TOML does, but for one control character
     return json.dumps(text, ensure_ascii=False).replace("\x7f", "\\u007f")
-
-
-def _is_number(text: str) -> bool:
-    try:
-        parse_number(text)
-    except ValueError:
-        return False
-    return True
 
 
 def _show(value: Any) -> str:

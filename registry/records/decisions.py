@@ -1,4 +1,8 @@
-"""What people decide about records: preferences, withdrawals, reviews; editions; whose library it is."""
+"""What people decide about records, and what a library says of itself.
+
+Preferences, reviews and withdrawals are about records; editions name positions
+of the history, and a library says who keeps it and where a load came from.
+"""
 
 from __future__ import annotations
 
@@ -30,6 +34,11 @@ class Preference(Record):
 
     def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
         return (self._self_problems,)
+
+    @property
+    def pair(self) -> tuple[str, str]:
+        """The correlation, and the one it goes before."""
+        return self.correlation, self.over
 
     def _self_problems(self) -> Iterator[Problem]:
         if self.correlation == self.over:
@@ -129,7 +138,7 @@ class Keeping(Record):
     kept_by: str = entry(choice("team", "one-person"))
 
     def _own_key(self) -> str:
-        return "library"
+        return self.kind  # there is one for each library
 
 
 @dataclass(frozen=True)

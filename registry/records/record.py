@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import dataclasses
 from collections.abc import Callable, Iterable, Iterator, Mapping
+from dataclasses import dataclass
 from typing import Any, ClassVar, NamedTuple, Self
 
 from registry.cells import Cell, choice, complain, word
@@ -43,6 +44,7 @@ def entry(cell: Cell, required: bool = True) -> Any:
     return dataclasses.field(default="", metadata={"cell": cell, "required": required})
 
 
+@dataclass(frozen=True)
 class Record:
     """What all records share: a key, text fields, references to other records."""
 
@@ -72,14 +74,14 @@ class Record:
 
     def content(self) -> dict[str, Any]:
         """What is recorded and digested: every field that is not empty, but the key."""
-        fields = dataclasses.fields(self)  # type: ignore[arg-type]
+        fields = dataclasses.fields(self)
         return {f.name: value for f in fields if f.name != "key" and (value := getattr(self, f.name))}
 
     @classmethod
     def restore(cls, key: str, content: Mapping[str, Any]) -> Self:
         """The record behind content that was checked when it was recorded."""
         record = object.__new__(cls)
-        for field in dataclasses.fields(cls):  # type: ignore[arg-type]
+        for field in dataclasses.fields(cls):
             default: Any = {} if field.name == "coefficients" else () if field.name == "points" else ""
             object.__setattr__(record, field.name, content.get(field.name, default))
         object.__setattr__(record, "key", key)

@@ -6,33 +6,29 @@ so that a library is gone through once and never held in memory.
 
 from __future__ import annotations
 
-import math
-import re
 import sqlite3
-from collections import Counter
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from concurrent.futures import ThreadPoolExecutor
 from contextlib import ExitStack, closing, contextmanager
 from functools import lru_cache, partial
 from pathlib import Path
 from typing import Any
-from urllib.parse import quote
 
 from sqlalchemy import create_engine
 
 from registry.errors import LibraryBusy, NotALibrary
-from registry.store.engine import BUSY_SECONDS, wal_is_safe
+from registry.store.engine import connect, is_busy, wal_is_safe
+from registry.store.matching import Row
+from registry.store.recognition import normalise_statement
 from registry.store.schema import create_schema
 from registry.store.tables import SCHEMA
 
 __all__ = [
     "EXPECTED_VERSION",
-    "RUN",
     "Audit",
     "Damage",
     "Undecodable",
     "expected_schema",
-    "is_after",
     "is_damage",
     "open_audit",
 ]
@@ -41,8 +37,6 @@ __all__ = [
 class Undecodable(Exception):
     """Text that is no UTF-8."""
 
-
-Row = tuple[Any, ...]
 
 Checked = tuple[list[str], list[Row]]
 """What SQLite says against the file, and (table, row, table referred to, number) of references that lead nowhere."""
@@ -59,73 +53,9 @@ _STREAMS = {
 }
 _NODES = "SELECT place, hash FROM node WHERE level IS ? ORDER BY place"
 _LEVELS = "SELECT DISTINCT level FROM node ORDER BY level"
+# what SQLite makes for itself has no statement, or a name of its own
+_SCHEMA = "SELECT type, name, sql FROM sqlite_master WHERE sql IS NOT NULL AND name NOT LIKE 'sqlite\\_%' ESCAPE '\\'"
 _RECORD = "SELECT id, content FROM record WHERE kind = ? AND key = ? AND revision = ?"
-
-
-class Matching:
-    """Rows that must be stored, in the order of their first column, against those that are.
-
-    Both are compared in long runs; only where a run differs they are told
-    apart one by one.
-
-    Parameters
-    ----------
-    stored : sqlite3.Cursor
-        The stored rows, in that order.
-    missing, extra : callable
-        Take a row that is not stored, and one that should not be.
-
-    Attributes
-    ----------
-    expected : list of tuple
-        To be appended to.
-    """
-
-    def __init__(self, stored: sqlite3.Cursor, missing: Callable[[Row], None], extra: Callable[[Row], None]) -> None:
-        self._stored = stored
-        self._missing = missing
-        self._extra = extra
-        self._found: list[Row] = []
-        self.expected: list[Row] = []
-
-    def settle(self, last: int) -> None:
-        """Compare everything whose first column is at most `last`; all of that must be expected by now."""
-        found, expected = self._found, self.expected
-        if len(found) < len(expected):
-            found += self._stored.fetchmany(len(expected) - len(found))
-        if found == expected:
-            found.clear()
-        else:
-            self._tell_apart(last)
-        expected.clear()
-
-    def _tell_apart(self, last: int) -> None:
-        found = self._found
-        while (more := self._stored.fetchmany(RUN)) and not is_after(more[-1][0], last):
-            found += more
-        found += more
-        due, expected = Counter(row for row in found if not is_after(row[0], last)), Counter(self.expected)
-        for row in expected - due:
-            self._missing(row)
-        for row in due - expected:
-            self._extra(row)
-        self._found = [row for row in found if is_after(row[0], last)]
-
-    def finish(self) -> None:
-        """Report what is left."""
-        for row in (*self._found, *self._stored):
-            self._extra(row)
-
-
-RUN = 500
-"""Rows that are read at once."""
-
-
-def is_after(value: Any, last: float, *, equal: bool = False) -> bool:
-    """Whether SQLite sorts a value after a number: NULL comes first, text and blobs last."""
-    if isinstance(value, (int, float)):
-        return value >= last if equal else value > last
-    return value is not None and last < math.inf
 
 
 class Audit:
@@ -182,7 +112,7 @@ class Audit:
 
     def schema(self) -> dict[str, str]:
         """Every table, index, trigger and view, as its statement."""
-        return _read_schema(self._connection)
+        return _gather_statements(self._rows(_SCHEMA))
 
     def journal_remark(self) -> str:
         """What is to be said of the file's journal: that it may lose what was written."""
@@ -217,7 +147,7 @@ def open_audit(path: Path, *, any_text: bool = False) -> Iterator[Audit]:
     """
     try:
         with ExitStack() as stack:
-            connection = stack.enter_context(_connect(path, BUSY_SECONDS))
+            connection = stack.enter_context(_connect(path))
             if any_text:
                 connection.text_factory = _decode
             beside = _begin_beside(stack, path)
@@ -228,7 +158,7 @@ def open_audit(path: Path, *, any_text: bool = False) -> Iterator[Audit]:
             stack.callback(beside.interrupt)  # where reading has failed, nobody waits for the checks
             yield Audit(connection, lambda: pool.submit(_check, beside).result)
     except sqlite3.DatabaseError as error:
-        if _is_busy(error):
+        if is_busy(error):
             raise LibraryBusy(str(path)) from error
         if "Could not decode" in str(error):
             raise Undecodable(str(error)) from error
@@ -237,19 +167,13 @@ def open_audit(path: Path, *, any_text: bool = False) -> Iterator[Audit]:
 
 def is_damage(error: sqlite3.DatabaseError) -> bool:
     """True if the file is to blame: it is not held by another process, and text has been let be."""
-    return not _is_busy(error) and "Could not decode" not in str(error)
-
-
-def _is_busy(error: sqlite3.DatabaseError) -> bool:
-    return "locked" in str(error) or "busy" in str(error)
+    return not is_busy(error) and "Could not decode" not in str(error)
 
 
 @contextmanager
-def _connect(path: Path, timeout: float) -> Iterator[sqlite3.Connection]:
-    uri = f"file:{quote(str(path))}?mode=ro"
-    with closing(
-        sqlite3.connect(uri, uri=True, timeout=timeout, isolation_level=None, check_same_thread=False)
-    ) as connection:
+def _connect(path: Path, timeout: float | None = None) -> Iterator[sqlite3.Connection]:
+    with closing(connect(path, "ro", timeout)) as connection:
+        connection.isolation_level = None
         connection.execute("PRAGMA trusted_schema=OFF")
         connection.execute("PRAGMA cell_size_check=ON")
         connection.execute("BEGIN")
@@ -283,17 +207,8 @@ def _check(connection: sqlite3.Connection) -> Checked:
     return damages, dangling
 
 
-def _read_schema(connection: sqlite3.Connection) -> dict[str, str]:
-    # what SQLite makes for itself has no statement, or a name of its own
-    found = connection.execute(
-        "SELECT type, name, sql FROM sqlite_master WHERE sql IS NOT NULL AND name NOT LIKE 'sqlite\\_%' ESCAPE '\\'"
-    )
-    return {f"{kind} {name}": _normalise(str(sql)) for kind, name, sql in found}
-
-
-def _normalise(sql: str) -> str:
-    """A statement without what a migration may write otherwise: quotes and blanks."""
-    return re.sub(r"\s*([(),])\s*", r"\1", " ".join(sql.replace('"', "").split()))
+def _gather_statements(rows: Iterable[Sequence[Any]]) -> dict[str, str]:
+    return {f"{kind} {name}": normalise_statement(str(sql)) for kind, name, sql in rows}
 
 
 @lru_cache(maxsize=1)
@@ -302,8 +217,7 @@ def expected_schema() -> dict[str, str]:
     engine = create_engine("sqlite://")
     with engine.begin() as connection:
         create_schema(connection)
-        driver: sqlite3.Connection = connection.connection.driver_connection  # type: ignore[assignment]
-        made = _read_schema(driver)
+        made = _gather_statements(connection.exec_driver_sql(_SCHEMA))
     engine.dispose()
     return made
 

@@ -1,9 +1,9 @@
 """Connections to a library's SQLite file.
 
-A reader's connection takes no statement that writes; a writer takes the write lock at once (BEGIN
-IMMEDIATE), for a deferred lock that must be upgraded fails whatever the
-timeout. The journal is a rollback journal with synchronous=EXTRA unless
-SQLite is free of the WAL-reset bug (versions 3.7.0 to 3.51.2 but for the
+A reader's connection takes no statement that writes. A writer takes the write
+lock at once (BEGIN IMMEDIATE), for a deferred lock that must be upgraded fails
+whatever the timeout. The journal is a rollback journal with synchronous=EXTRA
+unless SQLite is free of the WAL-reset bug (versions 3.7.0 to 3.51.2 but for the
 fixed 3.44.6 and 3.50.7 lines), in which WAL can lose committed writes.
 """
 
@@ -21,10 +21,16 @@ from sqlalchemy.pool import StaticPool
 
 from registry.errors import NotALibrary
 
-__all__ = ["BUSY_SECONDS", "connect", "harden", "open_engine", "wal_is_safe"]
+__all__ = ["BUSY_SECONDS", "connect", "harden", "is_busy", "open_engine", "wal_is_safe"]
 
 BUSY_SECONDS = 30
 """How long a writer waits for another one."""
+
+_LONGEST_PAUSE = 0.01
+"""Seconds, beyond the first thousandth, between two tries of a writer that waits; how many is drawn anew each time."""
+
+_SYNCHRONOUS = {"wal": 2, "delete": 3}
+"""By journal: FULL, and EXTRA, which also makes sure that the rollback journal is gone."""
 
 _HARD = {"trusted_schema": 0, "cell_size_check": 1}
 _LIMITS = {
@@ -46,11 +52,17 @@ def wal_is_safe(version: tuple[int, int, int]) -> bool:
     return version >= (3, 51, 3) or (3, 50, 7) <= version < (3, 51, 0) or (3, 44, 6) <= version < (3, 45, 0)
 
 
-def connect(path: Path, mode: str) -> sqlite3.Connection:
-    """A connection of the driver on a file; `mode` is ``ro``, ``rw`` or ``rwc``."""
+def is_busy(error: BaseException) -> bool:
+    """True if SQLite says that another process holds the file."""
+    return any(word in str(error) for word in ("locked", "busy"))
+
+
+def connect(path: Path, mode: str, timeout: float | None = None) -> sqlite3.Connection:
+    """A connection of the driver on a file; `mode` is ``ro``, ``rw`` or ``rwc``; it waits as long as a writer does."""
     # not through a database URL, which would decode the path a second time
     uri = f"file:{quote(str(path))}?mode={mode}"
-    return sqlite3.connect(uri, uri=True, timeout=BUSY_SECONDS, check_same_thread=False)
+    wait = BUSY_SECONDS if timeout is None else timeout
+    return sqlite3.connect(uri, uri=True, timeout=wait, check_same_thread=False)
 
 
 def harden(connection: sqlite3.Connection) -> None:
@@ -123,7 +135,7 @@ def _execute_patiently(connection: sqlite3.Connection, statement: str) -> sqlite
         except sqlite3.OperationalError as error:
             if error.sqlite_errorcode & 0xFF != sqlite3.SQLITE_BUSY or time.monotonic() >= until:
                 raise
-        time.sleep(0.001 + os.urandom(1)[0] / 25_600)
+        time.sleep(0.001 + os.urandom(1)[0] / 256 * _LONGEST_PAUSE)
 
 
 def _set_pragmas(connection: sqlite3.Connection, path: Path, write: bool) -> None:
@@ -135,7 +147,7 @@ def _set_pragmas(connection: sqlite3.Connection, path: Path, write: bool) -> Non
         found = _execute_patiently(connection, f"PRAGMA journal_mode={mode}").fetchone()[0]
         if found != mode:
             raise NotALibrary(str(path), f"SQLite keeps journal mode {found}, not {mode}")
-        wanted["synchronous"] = 2 if mode == "wal" else 3
+        wanted["synchronous"] = _SYNCHRONOUS[mode]
     for name, value in wanted.items():
         connection.execute(f"PRAGMA {name}={value}")
         found = connection.execute(f"PRAGMA {name}").fetchone()[0]

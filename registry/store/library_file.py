@@ -14,10 +14,11 @@ from sqlalchemy.exc import DatabaseError, OperationalError
 from registry.errors import BadInput, LibraryBusy, NotALibrary, RangebookError, quote
 from registry.merkle import root_from_nodes
 from registry.store import positions, reading
-from registry.store.engine import open_engine
+from registry.store.engine import is_busy, open_engine
 from registry.store.history import Change, Draft, append_change
-from registry.store.reading import Decision, Row, State
+from registry.store.reading import Decision, State
 from registry.store.recognition import check_file
+from registry.store.rows import DamagedRow, Row
 from registry.store.schema import create_file
 
 __all__ = ["LibraryFile", "View", "locate"]
@@ -189,7 +190,8 @@ class LibraryFile:
     def _driver_cursor(self) -> sqlite3.Cursor:
         # the driver's own connection: a statement costs a tenth of one through the engine
         with self._guard():
-            driver: sqlite3.Connection = self._engine().raw_connection().driver_connection  # type: ignore[assignment]
+            driver = self._engine().raw_connection().driver_connection
+            assert isinstance(driver, sqlite3.Connection)
             return driver.cursor()
 
     @contextmanager
@@ -197,11 +199,11 @@ class LibraryFile:
         """Database errors as what they mean to a user."""
         try:
             yield
-        except reading.DamagedRow as error:
+        except DamagedRow as error:
             raise NotALibrary(str(self.path), str(error)) from error
         except DatabaseError as error:
             text = str(error.orig)
-            if "locked" in text or "busy" in text:
+            if error.orig is not None and is_busy(error.orig):
                 raise LibraryBusy(str(self.path)) from error
             if isinstance(error, OperationalError) and any(word in text for word in _UNWRITABLE):
                 raise BadInput(f"{self.path} cannot be written: {text}. Nothing was changed.") from error

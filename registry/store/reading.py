@@ -7,19 +7,17 @@ does not grow with the history.
 
 from __future__ import annotations
 
-import json
-from collections.abc import Collection, Iterable, Iterator, Sequence
+from collections.abc import Iterable, Sequence
 from typing import Any, NamedTuple
 
 from sqlalchemy import Connection, TextClause, bindparam, select, text
 
-from registry.canonical import digest
-from registry.store.history import envelope, fold_term
+from registry.store.history import fold_term
+from registry.store.rows import COLUMNS, DamagedRow, Row, fetch_rows, restore_row, split_keys
 from registry.store.tables import record, standing, term
 
 __all__ = [
     "Decision",
-    "Row",
     "State",
     "find_term",
     "read_added",
@@ -31,21 +29,7 @@ __all__ = [
     "read_states",
     "read_terms",
     "read_waiting",
-]  # fmt: skip
-
-
-class DamagedRow(Exception):
-    """A row whose content is not what was recorded."""
-
-
-class Row(NamedTuple):
-    """One revision as stored."""
-
-    kind: str
-    key: str
-    revision: int
-    change: int
-    content: dict[str, Any]
+]
 
 
 class Decision(NamedTuple):
@@ -78,17 +62,10 @@ class State(NamedTuple):
     latest: Decision | None
 
 
-_COLUMNS = (
-    record.c.id, record.c.kind, record.c.key, record.c.revision, record.c.change, record.c.content, record.c.digest,
-)  # fmt: skip
 _POSITION: Any = bindparam("position")
 _KIND: Any = bindparam("kind")
 _KEY: Any = bindparam("key")
 _KEYS: Any = bindparam("keys", expanding=True)
-CHUNK = 500
-"""Keys or numbers that one statement takes."""
-
-_other = record.alias("other")
 
 # as SQL text: SQLAlchemy takes a millisecond to compile each of these from parts, a tenth of a whole first lookup
 _NEWEST = """(
@@ -102,9 +79,7 @@ _WORD = """(
 _NEWEST_ID = _NEWEST.format(column="id")
 _DECIDED = _WORD.format(which="standing.standing IN ('accepted', 'withdrawn')")
 # no word on a revision is older than it: the search ends there, however many words there are on those before
-_LATEST = _WORD.format(
-    which=f"standing.record = {_NEWEST_ID} AND standing.change >= {_NEWEST.format(column='change')}"
-)  # fmt: skip
+_LATEST = _WORD.format(which=f"standing.record = {_NEWEST_ID} AND standing.change >= {_NEWEST.format(column='change')}")
 _ALL_OF_KIND = "SELECT kind, key FROM record WHERE kind = :kind AND revision = 1 AND change <= :position"
 _SOME_OF_KIND = f"{_ALL_OF_KIND} AND key IN :keys"
 _LINKED = "SELECT DISTINCT kind, key FROM link WHERE to_kind = :to_kind AND to_key IN :keys AND change <= :position"
@@ -126,7 +101,7 @@ _STATES_BY_KIND, _STATES_BY_KEYS, _STATES_BY_LINK, _STATES_BY_LINK_OF_KIND = (
 )
 _TERMS = select(term.c.text, term.c.kind, term.c.key).where(term.c.change <= _POSITION)
 _REVISIONS = (
-    select(*_COLUMNS)
+    select(*COLUMNS)
     .where(record.c.kind == _KIND, record.c.key == _KEY, record.c.change <= _POSITION)
     .order_by(record.c.revision)
 )
@@ -135,10 +110,9 @@ _WORDS = (
     .where(standing.c.kind == _KIND, standing.c.key == _KEY, standing.c.change <= _POSITION)
     .order_by(standing.c.id)
 )
-_ADDED = (
-    select(*_COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == _KIND).order_by(record.c.place)
-)
+_ADDED = select(*COLUMNS).where(record.c.change == bindparam("number"), record.c.kind == _KIND).order_by(record.c.place)
 _VERDICTS = ("accepted", "declined", "withdrawn")
+_other = record.alias("other")
 _WAITING = (
     select(record.c.id)
     .where(
@@ -164,42 +138,18 @@ _WAITING = (
     )
     .order_by(record.c.id)
 )
-_BY_ID = select(*_COLUMNS).where(record.c.id.in_(bindparam("ids", expanding=True)))
 _DECISION_BY_ID = select(standing).where(standing.c.id.in_(bindparam("ids", expanding=True)))
-
-
-def _restore(kind: str, key: str, revision: int, number: int, content: str, expected: str) -> Row:
-    """A row as recorded: what was changed behind the program's back is noticed here."""
-    if digest(envelope(kind, key, revision, content)) != expected:
-        raise DamagedRow(f"the {kind} {key!r}, revision {revision}, is not what was recorded")
-    return Row(kind, key, revision, number, json.loads(content))
-
-
-def _chunks(items: Iterable[Any]) -> Iterator[list[Any]]:
-    wanted = sorted(set(items))
-    for start in range(0, len(wanted), CHUNK):
-        yield wanted[start : start + CHUNK]
-
-
-def _fetch_rows(connection: Connection, ids: Collection[int]) -> dict[int, Row]:
-    found: dict[int, Row] = {}
-    for chunk in _chunks(ids):
-        for number, *columns in connection.execute(_BY_ID, {"ids": chunk}):
-            found[number] = _restore(*columns)
-    if len(found) < len(set(ids)):
-        raise DamagedRow("what is derived from the records points at a record that is not there")
-    return found
 
 
 def _fetch_states(connection: Connection, found: Sequence[Any]) -> list[State]:
     """States from the numbers of their newest record, decision and latest word."""
     words: dict[int, Any] = {}
-    for chunk in _chunks(number for _, *pair in found for number in pair if number):
+    for chunk in split_keys(number for _, *pair in found for number in pair if number):
         words.update({word.id: word for word in connection.execute(_DECISION_BY_ID, {"ids": chunk})})
     if not all(newest for newest, _, _ in found):
         raise DamagedRow("what is derived from the records points at a key that is not there")
     wanted = {newest for newest, _, _ in found} | _records_of(words.values())
-    rows = _fetch_rows(connection, wanted)
+    rows = fetch_rows(connection, wanted)
 
     def decide(number: int | None) -> Decision | None:
         return _decide(words[number], rows) if number else None
@@ -235,12 +185,12 @@ def _says(cause: Row, about: tuple[str, str, int], verdict: str) -> bool:
 def read_added(connection: Connection, number: int, kind: str) -> list[Row]:
     """The records of one kind that a change has added, in order."""
     found = connection.execute(_ADDED, {"number": number, "kind": kind})
-    return [_restore(*columns) for _, *columns in found]
+    return [restore_row(*columns) for _, *columns in found]
 
 
 def _newest(connection: Connection, statement: TextClause, **values: Any) -> list[Row]:
     ids = list(connection.execute(statement, values).scalars())
-    rows = _fetch_rows(connection, ids)
+    rows = fetch_rows(connection, ids)
     return [rows[number] for number in ids]
 
 
@@ -252,7 +202,7 @@ def read_kind(connection: Connection, kind: str, position: int) -> list[Row]:
 def read_current(connection: Connection, kind: str, keys: Iterable[str], position: int) -> list[Row]:
     """The newest revisions under some keys of a kind; keys that are not there are passed over."""
     rows: list[Row] = []
-    for chunk in _chunks(keys):
+    for chunk in split_keys(keys):
         rows += _newest(connection, _NEWEST_BY_KEYS, kind=kind, keys=chunk, position=position)
     return rows
 
@@ -260,18 +210,18 @@ def read_current(connection: Connection, kind: str, keys: Iterable[str], positio
 def read_revisions(connection: Connection, kind: str, key: str, position: int) -> list[Row]:
     """Every revision of one record, in order."""
     found = connection.execute(_REVISIONS, {"kind": kind, "key": key, "position": position})
-    return [_restore(*columns) for _, *columns in found]
+    return [restore_row(*columns) for _, *columns in found]
 
 
 def read_decisions(connection: Connection, kind: str, key: str, position: int) -> list[Decision]:
     """Every word on the revisions of one record, in order."""
     ids = list(connection.execute(_WORDS, {"kind": kind, "key": key, "position": position}).scalars())
-    states: list[Decision] = []
-    for chunk in _chunks(ids):
+    decisions: list[Decision] = []
+    for chunk in split_keys(ids):
         words = sorted(connection.execute(_DECISION_BY_ID, {"ids": chunk}), key=lambda word: word.id)
-        rows = _fetch_rows(connection, _records_of(words))
-        states += [_decide(word, rows) for word in words]
-    return states
+        rows = fetch_rows(connection, _records_of(words))
+        decisions += [_decide(word, rows) for word in words]
+    return decisions
 
 
 def read_states(connection: Connection, position: int, kind: str, keys: Iterable[str] | None = None) -> list[State]:
@@ -280,7 +230,7 @@ def read_states(connection: Connection, position: int, kind: str, keys: Iterable
     if keys is None:
         return _fetch_states(connection, connection.execute(_STATES_BY_KIND, values).all())
     found: list[Any] = []
-    for chunk in _chunks(keys):
+    for chunk in split_keys(keys):
         found += connection.execute(_STATES_BY_KEYS, {**values, "keys": chunk}).all()
     return _fetch_states(connection, found)
 
@@ -288,14 +238,18 @@ def read_states(connection: Connection, position: int, kind: str, keys: Iterable
 def read_waiting(connection: Connection, kinds: Iterable[str], position: int) -> list[tuple[Row, str]]:
     """Newest revisions without a verdict, oldest first, each with the note on its arrival."""
     ids = list(connection.execute(_WAITING, {"kinds": list(kinds), "position": position}).scalars())
-    rows = _fetch_rows(connection, ids)
-    found: list[tuple[Row, str]] = []
-    for number in ids:
-        row = rows[number]
-        words = read_decisions(connection, row.kind, row.key, position)
-        notes = [word.cause.content.get("note", "") for word in words if word.revision == row.revision]
-        found.append((row, notes[-1] if notes else ""))
-    return found
+    rows = fetch_rows(connection, ids)
+    keys: dict[str, list[str]] = {}
+    for row in rows.values():
+        keys.setdefault(row.kind, []).append(row.key)
+    states = [state for kind, of_kind in keys.items() for state in read_states(connection, position, kind, of_kind)]
+    words = {state.newest[:2]: state.latest for state in states}
+
+    def note_on(row: Row) -> str:
+        word = words[row[:2]]
+        return "" if word is None else str(word.cause.content.get("note", ""))
+
+    return [(rows[number], note_on(rows[number])) for number in ids]
 
 
 def read_linked(
@@ -304,7 +258,7 @@ def read_linked(
     """Where the keys stand that refer, or once referred, to some records; of one kind if it is named."""
     found: dict[Any, None] = {}
     statement = _STATES_BY_LINK_OF_KIND if kind else _STATES_BY_LINK
-    for chunk in _chunks(to_keys):
+    for chunk in split_keys(to_keys):
         values = {"to_kind": to_kind, "keys": chunk, "position": position, **({"kind": kind} if kind else {})}
         found |= dict.fromkeys(connection.execute(statement, values).all())
     return _fetch_states(connection, list(found))

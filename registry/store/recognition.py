@@ -20,11 +20,11 @@ from typing import TypeVar
 
 from registry.errors import LibraryBusy, NewerLibrary, NoLibrary, NotALibrary, OlderLibrary, quote
 from registry.store import marks
-from registry.store.engine import connect, harden
+from registry.store.engine import connect, harden, is_busy
 from registry.store.shapes import SHAPES
 from registry.store.tables import APPLICATION_ID, SCHEMA
 
-__all__ = ["check_file", "check_shape", "connect_plainly", "digest_object", "read_version"]
+__all__ = ["check_file", "check_shape", "connect_plainly", "digest_object", "normalise_statement", "read_version"]
 
 T = TypeVar("T")
 
@@ -98,7 +98,7 @@ def connect_plainly(path: Path) -> sqlite3.Connection:
 
 
 def digest_object(kind: str, name: str, table: str, sql: str) -> str:
-    """A short digest of one object of a schema; blanks and quotes of names aside, which libraries set as they like.
+    """A short digest of one object of a schema.
 
     Examples
     --------
@@ -107,10 +107,22 @@ def digest_object(kind: str, name: str, table: str, sql: str) -> str:
     ... )
     True
     """
+    text = normalise_statement(sql)
+    return hashlib.sha256("\0".join((kind, name, table, text)).encode()).hexdigest()[:16]
+
+
+def normalise_statement(sql: str) -> str:
+    """A statement of a schema without what SQLAlchemy, Alembic and SQLite each write in their own way.
+
+    Examples
+    --------
+    >>> normalise_statement('CREATE TABLE t (\\n\\t"a" TEXT\\n)')
+    'CREATE TABLE t(a TEXT)'
+    """
     text = " ".join(sql.replace('"', "").split())
     for sign in "(),":
         text = text.replace(f" {sign}", sign).replace(f"{sign} ", sign)
-    return hashlib.sha256("\0".join((kind, name, table, text)).encode()).hexdigest()[:16]
+    return text
 
 
 def _stat(path: Path) -> os.stat_result:
@@ -149,7 +161,7 @@ def _ask_once(path: Path, question: Callable[[sqlite3.Connection], T]) -> T:
             return question(connection)
     except (sqlite3.Error, UnicodeDecodeError) as error:
         text = str(error)
-        if isinstance(error, sqlite3.OperationalError) and ("locked" in text or "busy" in text):
+        if isinstance(error, sqlite3.OperationalError) and is_busy(error):
             raise LibraryBusy(place) from error
         plain = "it is no SQLite file" if "is not a database" in text else f"SQLite says {quote_plainly(text)}"
         raise NotALibrary(place, plain) from error

@@ -14,7 +14,7 @@ from sqlalchemy import Connection, insert, text
 from sqlalchemy.exc import DatabaseError
 
 from registry.errors import BadInput, LibraryBusy, NewerLibrary, NotALibrary, RangebookError, quote
-from registry.store.engine import open_engine
+from registry.store.engine import is_busy, open_engine
 from registry.store.marks import mark_file
 from registry.store.recognition import check_shape, connect_plainly, read_version
 from registry.store.tables import APPLICATION_ID, METADATA, SCHEMA, library, trigger_statements
@@ -207,7 +207,7 @@ def _explain(path: Path, error: BaseException) -> RangebookError:
     """A failed upgrade as what it means to a user; it was rolled back."""
     inner = error.orig if isinstance(error, DatabaseError) else error
     why = error.strerror if isinstance(error, OSError) else str(inner)
-    if "locked" in str(why):
+    if isinstance(inner, sqlite3.Error) and is_busy(inner):
         return LibraryBusy(str(path))
     if isinstance(inner, sqlite3.OperationalError | OSError):
         return BadInput(f"{path} cannot be upgraded: {why}. Nothing was changed.")

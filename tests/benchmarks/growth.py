@@ -11,10 +11,10 @@ from typing import Any
 from invented import FIVE_WINDOWS, MARK, SOURCE
 from timing import compare
 
-from registry.holdings import draft_of
 from registry.judgement import judge
 from registry.library import Library
 from registry.opening import open_library, start_library
+from registry.plan import draft_of
 from registry.records import Compound, Preference, Record
 from registry.store.history import Draft
 

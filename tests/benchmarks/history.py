@@ -15,9 +15,9 @@ from typing import Any
 from invented import MARK, SOURCE, THREE_FORMS
 from timing import Measured, clock
 
-from registry.holdings import draft_of
 from registry.library import Library
 from registry.opening import open_library, start_library
+from registry.plan import draft_of
 from registry.records import Compound, Correlation
 from registry.store.history import Draft
 
