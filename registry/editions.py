@@ -11,30 +11,19 @@ from registry import rules
 from registry.entries import enter_newest
 from registry.errors import BadInput, UnknownKey, quote
 from registry.holdings import Holdings
+from registry.moments import format_time, show_time
 from registry.naming import nearest_names
 from registry.plan import Plan, draft_of
 from registry.records import Edition
 from registry.store.library_file import View
 
-__all__ = ["Position", "find_edition", "find_position", "format_time", "plan_edition", "root_at"]
+__all__ = ["Position", "find_edition", "find_position", "plan_edition", "root_at"]
 
 Position = int | str | date
 """The name of an edition, the number of a change, or a date (its end, UTC)."""
 
 _DAY = re.compile(r"\d{4}-\d\d-\d\d")
 _MOMENT = re.compile(r"\d{4}-\d\d-\d\d[T ]\d\d:\d\d(?::\d\d(?:\.\d{1,6})?)?Z")
-
-
-def format_time(moment: datetime) -> str:
-    """A UTC time as changes carry it: ISO 8601 with microseconds.
-
-    Examples
-    --------
-    >>> format_time(datetime(2026, 12, 1, tzinfo=UTC))
-    '2026-12-01T00:00:00.000000Z'
-    """
-    # not strftime, which on some systems writes years before 1000 without their zeros
-    return moment.replace(tzinfo=None).isoformat(timespec="microseconds") + "Z"
 
 
 def root_at(view: View, size: int) -> str:
@@ -171,6 +160,7 @@ def _find_before(view: View, text: str, start: datetime, length: timedelta) -> i
         bound = datetime.max
     found = view.find_position(format_time(bound))
     if not found:
-        first = view.change(1).recorded_at[:19] if view.position else "never"
-        raise BadInput(f"Nothing was recorded by {text}; the first change is of {first}Z.")
+        raise BadInput(
+            f"Nothing was recorded by {text}; the first change is of {show_time(view.change(1).recorded_at)}."
+        )
     return found

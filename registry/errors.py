@@ -29,6 +29,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
+from registry.moments import show_time
 from registry.naming import word_kind
 from registry.refusals import Refusal
 
@@ -265,7 +266,7 @@ class Conflict(RangebookError):
             "--theirs KEY takes what the package says, as a draft."
         ]
         for clash in self.conflicts[:SHOWN_CLASHES]:
-            when = f"{clash.recorded_at[:19]}Z"
+            when = show_time(clash.recorded_at)
             lines.append(
                 f"The {word_kind(clash.kind)} {clash.key}, here in revision {clash.revision} by {clash.author}, {when}:"
             )

@@ -140,7 +140,7 @@ def _find_reviewable(holdings: Holdings, key: str, standing: str, kind: str, aga
         raise _miss(holdings, key, kind, "reviewed", "counts as soon as it is recorded")
     waiting = [entry for entry in found if entry.standing == "draft"]
     ended = [entry for entry in found if entry.standing in ("declined", "withdrawn")]
-    if again and standing == "accepted":
+    if not waiting and again and standing == "accepted":
         # a withdrawal that was accepted is not reviewed again: what it withdrew is
         waiting = [entry for entry in ended if entry.record.kind != "withdrawal" or len(ended) == 1]
     if len(waiting) == 1:

@@ -12,13 +12,13 @@ from pathlib import Path
 from typing import Any
 
 from registry.archive import Archive
-from registry.editions import plan_edition
 from registry.errors import BadInput
 from registry.holdings import Holdings
+from registry.moments import now_utc
 from registry.naming import word_kind
 from registry.plan import Plan
 from registry.records import Record
-from registry.signature import Recorded, check_signature, now_utc
+from registry.signature import Recorded, check_signature
 
 __all__ = ["Library"]
 
@@ -246,6 +246,8 @@ class Library(Archive):
         BadInput
             If there is an edition of that name already.
         """
+        from registry.editions import plan_edition
+
         return self._append(author, note, lambda held: plan_edition(held, name, note.strip()))
 
     def keep(self, *, solo: bool, author: str) -> Recorded | None:

@@ -1,8 +1,10 @@
-"""What a formula says: molar mass and Hill order, from a maintained table of atomic weights."""
+"""What a formula says: molar mass and Hill order, by the atomic weights of the rules."""
 
 from __future__ import annotations
 
 from typing import Any
+
+from registry.atomic_weights import ATOMIC_WEIGHTS
 
 __all__ = ["formula_mass", "hill_formula"]
 
@@ -19,7 +21,8 @@ def formula_mass(formula: str) -> float:
     Returns
     -------
     float
-        Molar mass, g/mol, from standard atomic weights (package `molmass`).
+        Molar mass, g/mol, from the atomic weights of the rules; those of
+        isotopes from the package `molmass`, which reads the formula.
 
     Raises
     ------
@@ -34,9 +37,10 @@ def formula_mass(formula: str) -> float:
     import molmass
 
     try:
-        return float(_parse(formula).mass)
+        parts = list(_parse(formula).composition().values())
     except molmass.FormulaError as error:
         raise ValueError(f"{str(error).splitlines()[0]}; element symbols and counts are allowed.") from None
+    return float(sum(p.count * ATOMIC_WEIGHTS[p.symbol] if p.symbol in ATOMIC_WEIGHTS else p.mass for p in parts))
 
 
 def hill_formula(formula: str) -> str:

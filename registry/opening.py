@@ -8,9 +8,10 @@ from pathlib import Path
 from registry.errors import BadInput
 from registry.holdings import Holdings
 from registry.library import Library
+from registry.moments import now_utc
 from registry.plan import draft_of
 from registry.records import Keeping
-from registry.signature import check_signature, now_utc
+from registry.signature import check_signature
 from registry.store.library_file import LibraryFile, locate
 from registry.store.tables import SCHEMA
 

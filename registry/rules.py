@@ -4,8 +4,9 @@ An edition and a receipt carry the version; the same records, request and
 version give the same value. Nothing here changes under a version: a change
 makes a new one. Besides these numbers the version covers the ranking
 (`registry.ranking`), the confirmation of records from memory
-(`registry.confirmation`), the phase limits (`registry.limits`) and the
-temperature scales (`registry.scales`).
+(`registry.confirmation`), the phase limits (`registry.limits`), the
+temperature scales (`registry.scales`) and the atomic weights
+(`registry.atomic_weights`).
 """
 
 from __future__ import annotations

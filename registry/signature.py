@@ -3,20 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from datetime import UTC, datetime
 
 from registry.cells import SIGNED, TEXT, complain
-from registry.editions import format_time
 from registry.errors import BadInput, quote
 from registry.records import Record
 from registry.store.history import Change
 
-__all__ = ["Recorded", "check_signature", "now_utc"]
-
-
-def now_utc() -> str:
-    """The time now, UTC, ISO 8601 with microseconds."""
-    return format_time(datetime.now(UTC))
+__all__ = ["Recorded", "check_signature"]
 
 
 @dataclass(frozen=True)

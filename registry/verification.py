@@ -161,6 +161,8 @@ class _Verifier:
             if progress is not None and self._inspection.records >= told + step:
                 told = self._inspection.records
                 progress(told, total)
+        if not self._inspection.tree.size:
+            self._say("change", "there is none, and every library begins with one")
         if progress is not None:
             progress(total, total)
 

@@ -139,6 +139,21 @@ def test_a_view_only_reads_and_ends_with_its_library(library):
         view.lookup("brindovane", 400.0)
 
 
+def test_a_mass_from_a_formula_is_frozen_with_the_rules(monkeypatch):
+    """Another table of atomic weights in the package that reads formulas changes no mass; isotopes come from it."""
+    import molmass
+
+    from registry.masses import formula_mass
+
+    # frozen as molmass 2026.1.8 has them
+    assert formula_mass("H2O") == pytest.approx(2 * 1.007941 + 15.999405, rel=1e-15)
+    for formula in ("H2O", "C2H5OH", "CaCO3", "[3He]", "D2O"):
+        assert formula_mass(formula) == pytest.approx(molmass.Formula(formula, parse_groups=False).mass, rel=1e-6)
+    before = formula_mass("C2H5OH")
+    monkeypatch.setattr(molmass.ELEMENTS["C"], "mass", 99.0)
+    assert formula_mass("C2H5OH") == before
+
+
 def test_names_are_found_as_they_were(library):
     """A compound that was renamed is found by its old name at an earlier position, and by the new one now."""
     compound = library.newest("brindovane").record

@@ -35,8 +35,8 @@ def run(tmp_path, capsys, monkeypatch):
     return call
 
 
-def _verdict(run, word: str) -> str:
-    code, out, _ = run("review", LOW, word, "--note", "compared", "--as", "bob")
+def _verdict(run, *words: str) -> str:
+    code, out, _ = run("review", LOW, *words, "--note", "compared", "--as", "bob")
     assert code == 0
     return out.partition(": ")[2].splitlines()[0]
 
@@ -48,10 +48,11 @@ def test_a_verdict_on_a_withdrawal_is_not_taken_for_one_on_the_record(run):
     assert _verdict(run, "--decline") == f"{subject} stays as it was: its withdrawal was declined."
     run("withdraw", LOW, *ERRATUM)
     assert _verdict(run, "--accept") == f"{subject} withdrawn."
-    assert _verdict(run, "--accept") == f"{subject} accepted again; it was withdrawn (invented erratum)."
+    assert _verdict(run, "--accept", "--again") == f"{subject} accepted again; it was withdrawn (invented erratum)."
     run("revise", LOW, "--set", "note=first", "--reason", "invented")
     assert _verdict(run, "--decline") == f"{subject}, revision 2, declined."
-    assert _verdict(run, "--accept") == f"{subject}, revision 2, accepted again; it was declined (compared)."
+    told = f"{subject}, revision 2, accepted again; it was declined (compared)."
+    assert _verdict(run, "--accept", "--again") == told
     run("revise", LOW, "--set", "note=second", "--reason", "invented")
     assert _verdict(run, "--accept") == f"{subject}, revision 3, accepted."
 

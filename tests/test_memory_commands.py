@@ -189,7 +189,7 @@ def test_the_queue_tells_who_waits_since_when_and_why(run, monkeypatch):
     assert len(_json(run, "queue", "--as-of", "1")["waiting"]) == len(waiting) - 1
     monkeypatch.setenv("COLUMNS", "100")
     out = run("queue")[1]
-    assert re.search(r"withdrawal +brindovane-kirchhoff r1 +not screened +misprint\n", out)
+    assert re.search(r"withdrawal +brindovane-kirchhoff r1 +misprint\n", out)
 
 
 def test_withdrawing_a_source_lists_what_rests_on_it(run):

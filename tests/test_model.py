@@ -141,12 +141,12 @@ class TeamsLibrary(RuleBasedStateMachine):
         if wanted and name in self.model.state and self.model.state[name].waits:
             self.review(name, True, False, "Looked at it.")
 
-    def review(self, name: Name, accept: bool, own: bool, note: str) -> None:
+    def review(self, name: Name, accept: bool, own: bool, note: str, again: bool = False) -> None:
         kind, key = name
         recorded_by = self.model.state[name].revisions[-1].author
         author = recorded_by if own else next(person for person in PEOPLE if person != recorded_by)
         self.both(
-            lambda: self.library.review(key, accept=accept, author=author, note=note, kind=kind),
+            lambda: self.library.review(key, accept=accept, author=author, note=note, kind=kind, again=again),
             lambda: self.model.review(name, accept, author, note),
         )
 
@@ -162,7 +162,7 @@ class TeamsLibrary(RuleBasedStateMachine):
     def review_what_was_decided(self, data: Any, odd: int, own: int, note: str) -> None:
         """Accept again what was declined or withdrawn; seldom something else, which is refused."""
         names = self.ended() if odd < 8 else list(self.model.state)
-        self.review(data.draw(st.sampled_from(names)), odd < 9, own == 9, note)
+        self.review(data.draw(st.sampled_from(names)), odd < 9, own == 9, note, again=True)
 
     def ended(self) -> list[Name]:
         return [name for name, held in self.model.state.items() if held.verdict()[0] in ("declined", "withdrawn")]

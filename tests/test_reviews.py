@@ -83,7 +83,9 @@ def test_what_was_declined_may_be_accepted_after_all(library):
     """A reviewer who changes their mind accepts the same revision, and both words stay in the history."""
     library.record(FIRST, **WHEN)
     library.review("brindovane-new", accept=False, **LOOK)
-    library.review("brindovane-new", accept=True, **LOOK)
+    with pytest.raises(BadInput, match=r"is declined\. To accept after all .*, add --again"):
+        library.review("brindovane-new", accept=True, **LOOK)
+    library.review("brindovane-new", accept=True, again=True, **LOOK)
     assert [e.what for e in library.history("brindovane-new")] == ["recorded", "declined", "accepted"]
 
 
@@ -131,7 +133,10 @@ def test_a_withdrawal_waits_and_then_ends_the_answers(library):
         library.lookup("brindovane", 400.0)
     with pytest.raises(BadInput, match="is withdrawn already"):
         library.withdraw("brindovane-kirchhoff", **WHEN)
-    library.review("brindovane-kirchhoff", accept=True, **LOOK)
+    # said twice, a verdict does not undo itself
+    with pytest.raises(BadInput, match="add --again"):
+        library.review("brindovane-kirchhoff", accept=True, **LOOK)
+    library.review("brindovane-kirchhoff", accept=True, again=True, **LOOK)
     assert _answering(library, 400.0)[0] == "brindovane-kirchhoff"
     library.withdraw("brindovane-kirchhoff", **WHEN)
     library.review("brindovane-kirchhoff", accept=False, **LOOK)
@@ -184,7 +189,7 @@ def test_withdrawing_a_source_takes_along_what_rests_on_it(library):
     library.review("brindovane-new", accept=True, **LOOK)
     with pytest.raises(LookupError):
         library.lookup("brindovane", 330.0)
-    library.review(source, accept=True, **LOOK)
+    library.review(source, accept=True, again=True, **LOOK)
     assert _answering(library, 410.0)[0] == "brindovane-kirchhoff"
     assert _answering(library, 330.0)[0] == "brindovane-new"
 
@@ -216,7 +221,7 @@ def test_a_preference_decides_once_accepted_and_no_more_when_withdrawn(library):
     again = library.prefer("brindovane-new", "brindovane-kirchhoff", **WHEN)
     library.review(again.record.key, accept=True, **LOOK)
     with pytest.raises(BadInput, match="would go round in a circle"):  # reinstating the first one would
-        library.review(done.record.key, accept=True, **LOOK)
+        library.review(done.record.key, accept=True, again=True, **LOOK)
 
 
 def test_a_preference_is_for_one_thing(library):

@@ -20,7 +20,8 @@ MODULES = sorted(
 
 LAYERS = (
     # what stands lower never imports what stands higher; within a layer, modules may import each other
-    {"refusals", "numerals", "rules", "canonical", "merkle", "naming", "polynomial", "sampling"},
+    {"refusals", "numerals", "rules", "canonical", "merkle", "naming", "polynomial", "atomic_weights", "sampling"},
+    {"moments"},
     {"errors"},
     {"quantities", "properties", "cells", "scales", "shelves"},
     {"display"},

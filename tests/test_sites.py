@@ -245,7 +245,7 @@ def _play(library, script: str) -> None:
     for word in script.split():
         if word == "-":
             library.withdraw(KEY, author="ann", reason="an invented slip", accept=True)
-            library.review(KEY, accept=True, author="ann", note="it was none")
+            library.review(KEY, accept=True, again=True, author="ann", note="it was none")
         else:
             _note(library, f"content {word.lstrip('?')}", reviewer="" if word.startswith("?") else "ann")
 

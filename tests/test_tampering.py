@@ -399,7 +399,9 @@ def test_a_library_without_the_record_of_itself_is_noted(libraries, tmp_path):
             name, started_at = view.identity()
     LibraryFile.create(path, name, started_at, lambda file: None)
     found = _verify(path)
-    assert (found.holds, found.changes, len(found.notes)) == (True, 0, 1)
+    # and one from which everything was taken is none that holds
+    assert [str(finding) for finding in found.findings] == ["change: there is none, and every library begins with one"]
+    assert (found.holds, found.changes, len(found.notes)) == (False, 0, 1)
     assert found.root == "0:" + sha256().hexdigest()
 
 

@@ -18,6 +18,7 @@ from registry.cli.options import (
 )
 from registry.cli.screen import emphasize, print_facts, print_json, say
 from registry.errors import BadInput
+from registry.moments import show_time
 
 
 def freeze(
@@ -74,7 +75,7 @@ def editions(
         print_facts(
             (
                 ("position", f"change {record.position}, rules {record.rules}"),
-                ("frozen", f"{change.recorded_at[:19]}Z by {change.author}, change {change.number}"),
+                ("frozen", f"{show_time(change.recorded_at)} by {change.author}, change {change.number}"),
                 ("note", record.note),
                 ("root", record.root),
             )

@@ -8,6 +8,7 @@ import typer
 
 from registry.cli.options import AsOfOption, EditionOption, JsonOption, KindOption, LibraryOption, look_at, open_chosen
 from registry.cli.screen import emphasize, name_past, print_facts, print_json, say
+from registry.moments import show_time
 
 if TYPE_CHECKING:
     from registry.chronicle import Event, RecordChange
@@ -45,7 +46,7 @@ def _print_event(event: Event) -> None:
 
     revision = f", revision {event.revision}" if event.revision else ""
     say()
-    when = f"change {event.change.number}  {event.change.recorded_at[:19]}Z"
+    when = f"change {event.change.number}  {show_time(event.change.recorded_at)}"
     say(f"  {when}  {event.change.author}: {event.what}{revision}")
     note = event.note if event.note != event.change.reason else ""
     facts = [("why", event.change.reason), ("note", note), ("from", event.origin)]

@@ -10,6 +10,7 @@ from registry.cli.screen import emphasize, name_past, print_facts, print_table, 
 from registry.dossier import Entry
 from registry.exchange.coefficients import join_coefficients
 from registry.forms.catalogue import FORMS
+from registry.moments import show_time
 from registry.naming import word_kind
 from registry.records import Correlation, Dataset, FixedPoint, PrintedValue, Record, Source
 from registry.store.history import Change
@@ -41,7 +42,7 @@ def print_record(
 
 def _word_change(change: Change) -> str:
     """A change as a line: number, author, time to the second, reason."""
-    return f"change {change.number} by {change.author}, {change.recorded_at[:19]}Z: {change.reason}"
+    return f"change {change.number} by {change.author}, {show_time(change.recorded_at)}: {change.reason}"
 
 
 def _word_review(entry: Entry[Any], changes: dict[int, Change]) -> str:
