@@ -7,7 +7,7 @@ from typing import Any
 
 from registry.dossier import Entry
 from registry.editions import Position, find_position, root_at
-from registry.entries import enter_all, enter_states, rest_on, restore, withdrawn_sources, word_cause
+from registry.entries import enter_all, enter_newest, enter_states, rest_on, restore, withdrawn_sources, word_cause
 from registry.exchange.layout import PACKED
 from registry.exchange.provenance import Provenance, digest_content
 from registry.records import Source, Withdrawal
@@ -37,27 +37,37 @@ def select_since(view: View, since: Position) -> tuple[list[Entry[Any]], Provena
     Returns
     -------
     list of Entry
-        Each key in the revision that counts. With a source that was withdrawn
-        since, or accepted again, goes everything that rests on it.
+        Each key in the revision that counts; where that is as it was, in the
+        draft that waits over it. With a source that was withdrawn since, or
+        accepted again, goes everything that rests on it.
     Provenance
         What lets another library tell its own revisions from these.
     """
     then = view.at(find_position(view, since))
     touched, judged = _find_touched(view, then.position)
-    entries = _enter(view, touched | {(entry.record.kind, entry.key) for entry in rest_on(view, judged)})
+    names = touched | {(entry.record.kind, entry.key) for entry in rest_on(view, judged)}
+    before = {(entry.record.kind, entry.key): entry for entry in _enter(then, names)}
+    entries = [_choose_new(view, entry, before.get((entry.record.kind, entry.key))) for entry in _enter(view, names)]
     bases: dict[str, dict[str, str]] = {}
     earlier: dict[str, dict[str, list[str]]] = {}
-    for entry in _enter(then, {(e.record.kind, e.key) for e in entries}):
-        bases.setdefault(entry.record.kind, {})[entry.key] = digest_content(entry.record.content())
+    for (kind, key), entry in before.items():
+        bases.setdefault(kind, {})[key] = digest_content(entry.record.content())
     for entry in entries:
         rows = view.revisions(entry.record.kind, entry.key)
-        if before := [digest_content(row.content) for row in rows if row.revision < entry.revision]:
-            earlier.setdefault(entry.record.kind, {})[entry.key] = before
+        if digests := [digest_content(row.content) for row in rows if row.revision < entry.revision]:
+            earlier.setdefault(entry.record.kind, {})[entry.key] = digests
     name, _ = view.identity()
     withdrawn = _find_withdrawn(view, entries, judged)
     return entries, Provenance(
         name, root_at(view, view.position), str(since), root_at(view, then.position), bases, earlier, withdrawn
     )
+
+
+def _choose_new(view: View, entry: Entry[Any], before: Entry[Any] | None) -> Entry[Any]:
+    """What is new of a key: the revision that counts, or the draft over it if that counted then already."""
+    if not entry.waiting or before is None or (before.revision, before.standing) != (entry.revision, entry.standing):
+        return entry
+    return enter_newest(view.states(entry.record.kind, [entry.key])[0])
 
 
 def _find_touched(view: View, since: int) -> tuple[Names, set[str]]:

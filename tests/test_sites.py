@@ -60,6 +60,23 @@ def _keys(package: Path) -> set[str]:
     return {line.split(",")[0] for of_file in lines for line in of_file}
 
 
+def test_a_draft_over_what_counted_then_travels_as_one(sites, tmp_path):
+    """A revision that nobody has reviewed yet is new too; one over a revision accepted since stays behind it."""
+    a, b = sites
+    _note(a, "a draft", reviewer="")
+    _note(a, "accepted since", OTHER)
+    _note(a, "a draft over it", OTHER, reviewer="")
+    rows = a.dump(tmp_path / "package", since="start")
+    assert (rows["correlations.csv"], rows["waiting"]) == (2, 1)
+    assert b.load(tmp_path / "package", author="bob")["revised"] == 2
+    assert {w.record.key: w.record.note for w in b.queue() if w.what == "revision"} == {
+        KEY: "a draft", OTHER: "accepted since",
+    }  # fmt: skip
+    b.review(KEY, accept=True, author="bea", note="compared with the page")
+    assert b.entry(KEY).record.note == "a draft"
+    assert a.entry(KEY).waiting == 2
+
+
 def test_what_is_new_arrives_as_drafts_and_then_answers_alike(sites, tmp_path):
     """A corrects and freezes; B loads what is new: nothing answers until B reviews it, then both answer alike."""
     a, b = sites
@@ -103,7 +120,7 @@ def test_only_what_was_touched_since_is_written(sites, tmp_path):
     assert _keys_of(a, tmp_path / "reviewed", since="start") == {draft.key}
     _note(a, "a draft that waits", reviewer="")
     rows = a.dump(tmp_path / "waiting", since=a.position - 1)
-    assert rows["waiting"] == 1
+    assert (rows["correlations.csv"], "waiting" in rows) == (1, False)
     said = _read(tmp_path / "waiting")
     assert said["since"]["position"] == a.position - 1
     assert said["position"] == a.position
