@@ -24,6 +24,7 @@ from integrity import find_faults
 from old_library import make_old_library
 
 from registry.opening import open_library, start_library
+from registry.store import schema
 from registry.store.recognition import read_version
 
 NOBODY = 65534
@@ -157,6 +158,9 @@ def main() -> None:
         folder = Path(name)
         folder.chmod(0o755)
         make_template(folder)
+        # the program may lie where nobody else can read; its modules are imported by then, its migrations are read
+        migrations = Path(shutil.copytree(schema.find_migrations(), folder / "migrations"))
+        schema.find_migrations = lambda: migrations
         # imports whatever is needed while that can be read
         for operation, perform in DOING.items():
             perform(_prepare(folder, operation), 1)
