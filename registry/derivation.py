@@ -120,15 +120,19 @@ class Derivation:
             self._resolve()
         if self._judged:
             self._judge(last_id)
-        for table, new in (("link", self._links), ("term", self._terms)):
-            if new:
-                if len(new) > 1:
-                    _sort(new)  # as the store does: equal runs are compared at once
-                self._tables[table].expected += new
-                new.clear()
+        if self._links:
+            self._expect("link", self._links)
+        if self._terms:
+            self._expect("term", self._terms)
         if number % PACE == 0:
             for matching in self._tables.values():
                 matching.settle(number)
+
+    def _expect(self, table: str, new: list[Stored]) -> None:
+        if len(new) > 1:
+            _sort(new)  # as the store does: equal runs are compared at once
+        self._tables[table].expected += new
+        new.clear()
 
     def finish(self, number: int) -> None:
         """Compare what is left, up to the last change and beyond."""

@@ -128,8 +128,9 @@ class Inspection:
         if header is not None and header[4] != place and isinstance(header[4], int):
             self._firsts += [self._first + header[4], self._first + len(digests)]
         self._derivation.settle(number, self._first + place - 1)
-        for edition, content in self.editions[editions:]:
-            self._check_edition(edition, content)
+        if len(self.editions) > editions:
+            for edition, content in self.editions[editions:]:
+                self._check_edition(edition, content)
         self.tree.add(self._read_header(number, header, digests, stored))
 
     def _pass_over(self, number: float) -> Stored | None:

@@ -6,8 +6,8 @@ is split at the largest power of two below its size.
 
 from __future__ import annotations
 
-import hashlib
 from collections.abc import Callable, Sequence
+from hashlib import sha256
 
 __all__ = [
     "EMPTY_ROOT",
@@ -23,18 +23,18 @@ __all__ = [
 NodeAt = Callable[[int, int], bytes]
 """Gives a complete node by level (0 is leaves) and index."""
 
-EMPTY_ROOT = hashlib.sha256().digest()
+EMPTY_ROOT = sha256().digest()
 """The root of the empty tree."""
 
 
 def hash_leaf(data: bytes) -> bytes:
     """The hash of a leaf."""
-    return hashlib.sha256(b"\x00" + data).digest()
+    return sha256(b"\x00" + data).digest()
 
 
 def hash_node(left: bytes, right: bytes) -> bytes:
     """The hash of an inner node."""
-    return hashlib.sha256(b"\x01" + left + right).digest()
+    return sha256(b"\x01" + left + right).digest()
 
 
 def root_of(leaves: Sequence[bytes]) -> bytes:
