@@ -23,6 +23,7 @@ __all__ = [
     "plan_preference",
     "plan_review",
     "plan_withdrawal",
+    "propose",
     "propose_withdrawal",
     "withdraw_at_once",
 ]
@@ -49,7 +50,13 @@ def _withdraw(record: Record, revision: int, cause: str, reason: str) -> Withdra
 def withdraw_at_once(holdings: Holdings, record: Record, revision: int, cause: str, reason: str) -> list[Draft]:
     """A withdrawal together with its acceptance."""
     withdrawal = _withdraw(record, revision, cause, reason)
-    return [draft_of(withdrawal), judge(withdrawal, _next_revision(holdings, withdrawal), "accepted", "")]
+    return list(propose(withdrawal, _next_revision(holdings, withdrawal), accept=True).drafts)
+
+
+def propose(record: Record, revision: int, *, accept: bool) -> Plan:
+    """A record, and with it its acceptance if that is wanted and it is reviewed at all."""
+    accepted = [judge(record, revision, "accepted", "")] if accept and record.kind in REVIEWED else []
+    return Plan((draft_of(record), *accepted), record, revision)
 
 
 def _next_revision(holdings: Holdings, record: Record) -> int:
@@ -191,7 +198,7 @@ def plan_withdrawal(
         If several records have the key, or it is withdrawn already, or its
         withdrawal waits for review.
     """
-    kinds = [kind] if kind else list(WITHDRAWN)
+    kinds = [each for each in WITHDRAWN if kind in ("", each)]
     found = [entry for each in kinds if (entry := holdings.counting(each, key)) is not None]
     if not found:
         raise _miss(holdings, key, kind, "withdrawn", "is corrected by `rangebook revise`")
@@ -207,9 +214,7 @@ def plan_withdrawal(
             f"A withdrawal of the {word_kind(record.kind)} {key} waits for review already: {before.record.reason}"
         )
     withdrawal = _withdraw(record, entry.revision, cause, reason)
-    revision = _next_revision(holdings, withdrawal)
-    drafts = [draft_of(withdrawal), *([judge(withdrawal, revision, "accepted", "")] if accept else [])]
-    return Plan(tuple(drafts), withdrawal, revision)
+    return propose(withdrawal, _next_revision(holdings, withdrawal), accept=accept)
 
 
 def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, accept: bool = False) -> Plan:
@@ -233,9 +238,7 @@ def plan_preference(holdings: Holdings, key: str, over: str, reason: str, *, acc
     if before is not None and before.standing in ("accepted", "draft"):
         raise BadInput(f"{key} is preferred over {over} already ({before.standing}): {before.record.reason}")
     _check_round(holdings, record)
-    revision = _next_revision(holdings, record)
-    drafts = [draft_of(record), *([judge(record, revision, "accepted", "")] if accept else [])]
-    return Plan(tuple(drafts), record, revision)
+    return propose(record, _next_revision(holdings, record), accept=accept)
 
 
 def _check_round(holdings: Holdings, record: Preference) -> None:

@@ -5,10 +5,10 @@ from __future__ import annotations
 from registry.admission import check_identity, check_kinship, check_references, check_value
 from registry.errors import BadInput, InvalidRecord, UnknownKey
 from registry.holdings import Holdings, check_expected
-from registry.judgement import judge
+from registry.judgement import propose
 from registry.naming import word_kind
-from registry.plan import Plan, draft_of
-from registry.records import RECORDED, REVIEWED, Record
+from registry.plan import Plan
+from registry.records import RECORDED, Record
 
 __all__ = ["plan_record", "plan_revision"]
 
@@ -81,7 +81,4 @@ def _plan(holdings: Holdings, record: Record, revision: int, accept: bool) -> Pl
     problems = [*check_references(record, holdings.record), *check_kinship(record, holdings.record)]
     if problems := problems or list(check_value(record, holdings.record)):
         raise InvalidRecord(record.kind, record.key, problems)
-    drafts = [draft_of(record)]
-    if accept and record.kind in REVIEWED:
-        drafts.append(judge(record, revision, "accepted", ""))
-    return Plan(tuple(drafts), record, revision)
+    return propose(record, revision, accept=accept)

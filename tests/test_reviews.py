@@ -147,6 +147,16 @@ def test_a_withdrawal_waits_and_then_ends_the_answers(library):
     ]  # fmt: skip
 
 
+@pytest.mark.parametrize(
+    ("kind", "key"), [("compound", "brindovane"), ("review", "correlation:brindovane-kirchhoff@1")]
+)
+def test_what_has_no_standing_is_not_withdrawn(kind, key, library):
+    """Naming the kind does not make a withdrawal of what none could take out."""
+    with pytest.raises(BadInput, match=f"The {kind} .* is not withdrawn"):
+        library.withdraw(key, kind=kind, **WHEN)
+    assert library.position == 2
+
+
 def test_a_draft_over_a_withdrawn_revision_brings_it_back_once_accepted(library):
     """Revising what is withdrawn proposes it anew."""
     library.withdraw("brindovane-kirchhoff", **WHEN)
