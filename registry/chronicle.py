@@ -21,6 +21,7 @@ __all__ = [
     "RecordChange",
     "compare_contents",
     "find_affected",
+    "find_touched",
     "list_events",
     "list_record_changes",
 ]
@@ -30,6 +31,10 @@ TOLD = (
     "library",
 )  # fmt: skip
 """Kinds that a comparison lists; reviews and withdrawals show in the standing of what they are about."""
+
+
+Touched = Mapping[str, set[str]]
+"""Keys by kind."""
 
 
 @dataclass(frozen=True)
@@ -210,20 +215,21 @@ def _list_preferences(view: View, key: str) -> Iterator[Event]:
             yield Event(view.change(decision.change), f"preference {decision.standing}", 0, said)
 
 
-def list_record_changes(before: View, after: View) -> list[RecordChange]:
+def list_record_changes(before: View, after: View, keys: Touched) -> list[RecordChange]:
     """What differs between two positions, record by record.
 
     Parameters
     ----------
     before, after : View
         The library at either position; they may stand in any order.
+    keys : mapping
+        What `find_touched` gives for them.
 
     Returns
     -------
     list of RecordChange
         By kind and key.
     """
-    keys = _touched(before, after)
     found: list[RecordChange] = []
     for kind in TOLD:
         one = {e.key: e for e in _enter(before, kind, keys.get(kind, ()))}
@@ -237,7 +243,7 @@ def _enter(view: View, kind: str, keys: Any) -> list[Entry[Any]]:
     return enter_states(view, view.states(kind, keys)) if keys else []
 
 
-def _touched(before: View, after: View) -> dict[str, set[str]]:
+def find_touched(before: View, after: View) -> Touched:
     """Every key that the changes between two positions have something to do with, by kind."""
     early, late = sorted((before, after), key=lambda view: view.position)
     keys: dict[str, set[str]] = {}
@@ -284,13 +290,12 @@ def _name_change(one: Entry[Any] | None, two: Entry[Any] | None) -> str:
     return "reinstated" if one.standing in ("withdrawn", "declined") else two.standing
 
 
-def find_affected(before: View, after: View) -> list[str]:
-    """The compounds whose answers may differ between two positions."""
+def find_affected(before: View, after: View, keys: Touched) -> list[str]:
+    """The compounds whose answers may differ between two positions, by what `find_touched` gives for them."""
     late = max(before, after, key=lambda view: view.position)
-    keys = _touched(before, after)
-    found = set(keys.get("compound", ()))
     pairs = late.current("preference", keys.get("preference", ()))
-    keys.setdefault("correlation", set()).update(row.content["correlation"] for row in pairs)
-    for kind in ("correlation", "fixed-point", "dataset"):
-        found |= {row.content["compound"] for row in late.current(kind, keys.get(kind, ()))}
+    preferred = {row.content["correlation"] for row in pairs}
+    found = set(keys.get("compound", ()))
+    for kind, more in (("correlation", preferred), ("fixed-point", set()), ("dataset", set())):
+        found |= {row.content["compound"] for row in late.current(kind, keys.get(kind, set()) | more)}
     return sorted(found)

@@ -7,7 +7,14 @@ from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Any
 
-from registry.chronicle import FieldChange, RecordChange, compare_contents, find_affected, list_record_changes
+from registry.chronicle import (
+    FieldChange,
+    RecordChange,
+    compare_contents,
+    find_affected,
+    find_touched,
+    list_record_changes,
+)
 from registry.comparison import NumberChange, compare_curves, compare_dossiers
 from registry.curve import Curve
 from registry.deviation import Deviation
@@ -65,12 +72,14 @@ class Preview:
 
 def find_difference(before: View, after: View) -> Difference:
     """What differs between two positions of a library, each as a view."""
+    keys = find_touched(before, after)
     numbers = [
         change
-        for compound in find_affected(before, after)
+        for compound in find_affected(before, after, keys)
         for change in compare_dossiers(_read_dossier(before, compound), _read_dossier(after, compound))
     ]
-    return Difference(before.position, after.position, tuple(numbers), tuple(list_record_changes(before, after)))
+    records = list_record_changes(before, after, keys)
+    return Difference(before.position, after.position, tuple(numbers), tuple(records))
 
 
 def _read_dossier(view: View, compound: str) -> Dossier | None:

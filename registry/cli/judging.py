@@ -71,14 +71,11 @@ def _word_verdict(book: Library, done: Recorded, accept: bool) -> str:
         return "withdrawn" if accept else "stays as it was: its withdrawal was declined"
     if not accept:
         return ""
-    verdicts = [
-        event for event in book.history(done.record.key, done.record.kind)
-        if event.revision == done.revision and event.what in ("accepted", "declined", "withdrawn")
-    ]  # fmt: skip
-    before = next((event for event in reversed(verdicts) if event.change.number < done.change.number), None)
-    if before is None or before.what == "accepted":
+    before = book.at(done.change.number - 1).newest(done.record.key, done.record.kind)
+    if before.standing not in ("declined", "withdrawn"):
         return ""
-    return f"accepted again; it was {before.what} ({before.note or before.change.reason})"
+    said = before.standing_note or book.change(before.reviewed_in).reason
+    return f"accepted again; it was {before.standing} ({said})"
 
 
 def withdraw(

@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from registry.errors import BadInput
+from registry.errors import BadInput, quote
 
 if TYPE_CHECKING:
     from registry.archive import Archive
@@ -56,7 +56,6 @@ AcceptOption = Annotated[
 
 
 def _check_kind(kind: str) -> str:
-    from registry.errors import BadInput, quote
     from registry.naming import join_names
     from registry.records import KINDS
 

@@ -114,7 +114,7 @@ _ADDED = select(*COLUMNS).where(record.c.change == bindparam("number"), record.c
 _VERDICTS = ("accepted", "declined", "withdrawn")
 _other = record.alias("other")
 _WAITING = (
-    select(record.c.id)
+    select(record.c.kind, record.c.key)
     .where(
         record.c.kind.in_(bindparam("kinds", expanding=True)),
         record.c.change <= _POSITION,
@@ -237,19 +237,17 @@ def read_states(connection: Connection, position: int, kind: str, keys: Iterable
 
 def read_waiting(connection: Connection, kinds: Iterable[str], position: int) -> list[tuple[Row, str]]:
     """Newest revisions without a verdict, oldest first, each with the note on its arrival."""
-    ids = list(connection.execute(_WAITING, {"kinds": list(kinds), "position": position}).scalars())
-    rows = fetch_rows(connection, ids)
+    found = [tuple(name) for name in connection.execute(_WAITING, {"kinds": list(kinds), "position": position})]
     keys: dict[str, list[str]] = {}
-    for row in rows.values():
-        keys.setdefault(row.kind, []).append(row.key)
+    for kind, key in found:
+        keys.setdefault(kind, []).append(key)
     states = [state for kind, of_kind in keys.items() for state in read_states(connection, position, kind, of_kind)]
-    words = {state.newest[:2]: state.latest for state in states}
+    by_name = {state.newest[:2]: state for state in states}
+    return [(by_name[name].newest, _note_of(by_name[name].latest)) for name in found]
 
-    def note_on(row: Row) -> str:
-        word = words[row[:2]]
-        return "" if word is None else str(word.cause.content.get("note", ""))
 
-    return [(rows[number], note_on(rows[number])) for number in ids]
+def _note_of(word: Decision | None) -> str:
+    return "" if word is None else str(word.cause.content.get("note", ""))
 
 
 def read_linked(
