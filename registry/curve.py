@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
 
@@ -45,7 +46,7 @@ class Curve:
     window: tuple[float, float]
 
     @classmethod
-    def of(cls, correlation: Correlation, molar_mass: float) -> Curve:
+    def of(cls, correlation: Correlation, molar_mass: float, instead: Mapping[str, float] | None = None) -> Curve:
         """The curve of a correlation.
 
         Parameters
@@ -55,6 +56,8 @@ class Curve:
         molar_mass : float
             Molar mass of the compound, g/mol; used where the printed unit is
             on the other basis and the source gives no molar mass of its own.
+        instead : mapping of str to float, optional
+            Coefficients to take in place of the printed ones.
 
         Returns
         -------
@@ -75,6 +78,7 @@ class Curve:
         """
         unit, temperature = UNITS[correlation.value_unit], UNITS[correlation.temperature_unit]
         c = {name: to_float(text) for name, text in correlation.coefficients.items()}
+        c.update(instead or {})
         factor = float(unit.factor) * (c.get("M", molar_mass) if unit.per_molar_mass else 1.0)
         units = Units(factor, float(1 / temperature.factor), float(temperature.shift))
         folded = FORMS[correlation.form].fold(c, units)

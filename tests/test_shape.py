@@ -26,13 +26,15 @@ LAYERS = (
     {"quantities", "properties", "cells", "scales", "shelves"},
     {"display"},
     {"uncertainty", "forms", "masses"},
+    {"readings"},
     {"records"},
     {"curve", "dossier"},
+    {"rounding"},
     {"admission"},
     {"confirmation"},
     {"limits"},
     {"candidate"},
-    {"ranking", "evaluation", "deviation"},
+    {"ranking", "evaluation", "deviation", "budget"},
     {"coverage"},
     {"comparison"},
     {"verdicts"},
@@ -58,6 +60,7 @@ LAYERS = (
 NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
+    "readings", "rounding", "budget",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 
