@@ -29,7 +29,7 @@ LAYERS = (
     {"readings"},
     {"records"},
     {"curve", "dossier"},
-    {"rounding"},
+    {"rounding", "restating"},
     {"admission"},
     {"confirmation"},
     {"limits"},
@@ -60,7 +60,7 @@ LAYERS = (
 NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
-    "readings", "rounding", "budget",
+    "readings", "rounding", "budget", "restating",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 
