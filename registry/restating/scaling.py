@@ -62,10 +62,10 @@ class Scaling:
 
     def restate(self, form: str, c: Numbers, change: Change) -> Statement:
         """The coefficients in the new units."""
-        if change.base not in ("", self.base):
-            raise Impossible("base")
         if change.new_zero:
             raise Impossible("zero")
+        if change.base not in ("", self.base):
+            raise Impossible("base")
         new = {name: self.powers[name].apply(x, c, change) if name in self.powers else x for name, x in c.items()}
         for name, constant in self.constants.items():
             if constant.value:
