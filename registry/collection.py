@@ -261,7 +261,7 @@ class Collection:
         ...     found = library.restate(
         ...         "water-antoine-1-100", value_unit="kPa", temperature_unit="K", log="ln")
         >>> dict(found.restated.ordered_coefficients())
-        {}
+        {'A': '16.5698929686341', 'B': '3984.9228394883', 'C': '-39.724'}
         """
         from registry.restating.restatement import restate
 

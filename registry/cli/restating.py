@@ -9,8 +9,10 @@ import typer
 from registry.cli.options import AsOfOption, EditionOption, JsonOption, LibraryOption, look_at, open_chosen
 from registry.cli.screen import emphasize, name_past, print_facts, print_json, say
 from registry.errors import BadInput
+from registry.numerals import to_float
 
 if TYPE_CHECKING:
+    from registry.records import Correlation
     from registry.restating.restatement import Restatement
 
 
@@ -55,13 +57,13 @@ def _print_restatement(found: Restatement, citation: str, label: str) -> None:
 
     record, new = found.recorded, found.restated
     form = FORMS[new.form]
-    asked = f"T in {new.temperature_unit}, value in {new.value_unit}"
+    locator = record.locator if record.locator != "not recorded" else "the place in it is not recorded"
     say(f"{emphasize(found.key)} restated: {record.property} of {record.compound}, {record.phase}{name_past(label)}")
     print_facts(
         [
             ("equation", form.equation),
             ("form", f"{form.name} ({form.title})"),
-            ("units", asked),
+            ("units", f"T in {new.temperature_unit}, value in {new.value_unit}"),
         ]
     )
     say()
@@ -71,11 +73,15 @@ def _print_restatement(found: Restatement, citation: str, label: str) -> None:
         [
             ("remark", found.remark),
             ("molar mass", f"{found.molar_mass} g/mol lies between the units" if found.molar_mass else ""),
-            ("window", f"{new.window_min} to {new.window_max} {new.window_unit} ({new.window_basis})"),
+            (
+                "window",
+                f"{_word_exact(new.window_min)} to {_word_exact(new.window_max)} {new.window_unit} "
+                f"({new.window_basis})",
+            ),
             ("scale", f"{record.temperature_scale}, as recorded; a temperature scale is never converted"),
             ("check", _word_check(found)),
             ("agreement", _word_agreement(found)),
-            ("source", f"{citation}; {record.locator}"),
+            ("source", f"{citation}; {locator}"),
             (
                 "restated",
                 f"from {found.key}, revision {found.revision}, {found.standing}, which has {record.form}, "
@@ -92,12 +98,19 @@ def _print_coefficients(found: Restatement) -> None:
         say(f"    {name.ljust(width)} = {'' if text.startswith('-') else ' '}{text}")
 
 
+def _word_exact(text: str) -> str:
+    """A number as it is, a fraction also as a decimal."""
+    return f"{text} ({to_float(text):.9g})" if "/" in text else text
+
+
 def _word_check(found: Restatement) -> str:
-    check, record, new = found.check, found.recorded, found.restated
-    return (
-        f"at {check.temperature} {new.temperature_unit}: {check.value:.11g} {new.value_unit}; as recorded, "
-        f"at {check.recorded_temperature} {record.temperature_unit}: {check.recorded_value:.11g} {record.value_unit}"
-    )
+    check = found.check
+    new = _word_value(found.restated, check.temperature, check.value)
+    return f"{new}; as recorded, {_word_value(found.recorded, check.recorded_temperature, check.recorded_value)}"
+
+
+def _word_value(record: Correlation, temperature: str, value: float) -> str:
+    return f"at {_word_exact(temperature)} {record.temperature_unit}: {value:.11g} {record.value_unit}"
 
 
 def _word_agreement(found: Restatement) -> str:

@@ -152,7 +152,7 @@ def restate(
     """
     if log is not None and log not in BASES:
         raise BadInput(f"log {quote(log)} given; {' or '.join(BASES)} is allowed.")
-    if not (value_unit or temperature_unit or log):
+    if value_unit is temperature_unit is log is None:
         raise BadInput(
             f"Say what {correlation.key} is to be restated in: a unit of the value (--pressure, --value), "
             "of temperature (--temperature), or a log base (--log)."
