@@ -214,6 +214,9 @@ def _apply(record: Correlation, change: Change, units: tuple[Unit, Unit]) -> Sta
             raise _refuse(record, units[1].name, why) from None
         why = f"is written to {BASES[rule.base]}, and the catalogue has no form that holds its terms to the other."
         raise _refuse(record, change.base, why) from None
+    except ArithmeticError:
+        asked = f"{units[0].name} and {units[1].name}"
+        raise _refuse(record, asked, "gives no number with its coefficients.") from None
 
 
 def _refuse(record: Correlation, asked: str, why: str) -> BadInput:
