@@ -297,6 +297,10 @@ def test_an_exact_conversion_keeps_the_printed_digits():
     assert {name: text for name, text in found.items() if name != "pt"} == {
         name: text for name, text in record.coefficients.items() if name != "pt"
     }
+    methane = CORRELATIONS["methane-reid-4"]
+    assert methane.coefficients["pc"] == "46.0"
+    assert restate(methane, value_unit="MPa").restated.coefficients["pc"] == "4.60"
+    assert restate(methane, value_unit="Pa").restated.coefficients["pc"] == "4.60E+6"
     ethanol = CORRELATIONS["ethanol-antoine-low"]
     assert restate(ethanol, temperature_unit="K").restated.coefficients == {
         "A": "8.20417", "B": "1642.89", "C": "-42.850"
@@ -343,6 +347,14 @@ def shorten(text: str, count: int) -> str:
     """A number without its last digits, rounded."""
     places = len(text.partition(".")[2]) - count
     return str(Decimal(text).quantize(Decimal(10) ** -places))
+
+
+def test_digits_are_kept_however_small_the_number():
+    """The digits that a coefficient needs do not hang on its size (an invented one, far from any that is printed)."""
+    record = CORRELATIONS["benzene-enthalpy-majer-svoboda-1985"]
+    tiny = dataclasses.replace(record, coefficients={**record.coefficients, "A": "1.234e-200"})
+    found = restate(tiny, value_unit="cal/mol").restated
+    assert abs(Fraction(found.coefficients["A"]) / (Fraction("1.234e-200") / Fraction("0.004184")) - 1) < 1e-12
 
 
 # printed pairs

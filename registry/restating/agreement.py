@@ -56,7 +56,7 @@ def find_steepness(record: Correlation, name: str, kelvin: Array, molar_mass: fl
     low, high = (take_curve(record, molar_mass, {name: at + side}).values(kelvin) for side in (-step, step))
     middle = take_curve(record, molar_mass).values(kelvin)
     with np.errstate(all="ignore"):
-        found = np.abs(high - low) / np.abs(2.0 * step * middle)
+        found = np.abs((high - low) / middle) / (2.0 * step)
     return np.where(np.isfinite(found), found, 0.0)
 
 
