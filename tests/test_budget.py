@@ -100,6 +100,13 @@ def test_no_reference_point_and_no_exponent_is_rounded():
     assert Rounding.of(CORRELATIONS["helium-4-its-90-2.1768-5.0"], 4.0).names == ()
 
 
+def test_a_coefficient_printed_as_zero_is_no_term():
+    """Hyland and Wexler print no T^4 term for the liquid: recorded as 0, it is not a rounded number."""
+    record = CORRELATIONS["water-hyland-wexler-1983"]
+    assert record.coefficients["c4"] == "0"
+    assert Rounding.of(record, 18.0).names == ("cm1", "c0", "c1", "c2", "c3", "cl")
+
+
 def test_half_a_unit_moves_the_value_as_the_curve_says():
     """The effect of one coefficient equals the change of the value by half a unit of its last digit."""
     record = CORRELATIONS["acetone-perry-8"]
