@@ -38,7 +38,11 @@ LAYERS = (
     {"coverage"},
     {"comparison"},
     {"verdicts"},
-    {"answers"},
+    {"values", "scale_effects"},
+    {"answers", "estimates"},
+    {"conditions", "extrapolation", "tolerance"},
+    {"batches"},
+    {"answering"},
     {"store", "exchange"},
     {"entries", "plan"},
     {"findings"},
@@ -60,7 +64,8 @@ LAYERS = (
 NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
-    "readings", "rounding", "budget", "restating",
+    "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
+    "tolerance", "batches", "answering", "restating",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 
