@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import threading
-from typing import Any, overload
+from typing import TYPE_CHECKING, Any, overload
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
@@ -17,6 +17,11 @@ from registry.properties import find_property
 from registry.refusals import Refusal
 from registry.store.library_file import LibraryFile
 from registry.verdicts import refuse
+
+# a lookup needs no slope
+if TYPE_CHECKING:
+    from registry.boundary import PhaseBoundary, SaturationBatch
+    from registry.saturation import Saturation
 
 __all__ = ["Reader", "answer_one"]
 
@@ -38,10 +43,12 @@ class Reader(Collection):
     def __init__(self, file: LibraryFile, position: int | None = None, lock: threading.RLock | None = None) -> None:
         super().__init__(file, position, lock)
         self._coverages: dict[tuple[str, str, str, bool, bool], Coverage] = {}
+        self._boundaries: dict[Coverage, PhaseBoundary] = {}
 
     def _forget(self) -> None:
         super()._forget()
         self._coverages = {}
+        self._boundaries = {}
 
     @overload
     def lookup(
@@ -112,6 +119,67 @@ class Reader(Collection):
         if kelvin.ndim == 0:
             return answer_one(coverage, float(kelvin))
         return Batch(kelvin, *coverage.evaluate(kelvin), coverage)
+
+    @overload
+    def slope(
+        self, compound: str, temperature: float, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> Saturation: ...  # fmt: skip
+
+    @overload
+    def slope(
+        self, compound: str, temperature: ArrayLike, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> SaturationBatch: ...  # fmt: skip
+
+    def slope(
+        self, compound: str, temperature: Any, *, property: str = "vapor-pressure", phase: str | None = None,
+        metastable: bool = False, drafts: bool = False,
+    ) -> Saturation | SaturationBatch:  # fmt: skip
+        """The slope of an equilibrium line, and the enthalpy that Clapeyron's equation makes of it.
+
+        Parameters
+        ----------
+        compound, phase, metastable, drafts
+            As for `lookup`.
+        temperature : float or array_like of float
+            Temperature on ITS-90, K.
+        property : str
+            ``vapor-pressure``, ``sublimation-pressure`` or
+            ``melting-pressure``.
+
+        Returns
+        -------
+        Saturation or SaturationBatch
+            For one temperature with the methods that were used; for an array
+            arrays, NaN where nothing may answer.
+
+        Raises
+        ------
+        Refused
+            As for `lookup`.
+        UnknownKey
+            If the compound is unknown or ambiguous.
+        BadInput
+            If the property is another one or a temperature is not above 0 K.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.slope("ammonia", [200.0, 300.0, 400.0]).enthalpies.round(-2)
+        array([25200., 19900.,  5600.])
+        """
+        from registry.boundary import PhaseBoundary, require_boundary
+        from registry.saturation import Saturation
+
+        require_boundary(find_property(property).name)
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        boundary = self._boundaries.get(coverage) or self._boundaries.setdefault(coverage, PhaseBoundary(coverage))
+        kelvin = _as_kelvin(temperature)
+        if kelvin.ndim == 0:
+            return Saturation(answer_one(coverage, float(kelvin)), boundary)
+        return boundary.evaluate(kelvin)
 
     def coverage(
         self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False,

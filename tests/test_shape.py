@@ -27,16 +27,17 @@ LAYERS = (
     {"display"},
     {"uncertainty", "forms", "masses"},
     {"records"},
-    {"curve", "dossier"},
+    {"curve", "dossier", "clapeyron", "virial"},
     {"admission"},
     {"confirmation"},
     {"limits"},
     {"candidate"},
     {"ranking", "evaluation", "deviation"},
     {"coverage"},
-    {"comparison"},
+    {"comparison", "volumes"},
     {"verdicts"},
-    {"answers"},
+    {"answers", "boundary"},
+    {"saturation"},
     {"store", "exchange"},
     {"entries", "plan"},
     {"findings"},
@@ -58,6 +59,7 @@ LAYERS = (
 NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
+    "clapeyron", "virial", "volumes", "boundary", "saturation",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 
