@@ -2,12 +2,12 @@
 
 C. Tsonopoulos, AIChE J. 20, 263 (1974), nonpolar part (coefficients from
 memory, held against published values in the tests). The series in density is
-cut after B, Z = 1 + B/V: along the saturation line it lies within 0.8 % of
-reference equations where p/pc <= Tr/4 (argon, methane, nitrogen, carbon
-dioxide; water 2.3 %), while the series in pressure, Z = 1 + B p/(R T), is then
-up to 3 % off (water 6 %). The rule of thumb p/pc <= Tr/2 (J. M. Prausnitz, R.
-N. Lichtenthaler, E. G. de Azevedo, Molecular Thermodynamics of Fluid-Phase
-Equilibria, from memory) lets errors of 7 % through on that line: half of it is
+cut after B, Z = 1 + B/V. Where p/pc <= Tr/4 it makes dH within 1 % of what
+reference equations make of it (argon, methane, nitrogen, carbon dioxide;
+water 2.2 %); the series in pressure, Z = 1 + B p/(R T), is up to 3 % off there
+(water 6 %). The rule of thumb p/pc <= Tr/2 (J. M. Prausnitz, R. N.
+Lichtenthaler, E. G. de Azevedo, Molecular Thermodynamics of Fluid-Phase
+Equilibria, from memory) lets 7 % through on a saturation line: half of it is
 taken here.
 """
 
