@@ -48,7 +48,8 @@ class Anchor:
     Attributes
     ----------
     temperature, enthalpy : float
-        K and J/mol; NaN for the enthalpy if there is no such temperature.
+        K and J/mol; NaN for the enthalpy if there is nothing to carry: no
+        such temperature is covered, or it is of sublimation.
     critical : float
         Critical temperature, K.
     """
@@ -104,6 +105,8 @@ class PhaseBoundary:
         return Anchor(-math.inf, math.nan, critical)
 
     def _anchor_at(self, kelvin: float, critical: float) -> Anchor:
+        if self.volumes.solid:
+            return Anchor(kelvin, math.nan, critical)
         at = np.array([kelvin])
         pressure, slope = self._pressures(at)
         return Anchor(kelvin, float(self._enthalpies(at, pressure, slope)[0]), critical)

@@ -142,8 +142,9 @@ class Saturation:
     def carried_from(self) -> float | None:
         """The temperature from which Watson's relation carried the enthalpy, K; None where it did not."""
         anchor = self.boundary.anchor
-        beyond = anchor is not None and self.temperature > anchor.temperature > 0.0
-        return anchor.temperature if anchor is not None and beyond else None
+        if anchor is None or self.temperature <= anchor.temperature or self.enthalpy is None:
+            return None
+        return anchor.temperature
 
     @property
     def method(self) -> str:
@@ -186,15 +187,18 @@ class Saturation:
     @property
     def cautions(self) -> tuple[str, ...]:
         """What to know before relying on the numbers."""
-        own = []
         if self.boundary.melts:
             return self.answer.cautions
+        own = []
         if self.enthalpy is None:
             own.append(
-                "No temperature is covered at which the truncated virial series holds, so the slope gives no enthalpy."
+                "The truncated virial series does not hold here, and there is nothing to carry the enthalpy from: "
+                "only the slope is known."
             )
         elif self.vapour.method == IDEAL_GAS:
             own.append("The vapour is taken as an ideal gas: the enthalpy is too high, the more the denser the vapour.")
+            if not self.boundary.volumes.limited:
+                own.append("No critical point is recorded: nothing tells how far from ideal the vapour is.")
         return (*self.answer.cautions, *own)
 
 

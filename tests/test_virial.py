@@ -9,7 +9,7 @@ import numpy as np
 import pytest
 
 from registry.forms.reciprocal import GAS_CONSTANT
-from registry.virial import HIGHEST_RATIO, LEAST_TERM, second_virial, vapour_volume
+from registry.virial import second_virial, vapour_volume
 from registry.volumes import rackett_volume
 
 # CRC Handbook of Chemistry and Physics, second virial coefficients, cm3/mol (seen); critical constants of the shelf.
