@@ -10,16 +10,22 @@ from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
     from registry.answers import Answer, Batch, Refusal
+    from registry.boundary import SaturationBatch
     from registry.errors import RangebookError, Refused
     from registry.library import Library
     from registry.opening import open_library, start_library
+    from registry.saturation import Saturation
 
 __version__ = "0.1.0"
 
-__all__ = ["Answer", "Batch", "Library", "RangebookError", "Refusal", "Refused", "open_library", "start_library"]
+__all__ = [
+    "Answer", "Batch", "Library", "RangebookError", "Refusal", "Refused", "Saturation", "SaturationBatch",
+    "open_library", "start_library",
+]  # fmt: skip
 
 _HOMES = {
     "Answer": "answers", "Batch": "answers", "Refusal": "answers",
+    "Saturation": "saturation", "SaturationBatch": "boundary",
     "RangebookError": "errors", "Refused": "errors",
     "Library": "library", "open_library": "opening", "start_library": "opening",
 }  # fmt: skip

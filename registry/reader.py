@@ -140,13 +140,15 @@ class Reader(Collection):
 
         Parameters
         ----------
-        compound, phase, metastable, drafts
+        compound : str
             As for `lookup`.
         temperature : float or array_like of float
             Temperature on ITS-90, K.
         property : str
             ``vapor-pressure``, ``sublimation-pressure`` or
             ``melting-pressure``.
+        phase, metastable, drafts
+            As for `lookup`.
 
         Returns
         -------
@@ -168,7 +170,7 @@ class Reader(Collection):
         >>> import registry
         >>> with registry.open_library("shelf.db") as library:
         ...     library.slope("ammonia", [200.0, 300.0, 400.0]).enthalpies.round(-2)
-        array([25200., 19900.,  5600.])
+        array([25200., 20200.,  6600.])
         """
         from registry.boundary import PhaseBoundary, require_boundary
         from registry.saturation import Saturation

@@ -51,7 +51,7 @@ class Saturation:
     >>> with registry.open_library("shelf.db") as library:
     ...     found = library.slope("benzene", 353.24)
     >>> round(found.slope), round(found.enthalpy), round(found.ideal_enthalpy)
-    (3121, 30698, 31939)
+    (3119, 30722, 31971)
     >>> found.vapour.method, found.condensed.method
     ('second virial coefficient, Tsonopoulos', 'Rackett')
     """

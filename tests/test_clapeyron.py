@@ -6,6 +6,7 @@ import math
 
 import numpy as np
 import pytest
+from test_forms import make_record
 
 from registry.clapeyron import (
     clapeyron_slope,
@@ -20,7 +21,6 @@ from registry.clapeyron import (
 from registry.curve import Curve
 from registry.forms.reciprocal import GAS_CONSTANT
 from tests.shelf import own_curve
-from tests.test_forms import make_record
 
 RANKINE = 5.0 / 9.0
 PSI = 6894.757293168361

@@ -13,6 +13,7 @@ from collections.abc import Callable, Mapping
 import numpy as np
 import pytest
 from mpmath import mp, mpc, mpf
+from test_forms import SAMPLES
 
 from registry.curve import Curve
 from registry.forms.catalogue import FORMS
@@ -20,7 +21,6 @@ from registry.records import Correlation
 from registry.scales import SCALES
 from tests.reference_forms import DIGITS, double, helium_temperature, kechin_temperature, reference_of
 from tests.shelf import CORRELATIONS, MASSES, on_own_scale
-from tests.test_forms import SAMPLES
 
 STEP = mpf("1e-30")
 CLOSE = 1e-12

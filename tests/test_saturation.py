@@ -6,6 +6,7 @@ from fractions import Fraction
 
 import numpy as np
 import pytest
+from test_virial import FLUIDS, reference_volume
 
 from registry.boundary import PhaseBoundary
 from registry.errors import BadInput, Refused
@@ -18,7 +19,6 @@ from registry.quantities import UNITS
 from registry.records import Compound, Correlation, FixedPoint, Source
 from registry.volumes import IDEAL_GAS, NEGLECTED, TSONOPOULOS
 from tests.shelf import FACTS, read_rows
-from tests.test_virial import FLUIDS, reference_volume
 
 PUBLISHED = read_rows(FACTS / "published_enthalpies.csv")
 PROPERTY = {"vaporization": "vapor-pressure", "sublimation": "sublimation-pressure"}

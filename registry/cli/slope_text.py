@@ -58,7 +58,7 @@ def _print_vapour(told: Told, unit: Unit, energy: Unit) -> None:
         for asked, one in told
     ]  # fmt: skip
     headers = [*_headers(unit), f"dH, {energy.name}", "ideal gas", "dZ", "dH by"]
-    print_table(headers, rows, right=(True,) * 8)
+    _print_narrow(headers, rows, "Clapeyron", 1)
 
 
 def _print_melting(told: Told, unit: Unit, energy: Unit) -> None:
@@ -68,7 +68,14 @@ def _print_melting(told: Told, unit: Unit, energy: Unit) -> None:
         for asked, one in told
     ]  # fmt: skip
     headers = [*_headers(unit), "dH/dV, J/cm3", f"dH, {energy.name}", "dH by"]
-    print_table(headers, rows, right=(True,) * 7)
+    _print_narrow(headers, rows, "none", 2)
+
+
+def _print_narrow(headers: list[str], rows: list[list[str]], usual: str, spare: int) -> None:
+    """A table; where the last column says the usual in every row, the spare last columns are left out."""
+    if all(row[-1] == usual for row in rows):
+        headers, rows = headers[:-spare], [row[:-spare] for row in rows]
+    print_table(headers, rows, right=(True,) * (len(headers) - 1) + (headers[-1] != "dH by",))
 
 
 def _headers(unit: Unit) -> list[str]:
