@@ -119,9 +119,8 @@ class Volumes:
     @cached_property
     def density(self) -> Coverage:
         """Who answers for the saturated liquid density."""
-        return build_coverage(
-            self._coverage.dossier, "saturated-liquid-density", metastable=self._coverage.metastable
-        )  # fmt: skip
+        dossier, metastable = self._coverage.dossier, self._coverage.metastable
+        return build_coverage(dossier, "saturated-liquid-density", metastable=metastable)
 
     @property
     def limited(self) -> bool:
