@@ -6,6 +6,9 @@ import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 
+import numpy as np
+from numpy.typing import NDArray
+
 from registry import rules
 from registry.confirmation import Counted, Value, count_correlation
 from registry.curve import Curve
@@ -79,10 +82,35 @@ class Candidate:
         found = self._piece_at(kelvin)
         return found[1] if found else math.inf
 
-    def stated_percent(self, kelvin: float, value: float) -> float | None:
-        """The stated uncertainty as a percent of a value there, or None."""
+    def piece_at(self, kelvin: float) -> Piece | None:
+        """The piece of its stated uncertainty that holds there, or None."""
         found = self._piece_at(kelvin)
-        return found[0].percent_of(value) if found else None
+        return found[0] if found else None
+
+    def expanded_percents(self, kelvin: NDArray[np.float64], values: NDArray[np.float64]) -> NDArray[np.float64]:
+        """The stated uncertainty at coverage factor 2, percent of the values.
+
+        Parameters
+        ----------
+        kelvin, values : array of float, same shape
+            Temperatures, K, and the values there in SI units.
+
+        Returns
+        -------
+        array of float, same shape
+            NaN where none is stated.
+        """
+        percents = np.full(np.shape(kelvin), np.nan)
+        low = -math.inf
+        for piece, _ in self.pieces:
+            here = (kelvin > low) & (kelvin <= piece.upper)
+            if piece.absolute is not None:
+                with np.errstate(divide="ignore"):
+                    percents[here] = 100.0 * piece.expansion * piece.absolute / np.abs(values[here])
+            elif piece.percent is not None:
+                percents[here] = piece.expansion * piece.percent
+            low = piece.upper
+        return percents
 
     def _piece_at(self, kelvin: float) -> tuple[Piece, float] | None:
         return next((ranked for ranked in self.pieces if kelvin <= ranked[0].upper), None)
@@ -131,11 +159,12 @@ def _find_reach(record: Correlation, curve: Curve, limits: Limits, metastable: b
 
 
 def _rank_piece(pieces: tuple[Piece, ...], index: int, curve: Curve, reach: tuple[float, float]) -> float:
-    """The percent a piece ranks by: an absolute one at its worst, where the value is least."""
+    """The percent a piece ranks by, at one coverage factor: an absolute one at its worst, where the value is least."""
     piece = pieces[index]
     if piece.absolute is None:
-        return math.inf if piece.percent is None else piece.percent
+        return math.inf if piece.percent is None else piece.expansion * piece.percent
     low = max(reach[0], pieces[index - 1].upper if index else reach[0])
     high = min(reach[1], piece.upper)
     percents = [piece.percent_of(curve.value(t)) for t in (low, high)]
-    return max((p for p in percents if p is not None and math.isfinite(p)), default=math.inf)
+    finite = [piece.expansion * p for p in percents if p is not None and math.isfinite(p)]
+    return max(finite, default=math.inf)

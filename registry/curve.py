@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Any
 
@@ -35,6 +36,8 @@ class Curve:
     window : tuple of float
         Where it may answer, K: as printed, cut to where its form means
         something.
+    domain : tuple of float
+        Where its form means something, K, whatever the window; open below.
     """
 
     kernel: Kernel
@@ -43,9 +46,10 @@ class Curve:
     ratio: float
     scale: Scale
     window: tuple[float, float]
+    domain: tuple[float, float]
 
     @classmethod
-    def of(cls, correlation: Correlation, molar_mass: float) -> Curve:
+    def of(cls, correlation: Correlation, molar_mass: float, instead: Mapping[str, float] | None = None) -> Curve:
         """The curve of a correlation.
 
         Parameters
@@ -55,6 +59,8 @@ class Curve:
         molar_mass : float
             Molar mass of the compound, g/mol; used where the printed unit is
             on the other basis and the source gives no molar mass of its own.
+        instead : mapping of str to float, optional
+            Coefficients to take in place of the printed ones.
 
         Returns
         -------
@@ -75,6 +81,7 @@ class Curve:
         """
         unit, temperature = UNITS[correlation.value_unit], UNITS[correlation.temperature_unit]
         c = {name: to_float(text) for name, text in correlation.coefficients.items()}
+        c.update(instead or {})
         factor = float(unit.factor) * (c.get("M", molar_mass) if unit.per_molar_mass else 1.0)
         units = Units(factor, float(1 / temperature.factor), float(temperature.shift))
         folded = FORMS[correlation.form].fold(c, units)
@@ -87,7 +94,7 @@ class Curve:
         window = (max(printed[0], float(np.nextafter(low, np.inf))), min(printed[1], high))
         return cls(
             folded.kernel, folded.parameters, factor, units.ratio,
-            SCALES[correlation.temperature_scale], window,
+            SCALES[correlation.temperature_scale], window, (low, high),
         )  # fmt: skip
 
     @property

@@ -7,12 +7,14 @@ from functools import cached_property
 
 import numpy as np
 
+from registry.answering import answer_one
 from registry.answers import Answer
 from registry.boundary import PhaseBoundary, SaturationBatch
 from registry.forms.reciprocal import GAS_CONSTANT
+from registry.readings import Reading
 from registry.volumes import IDEAL_GAS, Choice
 
-__all__ = ["Correlated", "Saturation"]
+__all__ = ["Correlated", "Saturation", "find_saturation"]
 
 
 @dataclass(frozen=True)
@@ -187,9 +189,11 @@ class Saturation:
     @property
     def cautions(self) -> tuple[str, ...]:
         """What to know before relying on the numbers."""
-        if self.boundary.melts:
-            return self.answer.cautions
         own = []
+        if self.answer.reading.uncertainty:
+            own.append("The uncertainty of the temperature is not carried to slope and enthalpy.")
+        if self.boundary.melts:
+            return (*self.answer.cautions, *own)
         if self.enthalpy is None:
             own.append(
                 "The truncated virial series does not hold here, and there is nothing to carry the enthalpy from: "
@@ -200,6 +204,36 @@ class Saturation:
             if not self.boundary.volumes.limited:
                 own.append("No critical point is recorded: nothing tells how far from ideal the vapour is.")
         return (*self.answer.cautions, *own)
+
+
+def find_saturation(boundary: PhaseBoundary, kelvin: float, reading: Reading | None = None) -> Saturation:
+    """Slope and enthalpy at one temperature.
+
+    Parameters
+    ----------
+    boundary : PhaseBoundary
+        The line of equilibrium.
+    kelvin : float
+        The temperature on ITS-90, K.
+    reading : Reading, optional
+        The temperature as it was read, where it has an uncertainty or a scale.
+
+    Returns
+    -------
+    Saturation
+        With everything behind it.
+
+    Raises
+    ------
+    Refused
+        Where no correlation may answer.
+    BadInput
+        If it is no temperature.
+    """
+    answer = answer_one(boundary.coverage, kelvin, reading)
+    # an extrapolation or an estimate is given to those alone who ask for it by name
+    assert isinstance(answer, Answer)
+    return Saturation(answer, boundary)
 
 
 def _number(value: np.typing.NDArray[np.float64]) -> float | None:

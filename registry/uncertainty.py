@@ -5,6 +5,10 @@ but the last say up to where they hold::
 
     0.025 % up to 373 K; 0.1 %
     not stated up to 185 K; 250 Pa
+    0.5 % (k=2)
+
+The coverage factor stands in brackets where the source states one (JCGM 100,
+6.2 and 7.2.3).
 """
 
 from __future__ import annotations
@@ -17,10 +21,13 @@ from registry.errors import BadQuantity
 from registry.numerals import parse_number
 from registry.quantities import find_unit, parse_temperature
 
-__all__ = ["Piece", "parse_uncertainty"]
+__all__ = ["COVERAGE_FACTOR", "Piece", "parse_factor", "parse_uncertainty"]
 
-_ALLOWED = "pieces such as '0.025 % up to 373 K; 0.1 %' are allowed."
-_PIECE = re.compile(r"(not stated|(\S+) (%|\S+))(?: up to (.+))?")
+COVERAGE_FACTOR = 2.0
+"""The coverage factor to which uncertainties are brought; one that is not stated counts as this (JCGM 100, 6.3.3)."""
+
+_ALLOWED = "pieces such as '0.025 % up to 373 K; 0.1 % (k=2)' are allowed."
+_PIECE = re.compile(r"(not stated|(\S+) (%|\S+)(?: \(k=([0-9.]+)\))?)(?: up to (.+))?", re.ASCII)
 
 
 @dataclass(frozen=True)
@@ -35,17 +42,25 @@ class Piece:
         The uncertainty in percent of the value.
     absolute : float or None
         The uncertainty in SI units. Both None: not stated.
+    factor : float or None
+        Its coverage factor; None if not stated.
     """
 
     upper: float
     percent: float | None = None
     absolute: float | None = None
+    factor: float | None = None
 
     def percent_of(self, value: float) -> float | None:
         """The uncertainty as a percent of a value in SI."""
         if self.absolute is None:
             return self.percent
         return 100.0 * self.absolute / abs(value) if value else None
+
+    @property
+    def expansion(self) -> float:
+        """What brings it to the coverage factor that all are brought to."""
+        return COVERAGE_FACTOR / self.factor if self.factor else 1.0
 
 
 def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
@@ -71,7 +86,7 @@ def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
     Examples
     --------
     >>> parse_uncertainty("not stated up to 185 K; 250 Pa", "pressure")[1]
-    Piece(upper=inf, percent=None, absolute=250.0)
+    Piece(upper=inf, percent=None, absolute=250.0, factor=None)
     """
     if not text:
         return ()
@@ -79,9 +94,9 @@ def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
     parts = text.split("; ")
     for index, part in enumerate(parts):
         match = _PIECE.fullmatch(part)
-        if match is None or (match[4] is None) != (index == len(parts) - 1):
+        if match is None or (match[5] is None) != (index == len(parts) - 1):
             raise ValueError(_ALLOWED)
-        upper = parse_temperature(match[4]) if match[4] else math.inf
+        upper = parse_temperature(match[5]) if match[5] else math.inf
         if pieces and upper <= pieces[-1].upper:
             raise ValueError("the pieces of an uncertainty must rise in temperature.")
         pieces.append(_read_piece(match, upper, dimension))
@@ -97,9 +112,27 @@ def _read_piece(match: re.Match[str], upper: float, dimension: str) -> Piece:
         raise ValueError(_ALLOWED) from None
     if amount <= 0:
         raise ValueError("an uncertainty is greater than zero; leave it empty if none is stated.")
+    factor = parse_factor(match[4]) if match[4] else None
     if match[3] == "%":
-        return Piece(upper, percent=float(amount))
+        return Piece(upper, percent=float(amount), factor=factor)
     try:
-        return Piece(upper, absolute=float(amount * find_unit(match[3], dimension).factor))
+        return Piece(upper, absolute=float(amount * find_unit(match[3], dimension).factor), factor=factor)
     except BadQuantity as error:
         raise ValueError(f"{match[3]!r}: {error.allowed}") from None
+
+
+def parse_factor(text: str) -> float:
+    """A coverage factor: a number from 1 to 10.
+
+    Examples
+    --------
+    >>> parse_factor("2")
+    2.0
+    """
+    try:
+        factor = float(parse_number(text))
+    except ValueError:
+        factor = 0.0
+    if not 1.0 <= factor <= 10.0:
+        raise ValueError(f"a coverage factor is a number from 1 to 10, not {text!r}; write it as (k=2).")
+    return factor

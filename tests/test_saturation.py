@@ -16,6 +16,7 @@ from registry.numerals import last_digit_unit, parse_number
 from registry.opening import open_library, start_library
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
+from registry.readings import parse_reading
 from registry.records import Compound, Correlation, FixedPoint, Source
 from registry.volumes import IDEAL_GAS, NEGLECTED, TSONOPOULOS
 from tests.shelf import FACTS, read_rows
@@ -444,6 +445,8 @@ def test_only_pressures_have_such_a_slope(prop, published):
 def test_a_slope_follows_its_library(published):
     """At an earlier position as at the newest; a temperature that is none is bad input."""
     assert published.at(1).slope("water", 300.0).slope == published.slope("water", 300.0).slope
+    reading = parse_reading("100 degC (IPTS-68)")
+    assert published.slope("water", reading).slope == published.slope("water", reading.kelvin).slope
     with pytest.raises(BadInput):
         published.slope("water", -1.0)
     with pytest.raises(Refused):

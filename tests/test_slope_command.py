@@ -89,6 +89,18 @@ def test_the_table_fits_eighty_columns(ask, monkeypatch):
     assert "dH by" not in out
 
 
+def test_a_temperature_has_a_scale_and_an_uncertainty(ask):
+    """100 degC of IPTS-68 is 99.974 degC; what is not carried is said."""
+    code, out, _ = ask("water", "100 degC (IPTS-68)")
+    assert code == 0
+    assert float(rows_of(out)[0][1].split()[0]) == pytest.approx(373.1244, abs=1e-4)
+    assert "uncertainty of the temperature" not in out
+    _, out, _ = ask("water", "100+/-0.1C")
+    assert "caution    The uncertainty of the temperature is not carried to slope and enthalpy.\n" in out
+    _, out, _ = ask("water", "260+/-0.1K", "-p", "melting-pressure", "--phase", "ice Ih")
+    assert "The uncertainty of the temperature is not carried to slope and enthalpy.\n" in out
+
+
 def test_negative_temperatures_need_no_quotes():
     """-40C is no option of slope either."""
     assert protect_minus(["slope", "ammonia", "-40C", "-u", "bar"]) == ["slope", "ammonia", "\u221240C", "-u", "bar"]

@@ -100,8 +100,7 @@ def _round(value: float | None, digits: int) -> str:
 
 def _name_method(one: Saturation) -> str:
     """What gave the enthalpy, in a word; with the mark of a draft."""
-    standing = one.answer.standing
-    mark = "" if standing == "accepted" else f" ({standing.upper()})"
+    mark = f" ({one.answer.mark.upper()})" if one.answer.mark else ""
     return (one.method.split(" from ")[0].split(":")[0] or "none") + mark
 
 

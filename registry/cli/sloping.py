@@ -94,11 +94,10 @@ def _choose_pressure(unit: str) -> Unit | None:
 
 
 def _find(boundary: PhaseBoundary, asked: Asked) -> Saturation | Refusal:
-    from registry.reader import answer_one
-    from registry.saturation import Saturation
+    from registry.saturation import find_saturation
 
     try:
-        return Saturation(answer_one(boundary.coverage, asked.kelvin), boundary)
+        return find_saturation(boundary, asked.kelvin, asked.reading)
     except Refused as error:
         return error.refusal
 

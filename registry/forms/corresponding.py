@@ -78,17 +78,20 @@ _ENTHALPY = ("enthalpy-of-vaporization",)
 FORMS = (
     Form(
         "majer-svoboda", "Majer-Svoboda", "H = A exp(-alpha Tr) (1 - Tr)^beta",
-        Coefficients(("A", "alpha", "beta", "Tc")), fold_named(MAJER, "Tc", "A", "alpha", "beta"), _ENTHALPY,
+        Coefficients(("A", "alpha", "beta", "Tc"), chosen=("Tc",)),
+        fold_named(MAJER, "Tc", "A", "alpha", "beta"), _ENTHALPY,
         "V. Majer, V. Svoboda, Enthalpies of Vaporization of Organic Compounds, IUPAC Chem. Data Ser. 32 (1985)",
     ),
     Form(
         "watson", "Watson", "H = H1 [(1 - Tr)/(1 - T1/Tc)]^n",
-        Coefficients(("H1", "T1", "Tc", "n")), fold_named(WATSON, "Tc", "T1", "H1", "n"), _ENTHALPY,
+        Coefficients(("H1", "T1", "Tc", "n"), chosen=("T1", "Tc", "n")),
+        fold_named(WATSON, "Tc", "T1", "H1", "n"), _ENTHALPY,
         "K. M. Watson, Ind. Eng. Chem. 35, 398 (1943)",
     ),
     Form(
         "rackett", "Rackett", "1/rho = (R Tc/pc) ZRA^(1 + (1 - Tr)^(2/7)), pc in MPa, rho in mol/dm3 [M in g/mol]",
-        Coefficients(("Tc", "pc", "ZRA"), ("M",)), _fold_rackett, ("saturated-liquid-density",),
+        Coefficients(("Tc", "pc", "ZRA"), ("M",), chosen=("Tc", "pc", "M")),
+        _fold_rackett, ("saturated-liquid-density",),
         "H. G. Rackett, J. Chem. Eng. Data 15, 514 (1970); C. F. Spencer, R. P. Danner, ibid. 17, 236 (1972)",
         value_unit="mol/dm3",
     ),

@@ -111,11 +111,15 @@ class Coefficients:
     series : tuple of str
         Stems of numbered coefficients (``n`` for n1, n2 ...), all of the same
         length, at least one.
+    chosen : tuple of str
+        Those names and stems that are chosen rather than fitted, reference
+        points and exponents: exact as printed, the rest is rounded.
     """
 
     required: tuple[str, ...] = ()
     optional: tuple[str, ...] = ()
     series: tuple[str, ...] = ()
+    chosen: tuple[str, ...] = ()
 
     def __str__(self) -> str:
         parts = [*self.required, *(f"[{name}]" for name in self.optional), *(f"{s}1, {s}2 ..." for s in self.series)]
@@ -126,6 +130,18 @@ class Coefficients:
         single = [name for name in (*self.required, *self.optional) if name in given]
         counted = [f"{stem}{i}" for stem in self.series for i in range(1, self._length(stem, given) + 1)]
         return single + [name for name in counted if name not in single]
+
+    def is_rounded(self, name: str) -> bool:
+        """True if a coefficient is a fitted number that its source has rounded.
+
+        Examples
+        --------
+        >>> wagner = Coefficients(("Tc", "pc", "a"), chosen=("Tc", "pc"))
+        >>> wagner.is_rounded("Tc"), wagner.is_rounded("a")
+        (False, True)
+        """
+        match = _NUMBERED.fullmatch(name)
+        return name not in self.chosen and not (match and match[1] in self.series and match[1] in self.chosen)
 
     def complaint(self, given: Mapping[str, str]) -> str:
         """What is wrong with these coefficients, or an empty text.

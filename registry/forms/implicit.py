@@ -75,6 +75,9 @@ def _fold_helium(c: Mapping[str, float], units: Units) -> Folded:
     return Folded(HELIUM, (tuple(c[f"A{i}"] for i in range(10)), c["B"], c["C"]))
 
 
+# they define the scale: exact as printed
+_HELIUM = (*(f"A{i}" for i in range(10)), "B", "C")
+
 FORMS = (
     Form(
         "frost-kalkwarf-thodos", "Frost-Kalkwarf-Thodos", "ln p = A - B/T + C ln T + D p/T^2 (lower root)",
@@ -83,7 +86,7 @@ FORMS = (
     ),
     Form(
         "helium-its90", "ITS-90 helium vapour pressure", "T = A0 + sum A_i [(ln p - B)/C]^i, p in Pa",
-        Coefficients((*(f"A{i}" for i in range(10)), "B", "C")), _fold_helium, ("vapor-pressure",),
+        Coefficients(_HELIUM, chosen=_HELIUM), _fold_helium, ("vapor-pressure",),
         "H. Preston-Thomas, Metrologia 27, 3 (1990), Table 3", value_unit="Pa",
     ),
 )  # fmt: skip

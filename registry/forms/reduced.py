@@ -174,7 +174,7 @@ def _fold_density_power(c: Mapping[str, float], units: Units) -> Folded:
 
 _VAPOR = ("vapor-pressure",)
 _DENSITY = ("saturated-liquid-density",)
-_WAGNER = Coefficients(("Tc", "pc", "a", "b", "c", "d"))
+_WAGNER = Coefficients(("Tc", "pc", "a", "b", "c", "d"), chosen=("Tc", "pc"))
 
 FORMS = (
     Form(
@@ -187,27 +187,29 @@ FORMS = (
     ),
     Form(
         "saturation-ancillary", "saturation ancillary equation", "ln(p/pc) = (Tc/T) sum n_i (1 - T/Tc)^t_i",
-        Coefficients(("Tc", "pc"), series=("n", "t")), _fold_series("Tc", "pc", 1), _VAPOR,
+        Coefficients(("Tc", "pc"), series=("n", "t"), chosen=("Tc", "pc", "t")), _fold_series("Tc", "pc", 1), _VAPOR,
         "W. Wagner, A. Pruss, J. Phys. Chem. Ref. Data 22, 783 (1993), in general form",
     ),
     Form(
         "sublimation-ancillary", "sublimation ancillary equation", "ln(p/pt) = (Tt/T) sum n_i (1 - T/Tt)^t_i",
-        Coefficients(("Tt", "pt"), series=("n", "t")), _fold_series("Tt", "pt", 1), ("sublimation-pressure",),
+        Coefficients(("Tt", "pt"), series=("n", "t"), chosen=("Tt", "pt", "t")),
+        _fold_series("Tt", "pt", 1), ("sublimation-pressure",),
         "R. Span, W. Wagner, J. Phys. Chem. Ref. Data 25, 1509 (1996), eq. (3.12), in general form",
     ),
     Form(
         "density-ln", "density ancillary, logarithm", "ln(rho/rhoc) = sum n_i (1 - T/Tc)^t_i [M in g/mol]",
-        Coefficients(("Tc", "rhoc"), ("M",), ("n", "t")), _fold_series("Tc", "rhoc", 0), _DENSITY,
+        Coefficients(("Tc", "rhoc"), ("M",), ("n", "t"), chosen=("Tc", "rhoc", "M", "t")),
+        _fold_series("Tc", "rhoc", 0), _DENSITY,
         "R. Span, W. Wagner, J. Phys. Chem. Ref. Data 25, 1509 (1996), eq. (3.14), in general form",
     ),
     Form(
         "density-power-reduced", "density ancillary, reduced", "rho/rhoc = 1 + sum n_i (1 - T/Tc)^t_i",
-        Coefficients(("Tc", "rhoc"), series=("n", "t")), _fold_density_reduced, _DENSITY,
+        Coefficients(("Tc", "rhoc"), series=("n", "t"), chosen=("Tc", "rhoc", "t")), _fold_density_reduced, _DENSITY,
         "W. Wagner, A. Pruss, J. Phys. Chem. Ref. Data 22, 783 (1993), in general form",
     ),
     Form(
         "density-power", "density ancillary, powers", "rho = c0 + sum n_i (1 - T/Tc)^t_i",
-        Coefficients(("Tc", "c0"), series=("n", "t")), _fold_density_power, _DENSITY,
+        Coefficients(("Tc", "c0"), series=("n", "t"), chosen=("Tc", "t")), _fold_density_power, _DENSITY,
         "R. Tillner-Roth, H. D. Baehr, J. Phys. Chem. Ref. Data 23, 657 (1994), in general form",
     ),
 )  # fmt: skip

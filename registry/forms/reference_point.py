@@ -72,13 +72,14 @@ _PRESSURES = ("vapor-pressure", "sublimation-pressure")
 FORMS = (
     Form(
         "cox", "Cox", "ln(p/p0) = (1 - T0/T) exp(A0 + A1 T + A2 T^2)",
-        Coefficients(("T0", "p0", "A0", "A1", "A2")), fold_named(COX, "T0", "p0", "A0", "A1", "A2"), _PRESSURES,
+        Coefficients(("T0", "p0", "A0", "A1", "A2"), chosen=("T0", "p0")),
+        fold_named(COX, "T0", "p0", "A0", "A1", "A2"), _PRESSURES,
         "E. R. Cox, Ind. Eng. Chem. 28, 613 (1936); K. Ruzicka, V. Majer, J. Phys. Chem. Ref. Data 23, 1 (1994)",
     ),
     Form(
         "chebyshev-log10", "Chebyshev series in T log10 p",
         "T log10 p = a0/2 + sum a_s E_s(x), x = (2T - (Tmax + Tmin))/(Tmax - Tmin)",
-        Coefficients(("a0", "Tmin", "Tmax"), series=("a",)), _fold_chebyshev, _PRESSURES,
+        Coefficients(("a0", "Tmin", "Tmax"), series=("a",), chosen=("Tmin", "Tmax")), _fold_chebyshev, _PRESSURES,
         "D. Ambrose et al., J. Chem. Thermodyn. 7, 1173 (1975)",
     ),
 )  # fmt: skip

@@ -129,7 +129,7 @@ _WEXLER = "A. Wexler, J. Res. Natl. Bur. Stand. 80A, 775 (1976)"
 FORMS = (
     Form(
         "riedel", "Riedel", "ln p = C1 + C2/T + C3 ln T + C4 T^C5",
-        Coefficients(("C1", "C2", "C3", "C4", "C5")), _fold_riedel, _PRESSURES,
+        Coefficients(("C1", "C2", "C3", "C4", "C5"), chosen=("C5",)), _fold_riedel, _PRESSURES,
         "L. Riedel, Chem.-Ing.-Tech. 26, 83 (1954); Perry's Chemical Engineers' Handbook, 8th ed. (2008), Table 2-8",
     ),
     Form(

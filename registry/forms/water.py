@@ -139,14 +139,14 @@ FORMS = (
     Form(
         "goff-gratch", "Goff-Gratch",
         "log10(p/ps) = -k1(Ts/T - 1) + k2 log10(Ts/T) - k3(10^(k4(1 - T/Ts)) - 1) + k5(10^(-k6(Ts/T - 1)) - 1)",
-        Coefficients((*_K6, "Ts", "ps")),
+        Coefficients((*_K6, "Ts", "ps"), chosen=("Ts", "ps")),
         fold_named(GOFF_GRATCH, *_K6, "Ts", "ps"), _VAPOR,
         "J. A. Goff, S. Gratch, Trans. Am. Soc. Heat. Vent. Eng. 52, 95 (1946)",
     ),
     Form(
         "wmo-goff", "WMO (Goff 1957)",
         "log10 p = k1(1 - Tt/T) - k2 log10(T/Tt) + k3(1 - 10^(-k4(T/Tt - 1))) + k5(10^(k6(1 - Tt/T)) - 1) + k7",
-        Coefficients((*_K6, "k7", "Tt")),
+        Coefficients((*_K6, "k7", "Tt"), chosen=("Tt",)),
         fold_named(WMO, *_K6, "k7", "Tt"), _VAPOR,
         "J. A. Goff, Trans. ASHVE 63, 347 (1957); WMO Technical Regulations",
     ),
@@ -169,7 +169,7 @@ FORMS = (
     ),
     Form(
         "iapws-sublimation", "IAPWS sublimation", "ln(p/pt) = (Tt/T) sum a_i (T/Tt)^b_i",
-        Coefficients(("Tt", "pt"), series=("a", "b")),
+        Coefficients(("Tt", "pt"), series=("a", "b"), chosen=("Tt", "pt", "b")),
         lambda c, units: Folded(
             SUBLIMATION, (c["Tt"], c["pt"], tuple(zip(numbered(c, "a"), numbered(c, "b"), strict=True)))
         ), ("sublimation-pressure",),

@@ -12,7 +12,7 @@ KEY = "a key of lower-case letters, digits, '-' and '.' is allowed, such as wate
 FORMULA = "a formula of element symbols and counts is allowed, such as C2H5OH."
 CONTROL = "it holds a control character or an unpaired surrogate; plain text is allowed."
 COEFFICIENTS = "coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed, each once."
-UNCERTAINTY = "pieces such as '0.025 % up to 373 K; 0.1 %' are allowed."
+UNCERTAINTY = "pieces such as '0.025 % up to 373 K; 0.1 % (k=2)' are allowed."
 WINDOW = "the lower bound must lie above 0 K and below the upper bound."
 NEITHER = "with this key, neither in the package nor in the library."
 FILES = (

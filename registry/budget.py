@@ -1,0 +1,92 @@
+"""The uncertainty budget of a value: what is stated, what the temperature adds, what the digits leave open.
+
+References
+----------
+.. [1] JCGM 100:2008, Evaluation of measurement data: Guide to the expression
+   of uncertainty in measurement. The law of propagation of uncertainty, 5.1.2;
+   expanded uncertainty and coverage factor, 6.2 and 6.3.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+
+import numpy as np
+
+from registry.candidate import Candidate
+from registry.readings import Reading
+from registry.rounding import Rounding
+from registry.uncertainty import COVERAGE_FACTOR, Piece
+
+__all__ = ["Budget", "make_budget"]
+
+
+@dataclass(frozen=True)
+class Budget:
+    """The parts of the uncertainty of a value, each in percent of the value.
+
+    All but `stated_percent` are at coverage factor 2.
+
+    Attributes
+    ----------
+    stated_percent : float or None
+        What the source states there, as it states it; None if it does not.
+    stated_factor : float or None
+        The coverage factor it states; one that is not stated counts as 2.
+    temperature_percent : float
+        What the uncertainty of the temperature asked adds, by the slope; 0 if
+        the temperature is exact.
+    rounding_percent : float
+        What the rounding of the printed coefficients leaves open: a part of
+        its own, in no sum.
+    rounding_bound_percent : float
+        The most that rounding can make: every coefficient at its worst.
+    """
+
+    stated_percent: float | None
+    stated_factor: float | None
+    temperature_percent: float
+    rounding_percent: float
+    rounding_bound_percent: float
+
+    @property
+    def expanded_percent(self) -> float | None:
+        """The stated uncertainty and that of the temperature together [1]_; None if none is stated."""
+        if self.stated_percent is None:
+            return None
+        expansion = COVERAGE_FACTOR / (self.stated_factor or COVERAGE_FACTOR)
+        return math.hypot(expansion * self.stated_percent, self.temperature_percent)
+
+
+def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float, molar_mass: float) -> Budget:
+    """The uncertainty budget of a value.
+
+    Parameters
+    ----------
+    candidate : Candidate
+        What gave it.
+    piece : Piece or None
+        What its source states of the uncertainty there.
+    reading : Reading
+        The temperature asked.
+    value : float
+        The value there, SI.
+    molar_mass : float
+        Molar mass of the compound, g/mol.
+
+    Returns
+    -------
+    Budget
+        Its parts.
+    """
+    at = np.array([reading.kelvin])
+    rounding = Rounding.of(candidate.record, molar_mass)
+    spread = reading.uncertainty * COVERAGE_FACTOR / (reading.factor or COVERAGE_FACTOR)
+    return Budget(
+        piece.percent_of(value) if piece else None,
+        piece.factor if piece else None,
+        100.0 * abs(candidate.curve.log_rate(reading.kelvin)) * spread if spread else 0.0,
+        COVERAGE_FACTOR * float(rounding.standards(at)[0]),
+        float(rounding.bounds(at)[0]),
+    )
