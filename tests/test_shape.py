@@ -29,7 +29,7 @@ LAYERS = (
     {"readings"},
     {"records"},
     {"curve", "dossier", "clapeyron", "virial"},
-    {"rounding"},
+    {"rounding", "restating"},
     {"admission"},
     {"confirmation"},
     {"limits"},
@@ -66,7 +66,7 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "answering", "clapeyron", "virial", "volumes", "boundary", "saturation",
+    "tolerance", "batches", "answering", "restating", "clapeyron", "virial", "volumes", "boundary", "saturation",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 

@@ -36,6 +36,7 @@ COMMANDS: dict[str, Home] = {
     "coverage": Home("browsing", "coverage"),
     "list": Home("browsing", "list_records"),
     "show": Home("browsing", "show"),
+    "restate": Home("restating", "restate"),
     "forms": Home("vocabulary", "forms"),
     "record": Home("recording", "build_record_group", group=True),
     "revise": Home("revising", "revise"),
