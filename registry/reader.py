@@ -23,6 +23,8 @@ from registry.values import Value
 # a lookup of one temperature needs none
 if TYPE_CHECKING:
     from registry.batches import Batch
+    from registry.boundary import PhaseBoundary, SaturationBatch
+    from registry.saturation import Saturation
 
 __all__ = ["Reader"]
 
@@ -44,10 +46,12 @@ class Reader(Collection):
     def __init__(self, file: LibraryFile, position: int | None = None, lock: threading.RLock | None = None) -> None:
         super().__init__(file, position, lock)
         self._coverages: dict[tuple[str, str, str, bool, bool], Coverage] = {}
+        self._boundaries: dict[Coverage, PhaseBoundary] = {}
 
     def _forget(self) -> None:
         super()._forget()
         self._coverages = {}
+        self._boundaries = {}
 
     @overload
     def lookup(
@@ -140,6 +144,69 @@ class Reader(Collection):
         if kelvin.ndim == 0:
             return answer_one(coverage, float(kelvin), None, conditions)
         return answer_many(coverage, kelvin, conditions)
+
+    @overload
+    def slope(
+        self, compound: str, temperature: float | Reading, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> Saturation: ...  # fmt: skip
+
+    @overload
+    def slope(
+        self, compound: str, temperature: ArrayLike, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> SaturationBatch: ...  # fmt: skip
+
+    def slope(
+        self, compound: str, temperature: Any, *, property: str = "vapor-pressure", phase: str | None = None,
+        metastable: bool = False, drafts: bool = False,
+    ) -> Saturation | SaturationBatch:  # fmt: skip
+        """The slope of an equilibrium line, and the enthalpy that Clapeyron's equation makes of it.
+
+        Parameters
+        ----------
+        compound : str
+            As for `lookup`.
+        temperature : float, Reading or array_like of float
+            Temperature on ITS-90, K; or as it was read, on a scale.
+        property : str
+            ``vapor-pressure``, ``sublimation-pressure`` or
+            ``melting-pressure``.
+        phase, metastable, drafts
+            As for `lookup`.
+
+        Returns
+        -------
+        Saturation or SaturationBatch
+            For one temperature with the methods that were used; for an array
+            arrays, NaN where nothing may answer.
+
+        Raises
+        ------
+        Refused
+            As for `lookup`.
+        UnknownKey
+            If the compound is unknown or ambiguous.
+        BadInput
+            If the property is another one or a temperature is not above 0 K.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.slope("ammonia", [200.0, 300.0, 400.0]).enthalpies.round(-2)
+        array([25200., 20200.,  6600.])
+        """
+        from registry.boundary import PhaseBoundary, require_boundary
+        from registry.saturation import find_saturation
+
+        require_boundary(find_property(property).name)
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        boundary = self._boundaries.get(coverage) or self._boundaries.setdefault(coverage, PhaseBoundary(coverage))
+        if isinstance(temperature, Reading):
+            return find_saturation(boundary, temperature.kelvin, temperature)
+        kelvin = _as_kelvin(temperature)
+        return find_saturation(boundary, float(kelvin)) if kelvin.ndim == 0 else boundary.evaluate(kelvin)
 
     def coverage(
         self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False,
