@@ -36,12 +36,14 @@ LAYERS = (
     {"candidate"},
     {"ranking", "evaluation", "deviation", "budget"},
     {"coverage"},
+    {"branches", "roots", "inversion"},
     {"comparison"},
     {"verdicts"},
+    {"inverse_verdicts"},
     {"values", "scale_effects"},
     {"answers", "estimates"},
     {"conditions", "extrapolation", "tolerance"},
-    {"batches"},
+    {"batches", "temperatures"},
     {"answering"},
     {"store", "exchange"},
     {"entries", "plan"},
@@ -65,7 +67,7 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "answering",
+    "tolerance", "batches", "answering", "branches", "roots", "inversion", "inverse_verdicts", "temperatures",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 
