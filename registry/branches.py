@@ -255,11 +255,21 @@ def cut_branches(place: int, stretch: Stretch, *, positive: bool) -> list[Branch
     found = []
     with np.errstate(all="ignore"):
         for low, high in zip(starts, stops, strict=True):
-            for left, right in _find_usable(curve, low, high, positive):
+            for left, right in _find_usable(curve, *_trim_level(candidate, low, high), positive):
                 found += [
                     Branch(place, candidate, *ends, positive=positive) for ends in _find_turns(curve, left, right)
                 ]
     return found
+
+
+def _trim_level(candidate: Candidate, low: float, high: float) -> tuple[float, float]:
+    """The ends without the tolerance beside a bound where the curve is level there, as beyond a critical point."""
+    curve, (first, last) = candidate.curve, candidate.reach
+    if low < first < high and curve.value(first) == curve.value(low):
+        low = first
+    if low < last < high and curve.value(last) == curve.value(high):
+        high = last
+    return low, high
 
 
 def _is_usable(curve: Curve, kelvin: Array, positive: bool) -> NDArray[np.bool_]:
