@@ -8,7 +8,7 @@ from registry.branches import Branch, cut_branches
 from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.display import format_plain, suit_unit
-from registry.inversion import SAME_TEMPERATURE, Inversion, span_candidate
+from registry.inversion import END_TOLERANCE, SAME_TEMPERATURE, Inversion, span_candidate
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
@@ -78,22 +78,36 @@ def _refuse_several(inversion: Inversion, value: float, found: tuple[tuple[float
     coverage = inversion.coverage
     name, given = coverage.dossier.compound.key, _pascal(value)
     sides = tuple(Side(branch.candidate.key, kelvin, value) for kelvin, branch in found)
-    if not all(inversion.answers(branch) for _, branch in found):
-        phases = sorted({branch.candidate.record.phase for _, branch in found})
-        text = f"{name} has {given} where several phases have a {coverage.property}, and none was named."
+    phases = sorted({branch.candidate.record.phase for _, branch in found})
+    if len(phases) > 1 or not all(inversion.answers(branch) for _, branch in found):
+        listed = join_names(
+            (f"{b.candidate.record.phase} at {_kelvin(t)} ({b.candidate.key})" for t, b in found), "and"
+        )
+        text = f"No phase of {name} was named, and {given} is its {coverage.property} for {listed}."
         return _make(value, "several-phases", text, f"Name one with --phase: {join_names(phases)}.", sides=sides)
-    first, second = found[0][1], found[-1][1]
-    if len(found) == 2 and first.candidate is not second.candidate and _meet(first, second):
-        at = _kelvin(round(first.high, 8))
+    jump = _name_jump(found[0][1], found[-1][1]) if len(found) == 2 else ""
+    if jump:
         text = (
-            f"{given} falls into the jump of the seam at {at}: {sides[0].correlation} has it below, at "
-            f"{_kelvin(sides[0].temperature)}, and {sides[1].correlation} above, at {_kelvin(sides[1].temperature)}."
+            f"{given} falls into {jump}: {sides[0].correlation} has it below, at {_kelvin(sides[0].temperature)}, and "
+            f"{sides[1].correlation} above, at {_kelvin(sides[1].temperature)}."
         )
         return _make(value, "seam", text, "Choose by the side you are on.", sides=sides)
     listed = join_names((f"{_kelvin(side.temperature)} ({side.correlation})" for side in sides), "and")
     text = f"{name} has {given} at several temperatures: {listed}."
-    advice = "Its curve turns: look at its coefficients with `rangebook show`, and at its window."
-    return _make(value, "several-temperatures", text, advice, sides=sides)
+    keys = sorted({side.correlation for side in sides})
+    advice = f"Its curve turns: `rangebook show {keys[0]}` tells its coefficients and its window."
+    return _make(value, "several-temperatures", text, advice if len(keys) == 1 else show_map(coverage), sides=sides)
+
+
+def _name_jump(lower: Branch, upper: Branch) -> str:
+    """The jump between two branches that meet; empty if they do not, or meet where a curve turns."""
+    before, after = lower.ends[1], upper.ends[0]
+    if not _meet(lower, upper) or abs(after - before) <= END_TOLERANCE * abs(before):
+        return ""
+    at = _kelvin(round(upper.low, 8))
+    if lower.candidate is upper.candidate:
+        return f"the jump of its temperature scale ({lower.candidate.record.temperature_scale}) at {at}"
+    return f"the jump of the seam at {at}"
 
 
 def _meet(lower: Branch, upper: Branch) -> bool:
@@ -133,11 +147,8 @@ def _refuse_none(inversion: Inversion, value: float) -> InverseRefusal:
         return _refuse_outside(inversion, value, below, above)
     sides = (_find_side(below, greatest=True), _find_side(above, greatest=False))
     told = f"{_tell(sides[0])} and {_tell(sides[1])}"
-    if _meet(below, above) or _meet(above, below):
-        at = _kelvin(sides[0].temperature)
-        jump = f"the jump of the seam at {at}"
-        if below.candidate is above.candidate:
-            jump = f"a jump of the temperature scale at {at}"
+    jump = _name_jump(below, above) or _name_jump(above, below)
+    if jump:
         text = f"{given} falls into {jump}, between {told}: no temperature has it."
         return _make(value, "seam", text, show_map(coverage), sides=sides)
     text = f"{given} falls into a gap for {prop}, between {told}."
