@@ -70,8 +70,16 @@ def _tell(side: Side) -> str:
 def _find_side(branch: Branch, *, greatest: bool) -> Side:
     """The end of a branch where its value is greatest, or least: the bound itself, not the tolerance beside it."""
     high = (branch.ends[1] >= branch.ends[0]) == greatest
-    at = min(max(round(branch.high if high else branch.low, 8), branch.low), branch.high)
+    at = _find_bound(branch, branch.high if high else branch.low)
     return Side(branch.candidate.key, at, branch.candidate.curve.value(at))
+
+
+def _find_bound(branch: Branch, end: float) -> float:
+    """The bound beside which an end of a branch lies; the end itself where the temperature scale jumps there."""
+    at = round(end, 8)
+    joints = [bound for low, high, _ in branch.candidate.curve.scale.branches for bound in (low, high)]
+    jumps = any(abs(end - joint) <= SAME_TEMPERATURE for joint in joints)
+    return at if branch.candidate.covers(at) and not jumps else end
 
 
 def _refuse_several(inversion: Inversion, value: float, found: tuple[tuple[float, Branch], ...]) -> InverseRefusal:
@@ -170,7 +178,7 @@ def _refuse_outside(inversion: Inversion, value: float, below: Branch | None, ab
 
 
 def _tell_range(branch: Branch) -> str:
-    low, high = (min(max(round(t, 8), branch.low), branch.high) for t in (branch.low, branch.high))
+    low, high = (_find_bound(branch, end) for end in (branch.low, branch.high))
     ends = [f"{_pascal(branch.candidate.curve.value(t))}" for t in (low, high)]
     return f"{ends[0]} to {ends[1]} over {format_plain(low)} to {_kelvin(high)}"
 
