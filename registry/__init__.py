@@ -11,17 +11,20 @@ from typing import TYPE_CHECKING, Any
 if TYPE_CHECKING:
     from registry.answers import Answer
     from registry.batches import Batch
+    from registry.boundary import SaturationBatch
     from registry.errors import RangebookError, Refused
     from registry.library import Library
     from registry.opening import open_library, start_library
     from registry.readings import Reading, parse_reading
     from registry.refusals import InverseRefusal, Refusal
+    from registry.saturation import Saturation
     from registry.temperatures import Temperatures
 
 __version__ = "0.1.0"
 
 __all__ = [
-    "Answer", "Batch", "InverseRefusal", "Library", "RangebookError", "Reading", "Refusal", "Refused", "Temperatures",
+    "Answer", "Batch", "InverseRefusal", "Library", "RangebookError", "Reading", "Refusal", "Refused", "Saturation",
+    "SaturationBatch", "Temperatures",
     "open_library", "parse_reading", "start_library",
 ]  # fmt: skip
 
@@ -29,6 +32,7 @@ _HOMES = {
     "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "InverseRefusal": "refusals",
     "Temperatures": "temperatures",
     "Reading": "readings", "parse_reading": "readings",
+    "Saturation": "saturation", "SaturationBatch": "boundary",
     "RangebookError": "errors", "Refused": "errors",
     "Library": "library", "open_library": "opening", "start_library": "opening",
 }  # fmt: skip

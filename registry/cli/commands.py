@@ -33,9 +33,11 @@ class Home(NamedTuple):
 COMMANDS: dict[str, Home] = {
     "lookup": Home("looking", "lookup"),
     "boil": Home("boiling", "boil"),
+    "slope": Home("sloping", "slope"),
     "coverage": Home("browsing", "coverage"),
     "list": Home("browsing", "list_records"),
     "show": Home("browsing", "show"),
+    "restate": Home("restating", "restate"),
     "forms": Home("vocabulary", "forms"),
     "record": Home("recording", "build_record_group", group=True),
     "revise": Home("revising", "revise"),
