@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 
-from registry.branches import Branch, cut_branches
+from registry.branches import Branch
 from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.display import format_plain, suit_unit
@@ -13,6 +13,7 @@ from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.refusals import InverseRefusal, Side
+from registry.turns import cut_branches
 from registry.verdicts import describe_unaccepted, refuse, show_map
 
 __all__ = ["refuse_pressure"]

@@ -36,7 +36,7 @@ LAYERS = (
     {"candidate"},
     {"ranking", "evaluation", "deviation", "budget"},
     {"coverage"},
-    {"branches", "roots", "inversion"},
+    {"branches", "roots", "turns", "inversion"},
     {"comparison", "volumes"},
     {"verdicts"},
     {"inverse_verdicts"},
@@ -68,7 +68,7 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "answering", "branches", "roots", "inversion", "inverse_verdicts", "temperatures",
+    "tolerance", "batches", "answering", "branches", "roots", "turns", "inversion", "inverse_verdicts", "temperatures",
     "restating", "clapeyron", "virial", "volumes", "boundary", "saturation",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
