@@ -36,12 +36,14 @@ LAYERS = (
     {"candidate"},
     {"ranking", "evaluation", "deviation", "budget"},
     {"coverage"},
+    {"branches", "roots", "turns", "inversion"},
     {"comparison", "volumes"},
     {"verdicts"},
+    {"inverse_verdicts"},
     {"values", "scale_effects"},
     {"answers", "estimates", "boundary"},
     {"conditions", "extrapolation", "tolerance"},
-    {"batches"},
+    {"batches", "temperatures"},
     {"answering"},
     {"saturation"},
     {"store", "exchange"},
@@ -66,7 +68,8 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "answering", "restating", "clapeyron", "virial", "volumes", "boundary", "saturation",
+    "tolerance", "batches", "answering", "branches", "roots", "turns", "inversion", "inverse_verdicts", "temperatures",
+    "restating", "clapeyron", "virial", "volumes", "boundary", "saturation",
 }  # fmt: skip
 OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
 
