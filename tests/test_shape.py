@@ -24,7 +24,8 @@ LAYERS = (
     {"moments"},
     {"errors"},
     {"quantities", "properties", "cells", "scales", "shelves"},
-    {"display"},
+    {"display", "conversion"},
+    {"spacing"},
     {"uncertainty", "forms", "masses"},
     {"readings"},
     {"records"},
@@ -39,6 +40,10 @@ LAYERS = (
     {"comparison"},
     {"verdicts"},
     {"answers"},
+    {"reasons", "span"},
+    {"tabulation"},
+    {"tally"},
+    {"reports"},
     {"store", "exchange"},
     {"entries", "plan"},
     {"findings"},
@@ -51,6 +56,7 @@ LAYERS = (
     {"recording", "reconciliation", "arrival", "editions", "departure"},
     {"collection"},
     {"reader"},
+    {"tabulator"},
     {"archive"},
     {"signature"},
     {"library"},
@@ -60,9 +66,9 @@ LAYERS = (
 NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
-    "readings", "rounding", "budget",
+    "readings", "rounding", "budget", "conversion", "spacing", "reasons", "span", "tabulation", "tally",
 }  # fmt: skip
-OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
+OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}, "xlsxwriter": {"reports"}}
 
 
 def _top(module: str) -> str:

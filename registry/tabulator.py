@@ -1,0 +1,92 @@
+"""Reading a library in tables."""
+
+from __future__ import annotations
+
+import math
+from fractions import Fraction
+from typing import TYPE_CHECKING
+
+from registry.errors import BadInput, quote
+from registry.reader import Reader
+
+# a lookup makes no table
+if TYPE_CHECKING:
+    from registry.tabulation import Table
+
+__all__ = ["Tabulator"]
+
+
+class Tabulator(Reader):
+    """Reading a library as `Reader` does, and in tables.
+
+    Parameters
+    ----------
+    file : LibraryFile
+        The open database.
+    position : int, optional
+        The change up to which everything is read; the newest one if none is
+        given.
+    lock : RLock, optional
+        Of the reader that this one is a view of, and that owns the file.
+    """
+
+    def tabulate(
+        self, compound: str, low: float, high: float, *, step: float | None = None, points: int | None = None,
+        property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False, drafts: bool = False,
+        one: bool = False,
+    ) -> Table:  # fmt: skip
+        """Values at evenly spaced temperatures, as rows that are made while they are read.
+
+        Parameters
+        ----------
+        compound : str
+            Key, name, synonym, CAS number or formula, case aside.
+        low, high : float
+            The first temperature, and the last one at most, K.
+        step : float, optional
+            From one temperature to the next, K. Numbers count as they are
+            written: 0.1 is a tenth, and steps do not drift.
+        points : int, optional
+            How many temperatures, both ends among them; instead of `step`.
+        property, phase, metastable, drafts
+            As for `lookup`.
+        one : bool
+            Let one correlation answer over the whole span, the one that ranks
+            first of those that cover all of it.
+
+        Returns
+        -------
+        Table
+            Its rows say where the answering correlation changes and by how
+            much the value jumps there; a refused row has a reason.
+
+        Raises
+        ------
+        Refused
+            If one correlation is asked for and none covers the whole span.
+        UnknownKey, BadInput
+            As for `lookup`, or if the ends, the step or the number of points
+            cannot be.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     table = library.tabulate("water", 273.16, 647.0, step=0.1)
+        >>> len(table)
+        3739
+        """
+        from registry.spacing import space_temperatures
+        from registry.tabulation import build_table
+
+        ends = _read_exact(low, "temperature"), _read_exact(high, "temperature")
+        spacing = space_temperatures(*ends, None if step is None else _read_exact(step, "step"), points)
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        return build_table(coverage, spacing, float(ends[0]), float(ends[1]), one=one)
+
+
+def _read_exact(number: float, what: str) -> Fraction:
+    """The decimal number that a float is written as."""
+    if isinstance(number, (str, bool)) or not math.isfinite(number) or number <= 0:
+        raise BadInput(f"{quote(number)} is no {what}; a finite number above 0 is allowed.")
+    return Fraction(str(number))
