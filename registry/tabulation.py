@@ -158,6 +158,15 @@ class Table:
         """The SI unit of the values."""
         return PROPERTIES[self.coverage.property].unit
 
+    def extremes(self) -> tuple[list[float], list[float]]:
+        """Temperatures, K, at which a correlation begins or ends to answer in the table, and the values there."""
+        low, high = self.span
+        ends = [
+            kelvin for stretch in self.coverage.between(low, high) if stretch.candidate
+            for kelvin in (max(low, stretch.low), min(high, math.nextafter(stretch.high, 0.0)))
+        ]  # fmt: skip
+        return ends, self.coverage.evaluate(np.array(ends))[0].tolist()
+
     def __len__(self) -> int:
         return self.spacing.count
 

@@ -68,7 +68,14 @@ NUMERIC = {
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "conversion", "spacing", "reasons", "span", "tabulation", "tally",
 }  # fmt: skip
-OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}, "xlsxwriter": {"reports"}}
+OWNERS = {
+    "sqlalchemy": {"store"},
+    "alembic": {"store"},
+    "typer": {"cli"},
+    "rich": {"cli"},
+    "click": {"cli"},
+    "xlsxwriter": {"reports"},
+}
 
 
 def _top(module: str) -> str:

@@ -32,6 +32,7 @@ class Home(NamedTuple):
 
 COMMANDS: dict[str, Home] = {
     "lookup": Home("looking", "lookup"),
+    "table": Home("tabling", "table"),
     "coverage": Home("browsing", "coverage"),
     "list": Home("browsing", "list_records"),
     "show": Home("browsing", "show"),
