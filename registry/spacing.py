@@ -20,8 +20,11 @@ __all__ = ["MOST_ROWS", "Even", "Geometric", "Listed", "Spacing", "space_pressur
 MOST_ROWS = 10_000_000
 """Rows of the longest table."""
 
-_DECIMALS = 6
+_DECIMALS = 9
 """Decimals that are shown at most."""
+
+_FEW = 4
+"""Decimals up to which places are shown exactly."""
 
 
 @dataclass(frozen=True)
@@ -48,8 +51,10 @@ class Even:
         return [(at + i * by) / below for i in range(start, stop)]
 
     def decimals(self, unit: Unit) -> int:
-        """How many decimals tell the places apart, and exactly where few do."""
-        return max(_decimals(_in_unit(self.first, unit)), _decimals(self.step / unit.factor))
+        """How many decimals show the places: exactly where a few do, else to four and to a hundredth of the step."""
+        first, step = _in_unit(self.first, unit), self.step / unit.factor
+        exact = max(_decimals(first), _decimals(step))
+        return exact if exact <= _FEW else min(exact, max(_magnitude(step) + 2, _FEW))
 
 
 @dataclass(frozen=True)
@@ -93,8 +98,8 @@ class Geometric:
         return found
 
     def decimals(self, unit: Unit) -> int:
-        """As for `Even`."""
-        return _DECIMALS
+        """Four digits of the lowest place."""
+        return min(_DECIMALS, max(_magnitude(_in_unit(self.low, unit)) + 3, 0))
 
 
 Spacing = Even | Listed | Geometric
@@ -106,7 +111,12 @@ def _in_unit(exact: Fraction, unit: Unit) -> Fraction:
 
 def _decimals(exact: Fraction) -> int:
     """The decimals that a number needs, up to the most that are shown."""
-    return next((n for n in range(_DECIMALS) if not (exact * 10**n).denominator > 1), _DECIMALS)
+    return next((n for n in range(_DECIMALS) if (exact * 10**n).denominator == 1), _DECIMALS)
+
+
+def _magnitude(exact: Fraction) -> int:
+    """The decimal in which the first digit stands: 1 for 0.25, -1 for 25."""
+    return -math.floor(math.log10(abs(float(exact)))) if exact else 0
 
 
 def space_temperatures(low: Fraction, high: Fraction, step: Fraction | None, points: int | None) -> Spacing:

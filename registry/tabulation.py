@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
-from functools import cached_property
+from functools import cached_property, lru_cache
 from typing import Any, NamedTuple
 
 import numpy as np
@@ -26,7 +26,7 @@ __all__ = ["BLOCK", "Block", "Note", "Row", "Table", "build_table"]
 
 Array = NDArray[np.float64]
 
-BLOCK = 4096
+BLOCK = 1024
 """Rows that are held at a time."""
 
 _THIN = 1e-6
@@ -180,7 +180,7 @@ class Table:
                 yield Row(kelvin, value, stated, keys[owner] if owner >= 0 else "", block.notes.get(number, PLAIN))
 
     def blocks(self) -> Iterator[Block]:
-        """The rows in order, some thousands at a time."""
+        """The rows in order, about a thousand at a time."""
         marker = _Marker(self.coverage)
         for start in range(0, self.spacing.count, BLOCK):
             kelvin, values, places = self._solve(start, min(start + BLOCK, self.spacing.count))
@@ -189,7 +189,7 @@ class Table:
             percents = self._expand(kelvin, values, owners)
             notes = marker.mark(kelvin, places.tolist(), owners)
             for number in np.flatnonzero(refused).tolist():
-                notes[number] = Note(("refused",), self._reason(kelvin, values, places, number))
+                notes[number] = _note_refused(self._reason(kelvin, values, places, number))
             yield Block(start, kelvin, values, percents, owners, notes)
 
     def _solve(self, start: int, stop: int) -> tuple[Array, Array, NDArray[np.signedinteger[Any]]]:
@@ -227,6 +227,12 @@ class Table:
             mine = owned == number
             percents[mine] = self.coverage.answering[number].expanded_percents(kelvin[mine], values[mine])
         return percents
+
+
+@lru_cache
+def _note_refused(reason: str) -> Note:
+    """One note for all rows refused for the same reason."""
+    return Note(("refused",), reason)
 
 
 def build_table(coverage: Coverage, spacing: Spacing, low: float, high: float, *, one: bool = False) -> Table:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import operator
 from fractions import Fraction
 from typing import TYPE_CHECKING
 
@@ -80,13 +81,25 @@ class Tabulator(Reader):
         from registry.tabulation import build_table
 
         ends = _read_exact(low, "temperature"), _read_exact(high, "temperature")
-        spacing = space_temperatures(*ends, None if step is None else _read_exact(step, "step"), points)
+        by = None if step is None else _read_exact(step, "step")
+        spacing = space_temperatures(*ends, by, None if points is None else _read_whole(points))
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
         return build_table(coverage, spacing, float(ends[0]), float(ends[1]), one=one)
 
 
 def _read_exact(number: float, what: str) -> Fraction:
     """The decimal number that a float is written as."""
-    if isinstance(number, (str, bool)) or not math.isfinite(number) or number <= 0:
-        raise BadInput(f"{quote(number)} is no {what}; a finite number above 0 is allowed.")
-    return Fraction(str(number))
+    try:
+        plain = number.item() if hasattr(number, "item") else number
+        if isinstance(plain, (int, float)) and math.isfinite(plain) and plain > 0:
+            return Fraction(str(plain))
+    except (ValueError, OverflowError):
+        pass  # an array of several, or an integer beyond every double
+    raise BadInput(f"{quote(number)} is no {what}; a finite number above 0 is allowed.")
+
+
+def _read_whole(number: int) -> int:
+    try:
+        return operator.index(number)
+    except TypeError:
+        raise BadInput(f"{quote(number)} is no number of points; a whole number is allowed.") from None
