@@ -131,9 +131,9 @@ class Table:
     >>> with registry.open_library("shelf.db") as library:
     ...     for row in library.tabulate("ethanol", 290.0, 295.0, step=2.5):
     ...         print(row.temperature, round(row.value, 1), row.correlation, *row.note.marks)
-    290.0 4841.1 ethanol-antoine-low
-    292.5 5664.8 ethanol-antoine-low
-    295.0 6630.8 ethanol-poling-5 seam
+    290.0 4805.4 ethanol-antoine-low
+    292.5 5601.4 ethanol-antoine-low
+    295.0 6546.4 ethanol-poling-5 seam
     """
 
     def __init__(self, coverage: Coverage, spacing: Spacing, note: str = "") -> None:

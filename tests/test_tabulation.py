@@ -329,7 +329,7 @@ def test_where_none_covers_the_span_those_that_come_closest_are_named(published)
 
 def test_one_correlation_outside_all_windows(published):
     """No part of the span is covered: nothing comes close."""
-    with pytest.raises(Refused, match="None answers over any part of it. `rangebook coverage ethanol"):
+    with pytest.raises(Refused, match=r"None answers over any part of it\. `rangebook coverage ethanol"):
         published.tabulate("ethanol", 600.0, 700.0, step=5.0, one=True)
     with pytest.raises(Refused, match="ethanol has no correlation for melting-pressure"):
         published.tabulate("ethanol", 200.0, 210.0, step=5.0, one=True, property="melting-pressure")

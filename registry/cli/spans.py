@@ -133,8 +133,8 @@ def _read_step(text: str, dimension: str) -> Fraction:
     """A difference in SI: its unit counts by its size alone."""
     try:
         number, unit = read_quantity(text, dimension, "5K or 9F" if dimension == "temperature" else "10kPa")
-    except GaugePressure as error:
-        raise BadQuantity(error.given, "a step is a difference, in a unit such as kPa.") from None
+    except GaugePressure:
+        raise BadQuantity(text, "a step is a difference, in a unit such as kPa.") from None
     if number <= 0:
         raise BadQuantity(text, "a step is greater than zero.")
     return number * unit.factor

@@ -20,13 +20,11 @@ from registry.cli.options import (
     open_chosen,
 )
 from registry.cli.screen import CAUTION, complain, print_json, say
-from registry.errors import BadInput, Refused, quote
+from registry.errors import BadInput, quote
 
 if TYPE_CHECKING:
     from collections.abc import Iterator
 
-    from registry.cli.spans import Span
-    from registry.coverage import Coverage
     from registry.reports.columns import Columns
     from registry.tabulation import Table
     from registry.tally import Tally
@@ -98,11 +96,13 @@ def table(
     with open_chosen(library) as book:
         past, label = look_at(book, edition, as_of)
         coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
-        made = _build(span, coverage, one)
+        made = span.build(coverage, one)
         columns = Columns(made, *span.choose_units(made, unit, temperature_unit))
-        tally = _write(columns, wanted, label, output, force)
+        # where nothing answers there is no table, but an object that says so
+        empty = not made.extremes()[0] and not (as_json and output is None)
+        tally = _read_through(made) if empty else _write(columns, wanted, label, output, force)
     if as_json and output is not None:
-        print_json(_describe_file(tally, output, wanted))
+        print_json(_describe_file(tally, None if empty else output, wanted))
     elif not as_json:
         _complain_refused(tally)
     if tally.refusals:
@@ -124,13 +124,13 @@ def _choose_format(given: str, output: Path | None, as_json: bool) -> str:
     return found
 
 
-def _build(span: Span, coverage: Coverage, one: bool) -> Table:
-    """The table; refused as a whole where nothing answers anywhere in it."""
-    made = span.build(coverage, one)
-    if not made.extremes()[0]:
-        row = next(iter(made))
-        raise Refused(made.refusal(row))
-    return made
+def _read_through(made: Table) -> Tally:
+    from registry.tally import Tally
+
+    tally = Tally(made)
+    for _ in tally.blocks():
+        pass
+    return tally
 
 
 def _write(columns: Columns, form: str, label: str, output: Path | None, force: bool) -> Tally:
@@ -173,10 +173,10 @@ def _make_parts(columns: Columns, tally: Tally, form: str, label: str) -> Iterat
     return write_text(columns, tally, label)
 
 
-def _describe_file(tally: Tally, output: Path, form: str) -> dict[str, Any]:
+def _describe_file(tally: Tally, output: Path | None, form: str) -> dict[str, Any]:
     return {
         "compound": tally.table.coverage.dossier.compound.key, "property": tally.table.coverage.property,
-        "output": str(output), "format": form, "rows": tally.rows, "refused": dict(tally.refused),
+        "output": str(output) if output else None, "format": form, "rows": tally.rows, "refused": dict(tally.refused),
         "position": tally.table.coverage.dossier.position,
     }  # fmt: skip
 
