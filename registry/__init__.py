@@ -9,17 +9,24 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
-    from registry.answers import Answer, Batch, Refusal
+    from registry.answers import Answer
+    from registry.batches import Batch
     from registry.errors import RangebookError, Refused
     from registry.library import Library
     from registry.opening import open_library, start_library
+    from registry.readings import Reading, parse_reading
+    from registry.refusals import Refusal
 
 __version__ = "0.1.0"
 
-__all__ = ["Answer", "Batch", "Library", "RangebookError", "Refusal", "Refused", "open_library", "start_library"]
+__all__ = [
+    "Answer", "Batch", "Library", "RangebookError", "Reading", "Refusal", "Refused", "open_library", "parse_reading",
+    "start_library",
+]  # fmt: skip
 
 _HOMES = {
-    "Answer": "answers", "Batch": "answers", "Refusal": "answers",
+    "Answer": "answers", "Batch": "batches", "Refusal": "refusals",
+    "Reading": "readings", "parse_reading": "readings",
     "RangebookError": "errors", "Refused": "errors",
     "Library": "library", "open_library": "opening", "start_library": "opening",
 }  # fmt: skip

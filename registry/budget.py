@@ -17,7 +17,7 @@ import numpy as np
 from registry.candidate import Candidate
 from registry.readings import Reading
 from registry.rounding import Rounding
-from registry.uncertainty import COVERAGE_FACTOR
+from registry.uncertainty import COVERAGE_FACTOR, Piece
 
 __all__ = ["Budget", "make_budget"]
 
@@ -55,38 +55,38 @@ class Budget:
         """The stated uncertainty and that of the temperature together [1]_; None if none is stated."""
         if self.stated_percent is None:
             return None
-        return math.hypot(self.stated_percent * COVERAGE_FACTOR / (self.stated_factor or COVERAGE_FACTOR),
-                          self.temperature_percent)  # fmt: skip
+        expansion = COVERAGE_FACTOR / (self.stated_factor or COVERAGE_FACTOR)
+        return math.hypot(expansion * self.stated_percent, self.temperature_percent)
 
 
-def make_budget(candidate: Candidate, molar_mass: float, reading: Reading, value: float) -> Budget:
+def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float, molar_mass: float) -> Budget:
     """The uncertainty budget of a value.
 
     Parameters
     ----------
     candidate : Candidate
         What gave it.
-    molar_mass : float
-        Molar mass of the compound, g/mol.
+    piece : Piece or None
+        What its source states of the uncertainty there.
     reading : Reading
         The temperature asked.
     value : float
         The value there, SI.
+    molar_mass : float
+        Molar mass of the compound, g/mol.
 
     Returns
     -------
     Budget
         Its parts.
     """
-    piece = candidate.piece_at(reading.kelvin)
     at = np.array([reading.kelvin])
     rounding = Rounding.of(candidate.record, molar_mass)
-    standard, bound = float(rounding.standards(at)[0]), float(rounding.bounds(at)[0])
     spread = reading.uncertainty * COVERAGE_FACTOR / (reading.factor or COVERAGE_FACTOR)
     return Budget(
         piece.percent_of(value) if piece else None,
         piece.factor if piece else None,
         100.0 * abs(candidate.curve.log_rate(reading.kelvin)) * spread if spread else 0.0,
-        COVERAGE_FACTOR * standard,
-        bound,
+        COVERAGE_FACTOR * float(rounding.standards(at)[0]),
+        float(rounding.bounds(at)[0]),
     )

@@ -82,11 +82,6 @@ class Candidate:
         found = self._piece_at(kelvin)
         return found[1] if found else math.inf
 
-    def stated_percent(self, kelvin: float, value: float) -> float | None:
-        """The stated uncertainty as a percent of a value there, or None."""
-        piece = self.piece_at(kelvin)
-        return piece.percent_of(value) if piece else None
-
     def piece_at(self, kelvin: float) -> Piece | None:
         """The piece of its stated uncertainty that holds there, or None."""
         found = self._piece_at(kelvin)

@@ -130,6 +130,12 @@ class Coverage:
                 jump = 100.0 * (after / before - 1.0) if before else math.inf
                 yield Seam(at, left.candidate.key, right.candidate.key, jump)
 
+    def seam_at(self, kelvin: float) -> Seam | None:
+        """The seam at a temperature, K; None away from all."""
+        if not any(abs(edge - kelvin) <= 2.0 * rules.BOUND_TOLERANCE for edge in self._edges):
+            return None
+        return next((seam for seam in self.seams if abs(seam.temperature - kelvin) <= 1e-8), None)
+
     @property
     def gaps(self) -> tuple[Stretch, ...]:
         """Stretches without an answer that lie between two with one."""

@@ -36,6 +36,8 @@ class Curve:
     window : tuple of float
         Where it may answer, K: as printed, cut to where its form means
         something.
+    domain : tuple of float
+        Where its form means something, K, whatever the window; open below.
     """
 
     kernel: Kernel
@@ -44,6 +46,7 @@ class Curve:
     ratio: float
     scale: Scale
     window: tuple[float, float]
+    domain: tuple[float, float]
 
     @classmethod
     def of(cls, correlation: Correlation, molar_mass: float, instead: Mapping[str, float] | None = None) -> Curve:
@@ -91,7 +94,7 @@ class Curve:
         window = (max(printed[0], float(np.nextafter(low, np.inf))), min(printed[1], high))
         return cls(
             folded.kernel, folded.parameters, factor, units.ratio,
-            SCALES[correlation.temperature_scale], window,
+            SCALES[correlation.temperature_scale], window, (low, high),
         )  # fmt: skip
 
     @property

@@ -145,7 +145,7 @@ def measure_deviation(before: Curve, after: Curve, low: float, high: float) -> D
     >>> from registry.scales import SCALES
     >>> def antoine(A):
     ...     folded = FORMS["antoine-log10"].fold({"A": A, "B": 1700.0, "C": -40.0}, Units())
-    ...     return Curve(folded.kernel, folded.parameters, 1.0, 1.0, SCALES["ITS-90"], (280.0, 380.0))
+    ...     return Curve(folded.kernel, folded.parameters, 1.0, 1.0, SCALES["ITS-90"], *2 * ((280.0, 380.0),))
     >>> found = measure_deviation(antoine(9.0), antoine(9.01), 280.0, 380.0)
     >>> f"{found.largest_percent:.6f} % = {100.0 * (10.0**0.01 - 1.0):.6f} %, at {found.at} K"
     '2.329299 % = 2.329299 %, at 280.0 K'

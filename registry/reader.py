@@ -3,22 +3,28 @@
 from __future__ import annotations
 
 import threading
-from typing import Any, overload
+from typing import TYPE_CHECKING, Any, overload
 
 import numpy as np
 from numpy.typing import ArrayLike, NDArray
 
-from registry.answers import Answer, Batch
+from registry.answering import answer_many, answer_one
+from registry.answers import Answer
 from registry.collection import Collection
+from registry.conditions import make_conditions
 from registry.coverage import Coverage, build_coverage
-from registry.errors import BadInput, NotALibrary, Refused, quote
+from registry.errors import BadInput, NotALibrary, quote
 from registry.naming import join_names
 from registry.properties import find_property
-from registry.refusals import Refusal
+from registry.readings import Reading
 from registry.store.library_file import LibraryFile
-from registry.verdicts import refuse
+from registry.values import Value
 
-__all__ = ["Reader", "answer_one"]
+# a lookup of one temperature needs none
+if TYPE_CHECKING:
+    from registry.batches import Batch
+
+__all__ = ["Reader"]
 
 
 class Reader(Collection):
@@ -45,28 +51,37 @@ class Reader(Collection):
 
     @overload
     def lookup(
-        self, compound: str, temperature: float, *, property: str = ..., phase: str | None = ...,
-        metastable: bool = ..., drafts: bool = ...,
+        self, compound: str, temperature: float | Reading, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ..., within: float | None = ..., beyond: float = ...,
     ) -> Answer: ...  # fmt: skip
 
     @overload
     def lookup(
+        self, compound: str, temperature: float | Reading, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ..., within: float | None = ..., beyond: float = ..., estimate: str,
+    ) -> Value: ...  # fmt: skip
+
+    @overload
+    def lookup(
         self, compound: str, temperature: ArrayLike, *, property: str = ..., phase: str | None = ...,
-        metastable: bool = ..., drafts: bool = ...,
+        metastable: bool = ..., drafts: bool = ..., within: float | None = ..., beyond: float = ...,
+        estimate: str = ...,
     ) -> Batch: ...  # fmt: skip
 
     def lookup(
         self, compound: str, temperature: Any, *, property: str = "vapor-pressure", phase: str | None = None,
-        metastable: bool = False, drafts: bool = False,
-    ) -> Answer | Batch:  # fmt: skip
+        metastable: bool = False, drafts: bool = False, within: float | None = None, beyond: float = 0.0,
+        estimate: str = "",
+    ) -> Value | Batch:  # fmt: skip
         """The value of a property at one temperature, or at many.
 
         Parameters
         ----------
         compound : str
             Key, name, synonym, CAS number or formula, case aside.
-        temperature : float or array_like of float
-            Temperature on ITS-90, K.
+        temperature : float, Reading or array_like of float
+            Temperature on ITS-90, K; `parse_reading` reads one with its
+            uncertainty or on another scale.
         property : str
             What is asked for.
         phase : str, optional
@@ -76,12 +91,22 @@ class Reader(Collection):
         drafts : bool
             Let the newest drafts of correlations answer; such an answer says
             that it is a draft.
+        within : float, optional
+            Refuse what does not state an uncertainty within this percentage
+            (at coverage factor 2, with that of the temperature).
+        beyond : float
+            Extrapolate where nothing covers, at most so many kelvin beyond
+            the nearest accepted window; such a value is marked.
+        estimate : str
+            ``lee-kesler`` or ``ambrose-walton``: estimate where nothing else
+            answers; such a value is marked.
 
         Returns
         -------
-        Answer or Batch
-            An answer for one temperature. For an array a batch, whose
-            `values` are NaN where nothing may answer.
+        Answer, Value or Batch
+            An answer for one temperature; with `estimate` it may be an
+            estimate, which no correlation stands behind. For an array a
+            batch, whose `values` are NaN where nothing may answer.
 
         Raises
         ------
@@ -106,12 +131,15 @@ class Reader(Collection):
         registry.errors.Refused: 700 K lies above the critical temperature of water, ...
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        conditions = make_conditions(within, beyond, estimate)
         if isinstance(temperature, float):
-            return answer_one(coverage, temperature)
+            return answer_one(coverage, temperature, None, conditions)
+        if isinstance(temperature, Reading):
+            return answer_one(coverage, temperature.kelvin, temperature, conditions)
         kelvin = _as_kelvin(temperature)
         if kelvin.ndim == 0:
-            return answer_one(coverage, float(kelvin))
-        return Batch(kelvin, *coverage.evaluate(kelvin), coverage)
+            return answer_one(coverage, float(kelvin), None, conditions)
+        return answer_many(coverage, kelvin, conditions)
 
     def coverage(
         self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False,
@@ -171,19 +199,3 @@ def _as_kelvin(temperature: Any) -> NDArray[np.float64]:
 def _plain(phase: str) -> str:
     """A phase as it is compared: case and hyphens aside."""
     return phase.casefold().replace("-", " ")
-
-
-def answer_one(coverage: Coverage, kelvin: float) -> Answer:
-    """The answer at one temperature, K; raises `Refused` where there is none."""
-    value, candidate = coverage.value_at(kelvin)
-    if candidate is None:
-        raise Refused(_refuse_one(coverage, kelvin))
-    return Answer(kelvin, value, candidate, coverage)
-
-
-def _refuse_one(coverage: Coverage, kelvin: float) -> Refusal:
-    """The refusal at one temperature, which must be a temperature."""
-    refusal = refuse(coverage, kelvin)
-    if refusal.reason == "not-a-temperature":
-        raise BadInput(refusal.explanation)
-    return refusal

@@ -10,7 +10,7 @@ Examples that are understood::
 from __future__ import annotations
 
 import re
-from dataclasses import dataclass
+from typing import NamedTuple
 
 from registry.errors import BadQuantity
 from registry.naming import join_names
@@ -21,14 +21,14 @@ from registry.uncertainty import parse_factor
 
 __all__ = ["Reading", "parse_reading"]
 
-_BRACKETS = re.compile(r"\s*\(([^()]*)\)$")
-_SPREAD = re.compile(r"\s*(?:\+/[-\u2212]|\+[-\u2212]|±)\s*")
-_NUMBER = re.compile(r"([0-9.]+(?:[eE][+-]?[0-9]+)?)\s*(.*)", re.DOTALL)
+# compiled at first use: few temperatures have brackets or an uncertainty
+_BRACKETS = r"\s*\(([^()]*)\)$"
+_SPREAD = r"\s*(?:\+/[-\u2212]|\+[-\u2212]|±)\s*"
+_NUMBER = r"(?s)([0-9.]+(?:[eE][+-]?[0-9]+)?)\s*(.*)"
 _EXAMPLE = "such as 298.15+/-0.05K"
 
 
-@dataclass(frozen=True)
-class Reading:
+class Reading(NamedTuple):
     """A temperature that was read or typed.
 
     Attributes
@@ -79,8 +79,10 @@ def parse_reading(text: str) -> Reading:
     >>> round(parse_reading("100 degC (IPTS-68)").kelvin, 4)
     373.1244
     """
+    if "(" not in text and "±" not in text and "+" not in text:
+        return Reading(parse_temperature(text))
     plain, factor, scale = _take_brackets(text)
-    parts = _SPREAD.split(plain)
+    parts = re.split(_SPREAD, plain)
     if len(parts) == 1:
         number, spread = parse_temperature(_blame(plain, text)), 0.0
     elif len(parts) == 2:
@@ -105,7 +107,7 @@ def _blame(plain: str, text: str) -> str:
 def _take_brackets(text: str) -> tuple[str, float | None, Scale | None]:
     """The text without what stands in brackets at its end; the coverage factor and the scale found there."""
     plain, factor, scale = text.strip(), None, None
-    while match := _BRACKETS.search(plain):
+    while match := re.search(_BRACKETS, plain):
         plain, inside = plain[: match.start()], match[1].strip()
         if inside.startswith("k"):
             factor = _read_factor(inside, text)
@@ -137,7 +139,7 @@ def _squeeze(name: str) -> str:
 
 def _read_spread(left: str, right: str, text: str) -> tuple[float, float]:
     """The temperature and its uncertainty, K; the unit stands behind the second, or behind both."""
-    match = _NUMBER.fullmatch(right)
+    match = re.fullmatch(_NUMBER, right)
     if match is None:
         raise BadQuantity(text, f"an uncertainty is a number above zero, {_EXAMPLE}.")
     try:

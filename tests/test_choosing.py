@@ -282,7 +282,7 @@ def test_an_absolute_uncertainty_ranks_by_its_worst_percent():
     assert candidate.ranked_uncertainty(300.0) == 1.0
     assert candidate.ranked_uncertainty(450.0) == pytest.approx(5000.0 / candidate.curve.value(300.0), rel=1e-12)
     value = candidate.curve.value(450.0)
-    assert candidate.stated_percent(450.0, value) == pytest.approx(5000.0 / value, rel=1e-12)
+    assert candidate.piece_at(450.0).percent_of(value) == pytest.approx(5000.0 / value, rel=1e-12)
 
 
 RECORD = invent_correlation(0, 250, 150, "standard", "", "memory", "accepted").record

@@ -16,8 +16,8 @@ from registry.opening import open_library
 
 ANSWER_KEYS = {
     "temperature_K", "value", "unit", "value_SI", "correlation", "revision", "phase", "window_K", "evidence",
-    "counts_as", "standing", "obtained", "uncertainty_percent", "percent_per_kelvin", "factor_per_10_K", "source",
-    "chosen_because", "candidates", "cautions",
+    "counts_as", "standing", "obtained", "uncertainty_percent", "uncertainty", "scale_effects", "mark",
+    "percent_per_kelvin", "factor_per_10_K", "source", "chosen_because", "candidates", "cautions",
 }  # fmt: skip
 
 

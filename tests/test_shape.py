@@ -39,7 +39,11 @@ LAYERS = (
     {"coverage"},
     {"comparison"},
     {"verdicts"},
-    {"answers"},
+    {"values", "scale_effects"},
+    {"answers", "estimates"},
+    {"conditions", "extrapolation", "tolerance"},
+    {"batches"},
+    {"answering"},
     {"reasons", "span"},
     {"tabulation"},
     {"tally"},
@@ -66,7 +70,8 @@ LAYERS = (
 NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
-    "readings", "rounding", "budget", "conversion", "spacing", "reasons", "span", "tabulation", "tally",
+    "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
+    "tolerance", "batches", "answering", "conversion", "spacing", "reasons", "span", "tabulation", "tally",
 }  # fmt: skip
 OWNERS = {
     "sqlalchemy": {"store"},

@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
-from registry.answers import Answer, Refusal
+from registry.answers import Answer
 from registry.cli.documents import value_in
 from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
 from registry.display import format_number, format_plain
 from registry.forms.catalogue import FORMS
+from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import Unit
+from registry.refusals import Refusal
+from registry.values import Value
 
 __all__ = ["print_answers"]
 
@@ -19,49 +22,72 @@ _OBTAINED = {"seen": "seen in the source", "memory": "from memory"}
 
 
 def print_answers(
-    coverage: Coverage, label: str, found: list[tuple[Asked, Answer | Refusal]], to: Unit | None, why: bool
+    coverage: Coverage, label: str, found: list[tuple[Asked, Value | Refusal]], to: Unit | None, why: bool
 ) -> None:
     """A table of values, then what stands behind them, once for each correlation."""
-    answers = [(asked, result) for asked, result in found if isinstance(result, Answer)]
-    if not answers:
+    values = [(asked, result) for asked, result in found if not isinstance(result, Refusal)]
+    if not values:
         return
+    answers = [(asked, value) for asked, value in values if isinstance(value, Answer)]
+    estimates = [(asked, value) for asked, value in values if not isinstance(value, Answer)]
     name = coverage.dossier.compound.record.name
     say(emphasize(f"{name}: {PROPERTIES[coverage.property].title}{name_past(label)}"))
     say()
-    _print_values(answers, to)
+    _print_values(values, to)
     stories: dict[str, list[tuple[Asked, Answer]]] = {}
     for asked, answer in answers:
-        stories.setdefault(answer.correlation.key, []).append((asked, answer))
+        # a value beyond the window has its own story
+        stories.setdefault(f"{answer.correlation.key} {answer.mark}", []).append((asked, answer))
     for told in stories.values():
         say()
-        _print_story(told)
+        _print_story(told, why)
+    if estimates:
+        from registry.cli.estimate_text import print_estimates
+
+        say()
+        print_estimates(estimates)
     if why:
         _print_verdicts(answers)
     say()
     say(wrap(CAUTION, 0))
 
 
-def _print_values(answers: list[tuple[Asked, Answer]], to: Unit | None) -> None:
+def _print_values(values: list[tuple[Asked, Value]], to: Unit | None) -> None:
+    spread = any(value.reading.uncertainty for _, value in values)
     rows = []
-    for asked, answer in answers:
-        value, unit = value_in(answer, to)
-        stated = answer.uncertainty_percent
+    for asked, found in values:
+        value, unit = value_in(found, to)
         rows.append([
-            asked.text, f"{format_plain(answer.temperature)} K", format_number(value), unit.name + _mark(answer),
-            f"{stated:.3g} %" if stated is not None else "none",
-            f"{answer.percent_per_kelvin:+.3g} %", f"x {answer.factor_per_10_kelvin:.4g}",
-            answer.correlation.obtained, answer.correlation.key,
+            asked.text, f"{format_plain(found.temperature)} K", format_number(value), unit.name + _mark(found),
+            *_word_uncertainty(found, spread), f"{found.percent_per_kelvin:+.3g} %",
+            *([] if spread else [f"x {found.factor_per_10_kelvin:.4g}"]),
+            found.correlation.obtained if isinstance(found, Answer) else "none", found.origin,
         ])  # fmt: skip
-    headers = ["asked", "is", "value", "", "stated", "per K", "per 10 K", "obtained", "answered by"]
-    print_table(headers, rows, right=(True, True, True, False, True, True, True))
+    parts = ["stated", "by T", "in all", "per K"] if spread else ["stated", "per K", "per 10 K"]
+    headers = ["asked", "is", "value", "", *parts, "obtained", "answered by"]
+    print_table(headers, rows, right=(True, True, True, False, *(True for _ in headers[4:-2])))
 
 
-def _mark(answer: Answer) -> str:
-    """Beside the unit of a value that a draft gives."""
-    return "" if answer.standing == "accepted" else f" ({answer.standing.upper()})"
+def _word_uncertainty(found: Value, spread: bool) -> list[str]:
+    """What is stated; with `spread` also what the temperature adds, and both together."""
+    if not isinstance(found, Answer):
+        return ["none", "", ""] if spread else ["none"]
+    stated, piece = found.uncertainty_percent, found.piece
+    factor = f" (k={piece.factor:g})" if piece and piece.factor else ""
+    words = [f"{stated:.3g} %{factor}" if stated is not None else "none"]
+    if spread:
+        budget = found.budget
+        total = budget.expanded_percent
+        words += [f"{budget.temperature_percent:.3g} %", "none" if total is None else f"{total:.3g} %"]
+    return words
 
 
-def _print_story(told: list[tuple[Asked, Answer]]) -> None:
+def _mark(found: Value) -> str:
+    """Beside the unit of a value that no accepted window gives."""
+    return f" ({found.mark.upper()})" if found.mark else ""
+
+
+def _print_story(told: list[tuple[Asked, Answer]], why: bool) -> None:
     """One correlation, with why it was chosen at the first of its temperatures."""
     first, answer = told[0]
     record = answer.correlation
@@ -78,9 +104,35 @@ def _print_story(told: list[tuple[Asked, Answer]]) -> None:
             ("evidence", _word_evidence(answer)),
             ("source", f"{answer.citation}; {locator}"),
             ("chosen", chosen),
+            *(_word_ground(answer) if why else ()),
             *(("caution", caution) for caution in cautions),
         ),
         indent=4,
+    )
+
+
+def _word_ground(answer: Answer) -> list[tuple[str, str]]:
+    """What the printed digits leave open, and what the temperature scale does."""
+    budget = answer.budget
+    rounding = f"{budget.rounding_percent:.2g} % (k=2), {budget.rounding_bound_percent:.2g} % at most"
+    digits = rounding if budget.rounding_bound_percent else "nothing: every coefficient is exact"
+    return [
+        ("digits", f"The rounding of the printed coefficients leaves open {digits}."),
+        ("scale", _word_scale(answer)),
+    ]
+
+
+def _word_scale(answer: Answer) -> str:
+    effects, name = answer.scale_effects, answer.correlation.temperature_scale
+    if not effects:
+        return f"{name}." if name == "ITS-90" else f"{name}; no published conversion reaches this temperature."
+    if effects[0].supposed:
+        listed = join_names([f"by {e.percent:+.2g} % were it {e.scale}" for e in effects], "or")
+        return f"Not stated; the value would change {listed}."
+    effect = effects[0]
+    return (
+        f"{name}, whose number there is {effect.shift:+.2g} K from ITS-90: that changes the value by "
+        f"{effect.percent:+.2g} %, and is taken into account."
     )
 
 

@@ -7,20 +7,26 @@ import math
 from collections.abc import Iterable
 from typing import TYPE_CHECKING, Any
 
-from registry.answers import Answer, Refusal
+from registry.answers import Answer
 from registry.coverage import Coverage, Stretch
 from registry.display import suit_unit
 from registry.dossier import Entry
 from registry.limits import Limits
 from registry.quantities import UNITS, Unit, convert
 from registry.records import Record
+from registry.refusals import Refusal
 from registry.store.history import Change
+from registry.uncertainty import COVERAGE_FACTOR
+from registry.values import Value
 
-# a lookup compares nothing
+# a lookup compares nothing, and seldom estimates
 if TYPE_CHECKING:
     from registry.chronicle import FieldChange
     from registry.comparison import NumberChange
     from registry.difference import Preview
+    from registry.estimates import Estimate
+    from registry.extrapolation import Extrapolation
+    from registry.scale_effects import ScaleEffect
 
 __all__ = [
     "describe_answer",
@@ -31,25 +37,53 @@ __all__ = [
     "describe_number",
     "describe_preview",
     "describe_refusal",
+    "describe_value",
     "value_in",
 ]
 
 
-def value_in(answer: Answer, to: Unit | None) -> tuple[float, Unit]:
-    """The value of an answer in the unit asked for, or in the one that suits it."""
-    unit = to or suit_unit(answer.value, UNITS[answer.unit])
-    return convert(answer.value, UNITS[answer.unit], unit, answer.grams_per_mole), unit
+def value_in(found: Value, to: Unit | None) -> tuple[float, Unit]:
+    """The value in the unit asked for, or in the one that suits it."""
+    unit = to or suit_unit(found.value, UNITS[found.unit])
+    return convert(found.value, UNITS[found.unit], unit, found.grams_per_mole), unit
+
+
+def describe_value(found: Value, to: Unit | None) -> dict[str, Any]:
+    """One value, wherever it comes from; its `mark` says so."""
+    if found.mark == "estimate":
+        from registry.estimates import Estimate
+
+        assert isinstance(found, Estimate)
+        return {**_describe_head(found, to), **_describe_estimate(found)}
+    assert isinstance(found, Answer)
+    return describe_answer(found, to)
+
+
+def _describe_head(found: Value, to: Unit | None) -> dict[str, Any]:
+    """What every value has, and how its temperature was read."""
+    value, unit = value_in(found, to)
+    reading = found.reading
+    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if reading.shift else {}
+    if reading.uncertainty:
+        asked |= {"temperature_uncertainty_K": reading.uncertainty, "temperature_coverage_factor": reading.factor}
+    return {
+        "temperature_K": found.temperature, **asked, "value": value, "unit": unit.name, "value_SI": found.value,
+        "mark": found.mark or None,
+    }  # fmt: skip
 
 
 def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:
-    """One answer."""
-    value, unit = value_in(answer, to)
+    """One answer of a correlation."""
     record = answer.correlation
+    beyond = {}
+    if answer.mark == "beyond":
+        from registry.extrapolation import Extrapolation
+
+        assert isinstance(answer, Extrapolation)
+        beyond = _describe_extrapolation(answer)
     return {
-        "temperature_K": answer.temperature,
-        "value": value,
-        "unit": unit.name,
-        "value_SI": answer.value,
+        **_describe_head(answer, to),
+        **beyond,
         "correlation": record.key,
         "revision": answer.revision,
         "phase": record.phase,
@@ -59,6 +93,8 @@ def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:
         "standing": answer.standing,
         "obtained": record.obtained,
         "uncertainty_percent": answer.uncertainty_percent,
+        "uncertainty": _describe_budget(answer),
+        "scale_effects": [_describe_scale_effect(effect) for effect in answer.scale_effects],
         "percent_per_kelvin": answer.percent_per_kelvin,
         "factor_per_10_K": answer.factor_per_10_kelvin,
         "source": {"key": record.source, "citation": answer.citation, "locator": record.locator},
@@ -66,6 +102,54 @@ def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:
         "candidates": [dataclasses.asdict(verdict) for verdict in answer.candidates],
         "cautions": list(answer.cautions),
     }
+
+
+def _describe_budget(answer: Answer) -> dict[str, Any]:
+    budget = answer.budget
+    return {
+        "stated_percent": budget.stated_percent,
+        "stated_coverage_factor": budget.stated_factor,
+        "temperature_percent": budget.temperature_percent,
+        "expanded_percent": budget.expanded_percent,
+        "rounding_percent": budget.rounding_percent,
+        "rounding_bound_percent": budget.rounding_bound_percent,
+        "coverage_factor": COVERAGE_FACTOR,
+    }
+
+
+def _describe_scale_effect(effect: ScaleEffect) -> dict[str, Any]:
+    return {"scale": effect.scale, "supposed": effect.supposed, "shift_K": effect.shift, "percent": effect.percent}
+
+
+def _describe_extrapolation(answer: Extrapolation) -> dict[str, Any]:
+    neighbours = [
+        {"correlation": n.correlation, "distance_K": n.distance, "value_SI": n.value, "percent": n.percent}
+        for n in answer.neighbours
+    ]
+    return {"distance_K": answer.distance, "neighbours": neighbours}
+
+
+def _describe_estimate(estimate: Estimate) -> dict[str, Any]:
+    method = estimate.method
+    return {
+        "correlation": None,
+        "method": {
+            "name": method.name, "title": method.title, "reference": method.reference,
+            "typical_error": method.typical_error,
+        },
+        "inputs": [
+            {
+                "quantity": e.record.quantity, "value_SI": e.record.value_si(), "fixed_point": e.key,
+                "revision": e.revision, "source": e.record.source, "obtained": e.record.obtained,
+            }
+            for e in estimate.points
+        ],
+        "reduced_temperature": estimate.reduced_temperature,
+        "uncertainty_percent": None,
+        "percent_per_kelvin": estimate.percent_per_kelvin,
+        "factor_per_10_K": estimate.factor_per_10_kelvin,
+        "cautions": list(estimate.cautions),
+    }  # fmt: skip
 
 
 def describe_refusal(refusal: Refusal) -> dict[str, Any]:

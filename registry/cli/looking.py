@@ -22,9 +22,11 @@ from registry.cli.screen import complain, print_json
 from registry.errors import BadQuantity, GaugePressure, Refused
 
 if TYPE_CHECKING:
-    from registry.answers import Answer, Refusal
     from registry.cli.temperatures import Asked
+    from registry.conditions import Conditions
     from registry.coverage import Coverage
+    from registry.refusals import Refusal
+    from registry.values import Value
 
 REFUSED = 3
 """Exit code when a temperature was refused."""
@@ -33,7 +35,10 @@ REFUSED = 3
 def lookup(
     compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
     temperatures: Annotated[
-        list[str], typer.Argument(metavar="TEMPERATURE...", help="298.15K, 25C, 77F, 536.67R; - reads stdin.")
+        list[str],
+        typer.Argument(
+            metavar="TEMPERATURE...", help="298.15K, 25C, 77F, 25+/-0.1C, '100 degC (IPTS-68)'; - reads stdin."
+        ),
     ],
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
@@ -45,6 +50,28 @@ def lookup(
     drafts: DraftsOption = False,
     edition: EditionOption = None,
     as_of: AsOfOption = None,
+    within: Annotated[
+        str | None,
+        typer.Option("--within", metavar="PERCENT", help="Refuse a larger uncertainty, or none.", show_default=False),
+    ] = None,
+    beyond: Annotated[
+        str | None,
+        typer.Option(
+            "--beyond",
+            metavar="KELVIN",
+            help="Extrapolate so far (5K) where nothing covers; marked.",
+            show_default=False,
+        ),
+    ] = None,
+    estimate: Annotated[
+        str | None,
+        typer.Option(
+            "--estimate",
+            metavar="METHOD",
+            help="Estimate where nothing answers: lee-kesler, ambrose-walton; marked.",
+            show_default=False,
+        ),
+    ] = None,
     why: Annotated[bool, typer.Option("--why", help="Every candidate with its verdict.")] = False,
     library: LibraryOption = None,
     as_json: JsonOption = False,
@@ -55,18 +82,19 @@ def lookup(
 
     Example: rangebook lookup water 25C 100C --unit mmHg
     """
-    from registry.answers import Answer
     from registry.cli.answer_text import print_answers
     from registry.cli.temperatures import read_temperatures
+    from registry.refusals import Refusal
 
     asked = read_temperatures(temperatures)
+    conditions = _read_conditions(within, beyond, estimate)
     with open_chosen(library) as book:
         to = _choose_unit(unit, atmosphere, prop)
         past, label = look_at(book, edition, as_of)
         coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         # all at the one position that this coverage was read at
-        found = [(one, _answer(coverage, one)) for one in asked]
-        refusals = [result for _, result in found if not isinstance(result, Answer)]
+        found = [(one, _answer(coverage, one, conditions)) for one in asked]
+        refusals = [result for _, result in found if isinstance(result, Refusal)]
         if as_json:
             print_json(_describe(coverage, label, found, to))
         else:
@@ -77,19 +105,35 @@ def lookup(
         raise typer.Exit(REFUSED)
 
 
-def _answer(coverage: Coverage, asked: Asked) -> Answer | Refusal:
-    from registry.reader import answer_one
+def _answer(coverage: Coverage, asked: Asked, conditions: Conditions) -> Value | Refusal:
+    from registry.answering import answer_one
 
     try:
-        return answer_one(coverage, asked.kelvin)
+        return answer_one(coverage, asked.kelvin, asked.reading, conditions)
     except Refused as error:
         return error.refusal
 
 
+def _read_conditions(within: str | None, beyond: str | None, estimate: str | None) -> Conditions:
+    """What was asked for by name; nothing is imported for what was not."""
+    from registry.conditions import PLAIN, make_conditions
+
+    if within is beyond is estimate is None:
+        return PLAIN
+    from registry.cli.amounts import read_difference, read_percent
+    from registry.estimates import find_method
+
+    return make_conditions(
+        read_percent("--within", within) if within is not None else None,
+        read_difference("--beyond", beyond) if beyond is not None else 0.0,
+        find_method(estimate).name if estimate is not None else "",
+    )
+
+
 def _choose_unit(unit: str, atmosphere: str, prop: str) -> Any:
     """The unit asked for, or None for the one that suits each value."""
-    from registry.answers import find_target_unit
     from registry.properties import PROPERTIES
+    from registry.values import find_target_unit
 
     if prop not in PROPERTIES:
         return None  # the library says what there is
@@ -107,15 +151,15 @@ def _read_atmosphere(text: str) -> Any:
         raise BadQuantity(text, "the local atmosphere is an absolute pressure, such as 101.325kPa.") from None
 
 
-def _describe(coverage: Coverage, label: str, found: list[tuple[Asked, Answer | Refusal]], to: Any) -> dict[str, Any]:
-    from registry.answers import Answer
-    from registry.cli.documents import describe_answer, describe_refusal
+def _describe(coverage: Coverage, label: str, found: list[tuple[Asked, Value | Refusal]], to: Any) -> dict[str, Any]:
+    from registry.cli.documents import describe_refusal, describe_value
+    from registry.refusals import Refusal
 
     return {
         "compound": coverage.dossier.compound.key,
         "property": coverage.property,
-        "answers": [describe_answer(result, to) for _, result in found if isinstance(result, Answer)],
-        "refusals": [describe_refusal(result) for _, result in found if not isinstance(result, Answer)],
+        "answers": [describe_value(result, to) for _, result in found if not isinstance(result, Refusal)],
+        "refusals": [describe_refusal(result) for _, result in found if isinstance(result, Refusal)],
         "position": coverage.dossier.position,
         "as_of": label or None,
     }

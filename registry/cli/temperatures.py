@@ -7,16 +7,22 @@ from collections.abc import Iterator, Sequence
 from typing import NamedTuple
 
 from registry.errors import BadInput, BadQuantity
-from registry.quantities import find_unit, parse_temperature
+from registry.quantities import find_unit
+from registry.readings import Reading, parse_reading
 
 __all__ = ["Asked", "read_temperatures"]
 
 
 class Asked(NamedTuple):
-    """A temperature as typed, and in kelvin."""
+    """A temperature as typed, and as read: on ITS-90, with its uncertainty."""
 
     text: str
-    kelvin: float
+    reading: Reading
+
+    @property
+    def kelvin(self) -> float:
+        """On ITS-90, K."""
+        return self.reading.kelvin
 
 
 def read_temperatures(words: Sequence[str]) -> list[Asked]:
@@ -27,20 +33,29 @@ def read_temperatures(words: Sequence[str]) -> list[Asked]:
             asked += _read_stdin()
         else:
             plain = word.replace("\u2212", "-")
-            asked.append(Asked(plain, parse_temperature(plain)))
+            asked.append(Asked(plain, parse_reading(plain)))
     if not asked:
         raise BadInput("No temperature was given. Give one or more, such as 298.15K, 25C or 77F, or - for stdin.")
     return asked
 
 
 def _join_units(words: Sequence[str]) -> Iterator[str]:
-    """`25 °C` typed as two words is one temperature."""
+    """`25 °C` typed as two words is one temperature, and so is `25 +/- 0.1 degC (k=2)`."""
     left = list(words)
     while left:
         word = left.pop(0)
-        if left and word[-1:].isdigit() and _is_unit(left[0]):
+        while left and _goes_on(word, left[0]):
             word = f"{word} {left.pop(0)}"
         yield word
+
+
+_SPREAD = ("+/-", "+-", "±")
+
+
+def _goes_on(word: str, following: str) -> bool:
+    if following.startswith((*_SPREAD, "(")) or word.endswith(_SPREAD):
+        return True
+    return word[-1:].isdigit() and _is_unit(following)
 
 
 def _is_unit(word: str) -> bool:
@@ -62,6 +77,6 @@ def _read_stdin() -> Iterator[Asked]:
         text = line.strip()
         if text and not text.startswith("#"):
             try:
-                yield Asked(text, parse_temperature(text))
+                yield Asked(text, parse_reading(text))
             except BadQuantity as error:
                 raise BadInput(f"stdin, line {number}: {error}") from None

@@ -12,7 +12,7 @@ import numpy as np
 from invented import FIVE_WINDOWS, THREE_FORMS, Array, write_package, write_plain
 from timing import Call, compare, find_dearest, keep_freed_memory
 
-from registry.answers import Batch
+from registry.batches import Batch
 from registry.library import Library
 from registry.opening import start_library
 from registry.records import Correlation

@@ -203,6 +203,76 @@ REQUESTS = (
      "is misprinted and every pressure is 14 % high); brindovane-cox-draft is a draft. "
      "Nearest: brindovane-antoine-low (250 to 310 K) is 20 K away; brindovane-kirchhoff (360 to 420 K) is 30 K away. "
      "It answers again once a reviewed record covers it."),
+    # asked for by name
+    ("a larger uncertainty than asked for", "published", ("lookup", "water", "25C", "--within", "0.02%"), 3,
+     "Refused (too-uncertain): water-if97 answers at 298.15 K with a stated uncertainty of 0.025 % (k=2), and "
+     "--within 0.02% was asked for. No other correlation that covers it states one small enough."),
+    ("a larger uncertainty than asked for, by the temperature", "published",
+     ("lookup", "water", "25+/-0.05C", "--within", "0.2 %"), 3,
+     "Refused (too-uncertain): water-if97 answers at 298.15 K with an uncertainty of 0.299 % (k=2), 0.298 % of it from "
+     "the temperature, and --within 0.2% was asked for. The temperature alone makes more: state it more closely."),
+    ("a larger uncertainty than one ranked behind", "scenario",
+     ("lookup", "brindovane", "400K", "--within", "0.1%"), 3,
+     "Refused (too-uncertain): brindovane-kirchhoff answers at 400 K with a stated uncertainty of 0.8 % (k=2), and "
+     "--within 0.1% was asked for. No other correlation that covers it states one small enough."),
+    ("no stated uncertainty", "published", ("lookup", "ethanol", "25C", "--within", "1%"), 3,
+     "Refused (uncertainty-not-stated): ethanol-poling-5 answers at 298.15 K, but states no uncertainty there, and "
+     "--within 1% was asked for. No other correlation that covers it states one small enough."),
+    ("no stated uncertainty beyond a window", "published",
+     ("lookup", "ethanol", "210K", "--beyond", "10K", "--within", "1%"), 3,
+     "Refused (uncertainty-not-stated): The value at 210 K is extrapolated: no source states its uncertainty, and "
+     "--within 1% was asked for."),
+    ("no stated uncertainty of an estimate", "published",
+     ("lookup", "acetylene", "250K", "--estimate", "lee-kesler", "--within", "5%"), 3,
+     "Refused (uncertainty-not-stated): The value at 250 K is an estimate: no source states its uncertainty, and "
+     "--within 5% was asked for."),
+    ("further beyond than asked for", "published", ("lookup", "ethanol", "200K", "--beyond", "9F"), 3,
+     "Refused (outside-windows): 200 K lies outside every window for vapor-pressure of ethanol. "
+     "Nearest: ethanol-antoine-low (216.15 to 353.15 K) is 16.15 K away. "
+     "`rangebook coverage ethanol --property vapor-pressure` shows the map. --beyond 5K does not reach it."),
+    ("beyond the critical temperature", "published", ("lookup", "water", "700K", "--beyond", "100K"), 3,
+     "Refused (above-critical): 700 K lies above the critical temperature of water, 647.096 K "
+     "(iapws-r2-83-sr1-86-r6-95): there is no liquid. "
+     "Nearest: water-if97 (273.15 to 647.096 K) is 52.904 K away. "
+     "`rangebook coverage water --property vapor-pressure` shows the map. --beyond does not cross a phase limit."),
+    ("beyond windows of several phases", "published",
+     ("lookup", "water", "250K", "-p", "melting-pressure", "--beyond", "5K"), 3,
+     "Refused (outside-windows): 250 K lies outside every window for melting-pressure of water. "
+     "Nearest: water-melting-ice-ih-r14-08 (251.165 to 273.16 K) is 1.165 K away. "
+     "`rangebook coverage water --property melting-pressure` shows the map. "
+     "--beyond needs the phase: name it with --phase."),
+    ("an estimate above the critical temperature", "published",
+     ("lookup", "acetylene", "310K", "--estimate", "lee-kesler"), 3,
+     "Refused (above-critical): 310 K lies above the critical temperature of acetylene, 308.3 K (perry-8): there is no "
+     "liquid. Nearest: acetylene-antoine-appendix-e (192.35 to 201.15 K) is 108.85 K away. "
+     "`rangebook coverage acetylene --property vapor-pressure` shows the map."),
+    ("an estimate without constants", "published", ("lookup", "neon", "30K", "--estimate", "lee-kesler"), 2,
+     "Lee-Kesler needs the critical temperature, critical pressure and acentric factor of neon; no accepted fixed "
+     "point says it. Record one, or leave --estimate out."),
+    ("an estimate of another property", "published",
+     ("lookup", "r-134a", "160K", "-p", "saturated-liquid-density", "--estimate", "lee-kesler"), 2,
+     "Lee-Kesler estimates vapour pressures, not saturated-liquid-density. Leave --estimate out."),
+    ("an unknown method", "published", ("lookup", "water", "25C", "--estimate", "riedel"), 2,
+     "There is no estimation method 'riedel'; the methods are lee-kesler and ambrose-walton."),
+    ("a tolerance without %", "published", ("lookup", "water", "25C", "--within", "2"), 2,
+     "'2' cannot be read: --within takes a percentage above zero, such as 2%."),
+    ("a tolerance of nothing", "published", ("lookup", "water", "25C", "--within", "0%"), 2,
+     "'0%' cannot be read: --within takes a percentage above zero, such as 2%."),
+    ("an empty tolerance", "published", ("lookup", "water", "25C", "--within", ""), 2,
+     "'' cannot be read: --within takes a percentage above zero, such as 2%."),
+    ("a distance without unit", "published", ("lookup", "water", "25C", "--beyond", "5"), 2,
+     f"'5' cannot be read: --beyond takes a difference of temperature above zero, such as 5K; its units are "
+     f"{TEMPERATURES}."),
+    ("a distance below zero", "published", ("lookup", "water", "25C", "--beyond=-5K"), 2,
+     f"'-5K' cannot be read: --beyond takes a difference of temperature above zero, such as 5K; its units are "
+     f"{TEMPERATURES}."),
+    ("an uncertainty without unit", "published", ("lookup", "water", "25+/-0.1"), 2,
+     f"'25+/-0.1' cannot be read: a temperature unit is one of {TEMPERATURES}."),
+    ("an unknown scale", "published", ("lookup", "water", "25C (ITS-27)"), 2,
+     "'25C (ITS-27)' cannot be read: what stands in brackets is a temperature scale (ITS-90, IPTS-68, IPTS-48 or "
+     "ice-point-273.16) or a coverage factor (k=2)."),
+    ("a scale that is not converted there", "published", ("lookup", "mercury", "500C (IPTS-48)"), 2,
+     "'500C (IPTS-48)' cannot be read: no published conversion from IPTS-48 to ITS-90 reaches this temperature."),
     ("nothing recorded for the property", "published", ("lookup", "mercury", "300K", "-p", "melting-pressure"), 3,
      "Refused (no-correlation): mercury has no correlation for melting-pressure. It has vapor-pressure. "
      "`rangebook show mercury` lists them."),
