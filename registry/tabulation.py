@@ -68,7 +68,7 @@ class Row(NamedTuple):
         K; NaN where a pressure was refused.
     value : float
         In the SI unit of the property; NaN where a temperature was refused.
-    uncertainty_percent : float or None
+    expanded_percent : float or None
         The stated uncertainty at coverage factor 2, percent of the value;
         None if none is stated.
     correlation : str
@@ -79,7 +79,7 @@ class Row(NamedTuple):
 
     temperature: float
     value: float
-    uncertainty_percent: float | None
+    expanded_percent: float | None
     correlation: str
     note: Note
 

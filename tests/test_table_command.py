@@ -26,7 +26,7 @@ from registry.reports.markdown_table import escape
 from registry.reports.workbook import MOST_ROWS, check_workbook
 
 ETHANOL = ("ethanol", "--from", "280K", "--to", "520K", "--step", "8K")
-NAMES = ["temperature_K", "vapor_pressure_kPa", "uncertainty_percent", "correlation", "revision", "mark"]
+NAMES = ["temperature_K", "vapor_pressure_kPa", "uncertainty_percent_k2", "correlation", "revision", "mark"]
 CODE = "from registry.cli.entry import main; main()"
 
 

@@ -72,7 +72,7 @@ def _describe_row(columns: Columns, kelvin: float, line: Line) -> dict[str, Any]
         "temperature_K": _finite(kelvin),
         "temperature": _finite(temperature),
         "value": _finite(value),
-        "uncertainty_percent": _finite(line.percent),
+        "expanded_percent": _finite(line.percent),
         "correlation": line.correlation or None,
         "revision": line.revision,
         "marks": line.note.marks,

@@ -69,7 +69,7 @@ class Columns:
         self._revisions = [*(c.entry.revision for c in candidates), None]
         heads = (f"temperature_{temperature.name}", f"{table.coverage.property.replace('-', '_')}_{value.name}")
         heads = heads if self.by_temperature else heads[::-1]
-        self.names = (*heads, "uncertainty_percent", "correlation", "revision", "mark")
+        self.names = (*heads, "uncertainty_percent_k2", "correlation", "revision", "mark")
 
     @property
     def by_temperature(self) -> bool:
