@@ -222,7 +222,9 @@ def _flat_table(low: float, value: float, *, positive: bool) -> Table:
     """Of a curve with one value: its lower end stands for all."""
     zero = np.zeros(1)
     start = math.log(value) if positive else value
-    return Table(start, 1.0, (np.array([low]), zero, zero.copy(), zero.copy()), np.array([low, low]), np.array([np.inf]))
+    return Table(
+        start, 1.0, (np.array([low]), zero, zero.copy(), zero.copy()), np.array([low, low]), np.array([np.inf])
+    )
 
 
 def cut_branches(place: int, stretch: Stretch, *, positive: bool) -> list[Branch]:

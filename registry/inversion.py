@@ -60,9 +60,7 @@ class Inversion:
     def branches(self) -> tuple[Branch, ...]:
         """The monotone parts of all answering curves, in the order of temperature."""
         positive = PROPERTIES[self.coverage.property].positive
-        cut = (
-            cut_branches(place, stretch, positive=positive) for place, stretch in enumerate(self.coverage.stretches)
-        )
+        cut = (cut_branches(place, stretch, positive=positive) for place, stretch in enumerate(self.coverage.stretches))
         return tuple(branch for branches in cut for branch in branches)
 
     @cached_property
@@ -85,9 +83,7 @@ class Inversion:
     def _owners(self) -> tuple[tuple[int, ...], ...]:
         """For each interval between ends the branches that have its values."""
         lows = [-math.inf, *self._ends.tolist()]
-        return tuple(
-            tuple(i for i, (first, stop) in enumerate(self._ranges) if first <= low < stop) for low in lows
-        )
+        return tuple(tuple(i for i, (first, stop) in enumerate(self._ranges) if first <= low < stop) for low in lows)
 
     @cached_property
     def _alone(self) -> NDArray[np.int16]:

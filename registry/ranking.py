@@ -16,7 +16,7 @@ Among the accepted correlations that cover a temperature for a phase:
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 
 from registry.candidate import Candidate
 from registry.records import EVIDENCE
@@ -71,15 +71,17 @@ def worst_rank(candidate: Candidate, low: float, high: float) -> tuple[int, floa
     return max(rank_of(candidate, kelvin) for kelvin in (low, high, *(end for end in ends if low < end < high)))
 
 
-def choose_throughout(covering: Sequence[Candidate], low: float, high: float, preferred: Pairs) -> Candidate:
+def choose_throughout(
+    covering: Sequence[Candidate], spans: Mapping[str, tuple[float, float]], preferred: Pairs
+) -> Candidate:
     """The candidate that ranks first over a whole span, each by its worst rank in it.
 
     Parameters
     ----------
     covering : sequence of Candidate
         The accepted candidates that cover the whole span; at least one.
-    low, high : float
-        The ends of the span, K.
+    spans : mapping of str to (float, float)
+        The ends of the span for each candidate, K, by its key.
     preferred : frozenset of (str, str)
         Pairs (key, key it is preferred over), without a cycle.
 
@@ -88,7 +90,7 @@ def choose_throughout(covering: Sequence[Candidate], low: float, high: float, pr
     Candidate
         The best one.
     """
-    return min(_drop_over(covering, preferred), key=lambda candidate: worst_rank(candidate, low, high))
+    return min(_drop_over(covering, preferred), key=lambda candidate: worst_rank(candidate, *spans[candidate.key]))
 
 
 def deciding_rule(best: Candidate, other: Candidate, kelvin: float) -> int:

@@ -21,9 +21,7 @@ _ROUNDS = 200
 """Halving alone needs about 60."""
 
 
-def find_roots(
-    curve: Curve, wanted: Array, below: Array, above: Array, start: Array, *, positive: bool
-) -> Array:
+def find_roots(curve: Curve, wanted: Array, below: Array, above: Array, start: Array, *, positive: bool) -> Array:
     """Temperatures at which a monotone curve has given values, by Newton's steps inside a bracket.
 
     A step that leaves the bracket, or is not half the one before, is replaced

@@ -5,7 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
-from functools import cached_property, lru_cache
+from functools import cached_property, lru_cache, partial
 from typing import Any, NamedTuple
 
 import numpy as np
@@ -16,7 +16,7 @@ from registry.candidate import Candidate
 from registry.coverage import Coverage, Seam, Stretch
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.reasons import Reasons
+from registry.reasons import Reasons, cut_temperatures
 from registry.refusals import Refusal
 from registry.spacing import Spacing
 from registry.span import demand_one
@@ -202,7 +202,7 @@ class Table:
 
     @cached_property
     def _reasons(self) -> Reasons:
-        return Reasons(self.coverage)
+        return Reasons(cut_temperatures(self.coverage), partial(refuse, self.coverage))
 
     def refusal(self, row: Row) -> Refusal:
         """Why a row was refused, with the nearest windows.

@@ -8,6 +8,7 @@ from fractions import Fraction
 from typing import TYPE_CHECKING
 
 from registry.errors import BadInput, quote
+from registry.properties import PROPERTIES
 from registry.reader import Reader
 
 # a lookup makes no table
@@ -85,6 +86,71 @@ class Tabulator(Reader):
         spacing = space_temperatures(*ends, by, None if points is None else _read_whole(points))
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
         return build_table(coverage, spacing, float(ends[0]), float(ends[1]), one=one)
+
+    def tabulate_at_pressures(
+        self, compound: str, low: float, high: float, *, step: float | None = None, points: int | None = None,
+        property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False, drafts: bool = False,
+        one: bool = False,
+    ) -> Table:  # fmt: skip
+        """Temperatures at given pressures, as rows that are made while they are read.
+
+        Parameters
+        ----------
+        compound : str
+            Key, name, synonym, CAS number or formula, case aside.
+        low, high : float
+            The first pressure, and the last one at most, Pa.
+        step : float, optional
+            From one pressure to the next, Pa.
+        points : int, optional
+            How many pressures, with one ratio between neighbours and both
+            ends among them; instead of `step`. With neither, 1, 2 and 5 times
+            each power of ten.
+        property : str
+            A property that is a pressure.
+        phase, metastable, drafts
+            As for `lookup`.
+        one : bool
+            Let one correlation answer throughout, the one that ranks first of
+            those that have all the pressures.
+
+        Returns
+        -------
+        Table
+            Its rows have the pressure as value; a refused one a temperature
+            of NaN, and a reason.
+
+        Raises
+        ------
+        Refused
+            If one correlation is asked for and none has all the pressures.
+        UnknownKey, BadInput
+            As for `tabulate`, or if the property is no pressure.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     for row in library.tabulate_at_pressures("water", 1e5, 1e6):
+        ...         print(row.value, round(row.temperature, 3))
+        100000.0 372.756
+        200000.0 393.361
+        500000.0 424.982
+        1000000.0 453.028
+        """
+        from registry.pressure_table import build_pressure_table
+        from registry.quantities import UNITS
+        from registry.spacing import space_pressures
+
+        pascal = UNITS["Pa"]
+        ends = _read_exact(low, "pressure"), _read_exact(high, "pressure")
+        by = None if step is None else _read_exact(step, "step")
+        many = None if points is None else _read_whole(points)
+        spacing = space_pressures(*ends, pascal, by, many, pascal)
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        if UNITS[PROPERTIES[coverage.property].unit].dimension != "pressure":
+            raise BadInput(f"{coverage.property} is no pressure; `tabulate` gives its values at temperatures.")
+        return build_pressure_table(coverage, spacing, float(ends[0]), float(ends[1]), one=one)
 
 
 def _read_exact(number: float, what: str) -> Fraction:

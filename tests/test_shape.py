@@ -44,8 +44,9 @@ LAYERS = (
     {"conditions", "extrapolation", "tolerance"},
     {"batches"},
     {"answering"},
+    {"branches", "inversion", "roots"},
     {"reasons", "span"},
-    {"tabulation"},
+    {"tabulation", "pressure_table"},
     {"tally"},
     {"reports"},
     {"store", "exchange"},
@@ -72,6 +73,7 @@ NUMERIC = {
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
     "tolerance", "batches", "answering", "conversion", "spacing", "reasons", "span", "tabulation", "tally",
+    "pressure_table",
 }  # fmt: skip
 OWNERS = {
     "sqlalchemy": {"store"},

@@ -376,10 +376,11 @@ def test_a_preference_counts_before_the_rank(scenario):
 
     coverage = scenario.coverage("tallowane")
     both = [c for c in coverage.accepted if c.covers(410.0) and c.covers(430.0)]
-    first = choose_throughout(both, 410.0, 430.0, frozenset())
+    spans = {c.key: (410.0, 430.0) for c in both}
+    first = choose_throughout(both, spans, frozenset())
     other = next(c for c in both if c is not first)
     assert first.key == "tallowane-wagner"
-    assert choose_throughout(both, 410.0, 430.0, frozenset({(other.key, first.key)})).key != first.key
+    assert choose_throughout(both, spans, frozenset({(other.key, first.key)})).key != first.key
 
 
 # what cannot be asked

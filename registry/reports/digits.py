@@ -30,7 +30,10 @@ class Digits:
         self._decimals = columns.table.spacing.decimals(given)
         title = PROPERTIES[columns.table.coverage.property].title
         heads = [("temperature", columns.temperature.name), (title, columns.value.name)]
-        self.heads = [*(heads if self._by_temperature else heads[::-1]), ("uncertainty", "% (k=2)")]
+        self.heads = [
+            *(heads if self._by_temperature else heads[::-1]),
+            ("uncertainty", "% (k=2)" if self._by_temperature else "% of p (k=2)"),
+        ]
 
     def show(self, line: Line) -> tuple[str, str, str]:
         """What was given, what was found and the stated uncertainty, as texts."""
