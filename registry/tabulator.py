@@ -136,7 +136,7 @@ class Tabulator(Reader):
         100000.0 372.756
         200000.0 393.361
         500000.0 424.982
-        1000000.0 453.028
+        1000000.0 453.036
         """
         from registry.pressure_table import build_pressure_table
         from registry.quantities import UNITS
