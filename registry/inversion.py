@@ -8,6 +8,7 @@ where several have it, by each of them.
 from __future__ import annotations
 
 import math
+from collections.abc import Iterator
 from functools import cached_property
 from typing import Any
 
@@ -16,12 +17,13 @@ from numpy.typing import NDArray
 
 from registry import rules
 from registry.branches import Branch, cut_branches
-from registry.coverage import Coverage
+from registry.candidate import Candidate
+from registry.coverage import Coverage, Stretch
 from registry.evaluation import BLOCK
 from registry.forms.form import Scratch
 from registry.properties import PROPERTIES
 
-__all__ = ["END_TOLERANCE", "NONE", "SAME_TEMPERATURE", "SEVERAL", "Inversion"]
+__all__ = ["END_TOLERANCE", "NONE", "SAME_TEMPERATURE", "SEVERAL", "Inversion", "span_candidate"]
 
 Array = NDArray[np.float64]
 Places = NDArray[np.signedinteger[Any]]
@@ -58,10 +60,29 @@ class Inversion:
 
     @cached_property
     def branches(self) -> tuple[Branch, ...]:
-        """The monotone parts of all answering curves, in the order of temperature."""
+        """The monotone parts of all curves, in the order of temperature; also of those that wait for a phase."""
         positive = PROPERTIES[self.coverage.property].positive
-        cut = (cut_branches(place, stretch, positive=positive) for place, stretch in enumerate(self.coverage.stretches))
-        return tuple(branch for branches in cut for branch in branches)
+        found: list[Branch] = []
+        for place, stretch in enumerate(self.coverage.stretches):
+            for part in self._open_phases(stretch) if stretch.phases else (stretch,):
+                found += cut_branches(place, part, positive=positive)
+        return tuple(found)
+
+    def _open_phases(self, stretch: Stretch) -> Iterator[Stretch]:
+        """Each candidate of a stretch in which no phase was named, as far as it reaches."""
+        for candidate in self.coverage.accepted:
+            part = span_candidate(candidate)
+            if (
+                not candidate.empty
+                and candidate.record.phase in stretch.phases
+                and part.low < stretch.high
+                and stretch.low < part.high
+            ):
+                yield Stretch(max(part.low, stretch.low), min(part.high, stretch.high), candidate, stretch.phases)
+
+    def answers(self, branch: Branch) -> bool:
+        """True if a branch may answer; False where a phase must be named first."""
+        return self.coverage.stretches[branch.place].candidate is not None
 
     @cached_property
     def _ranges(self) -> tuple[tuple[float, float], ...]:
@@ -88,12 +109,11 @@ class Inversion:
     @cached_property
     def _alone(self) -> NDArray[np.int16]:
         """For each interval the one branch that has its values; NONE or SEVERAL instead."""
-        branches = self.branches
+        simple = [self.answers(branch) and branch.least < branch.greatest for branch in self.branches]
         rows = [
-            owners[0] if len(owners) == 1 and branches[owners[0]].least < branches[owners[0]].greatest
-            else SEVERAL if owners else NONE
+            NONE if not owners else owners[0] if len(owners) == 1 and simple[owners[0]] else SEVERAL
             for owners in self._owners
-        ]  # fmt: skip
+        ]
         return np.array(rows, dtype=np.int16)
 
     def solve(self, values: NDArray[np.float64]) -> tuple[Array, Places]:
@@ -134,7 +154,8 @@ class Inversion:
     def find_all(self, value: float) -> tuple[tuple[float, Branch], ...]:
         """Every temperature, K, at which a curve has a value, with its branch, in the order of temperature.
 
-        Of a curve that stays the same, both ends.
+        Also of curves that wait for a phase; of one that stays the same, both
+        ends.
         """
         interval = int(np.searchsorted(self._ends, value, side="right")) if value == value else 0
         found: list[tuple[float, Branch]] = []
@@ -175,7 +196,7 @@ class Inversion:
             owners = [self.branches[i] for i in self._owners[interval]]
             solved = [branch.solve(values.take(mine), scratch) for branch in owners]
             solved += [np.full(mine.size, branch.high) for branch in owners if branch.least == branch.greatest]
-            one = np.ptp(solved, axis=0) <= SAME_TEMPERATURE
+            one = (np.ptp(solved, axis=0) <= SAME_TEMPERATURE) & all(map(self.answers, owners))
             kelvin[mine] = np.where(one, solved[0], np.nan)
             places[mine] = np.where(one, owners[0].place, SEVERAL)
 
@@ -193,3 +214,9 @@ class Inversion:
             np.add(count, flag.view(np.int8), out=count)
         intervals[:] = count
         return intervals
+
+
+def span_candidate(candidate: Candidate) -> Stretch:
+    """Where a candidate may answer, whoever else may: its reach with the tolerance at its bounds."""
+    low, high = candidate.reach
+    return Stretch(low - rules.BOUND_TOLERANCE, math.nextafter(high + rules.BOUND_TOLERANCE, math.inf), candidate)

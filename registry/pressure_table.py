@@ -2,24 +2,24 @@
 
 from __future__ import annotations
 
-import math
-from dataclasses import replace
-from functools import cached_property
+from collections.abc import Iterator, Sequence
+from functools import cached_property, partial
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
+from registry.branches import Branch, cut_branches
 from registry.coverage import Coverage
-from registry.inversion import END_TOLERANCE, Inversion
-from registry.naming import join_names
+from registry.inverse_verdicts import refuse_pressure
+from registry.inversion import END_TOLERANCE, Inversion, span_candidate
+from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.reasons import Reasons
-from registry.refusals import Refusal
+from registry.refusals import InverseRefusal
 from registry.spacing import Spacing
 from registry.span import demand_one_at_values
 from registry.tabulation import Row, Table
-from registry.verdicts import refuse
 
 __all__ = ["PressureTable", "build_pressure_table"]
 
@@ -51,7 +51,8 @@ class PressureTable(Table):
     def extremes(self) -> tuple[list[float], list[float]]:
         """Temperatures, K, at which the curves that have some of the pressures begin or end, and the values there."""
         low, high = self.span
-        branches = [b for b in self._inversion.branches if b.least <= high and low <= b.greatest]
+        inversion = self._inversion
+        branches = [b for b in inversion.branches if inversion.answers(b) and b.least <= high and low <= b.greatest]
         ends = [kelvin for branch in branches for kelvin in (branch.low, branch.high)]
         return ends, [value for branch in branches for value in branch.ends]
 
@@ -65,11 +66,18 @@ class PressureTable(Table):
 
     @cached_property
     def _reasons(self) -> Reasons:
-        ends = {end for branch in self._inversion.branches for end in branch.ends}
+        ends = {end for branch in (*self._inversion.branches, *self._waiting()) for end in branch.ends}
         near = (end + side * END_TOLERANCE * abs(end) for end in ends for side in (-1.0, 0.0, 1.0))
-        return Reasons(near, self._refuse)
+        return Reasons(near, partial(refuse_pressure, self._inversion))
 
-    def refusal(self, row: Row) -> Refusal:
+    def _waiting(self) -> Iterator[Branch]:
+        """The branches of correlations that may not answer."""
+        positive = PROPERTIES[self.coverage.property].positive
+        for candidate in self.coverage.candidates:
+            if not candidate.entry.accepted and not candidate.empty:
+                yield from cut_branches(0, span_candidate(candidate), positive=positive)
+
+    def refusal(self, row: Row) -> InverseRefusal:
         """Why a row was refused.
 
         Parameters
@@ -79,31 +87,20 @@ class PressureTable(Table):
 
         Returns
         -------
-        Refusal
-            With the reason, the nearest windows and what can be done.
+        InverseRefusal
+            With the reason, both sides and what can be done.
         """
-        return self._refuse(row.value)
+        return refuse_pressure(self._inversion, row.value)
 
-    def _refuse(self, value: float) -> Refusal:
-        return refuse_value(self._inversion, value)
-
-
-def refuse_value(inversion: Inversion, value: float) -> Refusal:
-    """Why no one temperature has a value."""
-    coverage = inversion.coverage
-    name, prop = coverage.dossier.compound.key, coverage.property
-    found = inversion.find_all(value)
-    if not coverage.candidates:
-        return replace(refuse(coverage, 1.0), temperature=math.nan)
-    if found:
-        told = join_names([f"{kelvin:.9g} K ({branch.candidate.key})" for kelvin, branch in found], "and")
-        text = f"{value:.9g} Pa is the {prop} of {name} at {told}: two answers meet at a seam."
-        return Refusal(math.nan, "several-temperatures", text)
-    least = min((b.least for b in inversion.branches), default=math.nan)
-    most = max((b.greatest for b in inversion.branches), default=math.nan)
-    reach = f"its windows reach from {least:.6g} to {most:.6g} Pa"
-    text = f"No temperature has a {prop} of {value:.9g} Pa for {name}; {reach}."
-    return Refusal(math.nan, "outside-windows", text)
+    def _expand(self, kelvin: Array, values: Array, owners: Sequence[int]) -> Array:
+        """The stated uncertainties of the pressures, carried to the temperatures by the slope, K."""
+        spreads, owned = super()._expand(kelvin, values, owners), np.array(owners)
+        for number in set(owners) - {-1}:
+            mine = owned == number
+            rates = np.abs(self.coverage.answering[number].curve.rates(kelvin[mine]) / values[mine])
+            with np.errstate(divide="ignore"):
+                spreads[mine] = np.where(rates > 0.0, spreads[mine] / (100.0 * rates), np.nan)
+        return spreads
 
 
 def build_pressure_table(

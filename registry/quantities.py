@@ -203,14 +203,7 @@ def gauge_unit(text: str, atmosphere_pa: Fraction) -> Unit:
 def read_quantity(
     text: str, dimension: str, example: str, atmosphere_pa: Fraction | None = None
 ) -> tuple[Fraction, Unit]:
-    """The exact number in a text and its unit, not converted; a gauge unit where the atmosphere, Pa, is stated.
-
-    Examples
-    --------
-    >>> number, unit = read_quantity("-40F", "temperature", "298.15K")
-    >>> number, unit.name
-    (Fraction(-40, 1), 'degF')
-    """
+    """The exact number in a text and its unit, not converted; a gauge unit where the atmosphere, Pa, is stated."""
     plain = text.replace("\u2212", "-").strip()
     match = _QUANTITY.fullmatch(plain) if len(plain) <= 100 else None
     if match is None:
@@ -266,18 +259,41 @@ def parse_temperature(text: str) -> float:
     return float(kelvin)
 
 
-def parse_pressure(text: str) -> Fraction:
-    """An absolute pressure with its unit, in pascal, exact.
+def parse_pressure(text: str, atmosphere_pa: Fraction | None = None) -> Fraction:
+    """A pressure with its unit, in pascal, exact and absolute.
+
+    Parameters
+    ----------
+    text : str
+        Such as ``101.325kPa``, ``1 atm`` or, with an atmosphere, ``2 barg``.
+    atmosphere_pa : fractions.Fraction, optional
+        The local atmospheric pressure, Pa, to which gauge units are added.
+
+    Returns
+    -------
+    fractions.Fraction
+        The absolute pressure, Pa.
+
+    Raises
+    ------
+    BadQuantity
+        If the unit is missing or unknown, the number is none, or the
+        pressure is not above zero.
+    GaugePressure
+        If it is in a gauge unit and the atmosphere is not given.
 
     Examples
     --------
     >>> parse_pressure("1 atm")
     Fraction(101325, 1)
+    >>> parse_pressure("-0.2 barg", Fraction(101325))
+    Fraction(81325, 1)
     """
-    number, unit = read_quantity(text, "pressure", "101.325kPa")
-    if number <= 0:
+    number, unit = read_quantity(text, "pressure", "101.325kPa", atmosphere_pa)
+    pascal = unit.to_si(number)
+    if pascal <= 0:
         raise BadQuantity(text, "an absolute pressure is greater than zero.")
-    return unit.to_si(number)
+    return pascal
 
 
 def convert(value: float, source: Unit, target: Unit, molar_mass: float | None = None) -> float:

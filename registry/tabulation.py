@@ -68,9 +68,9 @@ class Row(NamedTuple):
         K; NaN where a pressure was refused.
     value : float
         In the SI unit of the property; NaN where a temperature was refused.
-    expanded_percent : float or None
-        The stated uncertainty at coverage factor 2, percent of the value;
-        None if none is stated.
+    expanded : float or None
+        The stated uncertainty at coverage factor 2: percent of the value; at
+        given pressures that of the temperature, K. None if none is stated.
     correlation : str
         The key of the correlation that answers; empty in a refused row.
     note : Note
@@ -79,7 +79,7 @@ class Row(NamedTuple):
 
     temperature: float
     value: float
-    expanded_percent: float | None
+    expanded: float | None
     correlation: str
     note: Note
 
@@ -94,7 +94,7 @@ class Block:
         The number of the first, from 0.
     kelvin, values : array of float
         Temperatures, K, and values in SI units.
-    percents : array of float
+    expanded : array of float
         As in `Row`; NaN if none is stated.
     owners : list of int
         Index of the candidate in `Coverage.answering`; -1 in a refused row.
@@ -105,7 +105,7 @@ class Block:
     start: int
     kelvin: Array
     values: Array
-    percents: Array
+    expanded: Array
     owners: list[int]
     notes: dict[int, Note] = field(default_factory=dict)
 
@@ -173,10 +173,10 @@ class Table:
     def __iter__(self) -> Iterator[Row]:
         keys = [candidate.key for candidate in self.coverage.answering]
         for block in self.blocks():
-            columns = zip(block.kelvin.tolist(), block.values.tolist(), block.percents.tolist(), block.owners,
+            columns = zip(block.kelvin.tolist(), block.values.tolist(), block.expanded.tolist(), block.owners,
                           strict=True)  # fmt: skip
-            for number, (kelvin, value, percent, owner) in enumerate(columns):
-                stated = None if math.isnan(percent) else percent
+            for number, (kelvin, value, spread, owner) in enumerate(columns):
+                stated = None if math.isnan(spread) else spread
                 yield Row(kelvin, value, stated, keys[owner] if owner >= 0 else "", block.notes.get(number, PLAIN))
 
     def blocks(self) -> Iterator[Block]:
@@ -186,11 +186,11 @@ class Table:
             kelvin, values, places = self._solve(start, min(start + BLOCK, self.spacing.count))
             refused = np.isnan(values) | np.isnan(kelvin)
             owners = np.where(refused, -1, self.coverage.owners[places]).tolist()
-            percents = self._expand(kelvin, values, owners)
+            expanded = self._expand(kelvin, values, owners)
             notes = marker.mark(kelvin, places.tolist(), owners)
             for number in np.flatnonzero(refused).tolist():
                 notes[number] = _note_refused(self._reason(kelvin, values, places, number))
-            yield Block(start, kelvin, values, percents, owners, notes)
+            yield Block(start, kelvin, values, expanded, owners, notes)
 
     def _solve(self, start: int, stop: int) -> tuple[Array, Array, NDArray[np.signedinteger[Any]]]:
         """Temperatures, values and stretches of some rows."""

@@ -141,6 +141,7 @@ class Tabulator(Reader):
         from registry.pressure_table import build_pressure_table
         from registry.quantities import UNITS
         from registry.spacing import space_pressures
+        from registry.temperatures import demand_pressure
 
         pascal = UNITS["Pa"]
         ends = _read_exact(low, "pressure"), _read_exact(high, "pressure")
@@ -148,8 +149,7 @@ class Tabulator(Reader):
         many = None if points is None else _read_whole(points)
         spacing = space_pressures(*ends, pascal, by, many, pascal)
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
-        if UNITS[PROPERTIES[coverage.property].unit].dimension != "pressure":
-            raise BadInput(f"{coverage.property} is no pressure; `tabulate` gives its values at temperatures.")
+        demand_pressure(PROPERTIES[coverage.property])
         return build_pressure_table(coverage, spacing, float(ends[0]), float(ends[1]), one=one)
 
 

@@ -142,7 +142,7 @@ def test_the_command_takes_pressures_for_ends(run, published):
     code, out, err = run("water", "--from", "1bar", "--to", "10bar", "-t", "degC", "-f", "csv")
     assert (code, err) == (0, "")
     header, *rows = csv.reader(io.StringIO(out))
-    assert header[:3] == ["vapor_pressure_bar", "temperature_degC", "uncertainty_percent_k2"]
+    assert header[:3] == ["vapor_pressure_bar", "temperature_degC", "uncertainty_K_k2"]
     assert [float(row[0]) for row in rows] == [1.0, 2.0, 5.0, 10.0]
     found = [row.temperature - 273.15 for row in published.tabulate_at_pressures("water", 1e5, 1e6)]
     assert [float(row[1]) for row in rows] == pytest.approx(found, abs=1e-12)
@@ -195,7 +195,8 @@ def test_refused_pressures_come_with_their_reasons(run):
         (1.1, 1.9, {}, "No round number (1, 2 or 5 times a power of ten) lies from 1.1 to 1.9 Pa. "
                        "Give a step or a number of points."),
         (1e5, 1e6, {"property": "enthalpy-of-vaporization"},
-         "enthalpy-of-vaporization is no pressure; `tabulate` gives its values at temperatures."),
+         "A temperature is found at a pressure: enthalpy-of-vaporization is none. Ask for vapor-pressure, "
+         "sublimation-pressure or melting-pressure."),
     ],
 )  # fmt: skip
 def test_pressures_that_cannot_be_are_refused_with_a_sentence(low, high, asked, message, published):

@@ -64,7 +64,7 @@ def test_every_row_is_what_a_lookup_gives(shelf, metastable, drafts, request):
             if row.note.reason:
                 assert table.refusal(row) == found
             else:
-                assert row.expanded_percent == found.budget.expanded_percent
+                assert row.expanded == found.budget.expanded_percent
                 assert ("draft" in row.note.marks) == (found.standing == "draft")
                 said = any("metastable" in caution for caution in found.cautions)
                 assert ("metastable" in row.note.marks) == said
@@ -103,7 +103,7 @@ def test_uncertainties_are_brought_to_coverage_factor_2():
     coverage = build_coverage(Dossier(COMPOUND, (dataclasses.replace(entry, record=record),)), "vapor-pressure")
     spacing = space_temperatures(Fraction(310), Fraction(350), Fraction(20), None)
     rows = list(build_table(coverage, spacing, 310.0, 350.0))
-    assert [row.expanded_percent for row in rows] == pytest.approx([1.0, 0.2, 2000.0 / rows[2].value], rel=1e-14)
+    assert [row.expanded for row in rows] == pytest.approx([1.0, 0.2, 2000.0 / rows[2].value], rel=1e-14)
 
 
 # a published table

@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
+from typing import Protocol
+
 from registry.answers import Answer
 from registry.cli.documents import value_in
 from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
@@ -15,7 +18,16 @@ from registry.quantities import Unit
 from registry.refusals import Refusal
 from registry.values import Value
 
-__all__ = ["print_answers"]
+__all__ = ["print_answers", "print_story", "print_verdicts"]
+
+
+class Typed(Protocol):
+    """What was asked, as it was typed."""
+
+    @property
+    def text(self) -> str:
+        """As typed."""
+
 
 _BASIS = {"printed": "as printed", "assumed": "assumed, not printed", "memory": "from memory"}
 _OBTAINED = {"seen": "seen in the source", "memory": "from memory"}
@@ -40,14 +52,14 @@ def print_answers(
         stories.setdefault(f"{answer.correlation.key} {answer.mark}", []).append((asked, answer))
     for told in stories.values():
         say()
-        _print_story(told, why)
+        print_story(told, why)
     if estimates:
         from registry.cli.estimate_text import print_estimates
 
         say()
         print_estimates(estimates)
     if why:
-        _print_verdicts(answers)
+        print_verdicts(answers)
     say()
     say(wrap(CAUTION, 0))
 
@@ -87,8 +99,8 @@ def _mark(found: Value) -> str:
     return f" ({found.mark.upper()})" if found.mark else ""
 
 
-def _print_story(told: list[tuple[Asked, Answer]], why: bool) -> None:
-    """One correlation, with why it was chosen at the first of its temperatures."""
+def print_story(told: Sequence[tuple[Typed, Answer]], why: bool) -> None:
+    """One correlation, with why it was chosen for the first of what was asked."""
     first, answer = told[0]
     record = answer.correlation
     low, high = answer.window
@@ -144,7 +156,8 @@ def _word_evidence(answer: Answer) -> str:
     return f"{answer.counts_as} (recorded as {record.evidence}, but from memory and unconfirmed)"
 
 
-def _print_verdicts(answers: list[tuple[Asked, Answer]]) -> None:
+def print_verdicts(answers: Sequence[tuple[Typed, Answer]]) -> None:
+    """Every candidate with its verdict, for each answer."""
     for asked, answer in answers:
         say()
         say(f"  {emphasize('Candidates')} at {asked.text}")

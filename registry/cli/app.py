@@ -78,14 +78,14 @@ def rangebook(
 
 
 def protect_minus(arguments: list[str]) -> list[str]:
-    """Negative temperatures of a lookup unquoted: -40C is no option.
+    """Negative numbers of a lookup unquoted: -40C is no option.
 
     Examples
     --------
     >>> protect_minus(["lookup", "ammonia", "-40C", "-u", "bar"])
     ['lookup', 'ammonia', '−40C', '-u', 'bar']
     """
-    if next((word for word in arguments if not word.startswith("-")), "") != "lookup":
+    if next((word for word in arguments if not word.startswith("-")), "") not in ("lookup", "boil"):
         return arguments
     return [f"\u2212{word[1:]}" if re.match(r"-[0-9.]", word) else word for word in arguments]
 

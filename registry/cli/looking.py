@@ -137,11 +137,12 @@ def _choose_unit(unit: str, atmosphere: str, prop: str) -> Any:
 
     if prop not in PROPERTIES:
         return None  # the library says what there is
-    local = float(_read_atmosphere(atmosphere)) if atmosphere else None
+    local = float(read_atmosphere(atmosphere)) if atmosphere else None
     return find_target_unit(unit, PROPERTIES[prop].dimension, local) if unit else None
 
 
-def _read_atmosphere(text: str) -> Any:
+def read_atmosphere(text: str) -> Any:
+    """The local atmosphere, Pa, exact."""
     from registry.quantities import parse_pressure
 
     text = text.replace("\u2212", "-")

@@ -7,7 +7,9 @@ import math
 from collections.abc import Iterator
 from typing import Any
 
+from registry.cli.boiling_text import describe_inverse_refusal
 from registry.cli.documents import describe_refusal
+from registry.refusals import InverseRefusal, Refusal
 from registry.reports.columns import Columns, Line
 from registry.tabulation import Block
 from registry.tally import Tally, Used
@@ -72,7 +74,7 @@ def _describe_row(columns: Columns, kelvin: float, line: Line) -> dict[str, Any]
         "temperature_K": _finite(kelvin),
         "temperature": _finite(temperature),
         "value": _finite(value),
-        "expanded_percent": _finite(line.percent),
+        "expanded_percent" if columns.by_temperature else "expanded_K": _finite(line.expanded),
         "correlation": line.correlation or None,
         "revision": line.revision,
         "marks": line.note.marks,
@@ -81,7 +83,6 @@ def _describe_row(columns: Columns, kelvin: float, line: Line) -> dict[str, Any]
 
 
 def _describe_tail(columns: Columns, tally: Tally, label: str) -> dict[str, Any]:
-    refusals = [{"rows": tally.refused[r.reason], **describe_refusal(r)} for r in tally.refusals]
     return {
         "seams": [
             {"row": row, "temperature_K": s.temperature, "below": s.below, "above": s.above,
@@ -90,10 +91,14 @@ def _describe_tail(columns: Columns, tally: Tally, label: str) -> dict[str, Any]
         ],
         "gaps": [{"row": row, "from_K": gap.low, "to_K": gap.high} for row, gap in tally.gaps],
         "correlations": [_describe_used(used) for used in tally.used],
-        "refusals": [{**refusal, "temperature_K": _finite(refusal["temperature_K"])} for refusal in refusals],
+        "refusals": [{"rows": tally.refused[r.reason], **_describe_refusal(r)} for r in tally.refusals],
         "position": columns.table.coverage.dossier.position,
         "as_of": label or None,
     }  # fmt: skip
+
+
+def _describe_refusal(refusal: Refusal) -> dict[str, Any]:
+    return describe_inverse_refusal(refusal) if isinstance(refusal, InverseRefusal) else describe_refusal(refusal)
 
 
 def _describe_used(used: Used) -> dict[str, Any]:

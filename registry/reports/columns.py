@@ -22,9 +22,9 @@ class Line(NamedTuple):
     given, found : float
         Temperature and value, or pressure and temperature; what was refused
         is NaN.
-    percent : float
-        The stated uncertainty of the value, percent at coverage factor 2; NaN
-        if none is stated.
+    expanded : float
+        The stated uncertainty of what was found at coverage factor 2: percent
+        of a value, kelvins of a temperature; NaN if none is stated.
     correlation : str
         Who answers; empty in a refused row.
     revision : int or None
@@ -35,7 +35,7 @@ class Line(NamedTuple):
 
     given: float
     found: float
-    percent: float
+    expanded: float
     correlation: str
     revision: int | None
     note: Note
@@ -69,7 +69,13 @@ class Columns:
         self._revisions = [*(c.entry.revision for c in candidates), None]
         heads = (f"temperature_{temperature.name}", f"{table.coverage.property.replace('-', '_')}_{value.name}")
         heads = heads if self.by_temperature else heads[::-1]
-        self.names = (*heads, "uncertainty_percent_k2", "correlation", "revision", "mark")
+        self.names = (
+            *heads,
+            f"uncertainty_{'percent' if self.by_temperature else 'K'}_k2",
+            "correlation",
+            "revision",
+            "mark",
+        )
 
     @property
     def by_temperature(self) -> bool:
@@ -87,9 +93,9 @@ class Columns:
         else:
             found = self._to_temperature.many(block.kelvin.tolist())
         keys, revisions, notes = self._keys, self._revisions, block.notes
-        columns = zip(given, found, block.percents.tolist(), block.owners, strict=True)
-        for number, (place, result, percent, owner) in enumerate(columns):
-            yield Line(place, result, percent, keys[owner], revisions[owner], notes.get(number, PLAIN))
+        columns = zip(given, found, block.expanded.tolist(), block.owners, strict=True)
+        for number, (place, result, spread, owner) in enumerate(columns):
+            yield Line(place, result, spread, keys[owner], revisions[owner], notes.get(number, PLAIN))
 
     def extremes(self) -> tuple[list[float], list[float]]:
         """What is given in the first and last row, and what is found where a correlation begins or ends to answer."""

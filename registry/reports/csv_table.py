@@ -45,9 +45,9 @@ def write_csv(columns: Columns, tally: Tally) -> Iterator[str]:
 
 def _cells(columns: Columns, line: Line) -> tuple[object, ...]:
     found = line.found if line.found == line.found else ""
-    percent = line.percent if line.percent == line.percent else ""
+    spread = line.expanded if line.expanded == line.expanded else ""
     mark = columns.word_marks(line.note) if line.note.marks else ""
-    return line.given, found, percent, guard_text(line.correlation), line.revision, guard_text(mark)
+    return line.given, found, spread, guard_text(line.correlation), line.revision, guard_text(mark)
 
 
 def _join(rows: object) -> str:

@@ -32,15 +32,15 @@ class Digits:
         heads = [("temperature", columns.temperature.name), (title, columns.value.name)]
         self.heads = [
             *(heads if self._by_temperature else heads[::-1]),
-            ("uncertainty", "% (k=2)" if self._by_temperature else "% of p (k=2)"),
+            ("uncertainty", "% (k=2)" if self._by_temperature else "K (k=2)"),
         ]
 
     def show(self, line: Line) -> tuple[str, str, str]:
         """What was given, what was found and the stated uncertainty, as texts."""
         if math.isnan(line.found):
             return self._show_given(line.given), "", ""
-        percent = "none" if math.isnan(line.percent) else f"{line.percent:.3g}"
-        return self._show_given(line.given), self._show_found(line.found), percent
+        spread = "none" if math.isnan(line.expanded) else f"{line.expanded:.3g}"
+        return self._show_given(line.given), self._show_found(line.found), spread
 
     def widths(self) -> list[int]:
         """Characters that each column takes, its heads too."""

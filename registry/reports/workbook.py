@@ -80,7 +80,7 @@ def _write_rows(sheet: Any, bold: Any, columns: Columns, tally: Tally) -> None:
 
 
 def _write_line(sheet: Any, number: int, columns: Columns, line: Line) -> None:
-    for place, value in enumerate((line.given, line.found, line.percent)):
+    for place, value in enumerate((line.given, line.found, line.expanded)):
         if math.isfinite(value):
             sheet.write_number(number, place, value)
     if line.revision is not None:
@@ -94,7 +94,7 @@ def _tell_sources(columns: Columns, tally: Tally, caution: str) -> Iterator[tupl
     coverage = columns.table.coverage
     yield "compound", f"{coverage.dossier.compound.record.name} ({coverage.dossier.compound.key})"
     yield "property", PROPERTIES[coverage.property].title
-    yield "uncertainty", "as stated in the source, percent of the value at coverage factor 2"
+    yield "uncertainty", "as stated in the source, at coverage factor 2 (k=2)"
     yield "position", f"{coverage.dossier.position} (the change up to which the library was read)"
     if columns.table.note:
         yield "note", columns.table.note
