@@ -134,8 +134,8 @@ class Tabulator(Reader):
         ...     for row in library.tabulate_at_pressures("water", 1e5, 1e6):
         ...         print(row.value, round(row.temperature, 3))
         100000.0 372.756
-        200000.0 393.361
-        500000.0 424.982
+        200000.0 393.362
+        500000.0 424.986
         1000000.0 453.036
         """
         from registry.pressure_table import build_pressure_table

@@ -235,7 +235,7 @@ def test_an_explicit_library_must_exist(tmp_path):
 def test_commands_are_the_ones_of_the_job():
     """No command is missing, and none is there that nobody asked for."""
     assert set(COMMANDS) == {
-        "lookup", "table", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade",
+        "lookup", "boil", "table", "coverage", "list", "show", "forms", "start", "load", "dump", "upgrade",
         "record", "revise", "review", "withdraw", "prefer", "queue", "history", "diff", "freeze", "editions", "verify",
     }  # fmt: skip
 

@@ -62,6 +62,9 @@ def test_every_row_leads_back_to_its_pressure(shelf, request):
             found = library.lookup(compound, row.temperature, property=prop)
             assert found.correlation.key == row.correlation
             slope = abs(found.log_rate) * row.temperature
+            stated = found.budget.expanded_percent
+            spread = None if stated is None else pytest.approx(stated / abs(found.percent_per_kelvin), rel=1e-9)
+            assert row.expanded == spread
             assert found.value == pytest.approx(row.value, rel=1e-13 + slope * 1e-12)
             answered += 1
     assert answered > 250
