@@ -5,15 +5,14 @@ from __future__ import annotations
 import math
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass, field
-from functools import cached_property, lru_cache, partial
+from functools import cached_property, partial
 from typing import Any, NamedTuple
 
 import numpy as np
 from numpy.typing import NDArray
 
-from registry import rules
-from registry.candidate import Candidate
-from registry.coverage import Coverage, Seam, Stretch
+from registry.coverage import Coverage
+from registry.notes import PLAIN, Marker, Note, note_refused
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.reasons import Reasons, cut_temperatures
@@ -22,41 +21,12 @@ from registry.spacing import Spacing
 from registry.span import demand_one
 from registry.verdicts import refuse
 
-__all__ = ["BLOCK", "Block", "Note", "Row", "Table", "build_table"]
+__all__ = ["BLOCK", "Block", "Row", "Table", "build_table"]
 
 Array = NDArray[np.float64]
 
 BLOCK = 1024
 """Rows that are held at a time."""
-
-_THIN = 1e-6
-"""Kelvin below which a stretch is only the tolerance of two bounds that meet."""
-
-
-@dataclass(frozen=True)
-class Note:
-    """What there is to say of a row besides its numbers.
-
-    Attributes
-    ----------
-    marks : tuple of str
-        Of ``refused``, ``draft``, ``metastable``, ``seam`` and
-        ``across-gap``.
-    reason : str
-        Of a refused row; as in a refusal.
-    seams : tuple of Seam
-        The seams that lie between the row before and this one.
-    gaps : tuple of Stretch
-        The gaps that lie wholly between them.
-    """
-
-    marks: tuple[str, ...]
-    reason: str = ""
-    seams: tuple[Seam, ...] = ()
-    gaps: tuple[Stretch, ...] = ()
-
-
-PLAIN = Note(())
 
 
 class Row(NamedTuple):
@@ -181,7 +151,7 @@ class Table:
 
     def blocks(self) -> Iterator[Block]:
         """The rows in order, about a thousand at a time."""
-        marker = _Marker(self.coverage)
+        marker = Marker(self.coverage)
         for start in range(0, self.spacing.count, BLOCK):
             kelvin, values, places = self._solve(start, min(start + BLOCK, self.spacing.count))
             refused = np.isnan(values) | np.isnan(kelvin)
@@ -189,7 +159,7 @@ class Table:
             expanded = self._expand(kelvin, values, owners)
             notes = marker.mark(kelvin, places.tolist(), owners)
             for number in np.flatnonzero(refused).tolist():
-                notes[number] = _note_refused(self._reason(kelvin, values, places, number))
+                notes[number] = note_refused(self._reason(kelvin, values, places, number))
             yield Block(start, kelvin, values, expanded, owners, notes)
 
     def _solve(self, start: int, stop: int) -> tuple[Array, Array, NDArray[np.signedinteger[Any]]]:
@@ -229,12 +199,6 @@ class Table:
         return percents
 
 
-@lru_cache
-def _note_refused(reason: str) -> Note:
-    """One note for all rows refused for the same reason."""
-    return Note(("refused",), reason)
-
-
 def build_table(coverage: Coverage, spacing: Spacing, low: float, high: float, *, one: bool = False) -> Table:
     """A table of values at temperatures.
 
@@ -263,58 +227,3 @@ def build_table(coverage: Coverage, spacing: Spacing, low: float, high: float, *
         return Table(coverage, spacing)
     alone, note = demand_one(coverage, low, high)
     return Table(alone, spacing, note)
-
-
-class _Marker:
-    """Finds what lies between a row and the one before, over all the blocks of a table."""
-
-    def __init__(self, coverage: Coverage) -> None:
-        self._stretches = coverage.stretches
-        self._seams = dict(zip(_find_changes(coverage.stretches), coverage.seams, strict=True))
-        self._standing = [_word_standing(candidate) for candidate in coverage.answering]
-        self._stable_from = coverage.limits.lower - rules.BOUND_TOLERANCE if coverage.metastable else 0.0
-        self._place = -1
-        self._refused = False
-
-    def mark(self, kelvin: Array, places: Sequence[int], owners: Sequence[int]) -> dict[int, Note]:
-        """The notes of a block on the rows that have an answer."""
-        notes: dict[int, Note] = {}
-        metastable = kelvin < self._stable_from
-        special = bool(metastable.any()) or any(self._standing)
-        for number, (place, owner) in enumerate(zip(places, owners, strict=True)):
-            if owner < 0:
-                self._refused = True
-                continue
-            if place != self._place or special:
-                note = self._note(place, owner, bool(metastable[number]))
-                if note.marks:
-                    notes[number] = note
-            self._place, self._refused = place, False
-        return notes
-
-    def _note(self, place: int, owner: int, metastable: bool) -> Note:
-        seams, gaps = self._cross(place) if 0 <= self._place < place else ((), ())
-        marks = (
-            self._standing[owner],
-            "metastable" if metastable else "",
-            "seam" if seams else "",
-            "across-gap" if gaps else "",
-        )
-        return Note(tuple(mark for mark in marks if mark), "", seams, gaps)
-
-    def _cross(self, place: int) -> tuple[tuple[Seam, ...], tuple[Stretch, ...]]:
-        """The seams up to a stretch, and the gaps that no row stands in."""
-        seams = tuple(self._seams[i] for i in range(self._place, place) if i in self._seams)
-        between = () if self._refused else self._stretches[self._place + 1 : place]
-        return seams, tuple(s for s in between if s.candidate is None and s.high - s.low > _THIN)
-
-
-def _find_changes(stretches: Sequence[Stretch]) -> Iterator[int]:
-    """The numbers of the stretches at whose upper end one correlation takes over from another."""
-    pairs = zip(stretches, stretches[1:], strict=False)
-    return (i for i, (left, right) in enumerate(pairs) if left.candidate and right.candidate)
-
-
-def _word_standing(candidate: Candidate) -> str:
-    standing = candidate.entry.standing
-    return "" if standing == "accepted" else standing

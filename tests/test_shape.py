@@ -46,7 +46,7 @@ LAYERS = (
     {"conditions", "extrapolation", "tolerance"},
     {"batches", "temperatures"},
     {"answering"},
-    {"reasons", "span"},
+    {"notes", "reasons", "span"},
     {"tabulation", "pressure_table"},
     {"tally"},
     {"reports"},
@@ -73,7 +73,7 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "answering", "conversion", "spacing", "reasons", "span", "tabulation", "tally",
+    "tolerance", "batches", "answering", "conversion", "spacing", "notes", "reasons", "span", "tabulation", "tally",
     "pressure_table", "branches", "roots", "inversion", "inverse_verdicts", "temperatures",
 }  # fmt: skip
 OWNERS = {

@@ -8,8 +8,9 @@ from typing import NamedTuple
 
 from registry.conversion import Conversion
 from registry.display import format_plain, suit_unit
+from registry.notes import PLAIN, Note
 from registry.quantities import UNITS, Unit
-from registry.tabulation import PLAIN, Block, Note, Table
+from registry.tabulation import Block, Table
 
 __all__ = ["Columns", "Line", "suit_value_unit"]
 
