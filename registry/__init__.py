@@ -16,16 +16,17 @@ if TYPE_CHECKING:
     from registry.opening import open_library, start_library
     from registry.readings import Reading, parse_reading
     from registry.refusals import Refusal
+    from registry.tabulation import Table
 
 __version__ = "0.1.0"
 
 __all__ = [
-    "Answer", "Batch", "Library", "RangebookError", "Reading", "Refusal", "Refused", "open_library", "parse_reading",
-    "start_library",
+    "Answer", "Batch", "Library", "RangebookError", "Reading", "Refusal", "Refused", "Table", "open_library",
+    "parse_reading", "start_library",
 ]  # fmt: skip
 
 _HOMES = {
-    "Answer": "answers", "Batch": "batches", "Refusal": "refusals",
+    "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "Table": "tabulation",
     "Reading": "readings", "parse_reading": "readings",
     "RangebookError": "errors", "Refused": "errors",
     "Library": "library", "open_library": "opening", "start_library": "opening",

@@ -128,7 +128,7 @@ def test_markdown_is_a_pipe_table_with_its_sources_beneath(run, published):
 def test_a_workbook_holds_numbers_and_texts(run, published, tmp_path):
     """openpyxl reads numbers, to the 16 digits that a sheet keeps; a second sheet tells what stands behind them."""
     place = tmp_path / "table.xlsx"
-    assert run(*ETHANOL, "--output", str(place))[:2] == (3, "")
+    assert run(*ETHANOL, "--output", str(place))[:2] == (3, f"31 rows written to {place}.\n")
     book = openpyxl.load_workbook(place)
     assert book.sheetnames == ["table", "sources"]
     header, *rows = book["table"].iter_rows(values_only=True)
@@ -257,7 +257,7 @@ def test_a_file_holds_what_the_screen_shows(suffix, run, tmp_path):
     words = ("ethanol", "--from", "280K", "--to", "300K", "--step", "5K")
     form = {".txt": "text", ".md": "markdown", ".markdown": "markdown"}.get(suffix, suffix[1:])
     place = tmp_path / f"table{suffix}"
-    assert run(*words, "--output", str(place)) == (0, "", "")
+    assert run(*words, "--output", str(place)) == (0, f"5 rows written to {place}.\n", "")
     assert place.read_bytes().decode() == run(*words, "--format", form)[1]
     assert list(tmp_path.iterdir()) == [place]
 
@@ -286,6 +286,19 @@ def test_a_file_is_replaced_only_by_force(run, tmp_path):
     assert run(*words, "-o", str(link), "--force")[0] == 0
     assert link.is_symlink()
     assert place.read_text(encoding="utf-8").startswith("temperature_K")
+
+
+def test_a_table_never_takes_the_place_of_its_library(own_path, tmp_path, capsys):
+    """Not by force, and not through a link."""
+    (tmp_path / "link.csv").symlink_to(own_path)
+    before = own_path.read_bytes()
+    for place in (own_path, tmp_path / "link.csv"):
+        with pytest.raises(SystemExit) as stopped:
+            main(["table", *ETHANOL, "-o", str(place), "-f", "csv", "--force", "--library", str(own_path)])
+        assert (stopped.value.code, capsys.readouterr().err) == (
+            2, f"{place} is the library itself. Give another name.\n",
+        )  # fmt: skip
+    assert own_path.read_bytes() == before
 
 
 def test_a_dangling_link_is_not_written_through(run, tmp_path):

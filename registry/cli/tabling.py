@@ -98,12 +98,16 @@ def table(
         coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         made = span.build(coverage, one)
         columns = Columns(made, *span.choose_units(made, unit, temperature_unit))
+        if output is not None:
+            _spare_library(output, book.place)
         # where nothing answers there is no table, but an object that says so
         empty = not made.extremes()[0] and not (as_json and output is None)
         tally = _read_through(made) if empty else _write(columns, wanted, label, output, force)
     if as_json and output is not None:
         print_json(_describe_file(tally, None if empty else output, wanted))
     elif not as_json:
+        if output is not None and not empty:
+            say(f"{tally.rows:,} rows written to {output}.")
         _complain_refused(tally)
     if tally.refusals:
         raise typer.Exit(REFUSED)
@@ -122,6 +126,12 @@ def _choose_format(given: str, output: Path | None, as_json: bool) -> str:
     if not found:
         raise BadInput(f"{output} ends in none of {', '.join(SUFFIXES)}. Name the format with --format.")
     return found
+
+
+def _spare_library(output: Path, place: str) -> None:
+    """A table never takes the place of the library it is read from."""
+    if output.exists() and Path(place).exists() and output.samefile(place):
+        raise BadInput(f"{output} is the library itself. Give another name.")
 
 
 def _read_through(made: Table) -> Tally:
