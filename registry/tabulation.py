@@ -150,7 +150,13 @@ class Table:
                 yield Row(kelvin, value, stated, keys[owner] if owner >= 0 else "", block.notes.get(number, PLAIN))
 
     def blocks(self) -> Iterator[Block]:
-        """The rows in order, about a thousand at a time."""
+        """The rows in order.
+
+        Yields
+        ------
+        Block
+            About a thousand of them.
+        """
         marker = Marker(self.coverage)
         for start in range(0, self.spacing.count, BLOCK):
             kelvin, values, places = self._solve(start, min(start + BLOCK, self.spacing.count))
