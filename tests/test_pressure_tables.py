@@ -3,16 +3,25 @@
 from __future__ import annotations
 
 import csv
+import dataclasses
 import io
+import itertools
 import json
 import math
+from fractions import Fraction
 
 import numpy as np
 import pytest
+from inventane import COMPOUND, invent_correlation
 
 from registry.cli.app import main
+from registry.coverage import build_coverage
+from registry.dossier import Dossier
 from registry.errors import BadInput, Refused
+from registry.pressure_table import build_pressure_table
 from registry.properties import PROPERTIES
+from registry.quantities import UNITS
+from registry.spacing import space_pressures
 
 PRESSURES = [name for name, row in PROPERTIES.items() if row.dimension == "pressure"]
 
@@ -95,6 +104,36 @@ def test_a_pressure_with_two_temperatures_is_refused(scenario):
     assert len({row.note.reason for row in inside}) == 1
     outside = [row for row in rows if row.value < above * (1 - 1e-6) or row.value > below * (1 + 1e-6)]
     assert not any(row.note.reason for row in outside)
+
+
+def test_reasons_differ_within_a_gap_where_a_draft_has_some_of_the_pressures():
+    """Two accepted windows with a gap, and a draft over a part of it: each row has the reason of its own pressure."""
+    entries = (invent_correlation(0, 300, 40, "measured", "1 %", "seen", "accepted"),
+               invent_correlation(0, 350, 5, "measured", "1 %", "seen", "draft"),
+               invent_correlation(0, 370, 30, "measured", "1 %", "seen", "accepted"))  # fmt: skip
+    keyed = tuple(dataclasses.replace(e, record=dataclasses.replace(e.record, key=f"inventane-{i}"))
+                  for i, e in enumerate(entries))  # fmt: skip
+    coverage = build_coverage(Dossier(COMPOUND, keyed), "vapor-pressure")
+    low, high = (coverage.candidates[0].curve.value(t) for t in (338.0, 372.0))
+    spacing = space_pressures(Fraction(low), Fraction(high), UNITS["Pa"], None, 60, UNITS["Pa"])
+    table = build_pressure_table(coverage, spacing, low, high)
+    reasons = [row.note.reason for row in table]
+    assert [reason for reason, _ in itertools.groupby(reasons)] == ["", "gap", "not-accepted", "gap", ""]
+    assert all(row.note.reason == table.refusal(row).reason for row in table if row.note.reason)
+
+
+def test_a_curve_that_waits_for_a_phase_answers_nowhere(scenario):
+    """corvexane has two solids that melt below 158.42 K: no temperature there until one is named."""
+    solid = next(c for c in scenario.coverage("corvexane", property="melting-pressure").candidates
+                 if c.key == "corvexane-melting-i")  # fmt: skip
+    low, high = sorted(solid.curve.value(t) for t in (152.0, 156.0))
+    asked = {"points": 9, "property": "melting-pressure"}
+    table = scenario.tabulate_at_pressures("corvexane", low, high, **asked)
+    assert not any(low <= value <= high for value in table.extremes()[1])
+    refused = [row for row in table if row.note.reason == "several-phases"]
+    assert len(refused) == 9
+    named = scenario.tabulate_at_pressures("corvexane", low, high, phase=solid.record.phase, **asked)
+    assert {row.correlation for row in named} == {"corvexane-melting-i"}
 
 
 # one correlation

@@ -193,6 +193,17 @@ def test_round_pressures_are_1_2_5_in_the_unit_asked_for(low, high, unit, shown)
     assert spacing.numbers(0, spacing.count, UNITS[unit]) == shown
 
 
+@pytest.mark.parametrize("unit", ["kPa", "mmHg", "psi", "bar"])
+def test_points_of_pressure_end_exactly(unit):
+    """Both ends are the doubles nearest to what was asked, in whatever unit."""
+    for number in range(1, 200):
+        low, high = Fraction(number, 7), Fraction(number * 13, 3)
+        ends = low * UNITS[unit].factor, high * UNITS[unit].factor
+        spacing = space_pressures(*ends, UNITS[unit], None, 5, UNITS["Pa"])
+        found = spacing.numbers(0, 5, UNITS[unit])
+        assert (found[0], found[-1]) == (float(low), float(high))
+
+
 def test_points_of_pressure_keep_one_ratio():
     """Four points over three decades are the decades, the ends exact."""
     spacing = space_pressures(Fraction(1000), Fraction(10**6), UNITS["kPa"], None, 4, UNITS["Pa"])
@@ -276,6 +287,10 @@ def test_rows_in_a_gap_are_refused_and_a_gap_between_rows_is_told():
     assert rows[4].note.marks == ()
     below, above = tabulate(60)
     assert (below.note.marks, above.note.marks) == ((), ("across-gap",))
+    _, _, beyond = build_table(
+        coverage, space_temperatures(Fraction(290), Fraction(380), Fraction(45), None), 290.0, 380.0
+    )
+    assert beyond.note.marks == ("across-gap",)  # a row refused earlier does not hide it
     (gap,) = above.note.gaps
     assert (gap.low, gap.high) == pytest.approx((340.0, 370.0), abs=1e-8)
 
@@ -289,6 +304,15 @@ def test_a_tally_counts_what_went_by(scenario):
     assert [(row, seam.temperature) for row, seam in tally.seams] == [(13, 420.0)]
     keys = ["brindovane-antoine-low", "brindovane-kirchhoff", "brindovane-antoine-high"]
     assert [used.candidate.key for used in tally.used] == keys
+
+
+def test_cautions_are_those_of_the_first_and_the_last_row_of_a_correlation(published):
+    """Over three blocks what is said of the first row, 0.01 K below the triple temperature, is kept."""
+    tally = Tally(published.tabulate("water", 273.15, 400.0, points=3 * BLOCK))
+    for _ in tally.blocks():
+        pass
+    (used,) = tally.used
+    assert "It lies 0.01 K below the triple temperature, 273.16 K." in used.cautions
 
 
 # one correlation

@@ -98,12 +98,10 @@ class Columns:
         for number, (place, result, spread, owner) in enumerate(columns):
             yield Line(place, result, spread, keys[owner], revisions[owner], notes.get(number, PLAIN))
 
-    def extremes(self) -> tuple[list[float], list[float]]:
-        """What is given in the first and last row, and what is found where a correlation begins or ends to answer."""
+    def ends(self) -> list[float]:
+        """What is given in the first and in the last row."""
         unit, count = self.temperature if self.by_temperature else self.value, self.table.spacing.count
-        given = [self.table.spacing.numbers(i, i + 1, unit)[0] for i in (0, count - 1)]
-        kelvin, values = self.table.extremes()
-        return given, self._to_value.many(values) if self.by_temperature else self._to_temperature.many(kelvin)
+        return [self.table.spacing.numbers(i, i + 1, unit)[0] for i in (0, count - 1)]
 
     def show_temperature(self, kelvin: float) -> str:
         """A temperature, K, in the unit of the column and with it."""

@@ -44,9 +44,9 @@ class Digits:
 
     def widths(self) -> list[int]:
         """Characters that each column takes, its heads too."""
-        given, found = self._columns.extremes()
-        shown = [map(self._show_given, given), map(self._show_found, found), [""]]
-        return [max(map(len, [*head, *texts])) for head, texts in zip(self.heads, shown, strict=True)]
+        given = [self._show_given(number) for number in self._columns.ends()]
+        # what is found, and its uncertainty, are shorter than their heads
+        return [max(map(len, [*head, *texts])) for head, texts in zip(self.heads, (given, [], []), strict=True)]
 
     def _show_given(self, number: float) -> str:
         return f"{number:.{self._decimals}f}"
