@@ -86,7 +86,10 @@ def check_value(record: Record, find: Find) -> Iterator[Problem]:
 
 
 def _has_value(record: Correlation, molar_mass: float) -> bool:
-    curve = Curve.of(record, molar_mass)
+    try:
+        curve = Curve.of(record, molar_mass)
+    except (ValueError, ArithmeticError):
+        return False  # a logarithm of nothing, a division by zero: the form has no value at all
     low, high = curve.window
     if not low < high:
         return False

@@ -125,9 +125,9 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
     if conditions is PLAIN:
         return Batch(kelvin, values, places, coverage)
     flat, found = np.ascontiguousarray(kelvin).reshape(-1), values.reshape(-1)
-    owners = np.where(np.isnan(found), -1, coverage.owners[places.reshape(-1)])
+    owners = coverage.owners[places.reshape(-1)]
+    uncovered = owners < 0
     marks = np.full(found.shape, ACCEPTED, dtype=np.int8)
-    uncovered = coverage.owners[places.reshape(-1)] < 0
     if conditions.beyond:
         _fill_beyond(coverage, conditions.beyond, flat, found, owners, marks)
     if conditions.estimate:

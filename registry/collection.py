@@ -2,18 +2,23 @@
 
 from __future__ import annotations
 
+import dataclasses
 import threading
 from contextlib import AbstractContextManager
-from typing import Any, Self
+from typing import TYPE_CHECKING, Any, Self
 
 from registry.dossier import Dossier, Entry
 from registry.entries import enter_all, enter_newest, enter_states, read_dossier, restore
 from registry.errors import BadInput, UnknownKey, quote
-from registry.naming import nearest_names
+from registry.naming import nearest_names, word_kind
 from registry.records import KINDS, Compound, Correlation
 from registry.store.history import Change, fold_term
 from registry.store.library_file import LibraryFile, View
 from registry.store.rows import Row
+
+# a lookup restates nothing
+if TYPE_CHECKING:
+    from registry.restating.restatement import Restatement
 
 __all__ = ["Collection"]
 
@@ -220,6 +225,57 @@ class Collection:
                     return enter_newest(states[0])
             keys = [row.key for each in ([kind] if kind else KINDS) if each not in _UNNAMED for row in view.kind(each)]
             raise UnknownKey(kind or "record", key, nearest=nearest_names(key, keys))
+
+    def restate(
+        self, key: str, *, value_unit: str | None = None, temperature_unit: str | None = None, log: str | None = None
+    ) -> Restatement:
+        """A correlation in the units and the log base that another tool wants; nothing is recorded.
+
+        Parameters
+        ----------
+        key : str
+            The key of a correlation.
+        value_unit, temperature_unit : str, optional
+            The units; those recorded if none is given.
+        log : str, optional
+            ``ln`` or ``log10``; the form's own if none is given.
+
+        Returns
+        -------
+        Restatement
+            Of the revision that counts: algebraically the same, with digits
+            enough that the value agrees to 1e-12 over the window.
+
+        Raises
+        ------
+        UnknownKey
+            If there is no such record.
+        BadInput
+            If it is no correlation, a unit is none of the dimension, or the
+            form cannot say it, with the reason.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     found = library.restate(
+        ...         "water-antoine-1-100", value_unit="kPa", temperature_unit="K", log="ln")
+        >>> dict(found.restated.ordered_coefficients())
+        {'A': '16.5698929686341', 'B': '3984.9228394883', 'C': '-39.724'}
+        """
+        from registry.restating.restatement import restate
+
+        entry = self.entry(key)
+        if entry.record.kind != "correlation":
+            raise BadInput(
+                f"{quote(key)} is a {word_kind(entry.record.kind)}; only a correlation can be restated. "
+                f"`rangebook show {entry.key}` tells what refers to it."
+            )
+        mass = self.dossier(entry.record.compound).compound.record.grams_per_mole()
+        found = restate(
+            entry.record, value_unit=value_unit, temperature_unit=temperature_unit, log=log, molar_mass=mass
+        )
+        return dataclasses.replace(found, revision=entry.revision, standing=entry.standing)
 
     def referring(self, kind: str, key: str) -> list[Entry[Any]]:
         """The records that refer to one record.

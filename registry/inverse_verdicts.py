@@ -4,15 +4,16 @@ from __future__ import annotations
 
 import math
 
-from registry.branches import Branch, cut_branches
+from registry.branches import Branch
 from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.display import format_plain, suit_unit
-from registry.inversion import SAME_TEMPERATURE, Inversion, span_candidate
+from registry.inversion import END_TOLERANCE, SAME_TEMPERATURE, Inversion, span_candidate
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.refusals import InverseRefusal, Side
+from registry.turns import cut_branches
 from registry.verdicts import describe_unaccepted, refuse, show_map
 
 __all__ = ["refuse_pressure"]
@@ -70,30 +71,52 @@ def _tell(side: Side) -> str:
 def _find_side(branch: Branch, *, greatest: bool) -> Side:
     """The end of a branch where its value is greatest, or least: the bound itself, not the tolerance beside it."""
     high = (branch.ends[1] >= branch.ends[0]) == greatest
-    at = min(max(round(branch.high if high else branch.low, 8), branch.low), branch.high)
+    at = _find_bound(branch, branch.high if high else branch.low)
     return Side(branch.candidate.key, at, branch.candidate.curve.value(at))
+
+
+def _find_bound(branch: Branch, end: float) -> float:
+    """The bound beside which an end of a branch lies; the end itself where the temperature scale jumps there."""
+    at = round(end, 8)
+    joints = [bound for low, high, _ in branch.candidate.curve.scale.branches for bound in (low, high)]
+    jumps = any(abs(end - joint) <= SAME_TEMPERATURE for joint in joints)
+    return at if branch.candidate.covers(at) and not jumps else end
 
 
 def _refuse_several(inversion: Inversion, value: float, found: tuple[tuple[float, Branch], ...]) -> InverseRefusal:
     coverage = inversion.coverage
     name, given = coverage.dossier.compound.key, _pascal(value)
     sides = tuple(Side(branch.candidate.key, kelvin, value) for kelvin, branch in found)
-    if not all(inversion.answers(branch) for _, branch in found):
-        phases = sorted({branch.candidate.record.phase for _, branch in found})
-        text = f"{name} has {given} where several phases have a {coverage.property}, and none was named."
+    phases = sorted({branch.candidate.record.phase for _, branch in found})
+    if len(phases) > 1 or not all(inversion.answers(branch) for _, branch in found):
+        listed = join_names(
+            (f"{b.candidate.record.phase} at {_kelvin(t)} ({b.candidate.key})" for t, b in found), "and"
+        )
+        text = f"No phase of {name} was named, and {given} is its {coverage.property} for {listed}."
         return _make(value, "several-phases", text, f"Name one with --phase: {join_names(phases)}.", sides=sides)
-    first, second = found[0][1], found[-1][1]
-    if len(found) == 2 and first.candidate is not second.candidate and _meet(first, second):
-        at = _kelvin(round(first.high, 8))
+    jump = _name_jump(found[0][1], found[-1][1]) if len(found) == 2 else ""
+    if jump:
         text = (
-            f"{given} falls into the jump of the seam at {at}: {sides[0].correlation} has it below, at "
-            f"{_kelvin(sides[0].temperature)}, and {sides[1].correlation} above, at {_kelvin(sides[1].temperature)}."
+            f"{given} falls into {jump}: {sides[0].correlation} has it below, at {_kelvin(sides[0].temperature)}, and "
+            f"{sides[1].correlation} above, at {_kelvin(sides[1].temperature)}."
         )
         return _make(value, "seam", text, "Choose by the side you are on.", sides=sides)
     listed = join_names((f"{_kelvin(side.temperature)} ({side.correlation})" for side in sides), "and")
     text = f"{name} has {given} at several temperatures: {listed}."
-    advice = "Its curve turns: look at its coefficients with `rangebook show`, and at its window."
-    return _make(value, "several-temperatures", text, advice, sides=sides)
+    keys = sorted({side.correlation for side in sides})
+    advice = f"Its curve turns: `rangebook show {keys[0]}` tells its coefficients and its window."
+    return _make(value, "several-temperatures", text, advice if len(keys) == 1 else show_map(coverage), sides=sides)
+
+
+def _name_jump(lower: Branch, upper: Branch) -> str:
+    """The jump between two branches that meet; empty if they do not, or meet where a curve turns."""
+    before, after = lower.ends[1], upper.ends[0]
+    if not _meet(lower, upper) or abs(after - before) <= END_TOLERANCE * abs(before):
+        return ""
+    at = _kelvin(round(upper.low, 8))
+    if lower.candidate is upper.candidate:
+        return f"the jump of its temperature scale ({lower.candidate.record.temperature_scale}) at {at}"
+    return f"the jump of the seam at {at}"
 
 
 def _meet(lower: Branch, upper: Branch) -> bool:
@@ -133,11 +156,8 @@ def _refuse_none(inversion: Inversion, value: float) -> InverseRefusal:
         return _refuse_outside(inversion, value, below, above)
     sides = (_find_side(below, greatest=True), _find_side(above, greatest=False))
     told = f"{_tell(sides[0])} and {_tell(sides[1])}"
-    if _meet(below, above) or _meet(above, below):
-        at = _kelvin(sides[0].temperature)
-        jump = f"the jump of the seam at {at}"
-        if below.candidate is above.candidate:
-            jump = f"a jump of the temperature scale at {at}"
+    jump = _name_jump(below, above) or _name_jump(above, below)
+    if jump:
         text = f"{given} falls into {jump}, between {told}: no temperature has it."
         return _make(value, "seam", text, show_map(coverage), sides=sides)
     text = f"{given} falls into a gap for {prop}, between {told}."
@@ -159,7 +179,7 @@ def _refuse_outside(inversion: Inversion, value: float, below: Branch | None, ab
 
 
 def _tell_range(branch: Branch) -> str:
-    low, high = (min(max(round(t, 8), branch.low), branch.high) for t in (branch.low, branch.high))
+    low, high = (_find_bound(branch, end) for end in (branch.low, branch.high))
     ends = [f"{_pascal(branch.candidate.curve.value(t))}" for t in (low, high)]
     return f"{ends[0]} to {ends[1]} over {format_plain(low)} to {_kelvin(high)}"
 

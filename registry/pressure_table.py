@@ -9,7 +9,7 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from registry.branches import Branch, cut_branches
+from registry.branches import Branch
 from registry.coverage import Coverage
 from registry.inverse_verdicts import refuse_pressure
 from registry.inversion import END_TOLERANCE, Inversion, span_candidate
@@ -20,6 +20,7 @@ from registry.refusals import InverseRefusal
 from registry.spacing import Spacing
 from registry.span import demand_one_at_values
 from registry.tabulation import Row, Table
+from registry.turns import cut_branches
 
 __all__ = ["PressureTable", "build_pressure_table"]
 

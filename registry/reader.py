@@ -23,7 +23,9 @@ from registry.values import Value
 # a lookup of one temperature needs none
 if TYPE_CHECKING:
     from registry.batches import Batch
+    from registry.boundary import PhaseBoundary, SaturationBatch
     from registry.inversion import Inversion
+    from registry.saturation import Saturation
     from registry.temperatures import Temperatures
 
 __all__ = ["Reader"]
@@ -46,11 +48,13 @@ class Reader(Collection):
     def __init__(self, file: LibraryFile, position: int | None = None, lock: threading.RLock | None = None) -> None:
         super().__init__(file, position, lock)
         self._coverages: dict[tuple[str, str, str, bool, bool], Coverage] = {}
+        self._boundaries: dict[Coverage, PhaseBoundary] = {}
         self._inversions: dict[Coverage, Inversion] = {}
 
     def _forget(self) -> None:
         super()._forget()
         self._coverages = {}
+        self._boundaries = {}
         self._inversions = {}
 
     @overload
@@ -205,22 +209,76 @@ class Reader(Collection):
         array([372.7559, 453.0356,      nan])
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        from registry.inversion import Inversion
         from registry.temperatures import demand_pressure, solve_many, solve_one
 
         demand_pressure(PROPERTIES[coverage.property])
         pascal = _as_numbers(pressure, "pressure", "pascal")
-        inversion = self._invert(coverage)
+        inversion = self._inversions.get(coverage) or self._inversions.setdefault(coverage, Inversion(coverage))
         return solve_one(inversion, float(pascal)) if pascal.ndim == 0 else solve_many(inversion, pascal)
 
-    def _invert(self, coverage: Coverage) -> Inversion:
-        """The inverse of a coverage, kept as long as that is."""
-        from registry.inversion import Inversion
+    @overload
+    def slope(
+        self, compound: str, temperature: float | Reading, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> Saturation: ...  # fmt: skip
 
-        with self._lock:
-            found = self._inversions.get(coverage)
-            if found is None:
-                found = self._inversions[coverage] = Inversion(coverage)
-            return found
+    @overload
+    def slope(
+        self, compound: str, temperature: ArrayLike, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> SaturationBatch: ...  # fmt: skip
+
+    def slope(
+        self, compound: str, temperature: Any, *, property: str = "vapor-pressure", phase: str | None = None,
+        metastable: bool = False, drafts: bool = False,
+    ) -> Saturation | SaturationBatch:  # fmt: skip
+        """The slope of an equilibrium line, and the enthalpy that Clapeyron's equation makes of it.
+
+        Parameters
+        ----------
+        compound : str
+            As for `lookup`.
+        temperature : float, Reading or array_like of float
+            Temperature on ITS-90, K; or as it was read, on a scale.
+        property : str
+            ``vapor-pressure``, ``sublimation-pressure`` or
+            ``melting-pressure``.
+        phase, metastable, drafts
+            As for `lookup`.
+
+        Returns
+        -------
+        Saturation or SaturationBatch
+            For one temperature with the methods that were used; for an array
+            arrays, NaN where nothing may answer.
+
+        Raises
+        ------
+        Refused
+            As for `lookup`.
+        UnknownKey
+            If the compound is unknown or ambiguous.
+        BadInput
+            If the property is another one or a temperature is not above 0 K.
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.slope("ammonia", [200.0, 300.0, 400.0]).enthalpies.round(-2)
+        array([25200., 20200.,  6600.])
+        """
+        from registry.boundary import PhaseBoundary, require_boundary
+        from registry.saturation import find_saturation
+
+        require_boundary(find_property(property).name)
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        boundary = self._boundaries.get(coverage) or self._boundaries.setdefault(coverage, PhaseBoundary(coverage))
+        if isinstance(temperature, Reading):
+            return find_saturation(boundary, temperature.kelvin, temperature)
+        kelvin = _as_numbers(temperature, "temperature", "kelvin")
+        return find_saturation(boundary, float(kelvin)) if kelvin.ndim == 0 else boundary.evaluate(kelvin)
 
     def coverage(
         self, compound: str, *, property: str = "vapor-pressure", phase: str | None = None, metastable: bool = False,

@@ -5,8 +5,10 @@ version give the same value. Nothing here changes under a version: a change
 makes a new one. Besides these numbers the version covers the ranking
 (`registry.ranking`), the confirmation of records from memory
 (`registry.confirmation`), the phase limits (`registry.limits`), the
-temperature scales (`registry.scales`) and the atomic weights
-(`registry.atomic_weights`).
+temperature scales (`registry.scales`), the atomic weights
+(`registry.atomic_weights`) and what makes an enthalpy of a slope: the methods
+and constants of `registry.virial`, `registry.volumes` and
+`registry.clapeyron`.
 """
 
 from __future__ import annotations

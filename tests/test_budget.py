@@ -134,7 +134,8 @@ def test_percents_of_many_points_are_those_of_each(scenario):
     """The stated uncertainty over an array equals the one of each answer, brought to coverage factor 2."""
     coverage = scenario.coverage("tallowane")
     for candidate in coverage.accepted:
-        kelvin = np.linspace(*candidate.reach, 101)
+        bounds = [piece.upper for piece, _ in candidate.pieces[:-1]]
+        kelvin = np.array([*np.linspace(*candidate.reach, 101), *bounds, *np.nextafter(bounds, np.inf)])
         values = candidate.curve.values(kelvin)
         many = candidate.expanded_percents(kelvin, values)
         for t, value, percent in zip(kelvin, values, many, strict=True):

@@ -121,6 +121,27 @@ def test_a_record_must_fit_the_library(library):
         library.record(Review(of_kind="source", of_key="x", of_revision="1", standing="accepted"), **WHEN)
 
 
+@pytest.mark.parametrize(
+    ("form", "prop", "phase", "unit", "coefficients"),
+    [
+        ("magnus", "vapor-pressure", "liquid", "kPa", {"p0": "0", "a": "17.27", "b": "237.3"}),
+        ("clausius-clapeyron", "vapor-pressure", "liquid", "kPa", {"T0": "300", "p0": "-1", "H": "40000"}),
+        ("clapeyron-melting", "melting-pressure", "solid", "MPa", {"T0": "300", "p0": "1", "H": "9000", "dV": "0"}),
+        ("kechin", "melting-pressure", "solid", "MPa", {"T0": "300", "a": "0", "b": "1", "c": "1"}),
+        ("rackett", "saturated-liquid-density", "liquid", "mol/dm3", {"Tc": "500", "pc": "4", "ZRA": "0"}),
+    ],
+)
+def test_coefficients_without_any_value_are_refused(form, prop, phase, unit, coefficients, library):
+    """A logarithm of nothing or a division by zero in a form is a bad record, not a fault of the program."""
+    record = dataclasses.replace(
+        FIRST, key="without-a-value", form=form, property=prop, phase=phase, value_unit=unit,
+        coefficients=coefficients, temperature_unit="K", window_min="300", window_max="400", window_unit="K",
+        uncertainty="",
+    )  # fmt: skip
+    with pytest.raises(InvalidRecord, match="gives no usable value anywhere"):
+        library.record(record, **WHEN)
+
+
 def test_a_withdrawal_waits_and_then_ends_the_answers(library):
     """A proposed withdrawal changes nothing; accepted, the record answers no more; it may be accepted again."""
     done = library.withdraw("brindovane-kirchhoff", cause="erratum", **WHEN)

@@ -6,8 +6,8 @@ from typing import TYPE_CHECKING, Annotated
 
 import typer
 
-from registry.cli.looking import REFUSED, read_atmosphere
 from registry.cli.options import (
+    REFUSED,
     AsOfOption,
     DraftsOption,
     EditionOption,
@@ -59,7 +59,7 @@ def boil(
     Example: rangebook boil water 1atm 10bar --unit degC
     """
     from registry.cli.boiling_text import describe_boiling, print_boiling
-    from registry.cli.pressures import read_pressures
+    from registry.cli.pressures import read_atmosphere, read_pressures
     from registry.inversion import Inversion
     from registry.properties import PROPERTIES
     from registry.quantities import find_unit

@@ -10,7 +10,7 @@ from registry.cli.temperatures import read_lines
 from registry.errors import BadInput, BadQuantity, GaugePressure
 from registry.quantities import find_unit, parse_pressure
 
-__all__ = ["AskedPressure", "read_pressures"]
+__all__ = ["AskedPressure", "read_atmosphere", "read_pressures"]
 
 
 class AskedPressure(NamedTuple):
@@ -54,6 +54,15 @@ def read_pressures(words: Sequence[str], atmosphere: Fraction | None) -> list[As
     if not asked:
         raise BadInput("No pressure was given. Give one or more, such as 101.325kPa, 1atm or 760mmHg, or - for stdin.")
     return asked
+
+
+def read_atmosphere(text: str) -> Fraction:
+    """The local atmosphere, Pa, exact."""
+    text = text.replace("\u2212", "-")
+    try:
+        return parse_pressure(text)
+    except GaugePressure:
+        raise BadQuantity(text, "the local atmosphere is an absolute pressure, such as 101.325kPa.") from None
 
 
 def _join_units(words: Sequence[str]) -> Iterator[str]:

@@ -26,6 +26,7 @@ sys.path.append(str(ROOT))  # last: an installed package is measured rather than
 from arrays import measure_five_windows, measure_keeping_memory, measure_three_forms  # noqa: E402
 from growth import measure_growth  # noqa: E402
 from history import measure_verifying  # noqa: E402
+from inverse import measure_inverse  # noqa: E402
 from processes import measure_process  # noqa: E402
 from scalars import measure_scalars  # noqa: E402
 from tables import measure_tables  # noqa: E402
@@ -58,6 +59,7 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
         entries = [
             *measure_three_forms(folder, size, rounds),
             *measure_five_windows(folder, size, rounds),
+            *measure_inverse(folder, size, rounds),
             *measure_process(folder, runs),
             *measure_scalars(folder, calls, rounds),
             *measure_growth(folder, changes, rounds),

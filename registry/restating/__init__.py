@@ -1,0 +1,1 @@
+"""The same correlation in other units and another log base."""
