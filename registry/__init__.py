@@ -18,19 +18,20 @@ if TYPE_CHECKING:
     from registry.readings import Reading, parse_reading
     from registry.refusals import InverseRefusal, Refusal
     from registry.saturation import Saturation
+    from registry.tabulation import Table
     from registry.temperatures import Temperatures
 
 __version__ = "0.1.0"
 
 __all__ = [
     "Answer", "Batch", "InverseRefusal", "Library", "RangebookError", "Reading", "Refusal", "Refused", "Saturation",
-    "SaturationBatch", "Temperatures",
+    "SaturationBatch", "Table", "Temperatures",
     "open_library", "parse_reading", "start_library",
 ]  # fmt: skip
 
 _HOMES = {
     "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "InverseRefusal": "refusals",
-    "Temperatures": "temperatures",
+    "Table": "tabulation", "Temperatures": "temperatures",
     "Reading": "readings", "parse_reading": "readings",
     "Saturation": "saturation", "SaturationBatch": "boundary",
     "RangebookError": "errors", "Refused": "errors",

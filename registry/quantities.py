@@ -21,6 +21,7 @@ __all__ = [
     "gauge_unit",
     "parse_pressure",
     "parse_temperature",
+    "read_quantity",
     "unit_names",
 ]
 
@@ -199,9 +200,10 @@ def gauge_unit(text: str, atmosphere_pa: Fraction) -> Unit:
     return replace(base, name=f"{base.name}(g)", shift=atmosphere_pa / base.factor)
 
 
-def _split_quantity(
+def read_quantity(
     text: str, dimension: str, example: str, atmosphere_pa: Fraction | None = None
 ) -> tuple[Fraction, Unit]:
+    """The exact number in a text and its unit, not converted; a gauge unit where the atmosphere, Pa, is stated."""
     plain = text.replace("\u2212", "-").strip()
     match = _QUANTITY.fullmatch(plain) if len(plain) <= 100 else None
     if match is None:
@@ -250,7 +252,7 @@ def parse_temperature(text: str) -> float:
     >>> parse_temperature("-40C")
     233.15
     """
-    number, unit = _split_quantity(text, "temperature", "298.15K or 25C")
+    number, unit = read_quantity(text, "temperature", "298.15K or 25C")
     kelvin = unit.to_si(number)
     if kelvin <= 0:
         raise BadQuantity(text, "a temperature lies above absolute zero, 0 K.")
@@ -287,7 +289,7 @@ def parse_pressure(text: str, atmosphere_pa: Fraction | None = None) -> Fraction
     >>> parse_pressure("-0.2 barg", Fraction(101325))
     Fraction(81325, 1)
     """
-    number, unit = _split_quantity(text, "pressure", "101.325kPa", atmosphere_pa)
+    number, unit = read_quantity(text, "pressure", "101.325kPa", atmosphere_pa)
     pascal = unit.to_si(number)
     if pascal <= 0:
         raise BadQuantity(text, "an absolute pressure is greater than zero.")

@@ -38,7 +38,8 @@ class Refusal:
     reason : str
         ``no-correlation``, ``several-phases``, ``outside-windows``, ``gap``,
         ``above-critical``, ``below-triple``, ``above-triple``,
-        ``not-accepted``, ``no-value`` or ``not-a-temperature``.
+        ``not-accepted``, ``no-value`` or ``not-a-temperature``; of a table
+        by one correlation ``no-single-correlation``.
     explanation : str
         The reason, and what can be done.
     nearest : tuple of Nearest

@@ -30,6 +30,8 @@ ENTRIES = {
     "lookup, long history of one compound, warm": 1.3,
     "verify a history, 5 records a change": 3.0,
     "verify a history, 1 record a change": 3.0,
+    "a long table as csv": 3.0,
+    "memory of a long table over a short one": 1.5,
     "three forms, random order, memory kept": None,
     "three forms, touching chosen too, memory kept": None,
     "five Antoine windows, random order, memory kept": None,

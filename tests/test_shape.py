@@ -24,7 +24,8 @@ LAYERS = (
     {"moments"},
     {"errors"},
     {"quantities", "properties", "cells", "scales", "shelves"},
-    {"display"},
+    {"display", "conversion"},
+    {"spacing"},
     {"uncertainty", "forms", "masses"},
     {"readings"},
     {"records"},
@@ -46,6 +47,10 @@ LAYERS = (
     {"batches", "temperatures"},
     {"answering"},
     {"saturation"},
+    {"notes", "reasons", "span"},
+    {"tabulation", "pressure_table"},
+    {"tally"},
+    {"reports"},
     {"store", "exchange"},
     {"entries", "plan"},
     {"findings"},
@@ -58,6 +63,7 @@ LAYERS = (
     {"recording", "reconciliation", "arrival", "editions", "departure"},
     {"collection"},
     {"reader"},
+    {"tabulator"},
     {"archive"},
     {"signature"},
     {"library"},
@@ -70,8 +76,16 @@ NUMERIC = {
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
     "tolerance", "batches", "answering", "branches", "roots", "turns", "inversion", "inverse_verdicts", "temperatures",
     "restating", "clapeyron", "virial", "volumes", "boundary", "saturation",
+    "conversion", "spacing", "notes", "reasons", "span", "tabulation", "tally", "pressure_table",
 }  # fmt: skip
-OWNERS = {"sqlalchemy": {"store"}, "alembic": {"store"}, "typer": {"cli"}, "rich": {"cli"}, "click": {"cli"}}
+OWNERS = {
+    "sqlalchemy": {"store"},
+    "alembic": {"store"},
+    "typer": {"cli"},
+    "rich": {"cli"},
+    "click": {"cli"},
+    "xlsxwriter": {"reports"},
+}
 
 
 def _top(module: str) -> str:

@@ -16,7 +16,7 @@ from registry.properties import PROPERTIES
 from registry.quantities import Unit
 from registry.refusals import InverseRefusal
 
-__all__ = ["describe_boiling", "print_boiling"]
+__all__ = ["describe_boiling", "describe_inverse_refusal", "print_boiling"]
 
 Found = Sequence[tuple[AskedPressure, Answer | InverseRefusal]]
 
@@ -78,7 +78,7 @@ def describe_boiling(
         "compound": coverage.dossier.compound.key,
         "property": coverage.property,
         "answers": [_describe_answer(result, to) for result in found if isinstance(result, Answer)],
-        "refusals": [_describe_refusal(result) for result in found if isinstance(result, InverseRefusal)],
+        "refusals": [describe_inverse_refusal(result) for result in found if isinstance(result, InverseRefusal)],
         "position": coverage.dossier.position,
         "as_of": label or None,
     }
@@ -95,7 +95,8 @@ def _describe_answer(answer: Answer, to: Unit) -> dict[str, Any]:
     }
 
 
-def _describe_refusal(refusal: InverseRefusal) -> dict[str, Any]:
+def describe_inverse_refusal(refusal: InverseRefusal) -> dict[str, Any]:
+    """One refusal of a pressure."""
     return {
         "pressure_Pa": refusal.value,
         "reason": refusal.reason,

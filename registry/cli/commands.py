@@ -33,6 +33,7 @@ class Home(NamedTuple):
 COMMANDS: dict[str, Home] = {
     "lookup": Home("looking", "lookup"),
     "boil": Home("boiling", "boil"),
+    "table": Home("tabling", "table"),
     "slope": Home("sloping", "slope"),
     "coverage": Home("browsing", "coverage"),
     "list": Home("browsing", "list_records"),

@@ -29,11 +29,13 @@ from history import measure_verifying  # noqa: E402
 from inverse import measure_inverse  # noqa: E402
 from processes import measure_process  # noqa: E402
 from scalars import measure_scalars  # noqa: E402
+from tables import measure_tables  # noqa: E402
 from timing import TIMED, WARM  # noqa: E402
 
 METHOD = (
     f"A round is {WARM} unmeasured and {TIMED} timed calls of ours, then as many of the reference; the ratio is the "
     "median over rounds of the medians' ratio. Whole processes are run in turn; the ratio is that of the medians. "
+    "Memory is the peak of one call, by tracemalloc. "
     "Verifying is timed once a round, and the reference once after it. "
     "The entries with memory kept are measured after all others, with an allocator that gives nothing back."
 )
@@ -62,6 +64,7 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
             *measure_scalars(folder, calls, rounds),
             *measure_growth(folder, changes, rounds),
             *measure_verifying(folder, changes, rounds),
+            *measure_tables(folder, size // 10, rounds),
             *measure_keeping_memory(folder / "kept", size, rounds),
         ]
     return [{**entry, "holds": None if entry["bar"] is None else entry["ratio"] <= entry["bar"]} for entry in entries]
