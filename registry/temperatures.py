@@ -3,20 +3,19 @@
 from __future__ import annotations
 
 import math
-from functools import cached_property
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
 from registry.answers import Answer
-from registry.coverage import Coverage, Seam
+from registry.choices import Choices
+from registry.coverage import Coverage
 from registry.errors import BadInput, Refused
 from registry.inverse_verdicts import refuse_pressure
 from registry.inversion import Inversion
 from registry.naming import join_names
 from registry.properties import PROPERTIES, Property
-from registry.records import Correlation
 from registry.refusals import InverseRefusal
 
 __all__ = ["Temperatures", "demand_pressure", "solve_many", "solve_one"]
@@ -70,7 +69,7 @@ def _is_pressure(coverage: Coverage, value: float) -> bool:
     return math.isfinite(value) and (value > 0.0 or PROPERTIES[coverage.property].signed)
 
 
-class Temperatures:
+class Temperatures(Choices):
     """Temperatures for an array of pressures, with the choice behind each.
 
     Attributes
@@ -87,40 +86,10 @@ class Temperatures:
         self, pressures: NDArray[np.float64], temperatures: NDArray[np.float64],
         places: NDArray[np.signedinteger[Any]], inversion: Inversion,
     ) -> None:  # fmt: skip
-        temperatures.flags.writeable = False
+        super().__init__(inversion.coverage, temperatures, places)
         self.pressures = pressures
         self.temperatures = temperatures
-        self.coverage = inversion.coverage
-        self._places = places
         self._inversion = inversion
-
-    def __repr__(self) -> str:
-        answered = self.temperatures.size - int(self.refused.sum())
-        return (
-            f"<Temperatures at {self.temperatures.size} for {self.coverage.dossier.compound.key}, {answered} answered>"
-        )
-
-    @cached_property
-    def chosen(self) -> NDArray[np.int16]:
-        """Index into `correlations` for each pressure, -1 where refused."""
-        chosen = np.take(self.coverage.owners, self._places, mode="clip")
-        chosen[self.refused] = -1
-        return chosen
-
-    @property
-    def correlations(self) -> tuple[Correlation, ...]:
-        """The correlations that answer somewhere, in the order of temperature."""
-        return tuple(candidate.record for candidate in self.coverage.answering)
-
-    @cached_property
-    def refused(self) -> NDArray[np.bool_]:
-        """True where no one temperature has the pressure."""
-        return np.isnan(self.temperatures)
-
-    @property
-    def seams(self) -> tuple[Seam, ...]:
-        """Where the answering correlation changes, with the jump."""
-        return self.coverage.seams
 
     def refusal(self, index: int | tuple[int, ...]) -> InverseRefusal:
         """Why the pressure at an index was refused.

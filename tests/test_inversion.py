@@ -414,4 +414,4 @@ def test_batch_tells_who_answers_and_why_not(scenario):
     assert keys == [["brindovane-antoine-low", "brindovane-kirchhoff"], ["brindovane-antoine-high", ""]]
     assert batch.refusal((1, 1)).reason == "not-accepted"
     assert [seam.temperature for seam in batch.seams] == [420.0]
-    assert repr(batch) == "<Temperatures at 4 for brindovane, 3 answered>"
+    assert repr(batch) == "<Temperatures of 4 for brindovane, 3 answered>"

@@ -44,6 +44,7 @@ LAYERS = (
     {"values", "scale_effects"},
     {"answers", "estimates", "boundary"},
     {"conditions", "extrapolation", "tolerance"},
+    {"choices"},
     {"batches", "temperatures"},
     {"answering"},
     {"saturation"},
@@ -74,7 +75,8 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "answering", "branches", "roots", "turns", "inversion", "inverse_verdicts", "temperatures",
+    "tolerance", "batches", "choices", "answering", "branches", "roots", "turns", "inversion", "inverse_verdicts",
+    "temperatures",
     "restating", "clapeyron", "virial", "volumes", "boundary", "saturation",
     "conversion", "spacing", "notes", "reasons", "span", "tabulation", "tally", "pressure_table",
 }  # fmt: skip
