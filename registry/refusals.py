@@ -51,6 +51,11 @@ class Refusal:
     explanation: str
     nearest: tuple[Nearest, ...] = ()
 
+    @property
+    def headline(self) -> str:
+        """The reason by its name, and the explanation: what a message says."""
+        return f"Refused ({self.reason}): {self.explanation}"
+
 
 @dataclass(frozen=True)
 class Side:

@@ -239,6 +239,16 @@ def test_one_correlation_says_so_in_every_format(run, tmp_path):
     assert told["note"].startswith(said)
 
 
+def test_a_refused_table_names_its_reason_to_programs(run):
+    """With --json the reason stands beside the message, as in a refusal of one temperature."""
+    words = ("ethanol", "--from", "250K", "--to", "500K", "--step", "5K", "--one")
+    code, out, err = run(*words, "--json")
+    error = json.loads(out)["error"]
+    assert (code, error["kind"], error["exit_code"], error["reason"]) == (3, "Refused", 3, "no-single-correlation")
+    assert err == f"{error['message']}\n"
+    assert error["message"].startswith("Refused (no-single-correlation): No accepted correlation answers for ")
+
+
 def test_drafts_and_metastable_values_are_marked(scenario_path, published_path, capsys):
     """In the text in capitals beside the key, elsewhere as a mark."""
 

@@ -98,7 +98,7 @@ def main(arguments: list[str] | None = None) -> None:
         _refuse_surrogates(given)
         app(args=protect_minus(given), prog_name="rangebook")
     except RangebookError as error:
-        _stop(given, error, next(code for kind, code in EXIT_CODES if isinstance(error, kind)), str(error))
+        _stop(given, error, next(code for kind, code in EXIT_CODES if isinstance(error, kind)), _word_error(error))
     except OSError as error:
         place = f"{quote(error.filename, 200)} cannot be used" if error.filename else "Reading or writing failed"
         _stop(given, error, 2, f"{place}: {error.strerror}.")
@@ -115,6 +115,10 @@ def _refuse_surrogates(arguments: list[str]) -> None:
     for word in arguments:
         if not word.isprintable() and any("\ud800" <= c <= "\udfff" for c in word):
             raise BadInput(f"{quote(word)} is no text in UTF-8. Type it again, or set the terminal to UTF-8.")
+
+
+def _word_error(error: RangebookError) -> str:
+    return error.refusal.headline if isinstance(error, Refused) else str(error)
 
 
 def _describe_error(kind: str, message: str, code: int, **listed: Sequence[Any]) -> dict[str, Any]:
@@ -136,6 +140,8 @@ def _stop(given: list[str], error: Exception, code: int, message: str) -> NoRetu
             if isinstance(error, RevisedMeanwhile):
                 names = ("key", "expected", "found", "mine", "theirs")
                 document["error"] |= {"of_kind": error.kind} | {name: getattr(error, name) for name in names}
+            if isinstance(error, Refused):
+                document["error"]["reason"] = error.refusal.reason
             print_json(document)
     complain(message)
     sys.exit(code)

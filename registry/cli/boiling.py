@@ -81,7 +81,7 @@ def boil(
         else:
             print_boiling(coverage, label, found, to, why)
             for refusal in refusals:
-                complain(f"Refused ({refusal.reason}): {refusal.explanation}")
+                complain(refusal.headline)
     if refusals:
         raise typer.Exit(REFUSED)
 

@@ -98,7 +98,7 @@ def lookup(
         else:
             print_answers(coverage, label, found, to, why)
             for refusal in refusals:
-                complain(f"Refused ({refusal.reason}): {refusal.explanation}")
+                complain(refusal.headline)
     if refusals:
         raise typer.Exit(REFUSED)
 

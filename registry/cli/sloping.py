@@ -78,7 +78,7 @@ def slope(
             told = [(one, result) for one, result in found if isinstance(result, Saturation)]
             print_saturations(boundary, label, told, to, energy)
             for refusal in refusals:
-                complain(f"Refused ({refusal.reason}): {refusal.explanation}")
+                complain(refusal.headline)
     if refusals:
         raise typer.Exit(REFUSED)
 

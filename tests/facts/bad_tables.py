@@ -112,8 +112,8 @@ REQUESTS = (
      "`rangebook coverage water --property vapor-pressure` shows the map."),
     ("no single correlation", "published",
      ("ethanol", "--from", "250K", "--to", "500K", "--step", "5K", "--one"), 3,
-     "No accepted correlation answers for vapor-pressure of ethanol over all of 250 to 500 K. Closest: "
-     "ethanol-poling-5 answers over 82.8 % of it (293 to 513.92 K); "
+     "Refused (no-single-correlation): No accepted correlation answers for vapor-pressure of ethanol over all of 250 "
+     "to 500 K. Closest: ethanol-poling-5 answers over 82.8 % of it (293 to 513.92 K); "
      "ethanol-antoine-high answers over 59.9 % of it (350.15 to 513.92 K); "
      "ethanol-antoine-low answers over 41.3 % of it (216.15 to 353.15 K). "
      "Ask for a span inside one of these, or for a table with seams."),
