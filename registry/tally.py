@@ -10,6 +10,7 @@ from dataclasses import dataclass
 from registry.answers import find_cautions
 from registry.candidate import Candidate
 from registry.coverage import Seam, Stretch
+from registry.grounds import list_grounds
 from registry.refusals import Refusal
 from registry.tabulation import Block, Row, Table
 
@@ -33,6 +34,17 @@ class Used:
     candidate: Candidate
     citation: str
     cautions: tuple[str, ...]
+
+    @property
+    def title(self) -> str:
+        """Its key, revision and standing."""
+        entry = self.candidate.entry
+        return f"{entry.key}, revision {entry.revision}, {entry.standing}"
+
+    @property
+    def grounds(self) -> tuple[tuple[str, str], ...]:
+        """Its form, window, evidence and source, a label and a text each."""
+        return list_grounds(self.candidate.record, self.candidate.counted.evidence, self.citation)
 
 
 class Tally:

@@ -50,7 +50,7 @@ LAYERS = (
     {"saturation"},
     {"notes", "reasons", "span"},
     {"tabulation", "pressure_table"},
-    {"tally"},
+    {"tally", "grounds"},
     {"reports"},
     {"store", "exchange"},
     {"entries", "plan"},

@@ -121,7 +121,7 @@ def test_markdown_is_a_pipe_table_with_its_sources_beneath(run, published):
         (t, pytest.approx(v, rel=5e-6), who) for t, v, who in expected
     ]
     assert rows[3][4] == "seam at 293 K: +0.605 %"
-    assert "ethanol-poling-5, revision 1, 293 to 513.92 K: B. E. Poling" in out
+    assert "ethanol-poling-5, revision 1, accepted; form: Wagner 2.5-5; window: 293 to 513.92 K, from memory; " in out
     assert out.endswith(f"ethanol, library position 1.\n\n{CAUTION}\n")
 
 
@@ -247,6 +247,28 @@ def test_a_refused_table_names_its_reason_to_programs(run):
     assert (code, error["kind"], error["exit_code"], error["reason"]) == (3, "Refused", 3, "no-single-correlation")
     assert err == f"{error['message']}\n"
     assert error["message"].startswith("Refused (no-single-correlation): No accepted correlation answers for ")
+
+
+@pytest.mark.parametrize(("compound", "kelvin", "prop"), [
+    ("ethanol", "300K", "vapor-pressure"), ("water", "260K", "sublimation-pressure"),
+    ("water", "300K", "melting-pressure"), ("nitrogen", "70K", "melting-pressure"),
+])  # fmt: skip
+def test_a_correlation_is_told_as_a_lookup_tells_it(compound, kelvin, prop, run, capsys, tmp_path):
+    """Title, form, window, evidence and source in the same words, in every format that has room for them."""
+    with pytest.raises(SystemExit):
+        main(["lookup", compound, kelvin, "-p", prop])
+    story = capsys.readouterr().out.split("\n\n")[2].split("    chosen ")[0]
+    words = (compound, "--from", kelvin, "--to", f"{int(kelvin[:-1]) + 1}K", "--points", "2", "-p", prop)
+    assert f"\n\n{story}" in run(*words)[1]
+    title, *facts = re.split(r"\n    (?=[a-z])", story.strip())
+    told = [(fact[:8].strip(), " ".join(fact[10:].split())) for fact in facts]
+    assert [label for label, _ in told] == ["form", "window", "evidence", "source"]
+    line = "; ".join([title, *(f"{label}: {text}" for label, text in told)])
+    assert f"- {escape(line)}" in run(*words, "-f", "markdown")[1]
+    run(*words, "-o", str(tmp_path / "a.xlsx"))
+    rows = list(openpyxl.load_workbook(tmp_path / "a.xlsx")["sources"].iter_rows(values_only=True))
+    start = rows.index(("correlation", title))
+    assert rows[start + 1 : start + 5] == told
 
 
 def test_drafts_and_metastable_values_are_marked(scenario_path, published_path, capsys):

@@ -11,7 +11,7 @@ from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, prin
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
 from registry.display import format_number, format_plain
-from registry.forms.catalogue import FORMS
+from registry.grounds import list_grounds
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import Unit
@@ -27,10 +27,6 @@ class Typed(Protocol):
     @property
     def text(self) -> str:
         """As typed."""
-
-
-_BASIS = {"printed": "as printed", "assumed": "assumed, not printed", "memory": "from memory"}
-_OBTAINED = {"seen": "seen in the source", "memory": "from memory"}
 
 
 def print_answers(
@@ -103,18 +99,13 @@ def print_story(told: Sequence[tuple[Typed, Answer]], why: bool) -> None:
     """One correlation, with why it was chosen for the first of what was asked."""
     first, answer = told[0]
     record = answer.correlation
-    low, high = answer.window
     reasons = dict.fromkeys(each.chosen_because for _, each in told)
     chosen = answer.chosen_because + (f" (At {first.text}; --why tells the others.)" if len(reasons) > 1 else "")
     cautions = dict.fromkeys(caution for _, each in told for caution in each.cautions)
-    locator = record.locator if record.locator != "not recorded" else "the place in it is not recorded"
     say(f"  {emphasize(record.key)}, revision {answer.revision}, {answer.standing}")
     print_facts(
         (
-            ("form", FORMS[record.form].title),
-            ("window", f"{format_plain(low)} to {format_plain(high)} K, {_BASIS[record.window_basis]}"),
-            ("evidence", _word_evidence(answer)),
-            ("source", f"{answer.citation}; {locator}"),
+            *list_grounds(record, answer.counts_as, answer.citation),
             ("chosen", chosen),
             *(_word_ground(answer) if why else ()),
             *(("caution", caution) for caution in cautions),
@@ -146,14 +137,6 @@ def _word_scale(answer: Answer) -> str:
         f"{name}, whose number there is {effect.shift:+.2g} K from ITS-90: that changes the value by "
         f"{effect.percent:+.2g} %, and is taken into account."
     )
-
-
-def _word_evidence(answer: Answer) -> str:
-    """What it ranks by, and what the record says where that differs."""
-    record = answer.correlation
-    if answer.counts_as == record.evidence:
-        return f"{record.evidence}, {_OBTAINED[record.obtained]}"
-    return f"{answer.counts_as} (recorded as {record.evidence}, but from memory and unconfirmed)"
 
 
 def print_verdicts(answers: Sequence[tuple[Typed, Answer]]) -> None:

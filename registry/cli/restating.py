@@ -54,10 +54,10 @@ def restate(
 
 def _print_restatement(found: Restatement, citation: str, label: str) -> None:
     from registry.forms.catalogue import FORMS
+    from registry.grounds import word_locator
 
     record, new = found.recorded, found.restated
     form = FORMS[new.form]
-    locator = record.locator if record.locator != "not recorded" else "the place in it is not recorded"
     say(f"{emphasize(found.key)} restated: {record.property} of {record.compound}, {record.phase}{name_past(label)}")
     print_facts(
         [
@@ -81,7 +81,7 @@ def _print_restatement(found: Restatement, citation: str, label: str) -> None:
             ("scale", f"{record.temperature_scale}, as recorded; a temperature scale is never converted"),
             ("check", _word_check(found)),
             ("agreement", _word_agreement(found)),
-            ("source", f"{citation}; {locator}"),
+            ("source", f"{citation}; {word_locator(record.locator)}"),
             (
                 "restated",
                 f"from {found.key}, revision {found.revision}, {found.standing}, which has {record.form}, "

@@ -5,7 +5,6 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 
 from registry.cli.screen import CAUTION, format_facts, name_past, wrap
-from registry.display import format_plain
 from registry.properties import PROPERTIES
 from registry.reports.columns import Columns, Line
 from registry.reports.digits import Digits
@@ -84,14 +83,5 @@ class _Form:
 
 def _tell(used: Used) -> str:
     """One correlation with its source."""
-    candidate, record = used.candidate, used.candidate.record
-    low, high = record.window_kelvin()
-    locator = record.locator if record.locator != "not recorded" else "the place in it is not recorded"
-    facts = (
-        ("window", f"{format_plain(low)} to {format_plain(high)} K"),
-        ("evidence", f"{candidate.counted.evidence}, obtained: {record.obtained}"),
-        ("source", f"{used.citation}; {locator}"),
-        *(("caution", caution) for caution in used.cautions),
-    )
-    lines = [f"  {record.key}, revision {candidate.entry.revision}, {candidate.entry.standing}"]
-    return "".join(f"{line}\n" for line in [*lines, *format_facts(facts, indent=4)])
+    facts = (*used.grounds, *(("caution", caution) for caution in used.cautions))
+    return "".join(f"{line}\n" for line in [f"  {used.title}", *format_facts(facts, indent=4)])

@@ -5,7 +5,6 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator, Sequence
 
-from registry.display import format_plain
 from registry.reports.columns import Columns, Line
 from registry.reports.digits import Digits
 from registry.tally import Tally, Used
@@ -68,7 +67,5 @@ def _tell_rest(columns: Columns, tally: Tally, caution: str) -> Iterator[str]:
 
 
 def _tell_source(used: Used) -> str:
-    record, (low, high) = used.candidate.record, used.candidate.record.window_kelvin()
-    window = f"{format_plain(low)} to {format_plain(high)} K"
-    told = f"{record.key}, revision {used.candidate.entry.revision}, {window}: {used.citation}; {record.locator}."
-    return escape(" ".join([told, *used.cautions]))
+    grounds = "; ".join(f"{label}: {text}" for label, text in used.grounds)
+    return escape(" ".join([f"{used.title}; {grounds}.", *used.cautions]))

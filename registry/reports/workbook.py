@@ -7,7 +7,6 @@ from collections.abc import Iterator
 from pathlib import Path
 from typing import Any
 
-from registry.display import format_plain
 from registry.errors import BadInput
 from registry.properties import PROPERTIES
 from registry.reports.columns import Columns, Line
@@ -109,10 +108,7 @@ def _tell_sources(columns: Columns, tally: Tally, caution: str) -> Iterator[tupl
 
 
 def _tell_used(used: Used) -> Iterator[tuple[str, str]]:
-    record, entry = used.candidate.record, used.candidate.entry
-    low, high = record.window_kelvin()
-    yield "correlation", f"{record.key}, revision {entry.revision}, {entry.standing}"
-    yield "window", f"{format_plain(low)} to {format_plain(high)} K"
-    yield "source", f"{used.citation}; {record.locator}"
+    yield "correlation", used.title
+    yield from used.grounds
     for caution in used.cautions:
         yield "caution", caution
