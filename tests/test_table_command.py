@@ -376,6 +376,46 @@ def test_nothing_is_left_of_a_table_that_breaks_off(suffix, run, tmp_path, monke
         assert [p.read_bytes() for p in tmp_path.iterdir()] == ([there] if there else [])
 
 
+@pytest.mark.skipif(sys.platform == "win32", reason="the size of files cannot be limited")
+def test_a_workbook_without_room_for_its_rows_leaves_nothing(published_path, tmp_path):
+    """Room runs out in the working files: one message, no table, and no working file is left."""
+    work, place = tmp_path / "work", tmp_path / "there"
+    work.mkdir()
+    place.mkdir()
+    words = ("table", *ETHANOL[:5], "--points", "1200", "-o", str(place / "table.xlsx"), "--library")
+    code = f"import resource; resource.setrlimit(resource.RLIMIT_FSIZE, (20000, 20000)); {CODE}"
+    done = subprocess.run(
+        [sys.executable, "-c", code, *words, str(published_path)], capture_output=True, text=True,
+        env={**os.environ, "TMPDIR": str(work)}, timeout=60, check=False,
+    )  # fmt: skip
+    assert (done.returncode, done.stdout) == (2, "")
+    assert done.stderr == "Reading or writing failed: File too large.\n"
+    assert not [*work.iterdir(), *place.iterdir()]
+
+
+def test_a_workbook_without_room_for_its_archive_leaves_nothing(run, tmp_path, monkeypatch):
+    """An archive that cannot be written fails like any other file, and does not complain once more when let go."""
+    import gc
+    import tempfile
+    import zipfile
+
+    def fill(self, *words, **named):
+        self.fp.write(b"half of it")
+        self._didModify = True
+        raise OSError(28, "No space left on device")
+
+    complaints = []
+    monkeypatch.setattr(sys, "unraisablehook", complaints.append)
+    monkeypatch.setattr(zipfile.ZipFile, "write", fill)
+    (tmp_path / "work").mkdir()
+    monkeypatch.setattr(tempfile, "tempdir", str(tmp_path / "work"))
+    code, out, err = run(*ETHANOL, "-o", str(tmp_path / "table.xlsx"))
+    gc.collect()
+    assert (code, out, err) == (2, "", "Reading or writing failed: No space left on device.\n")
+    assert [p.name for p in tmp_path.rglob("*")] == ["work"]
+    assert not complaints
+
+
 def test_a_file_made_meanwhile_is_not_replaced(tmp_path):
     """Whoever takes the name while a table is written keeps it."""
     from registry.errors import BadInput

@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
+import contextlib
 import math
+import os
+import tempfile
 from collections.abc import Iterator
 from pathlib import Path
-from typing import Any
+from typing import Any, BinaryIO
 
 from registry.errors import BadInput
 from registry.properties import PROPERTIES
@@ -52,15 +55,48 @@ def write_workbook(path: Path, columns: Columns, tally: Tally, caution: str) -> 
     """
     import xlsxwriter
 
-    with xlsxwriter.Workbook(path, {"constant_memory": True, **_AS_TEXT}) as book:
-        bold = book.add_format({"bold": True})
-        _write_rows(book.add_worksheet("table"), bold, columns, tally)
-        sheet = book.add_worksheet("sources")
-        sheet.set_column(0, 0, 16)
-        sheet.set_column(1, 1, 100)
-        for number, (label, text) in enumerate(_tell_sources(columns, tally, caution)):
-            sheet.write_string(number, 0, label, bold)
-            sheet.write_string(number, 1, text)
+    # its working files go whatever happens
+    with tempfile.TemporaryDirectory(prefix="rangebook-") as folder, path.open("wb") as file:
+        book = xlsxwriter.Workbook(file, {"constant_memory": True, "tmpdir": folder, **_AS_TEXT})
+        try:
+            bold = book.add_format({"bold": True})
+            _write_rows(book.add_worksheet("table"), bold, columns, tally)
+            _write_sources(book.add_worksheet("sources"), bold, _tell_sources(columns, tally, caution))
+            _pack(book, file)
+        finally:
+            _let_go(book)
+
+
+def _let_go(book: Any) -> None:
+    """Close the working files, which the package leaves open where writing fails."""
+    for sheet in book.worksheets():
+        rows = getattr(sheet, "row_data_fh", None)
+        if rows is not None:
+            with contextlib.suppress(OSError):
+                rows.close()
+
+
+def _pack(book: Any, file: BinaryIO) -> None:
+    """Pack the sheets into the file; without room for them an OSError, as from any other file."""
+    from xlsxwriter.exceptions import FileCreateError
+
+    cause = None
+    try:
+        book.close()
+    except FileCreateError as error:
+        cause = OSError(error.args[0].errno, error.args[0].strerror)
+        # room for the end that an archive writes when it is let go, so that it does not complain
+        os.ftruncate(file.fileno(), 0)
+    if cause is not None:
+        raise cause
+
+
+def _write_sources(sheet: Any, bold: Any, sources: Iterator[tuple[str, str]]) -> None:
+    sheet.set_column(0, 0, 16)
+    sheet.set_column(1, 1, 100)
+    for number, (label, text) in enumerate(sources):
+        sheet.write_string(number, 0, label, bold)
+        sheet.write_string(number, 1, text)
 
 
 def _write_rows(sheet: Any, bold: Any, columns: Columns, tally: Tally) -> None:
