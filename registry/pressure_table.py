@@ -10,7 +10,6 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry.branches import Branch
-from registry.coverage import Coverage
 from registry.inverse_verdicts import refuse_pressure
 from registry.inversion import END_TOLERANCE, Inversion, span_candidate
 from registry.properties import PROPERTIES
@@ -30,6 +29,15 @@ Array = NDArray[np.float64]
 class PressureTable(Table):
     """The temperature at each of many pressures, where the answering correlation has that value.
 
+    Parameters
+    ----------
+    inversion : Inversion
+        Who answers where.
+    spacing : Spacing
+        The pressures.
+    note : str
+        What to know of the whole table; empty if nothing.
+
     Attributes
     ----------
     coverage : Coverage
@@ -40,14 +48,14 @@ class PressureTable(Table):
         What to know of the whole table; empty if nothing.
     """
 
+    def __init__(self, inversion: Inversion, spacing: Spacing, note: str = "") -> None:
+        super().__init__(inversion.coverage, spacing, note)
+        self._inversion = inversion
+
     @property
     def given(self) -> str:
         """What the rows are spaced in."""
         return "pressure"
-
-    @cached_property
-    def _inversion(self) -> Inversion:
-        return Inversion(self.coverage)
 
     def extremes(self) -> tuple[list[float], list[float]]:
         """Temperatures, K, at which the curves that have some of the pressures begin or end, and the values there."""
@@ -105,13 +113,13 @@ class PressureTable(Table):
 
 
 def build_pressure_table(
-    coverage: Coverage, spacing: Spacing, low: float, high: float, *, one: bool = False
+    inversion: Inversion, spacing: Spacing, low: float, high: float, *, one: bool = False
 ) -> PressureTable:
     """A table of temperatures at pressures.
 
     Parameters
     ----------
-    coverage : Coverage
+    inversion : Inversion
         Who answers where, for a property that is a pressure.
     spacing : Spacing
         The pressures, Pa.
@@ -131,6 +139,6 @@ def build_pressure_table(
         If one correlation is asked for and none has all the pressures.
     """
     if not one:
-        return PressureTable(coverage, spacing)
-    alone, note = demand_one_at_values(coverage, low, high)
-    return PressureTable(alone, spacing, note)
+        return PressureTable(inversion, spacing)
+    alone, note = demand_one_at_values(inversion.coverage, low, high)
+    return PressureTable(Inversion(alone), spacing, note)

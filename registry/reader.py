@@ -209,12 +209,11 @@ class Reader(Collection):
         array([372.7559, 453.0356,      nan])
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
-        from registry.inversion import Inversion
         from registry.temperatures import demand_pressure, solve_many, solve_one
 
         demand_pressure(PROPERTIES[coverage.property])
         pascal = _as_numbers(pressure, "pressure", "pascal")
-        inversion = self._inversions.get(coverage) or self._inversions.setdefault(coverage, Inversion(coverage))
+        inversion = self._invert(coverage)
         return solve_one(inversion, float(pascal)) if pascal.ndim == 0 else solve_many(inversion, pascal)
 
     @overload
@@ -311,6 +310,12 @@ class Reader(Collection):
             if found is None:
                 found = self._coverages[request] = self._build_coverage(*request)
             return found
+
+    def _invert(self, coverage: Coverage) -> Inversion:
+        """The inverse of a coverage, kept as long as it."""
+        from registry.inversion import Inversion
+
+        return self._inversions.get(coverage) or self._inversions.setdefault(coverage, Inversion(coverage))
 
     def _build_coverage(self, compound: str, prop: str, phase: str, metastable: bool, drafts: bool) -> Coverage:
         row = find_property(prop)

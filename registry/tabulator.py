@@ -150,7 +150,7 @@ class Tabulator(Reader):
         spacing = space_pressures(*ends, pascal, by, many, pascal)
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
         demand_pressure(PROPERTIES[coverage.property])
-        return build_pressure_table(coverage, spacing, float(ends[0]), float(ends[1]), one=one)
+        return build_pressure_table(self._invert(coverage), spacing, float(ends[0]), float(ends[1]), one=one)
 
 
 def _read_exact(number: float, what: str) -> Fraction:

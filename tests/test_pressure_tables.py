@@ -18,6 +18,7 @@ from registry.cli.app import main
 from registry.coverage import build_coverage
 from registry.dossier import Dossier
 from registry.errors import BadInput, Refused
+from registry.inversion import Inversion
 from registry.pressure_table import build_pressure_table
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
@@ -116,7 +117,7 @@ def test_reasons_differ_within_a_gap_where_a_draft_has_some_of_the_pressures():
     coverage = build_coverage(Dossier(COMPOUND, keyed), "vapor-pressure")
     low, high = (coverage.candidates[0].curve.value(t) for t in (338.0, 372.0))
     spacing = space_pressures(Fraction(low), Fraction(high), UNITS["Pa"], None, 60, UNITS["Pa"])
-    table = build_pressure_table(coverage, spacing, low, high)
+    table = build_pressure_table(Inversion(coverage), spacing, low, high)
     reasons = [row.note.reason for row in table]
     assert [reason for reason, _ in itertools.groupby(reasons)] == ["", "gap", "not-accepted", "gap", ""]
     assert all(row.note.reason == table.refusal(row).reason for row in table if row.note.reason)
@@ -134,6 +135,21 @@ def test_a_curve_that_waits_for_a_phase_answers_nowhere(scenario):
     assert len(refused) == 9
     named = scenario.tabulate_at_pressures("corvexane", low, high, phase=solid.record.phase, **asked)
     assert {row.correlation for row in named} == {"corvexane-melting-i"}
+
+
+def test_an_inverse_serves_every_table(published_path, monkeypatch):
+    """The curves are cut into branches once, for a temperature and for all tables after it."""
+    import registry.inversion
+    from registry import open_library
+
+    cut, plain = [], registry.inversion.cut_branches
+    monkeypatch.setattr(registry.inversion, "cut_branches", lambda *a, **k: cut.append(a) or plain(*a, **k))
+    with open_library(published_path) as library:
+        first = library.temperature_at("water", 1e5).temperature
+        done = len(cut)
+        for _ in range(2):
+            assert next(iter(library.tabulate_at_pressures("water", 1e5, 1e6))).temperature == first
+    assert 0 < done == len(cut)
 
 
 # one correlation

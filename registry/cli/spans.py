@@ -7,6 +7,7 @@ from fractions import Fraction
 
 from registry.coverage import Coverage
 from registry.errors import BadInput, BadQuantity, GaugePressure, quote
+from registry.inversion import Inversion
 from registry.pressure_table import build_pressure_table
 from registry.properties import find_property
 from registry.quantities import UNITS, Unit, find_unit, gauge_unit, parse_pressure, parse_temperature, read_quantity
@@ -49,7 +50,7 @@ class Span:
     def build(self, coverage: Coverage, one: bool) -> Table:
         """The table."""
         if not self.by_temperature:
-            return build_pressure_table(coverage, self.spacing, float(self.low), float(self.high), one=one)
+            return build_pressure_table(Inversion(coverage), self.spacing, float(self.low), float(self.high), one=one)
         return build_table(coverage, self.spacing, float(self.low), float(self.high), one=one)
 
     def choose_units(self, table: Table, value: str, temperature: str) -> tuple[Unit, Unit]:
