@@ -175,7 +175,7 @@ def space_pressures(
     points : int, optional
         How many, with one ratio between neighbours, both ends among them.
         With neither the round numbers between the ends: 1, 2 and 5 times a
-        power of ten.
+        power of ten; of gauge pressures also those below zero, and zero.
     si : Unit
         The pascal.
 
@@ -246,11 +246,19 @@ def _list_round(low: Fraction, high: Fraction, unit: Unit) -> Listed:
 
 
 def _round_numbers(start: Fraction, end: Fraction) -> Iterator[Fraction]:
-    if end <= 0:
+    """Rising; those of a span that holds zero go down to a hundredth of its larger end, and zero is among them."""
+    if start > 0:
+        yield from _round_above(start, end)
         return
-    # a gauge pressure may start at or below zero
-    least = max(start, end / 10**6)
+    least = -end if end < 0 else max(-start, end) / 100
+    yield from reversed([-number for number in _round_above(least, -start)])
+    if end >= 0:
+        yield Fraction(0)
+        yield from _round_above(least, end)
+
+
+def _round_above(least: Fraction, most: Fraction) -> Iterator[Fraction]:
     power = Fraction(10) ** (math.floor(math.log10(float(least))) - 1)
-    while power <= end:
-        yield from (m * power for m in (1, 2, 5) if least <= m * power <= end)
+    while power <= most:
+        yield from (m * power for m in (1, 2, 5) if least <= m * power <= most)
         power *= 10

@@ -226,9 +226,22 @@ def test_gauge_pressures_count_from_their_atmosphere(run):
     assert [r["value"] for r in document["rows"]] == [0.0, 1.0, 2.0]
     # IAPWS R7-97(2012), eq. 31 at 0.101325 MPa: 373.1243 K
     assert document["rows"][0]["temperature_K"] == pytest.approx(373.1243, abs=1e-4)
-    words = ("water", "--from", "0barg", "--to", "20barg", "--atmosphere", "1atm", "-f", "csv")
-    rounds = [float(row[0]) for row in csv.reader(io.StringIO(run(*words)[1])) if row[0][0].isdigit()]
-    assert rounds[-4:] == [2.0, 5.0, 10.0, 20.0]
+
+
+@pytest.mark.parametrize(("low", "high", "expected"), [
+    ("0barg", "20barg", [0, 0.2, 0.5, 1, 2, 5, 10, 20]),
+    ("-0.95barg", "2barg", [-0.5, -0.2, -0.1, -0.05, -0.02, 0, 0.02, 0.05, 0.1, 0.2, 0.5, 1, 2]),
+    ("-0.5barg", "0barg", [-0.5, -0.2, -0.1, -0.05, -0.02, -0.01, -0.005, 0]),
+    ("-0.9barg", "-0.1barg", [-0.5, -0.2, -0.1]),
+    ("700Pa", "20MPa", [m * 10**n for n in range(3, 8) for m in (1, 2, 5) if m * 10**n <= 2e7]),
+    ("1Pa", "20MPa", [m * 10**n for n in range(8) for m in (1, 2, 5) if m * 10**n <= 2e7]),
+])  # fmt: skip
+def test_round_pressures_are_all_there(low, high, expected, run):
+    """Every 1, 2 and 5 times a power of ten, over any number of decades; gauge pressures from both sides of zero."""
+    words = ("water", "--from", low, "--to", high, "--atmosphere", "1atm", "-f", "csv")
+    header, *rows = csv.reader(io.StringIO(run(*words)[1]))
+    assert header[0] == f"vapor_pressure_{'bar(g)' if low.endswith('g') else 'Pa'}"
+    assert [float(row[0]) for row in rows] == expected
 
 
 def test_refused_pressures_come_with_their_reasons(run):
