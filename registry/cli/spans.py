@@ -5,12 +5,13 @@ from __future__ import annotations
 from dataclasses import dataclass
 from fractions import Fraction
 
+from registry.cli.pressures import read_atmosphere
 from registry.coverage import Coverage
 from registry.errors import BadInput, BadQuantity, GaugePressure, quote
 from registry.inversion import Inversion
 from registry.pressure_table import build_pressure_table
 from registry.properties import find_property
-from registry.quantities import UNITS, Unit, find_unit, gauge_unit, parse_pressure, parse_temperature, read_quantity
+from registry.quantities import UNITS, Unit, find_unit, gauge_unit, parse_temperature, read_quantity
 from registry.reports.columns import suit_value_unit
 from registry.spacing import Spacing, space_pressures, space_temperatures
 from registry.tabulation import Table, build_table
@@ -91,8 +92,10 @@ def read_span(low: str, high: str, step: str, points: int | None, atmosphere: st
     BadInput
         If a text cannot be read, or they do not fit together.
     """
-    local = _read_atmosphere(atmosphere)
+    local = read_atmosphere(atmosphere) if atmosphere else None
     dimension = _find_dimension(low)
+    _check_kind("--to", high, dimension)
+    _check_kind("--step", step, dimension)
     start, unit = _read_end(low, dimension, local)
     end, _ = _read_end(high, dimension, local)
     by = _read_step(step, dimension) if step else None
@@ -103,22 +106,27 @@ def read_span(low: str, high: str, step: str, points: int | None, atmosphere: st
     return Span(start, end, unit, space_pressures(start, end, unit, by, points, UNITS["Pa"]), local)
 
 
-def _read_atmosphere(text: str) -> Fraction | None:
-    try:
-        return parse_pressure(text.replace("\u2212", "-")) if text else None
-    except GaugePressure:
-        raise BadQuantity(text, "the local atmosphere is an absolute pressure, such as 101.325kPa.") from None
-
-
 def _find_dimension(low: str) -> str:
     """What the lower end is; a temperature where it cannot be read."""
+    return "pressure" if _is_of(low, "pressure") else "temperature"
+
+
+def _is_of(text: str, dimension: str) -> bool:
+    """True if a text can be read as a quantity of a dimension; a gauge pressure is a pressure."""
     try:
-        read_quantity(low, "pressure", _EXAMPLES["pressure"])
+        read_quantity(text, dimension, _EXAMPLES[dimension])
     except GaugePressure:
-        return "pressure"
+        return dimension == "pressure"
     except BadQuantity:
-        return "temperature"
-    return "pressure"
+        return False
+    return True
+
+
+def _check_kind(option: str, text: str, dimension: str) -> None:
+    """Say so where a pressure stands beside a temperature."""
+    other = "pressure" if dimension == "temperature" else "temperature"
+    if text and _is_of(text, other):
+        raise BadInput(f"{option} {quote(text)} is a {other}, and --from a {dimension}. Give both as one or the other.")
 
 
 def _read_end(text: str, dimension: str, local: Fraction | None) -> tuple[Fraction, Unit]:

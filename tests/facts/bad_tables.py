@@ -11,6 +11,7 @@ from facts.bad_requests import ABOVE_ZERO, BARE, DENSITIES, GAUGE, LONG, PRESSUR
 WATER = ("water", "--from", "0C", "--to", "100C")
 STEPS = (*WATER, "--step", "5K")
 ENDS = ".txt, .csv, .md, .markdown, .json, .xlsx"
+KINDS = "Give both as one or the other."
 ORDER = "Give two ends, the lower one first."
 
 # what is asked, of which shelf, exit code, message
@@ -41,9 +42,11 @@ REQUESTS = (
     ("equal ends", "published", ("water", "--from", "0C", "--to", "273.15K", "--step", "5K"), 2,
      f"The table starts at 273.15 K and ends at 273.15 K. {ORDER}"),
     ("a temperature and a pressure", "published", ("water", "--from", "0C", "--to", "1bar", "--step", "5K"), 2,
-     f"'1bar' cannot be read: a temperature unit is one of {TEMPERATURES}."),
+     f"--to '1bar' is a pressure, and --from a temperature. {KINDS}"),
+    ("a temperature and a gauge pressure", "published", ("water", "--from", "0C", "--to", "1barg", "--step", "5K"), 2,
+     f"--to '1barg' is a pressure, and --from a temperature. {KINDS}"),
     ("a pressure and a temperature", "published", ("water", "--from", "1bar", "--to", "100C", "--step", "5K"), 2,
-     f"'100C' cannot be read: a pressure unit is one of {PRESSURES}."),
+     f"--to '100C' is a temperature, and --from a pressure. {KINDS}"),
     ("neither step nor points", "published", WATER, 2,
      "A table needs a step or a number of points. Give one of them."),
     ("step and points", "published", (*STEPS, "--points", "5"), 2,
@@ -54,7 +57,9 @@ REQUESTS = (
     ("a step downwards", "published", (*WATER, "--step", "-5C"), 2,
      "'-5C' cannot be read: a step is greater than zero."),
     ("a step of pressure for temperatures", "published", (*WATER, "--step", "1bar"), 2,
-     f"'1bar' cannot be read: a temperature unit is one of {TEMPERATURES}."),
+     f"--step '1bar' is a pressure, and --from a temperature. {KINDS}"),
+    ("a step of temperature for pressures", "published", ("water", "--from", "1bar", "--to", "9bar", "--step", "5K"), 2,
+     f"--step '5K' is a temperature, and --from a pressure. {KINDS}"),
     ("a gauge step", "published", ("water", "--from", "1bar", "--to", "2bar", "--step", "1barg"), 2,
      "'1barg' cannot be read: a step is a difference, in a unit such as kPa."),
     ("too many steps", "published", (*WATER, "--step", "0.000001K"), 2,
