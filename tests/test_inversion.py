@@ -415,3 +415,40 @@ def test_batch_tells_who_answers_and_why_not(scenario):
     assert batch.refusal((1, 1)).reason == "not-accepted"
     assert [seam.temperature for seam in batch.seams] == [420.0]
     assert repr(batch) == "<Temperatures of 4 for brindovane, 3 answered>"
+
+
+def test_a_root_that_rounding_swings_stops_early_on_the_same_bits(published):
+    """ITS-90's helium equations at 2,001 temperatures: a fifteenth of the rounds, the bits of all 200 of them."""
+    from registry.forms import implicit
+
+    evaluations = []
+
+    def solve_plainly(f, slope, low, high, like):
+        a, b = np.full_like(like, low), np.full_like(like, high)
+        x = 0.5 * (a + b)
+        active = np.ones(like.shape, dtype=bool)
+        for _ in range(200):
+            value = f(x)
+            a = np.where(active & (value <= 0.0), x, a)
+            b = np.where(active & (value >= 0.0), x, b)
+            newton = x - value / slope(x)
+            target = np.where((newton >= a) & (newton <= b), newton, 0.5 * (a + b))
+            moved = np.abs(target - x)
+            x = np.where(active, target, x)
+            active = active & (moved > 2.0 * 2.0**-52 * np.abs(x)) & (value != 0.0)
+        return x
+
+    def count(f, slope, low, high, like):
+        counted = []
+        found = solve(lambda x: counted.append(x) or f(x), slope, low, high, like)
+        evaluations.append(len(counted))
+        assert found.tobytes() == solve_plainly(f, slope, low, high, like).tobytes()
+        return found
+
+    solve = implicit.solve_bracketed
+    with pytest.MonkeyPatch.context() as patch:
+        patch.setattr(implicit, "solve_bracketed", count)
+        for candidate in published.coverage("helium-4").accepted:
+            candidate.curve.values(np.linspace(*candidate.reach, 2001))
+    assert len(evaluations) == 2
+    assert max(evaluations) <= 20

@@ -16,6 +16,9 @@ __all__ = ["solve_bracketed", "solve_rising_concave"]
 
 _EPS = 2.0**-52
 
+_ROUNDS = 200
+"""Far more than halving alone needs."""
+
 
 def solve_rising_concave(f: Callable[[Array], Array], slope: Callable[[Array], Array], start: Array) -> Array:
     """The lower root of a concave function by Newton's rule from its left.
@@ -45,7 +48,7 @@ def solve_rising_concave(f: Callable[[Array], Array], slope: Callable[[Array], A
     """
     x = np.array(start, dtype=float)
     active = np.ones(x.shape, dtype=bool)
-    for _ in range(200):
+    for _ in range(_ROUNDS):
         with np.errstate(all="ignore"):
             gradient = slope(x)
             step = -f(x) / gradient
@@ -89,7 +92,8 @@ def solve_bracketed(
     bracketed = (f(a) <= 0.0) & (f(b) >= 0.0)
     x = 0.5 * (a + b)
     active = bracketed.copy()
-    for _ in range(200):
+    held = x, a, b
+    for left in reversed(range(_ROUNDS)):
         value = f(x)
         a = np.where(active & (value <= 0.0), x, a)
         b = np.where(active & (value >= 0.0), x, b)
@@ -101,6 +105,10 @@ def solve_bracketed(
         moved = np.abs(target - x)
         x = np.where(active, target, x)
         active = active & (moved > 2.0 * _EPS * np.abs(x)) & (value != 0.0)
+        if left % 2 == 0:
+            # rounding can swing for ever between two neighbours: here is where the last round would end
+            active = active & ~((x == held[0]) & (a == held[1]) & (b == held[2]))
+            held = x, a, b
         if not active.any():
             break
     return np.where(bracketed, x, np.nan)
