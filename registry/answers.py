@@ -154,7 +154,8 @@ def find_cautions(coverage: Coverage, candidate: Candidate, kelvin: float) -> li
         basis = "from memory" if record.window_basis == "memory" else "assumed, not printed"
         cautions.append(f"The window is {basis}.")
     if PROPERTIES[record.property].lower and kelvin < limits.lower - rules.BOUND_TOLERANCE:
-        if kelvin >= limits.lower - rules.TRIPLE_MARGIN and not coverage.metastable:
+        # the margin has the tolerance of a window's bound
+        if kelvin >= limits.lower - rules.TRIPLE_MARGIN - rules.BOUND_TOLERANCE and not coverage.metastable:
             cautions.append(
                 f"It lies {limits.lower - kelvin:.3g} K below the triple temperature, {limits.lower:.9g} K."
             )

@@ -81,7 +81,7 @@ class Marker:
         return notes
 
     def _note(self, place: int, owner: int, metastable: bool) -> Note:
-        seams, gaps = self._cross(place) if 0 <= self._place < place else ((), ())
+        seams, gaps = self._cross(place) if self._place not in (-1, place) else ((), ())
         marks = (
             self._standing[owner],
             "metastable" if metastable else "",
@@ -91,9 +91,11 @@ class Marker:
         return Note(tuple(mark for mark in marks if mark), "", seams, gaps)
 
     def _cross(self, place: int) -> tuple[tuple[Seam, ...], tuple[Stretch, ...]]:
-        """The seams up to a stretch, and the gaps that no row stands in."""
-        seams = tuple(self._seams[i] for i in range(self._place, place) if i in self._seams)
-        between = () if self._refused else self._stretches[self._place + 1 : place]
+        """The seams on the way to a stretch, and the gaps that no row stands in, in the order of temperature."""
+        # at rising pressures temperatures may fall
+        low, high = sorted((self._place, place))
+        seams = tuple(self._seams[i] for i in range(low, high) if i in self._seams)
+        between = () if self._refused else self._stretches[low + 1 : high]
         return seams, tuple(s for s in between if s.candidate is None and s.high - s.low > _THIN)
 
 

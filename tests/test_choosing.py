@@ -45,6 +45,13 @@ def test_the_liquid_answers_no_further_than_its_margin(kelvin, answers, publishe
     assert "sublimation-pressure" in caught.value.refusal.explanation
 
 
+def test_the_end_of_the_margin_is_no_metastable_liquid(published):
+    """Nitrogen at 63.151 K less 0.05 K, which as doubles lies beyond it: it still answers, and says how far below."""
+    cautions = published.lookup("nitrogen", 63.101).cautions
+    assert "It lies 0.05 K below the triple temperature, 63.151 K." in cautions
+    assert not any("metastable" in caution for caution in cautions)
+
+
 def test_only_a_stated_metastable_range_answers_below(published):
     """With metastable=True the records that state a range answer, marked; the others still do not."""
     answer = published.lookup("water", 250.0, metastable=True)

@@ -7,6 +7,7 @@ import math
 import tracemalloc
 from fractions import Fraction
 
+import numpy as np
 import pytest
 from inventane import COMPOUND, invent_correlation
 
@@ -313,6 +314,20 @@ def test_cautions_are_those_of_the_first_and_the_last_row_of_a_correlation(publi
         pass
     (used,) = tally.used
     assert "It lies 0.01 K below the triple temperature, 273.16 K." in used.cautions
+
+
+@pytest.mark.parametrize("compound", ["ethanol", "oxygen", "nitrogen"])
+def test_seams_are_marked_the_other_way_too(compound, published):
+    """Temperatures that fall, as those of a melting line may at rising pressures, cross the same seams."""
+    from registry.notes import Marker
+
+    coverage = published.coverage(compound)
+    (low, high) = coverage.seams[0].temperature - 0.02, coverage.seams[-1].temperature + 0.02
+    for kelvin in (np.array([low, high]), np.array([high, low])):
+        places = coverage.evaluate(kelvin)[1]
+        notes = Marker(coverage).mark(kelvin, places.tolist(), coverage.owners[places].tolist())
+        assert {number: note.seams for number, note in notes.items()} == {1: coverage.seams}
+        assert notes[1].marks == ("seam",)
 
 
 # one correlation

@@ -42,9 +42,15 @@ def table(
     low: Annotated[
         str, typer.Option("--from", metavar="T|P", help="Lower end: 0C, 273.15K; a pressure tabulates temperatures.")
     ],
-    high: Annotated[str, typer.Option("--to", metavar="T|P", help="Upper end.")],
+    high: Annotated[str, typer.Option("--to", metavar="T|P", help="Upper end; the last row if the steps meet it.")],
     step: Annotated[
-        str, typer.Option("--step", metavar="dT|dP", help="A difference: 5K, 5C, 9F, 10kPa.", show_default=False)
+        str,
+        typer.Option(
+            "--step",
+            metavar="dT|dP",
+            help="A difference: 5K, 9F, 10kPa. Pressures without it are round.",
+            show_default=False,
+        ),
     ] = "",
     points: Annotated[
         int | None,
