@@ -82,7 +82,7 @@ def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, val
     """
     at = np.array([reading.kelvin])
     rounding = Rounding.of(candidate.record, molar_mass)
-    spread = reading.uncertainty * COVERAGE_FACTOR / (reading.factor or COVERAGE_FACTOR)
+    spread = reading.expanded_uncertainty
     return Budget(
         piece.percent_of(value) if piece else None,
         piece.factor if piece else None,

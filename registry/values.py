@@ -93,6 +93,15 @@ class Value:
         return 100.0 * self.log_rate
 
     @property
+    def temperature_percent(self) -> float:
+        """What the uncertainty of the temperature asked does to the value, by the slope.
+
+        Percent at coverage factor 2; 0 if the temperature is exact.
+        """
+        spread = self.reading.expanded_uncertainty
+        return 100.0 * abs(self.log_rate) * spread if spread else 0.0
+
+    @property
     def factor_per_10_kelvin(self) -> float:
         """exp(10 K times d ln value / dT): the local factor for 10 K more."""
         exponent = 10.0 * self.log_rate

@@ -256,6 +256,11 @@ REQUESTS = (
      "There is no estimation method 'riedel'; the methods are lee-kesler and ambrose-walton."),
     ("a tolerance without %", "published", ("lookup", "water", "25C", "--within", "2"), 2,
      "'2' cannot be read: --within takes a percentage above zero, such as 2%."),
+    ("a tolerance below zero", "published", ("lookup", "water", "25C", "--within", "-1%"), 2,
+     "'-1%' cannot be read: --within takes a percentage above zero, such as 2%."),
+    ("a distance below zero", "published", ("lookup", "water", "25C", "--beyond", "-5K"), 2,
+     "'-5K' cannot be read: --beyond takes a difference of temperature above zero, such as 5K; its units are "
+     f"{TEMPERATURES}."),
     ("a tolerance of nothing", "published", ("lookup", "water", "25C", "--within", "0%"), 2,
      "'0%' cannot be read: --within takes a percentage above zero, such as 2%."),
     ("an empty tolerance", "published", ("lookup", "water", "25C", "--within", ""), 2,
@@ -267,7 +272,9 @@ REQUESTS = (
      f"'-5K' cannot be read: --beyond takes a difference of temperature above zero, such as 5K; its units are "
      f"{TEMPERATURES}."),
     ("an uncertainty without unit", "published", ("lookup", "water", "25+/-0.1"), 2,
-     f"'25+/-0.1' cannot be read: a temperature unit is one of {TEMPERATURES}."),
+     "'25+/-0.1' cannot be read: the unit stands behind the uncertainty, such as 298.15+/-0.05K."),
+    ("two scales", "published", ("lookup", "water", "25C (IPTS-68) (IPTS-48)"), 2,
+     "'25C (IPTS-68) (IPTS-48)' cannot be read: a temperature is read on one scale, such as 100 degC (IPTS-68)."),
     ("an unknown scale", "published", ("lookup", "water", "25C (ITS-27)"), 2,
      "'25C (ITS-27)' cannot be read: what stands in brackets is a temperature scale (ITS-90, IPTS-68, IPTS-48 or "
      "ice-point-273.16) or a coverage factor (k=2)."),
