@@ -132,3 +132,12 @@ def test_missing_constants_are_named(published):
         published.lookup("neon", 30.0, estimate="lee-kesler")
     with pytest.raises(BadInput, match="There is no estimation method 'riedel'"):
         published.lookup("water", 300.0, estimate="riedel")
+
+
+def test_far_below_the_critical_temperature_the_typical_error_says_nothing(published):
+    """Helium-4 has no triple point to stop at; below half the critical temperature (5.1953 K) the estimate says so."""
+    far = published.lookup("helium-4", 0.5, estimate="lee-kesler")
+    assert far.mark == "estimate"
+    assert "It lies at 0.0962 of the critical temperature: below 0.5 the typical error says nothing." in far.cautions
+    near = published.lookup("acetylene", 250.0, estimate="lee-kesler")
+    assert not any("says nothing" in caution for caution in near.cautions)

@@ -15,7 +15,7 @@ KEYS = {
     "temperature_K", "pressure", "slope_per_K", "unit", "pressure_Pa", "slope_Pa_per_K", "percent_per_kelvin",
     "enthalpy", "ideal_enthalpy", "energy_unit", "enthalpy_J_per_mol", "ideal_enthalpy_J_per_mol",
     "enthalpy_per_volume_J_per_m3", "method", "carried_from_K", "vapour", "condensed", "compressibility_change",
-    "fixed_points", "correlated", "correlation", "revision", "standing", "cautions",
+    "fixed_points", "correlated", "correlation", "revision", "standing", "mark", "cautions",
 }  # fmt: skip
 
 WATER = """\

@@ -63,7 +63,7 @@ def _describe_head(found: Value, to: Unit | None) -> dict[str, Any]:
     """What every value has, and how its temperature was read."""
     value, unit = value_in(found, to)
     reading = found.reading
-    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if reading.shift else {}
+    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if reading.scale != "ITS-90" else {}
     if reading.uncertainty:
         asked |= {"temperature_uncertainty_K": reading.uncertainty, "temperature_coverage_factor": reading.factor}
     return {
@@ -146,6 +146,7 @@ def _describe_estimate(estimate: Estimate) -> dict[str, Any]:
         ],
         "reduced_temperature": estimate.reduced_temperature,
         "uncertainty_percent": None,
+        "uncertainty": {"temperature_percent": estimate.temperature_percent, "coverage_factor": COVERAGE_FACTOR},
         "percent_per_kelvin": estimate.percent_per_kelvin,
         "factor_per_10_K": estimate.factor_per_10_kelvin,
         "cautions": list(estimate.cautions),
