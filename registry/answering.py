@@ -140,6 +140,8 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
             answer_one(coverage, one, None, conditions)
         except Refused as error:
             return error.refusal
+        except BadInput:
+            pass  # what is no temperature is a refusal among many
         return refuse(coverage, one)
 
     shape = values.shape

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
 
@@ -61,6 +62,8 @@ class Extrapolator:
     def __init__(self, coverage: Coverage, beyond: float) -> None:
         self.coverage = coverage
         self.beyond = beyond
+        # a distance is a difference of doubles: 216.15 less 210 is a little more than 6.15
+        self._most = beyond + rules.BOUND_TOLERANCE
         self._places = {candidate.key: i for i, candidate in enumerate(coverage.answering)}
 
     @property
@@ -117,7 +120,7 @@ class Extrapolator:
     ) -> None:
         at = kelvin[here]
         low, high = candidate.reach
-        near = np.maximum(low - at, at - high) <= self.beyond
+        near = np.maximum(low - at, at - high) <= self._most
         here, at = here[near], at[near]
         found = self._evaluate(candidate, at)
         usable = np.isfinite(found)
@@ -145,8 +148,9 @@ class Extrapolator:
         others = [c for c in self.coverage.accepted if c is not candidate and not c.empty]
         for other in sorted(others, key=lambda c: (c.distance(kelvin), c.key)):
             found = float(self._evaluate(other, np.array([kelvin]))[0])
-            if other.distance(kelvin) <= self.beyond and np.isfinite(found):
-                yield Neighbour(other.key, other.distance(kelvin), found, 100.0 * (found / value - 1.0))
+            if other.distance(kelvin) <= self._most and np.isfinite(found):
+                percent = 100.0 * (found / value - 1.0) if value else math.inf
+                yield Neighbour(other.key, other.distance(kelvin), found, percent)
 
 
 class Extrapolation(Answer):
@@ -240,8 +244,8 @@ def explain_stop(refusal: Refusal, coverage: Coverage, beyond: float) -> Refusal
         return refusal
     elif not Extrapolator(coverage, beyond).single_phase:
         why = "--beyond needs the phase: name it with --phase."
-    elif refusal.nearest and refusal.nearest[0].distance <= beyond:
+    elif refusal.nearest and refusal.nearest[0].distance <= beyond + rules.BOUND_TOLERANCE:
         why = "Extrapolated there, its form gives no usable value."
     else:
-        why = f"--beyond {beyond:g}K does not reach it."
+        why = f"--beyond {beyond:.12g}K does not reach it."
     return replace(refusal, explanation=f"{refusal.explanation} {why}")
