@@ -101,7 +101,7 @@ class Answer(Value):
         """
         from registry.budget import make_budget
 
-        return make_budget(self._candidate, self.piece, self.reading, self.value, self.grams_per_mole)
+        return make_budget(self._candidate, self.piece, self.reading, self.value)
 
     @property
     def scale_effects(self) -> tuple[ScaleEffect, ...]:

@@ -16,7 +16,6 @@ import numpy as np
 
 from registry.candidate import Candidate
 from registry.readings import Reading
-from registry.rounding import Rounding
 from registry.uncertainty import COVERAGE_FACTOR, Piece
 
 __all__ = ["Budget", "make_budget"]
@@ -39,7 +38,9 @@ class Budget:
         the temperature is exact.
     rounding_percent : float
         What the rounding of the printed coefficients leaves open: a part of
-        its own, in no sum.
+        its own, in no sum. Where one coefficient makes nearly all of it,
+        twice its standard uncertainty lies beyond the most it can be: then
+        that.
     rounding_bound_percent : float
         The most that rounding can make: every coefficient at its worst.
     """
@@ -59,7 +60,7 @@ class Budget:
         return math.hypot(expansion * self.stated_percent, self.temperature_percent)
 
 
-def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float, molar_mass: float) -> Budget:
+def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float) -> Budget:
     """The uncertainty budget of a value.
 
     Parameters
@@ -72,8 +73,6 @@ def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, val
         The temperature asked.
     value : float
         The value there, SI.
-    molar_mass : float
-        Molar mass of the compound, g/mol.
 
     Returns
     -------
@@ -81,12 +80,13 @@ def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, val
         Its parts.
     """
     at = np.array([reading.kelvin])
-    rounding = Rounding.of(candidate.record, molar_mass)
+    rounding = candidate.rounding
+    bound = float(rounding.bounds(at)[0])
     spread = reading.expanded_uncertainty
     return Budget(
         piece.percent_of(value) if piece else None,
         piece.factor if piece else None,
         100.0 * abs(candidate.curve.log_rate(reading.kelvin)) * spread if spread else 0.0,
-        COVERAGE_FACTOR * float(rounding.standards(at)[0]),
-        float(rounding.bounds(at)[0]),
+        min(COVERAGE_FACTOR * float(rounding.standards(at)[0]), bound),
+        bound,
     )

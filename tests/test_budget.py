@@ -150,3 +150,18 @@ def test_nothing_stated_gives_no_sum(published):
     # 5.71 % a kelvin: test_readme's tour shows the same slope
     assert budget.temperature_percent == pytest.approx(0.571, abs=5e-4)
     assert budget.stated_percent is budget.expanded_percent is None
+
+
+def test_rounding_makes_no_more_than_it_can(published):
+    """Twice the standard uncertainty of one evenly spread digit is 1.15 of the most it can be: told is the most."""
+    for compound, prop, kelvin in (("water", "melting-pressure", 270.0), ("benzene", "vapor-pressure", 300.0)):
+        budget = published.lookup(
+            compound, kelvin, property=prop, phase="ice Ih" if compound == "water" else None
+        ).budget
+        assert 0.0 < budget.rounding_percent <= budget.rounding_bound_percent
+    ice = next(
+        c for c in published.coverage("water", property="melting-pressure").accepted if c.record.phase == "ice Ih"
+    )
+    # here one coefficient makes nearly all of it
+    assert 2.0 * ice.rounding.standards(AT([270.0]))[0] > ice.rounding.bounds(AT([270.0]))[0]
+    assert ice.rounding is ice.rounding

@@ -158,6 +158,17 @@ def test_json_has_the_promised_shape(ask):
     assert [refusal["reason"] for refusal in document["refusals"]] == ["above-critical"]
 
 
+def test_json_says_how_a_temperature_was_read(ask):
+    """Scale, shift and uncertainty stand beside a slope as beside a value."""
+    _, out, _ = ask("water", "100+/-0.1C (k=2) (IPTS-68)", "--json")
+    found = json.loads(out)["slopes"][0]
+    assert set(found) - KEYS == {
+        "temperature_scale", "scale_shift_K", "temperature_uncertainty_K", "temperature_coverage_factor",
+    }  # fmt: skip
+    assert found["temperature_scale"] == "IPTS-68"
+    assert found["scale_shift_K"] == pytest.approx(-0.0256, abs=1e-4)
+
+
 def test_json_of_a_melting_line_has_nulls(ask):
     """What a melting line has not is null, not zero."""
     _, out, _ = ask("water", "260K", "-p", "melting-pressure", "--phase", "ice Ih", "--json")

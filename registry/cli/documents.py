@@ -13,6 +13,7 @@ from registry.display import suit_unit
 from registry.dossier import Entry
 from registry.limits import Limits
 from registry.quantities import UNITS, Unit, convert
+from registry.readings import Reading
 from registry.records import Record
 from registry.refusals import Refusal
 from registry.store.history import Change
@@ -36,6 +37,7 @@ __all__ = [
     "describe_fields",
     "describe_number",
     "describe_preview",
+    "describe_reading",
     "describe_refusal",
     "describe_value",
     "value_in",
@@ -62,14 +64,23 @@ def describe_value(found: Value, to: Unit | None) -> dict[str, Any]:
 def _describe_head(found: Value, to: Unit | None) -> dict[str, Any]:
     """What every value has, and how its temperature was read."""
     value, unit = value_in(found, to)
-    reading = found.reading
-    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if reading.scale != "ITS-90" else {}
+    return {
+        "temperature_K": found.temperature,
+        **describe_reading(found.reading),
+        "value": value,
+        "unit": unit.name,
+        "value_SI": found.value,
+        "mark": found.mark or None,
+    }
+
+
+def describe_reading(reading: Reading) -> dict[str, Any]:
+    """How a temperature was read, where there is more to it than its number."""
+    scaled = reading.scale != "ITS-90"
+    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if scaled else {}
     if reading.uncertainty:
         asked |= {"temperature_uncertainty_K": reading.uncertainty, "temperature_coverage_factor": reading.factor}
-    return {
-        "temperature_K": found.temperature, **asked, "value": value, "unit": unit.name, "value_SI": found.value,
-        "mark": found.mark or None,
-    }  # fmt: skip
+    return asked
 
 
 def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:

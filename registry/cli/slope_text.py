@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from typing import Any
 
 from registry.boundary import PhaseBoundary
+from registry.cli.documents import describe_reading
 from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.display import format_number, format_percent, format_plain, suit_unit
@@ -177,6 +178,7 @@ def describe_saturation(one: Saturation, to: Unit | None, energy: Unit) -> dict[
 
     return {
         "temperature_K": one.temperature,
+        **describe_reading(one.answer.reading),
         "pressure": convert(one.pressure, _SI_PRESSURE, unit),
         "slope_per_K": convert(one.slope, _SI_PRESSURE, unit),
         "unit": unit.name,

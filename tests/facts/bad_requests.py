@@ -256,9 +256,9 @@ REQUESTS = (
      "There is no estimation method 'riedel'; the methods are lee-kesler and ambrose-walton."),
     ("a tolerance without %", "published", ("lookup", "water", "25C", "--within", "2"), 2,
      "'2' cannot be read: --within takes a percentage above zero, such as 2%."),
-    ("a tolerance below zero", "published", ("lookup", "water", "25C", "--within", "-1%"), 2,
+    ("a tolerance below zero, in two words", "published", ("lookup", "water", "25C", "--within", "-1%"), 2,
      "'-1%' cannot be read: --within takes a percentage above zero, such as 2%."),
-    ("a distance below zero", "published", ("lookup", "water", "25C", "--beyond", "-5K"), 2,
+    ("a distance below zero, in two words", "published", ("lookup", "water", "25C", "--beyond", "-5K"), 2,
      "'-5K' cannot be read: --beyond takes a difference of temperature above zero, such as 5K; its units are "
      f"{TEMPERATURES}."),
     ("a tolerance of nothing", "published", ("lookup", "water", "25C", "--within", "0%"), 2,
