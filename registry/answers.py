@@ -139,7 +139,7 @@ class Answer(Value):
     @property
     def cautions(self) -> tuple[str, ...]:
         """What to know before relying on the value."""
-        return tuple(find_cautions(self._coverage, self._candidate, self.temperature))
+        return (*find_cautions(self._coverage, self._candidate, self.temperature), *self.caution_spread())
 
 
 def find_cautions(coverage: Coverage, candidate: Candidate, kelvin: float) -> list[str]:

@@ -122,7 +122,7 @@ class Candidate:
             here = (kelvin > low) & (kelvin <= piece.upper)
             if piece.absolute is not None:
                 with np.errstate(divide="ignore"):
-                    percents[here] = 100.0 * piece.expansion * piece.absolute / np.abs(values[here])
+                    percents[here] = piece.expansion * (100.0 * piece.absolute / np.abs(values[here]))
             elif piece.percent is not None:
                 percents[here] = piece.expansion * piece.percent
             low = piece.upper

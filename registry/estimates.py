@@ -261,6 +261,7 @@ class Estimate(Value):
         return (
             f"It is an estimate, not a measured or evaluated value. Typical error: {self.method.typical_error}.",
             *self._caution_range(),
+            *self.caution_spread(),
             *((f"From memory: {join_names(memory, 'and')}.",) if memory else ()),
             *(() if self._coverage.limits.lower else ("No triple point is recorded, so the phase was not checked.",)),
         )

@@ -10,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry import rules
-from registry.answers import Answer, find_cautions
+from registry.answers import Answer
 from registry.candidate import Candidate
 from registry.coverage import Coverage, Stretch
 from registry.properties import PROPERTIES
@@ -206,7 +206,7 @@ class Extrapolation(Answer):
     def cautions(self) -> tuple[str, ...]:
         """What to know before relying on the value."""
         first = f"It is extrapolated {self.distance:.6g} K beyond the window."
-        return (first, self._word_neighbours(), *find_cautions(self._coverage, self._candidate, self.temperature))
+        return (first, self._word_neighbours(), *super().cautions)
 
     def _word_neighbours(self) -> str:
         neighbours = self.neighbours

@@ -14,6 +14,10 @@ from registry.readings import Reading
 __all__ = ["Value", "find_target_unit"]
 
 
+COARSE_PERCENT = 20.0
+"""Percent from which a line and an exponential part by a tenth of it."""
+
+
 class Value:
     """A value at a temperature: an answer of a correlation, or an estimate.
 
@@ -100,6 +104,15 @@ class Value:
         """
         spread = self.reading.expanded_uncertainty
         return 100.0 * abs(self.log_rate) * spread if spread else 0.0
+
+    def caution_spread(self) -> tuple[str, ...]:
+        """A sentence where the slope alone is too coarse to carry the uncertainty of the temperature."""
+        if not COARSE_PERCENT < self.temperature_percent < math.inf:
+            return ()
+        return (
+            f"The uncertainty of the temperature makes {self.temperature_percent:.3g} % by the slope alone; "
+            "over so wide a range the curve bends, and up and down are not alike.",
+        )
 
     @property
     def factor_per_10_kelvin(self) -> float:

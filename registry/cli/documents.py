@@ -157,7 +157,11 @@ def _describe_estimate(estimate: Estimate) -> dict[str, Any]:
         ],
         "reduced_temperature": estimate.reduced_temperature,
         "uncertainty_percent": None,
-        "uncertainty": {"temperature_percent": estimate.temperature_percent, "coverage_factor": COVERAGE_FACTOR},
+        "uncertainty": {
+            "stated_percent": None, "stated_coverage_factor": None,
+            "temperature_percent": estimate.temperature_percent, "expanded_percent": None, "rounding_percent": None,
+            "rounding_bound_percent": None, "coverage_factor": COVERAGE_FACTOR,
+        },
         "percent_per_kelvin": estimate.percent_per_kelvin,
         "factor_per_10_K": estimate.factor_per_10_kelvin,
         "cautions": list(estimate.cautions),
