@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -77,7 +78,10 @@ def _answer_otherwise(
     found: Value | None = None
     if conditions.beyond:
         found = Extrapolator(coverage, conditions.beyond).answer(kelvin, reading)
-    if found is None and conditions.estimate and coverage.stretch_at(kelvin).candidate is None:
+    limits = coverage.limits
+    # across a phase limit no constant is missed: there is nothing to estimate
+    inside = limits.lower <= kelvin <= limits.upper and 0.0 < kelvin < math.inf
+    if found is None and conditions.estimate and inside and coverage.stretch_at(kelvin).candidate is None:
         found = Estimator.of(conditions.estimate, coverage).answer(kelvin, reading)
     return found
 
@@ -165,7 +169,8 @@ def _fill_estimates(
     from registry.batches import ESTIMATE
     from registry.estimates import Estimator
 
-    here = np.flatnonzero(uncovered & np.isnan(found))
+    inside = (flat >= coverage.limits.lower) & (flat <= coverage.limits.upper) & (flat > 0.0) & np.isfinite(flat)
+    here = np.flatnonzero(uncovered & np.isnan(found) & inside)
     if here.size:
         values = Estimator.of(method, coverage).values(flat[here])
         usable = here[np.isfinite(values)]

@@ -141,3 +141,17 @@ def test_far_below_the_critical_temperature_the_typical_error_says_nothing(publi
     assert "It lies at 0.0962 of the critical temperature: below 0.5 the typical error says nothing." in far.cautions
     near = published.lookup("acetylene", 250.0, estimate="lee-kesler")
     assert not any("says nothing" in caution for caution in near.cautions)
+
+
+def test_across_a_phase_limit_no_constant_is_missed(scenario):
+    """Corvexane (invented) has no acentric factor: where there is no liquid the refusal says that, and only that."""
+    for kelvin, reason in ((100.0, "below-triple"), (400.0, "above-critical")):
+        with pytest.raises(Refused) as caught:
+            scenario.lookup("corvexane", kelvin, estimate="lee-kesler")
+        assert caught.value.refusal.reason == reason
+        batch = scenario.lookup("corvexane", [kelvin, 300.0], estimate="lee-kesler")
+        assert batch.refused.tolist() == [True, False]
+        assert batch.refusal(0) == caught.value.refusal
+    # not a number of kelvin: told as such
+    with pytest.raises(BadInput, match="is no temperature"):
+        scenario.lookup("corvexane", float("inf"), estimate="lee-kesler")
