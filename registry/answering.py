@@ -56,6 +56,7 @@ def answer_one(
     BadInput
         If it is no temperature, or a constant for an estimate is missing.
     """
+    _require_sense(coverage, conditions)
     value, candidate = coverage.value_at(kelvin)
     if candidate is None:
         found = None if conditions is PLAIN else _answer_otherwise(coverage, kelvin, reading, conditions)
@@ -66,6 +67,14 @@ def answer_one(
     if conditions.within is not None:
         _demand_within(coverage, found, conditions.within)
     return found
+
+
+def _require_sense(coverage: Coverage, conditions: Conditions) -> None:
+    """An estimate of another property is refused also where a window covers: the same words mean the same everywhere."""
+    if conditions.estimate:
+        from registry.estimates import require_vapour_pressure
+
+        require_vapour_pressure(conditions.estimate, coverage.property)
 
 
 def _answer_otherwise(
@@ -128,6 +137,7 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
     values, places = coverage.evaluate(kelvin)
     if conditions is PLAIN:
         return Batch(kelvin, values, places, coverage)
+    _require_sense(coverage, conditions)
     flat, found = np.ascontiguousarray(kelvin).reshape(-1), values.reshape(-1)
     owners = coverage.owners[places.reshape(-1)]
     uncovered = owners < 0

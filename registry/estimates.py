@@ -26,7 +26,7 @@ from registry.readings import Reading
 from registry.records import FixedPoint
 from registry.values import Value
 
-__all__ = ["METHODS", "Estimate", "Estimator", "Method", "acentric_factor", "find_method"]
+__all__ = ["METHODS", "Estimate", "Estimator", "Method", "acentric_factor", "find_method", "require_vapour_pressure"]
 
 Array = NDArray[np.float64]
 
@@ -111,6 +111,12 @@ def find_method(name: str) -> Method:
     return method
 
 
+def require_vapour_pressure(method: Method, prop: str) -> None:
+    """Raise `BadInput` unless a property is the one that a method estimates."""
+    if prop != "vapor-pressure":
+        raise BadInput(f"{method.title} estimates vapour pressures, not {prop}. Leave --estimate out.")
+
+
 def acentric_factor(reduced_pressure: float) -> float:
     """The acentric factor from p/pc on the vapour-pressure curve at Tr = 0.7 [3]_.
 
@@ -174,8 +180,7 @@ class Estimator:
         BadInput
             If it is about another property, or a constant is not recorded.
         """
-        if coverage.property != "vapor-pressure":
-            raise BadInput(f"{method.title} estimates vapour pressures, not {coverage.property}. Leave --estimate out.")
+        require_vapour_pressure(method, coverage.property)
         return cls(method, _find_points(method, coverage.dossier), coverage)
 
     def values(self, kelvin: Array) -> Array:
