@@ -70,7 +70,7 @@ def answer_one(
 
 
 def _require_sense(coverage: Coverage, conditions: Conditions) -> None:
-    """An estimate of another property is refused also where a window covers: the same words mean the same everywhere."""
+    """An estimate of another property is refused also where a window covers: the same words mean the same."""
     if conditions.estimate:
         from registry.estimates import require_vapour_pressure
 
