@@ -469,3 +469,13 @@ def test_a_draft_behind_a_slope_is_told(made):
         assert drafts.answer.mark == ""
         assert drafts.condensed.method == "recorded: tin-density (draft)"
         assert drafts.correlated.standing == "draft"
+
+
+def test_slopes_of_drafts_are_marked(scenario):
+    """A batch marks what a scalar marks, and nothing else."""
+    kelvin = np.array([[280.0, 330.0], [415.0, 2000.0]])
+    batch = scenario.slope("brindovane", kelvin, drafts=True)
+    assert batch.marks.tolist() == [["", "draft"], ["", ""]]
+    assert batch.refused.tolist() == [[False, False], [False, True]]
+    assert scenario.slope("brindovane", 330.0, drafts=True).answer.mark == "draft"
+    assert set(scenario.slope("brindovane", kelvin).marks.ravel().tolist()) == {""}
