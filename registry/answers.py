@@ -88,6 +88,15 @@ class Answer(Value):
         return piece.percent_of(self.value) if piece else None
 
     @property
+    def expanded_percent(self) -> float | None:
+        """The stated uncertainty and that of the temperature together, percent at coverage factor 2; None if none."""
+        from registry.budget import combine_percents
+
+        piece = self.piece
+        stated, factor = (piece.percent_of(self.value), piece.factor) if piece else (None, None)
+        return combine_percents(stated, factor, self.temperature_percent)
+
+    @property
     def budget(self) -> Budget:
         """The parts of its uncertainty: what is stated, what the temperature adds, what the digits leave open.
 

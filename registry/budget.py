@@ -18,7 +18,7 @@ from registry.candidate import Candidate
 from registry.readings import Reading
 from registry.uncertainty import COVERAGE_FACTOR, Piece
 
-__all__ = ["Budget", "make_budget"]
+__all__ = ["Budget", "combine_percents", "make_budget"]
 
 
 @dataclass(frozen=True)
@@ -54,10 +54,34 @@ class Budget:
     @property
     def expanded_percent(self) -> float | None:
         """The stated uncertainty and that of the temperature together [1]_; None if none is stated."""
-        if self.stated_percent is None:
-            return None
-        expansion = COVERAGE_FACTOR / (self.stated_factor or COVERAGE_FACTOR)
-        return math.hypot(expansion * self.stated_percent, self.temperature_percent)
+        return combine_percents(self.stated_percent, self.stated_factor, self.temperature_percent)
+
+
+def combine_percents(stated: float | None, factor: float | None, temperature: float) -> float | None:
+    """A stated uncertainty and that of the temperature together, percent at coverage factor 2 [1]_.
+
+    Parameters
+    ----------
+    stated : float or None
+        Percent, as stated; None if it is not.
+    factor : float or None
+        The coverage factor stated; None counts as 2.
+    temperature : float
+        What the temperature adds, percent at coverage factor 2.
+
+    Returns
+    -------
+    float or None
+        None if none is stated.
+
+    Examples
+    --------
+    >>> combine_percents(1.5, 1.0, 4.0)
+    5.0
+    """
+    if stated is None:
+        return None
+    return math.hypot(COVERAGE_FACTOR / (factor or COVERAGE_FACTOR) * stated, temperature)
 
 
 def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float) -> Budget:

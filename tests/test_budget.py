@@ -15,6 +15,7 @@ from registry.conditions import Conditions
 from registry.coverage import build_coverage
 from registry.curve import Curve
 from registry.dossier import Dossier
+from registry.errors import Refused
 from registry.forms.catalogue import FORMS
 from registry.numerals import last_digit_unit, to_float
 from registry.readings import Reading, parse_reading
@@ -189,3 +190,13 @@ def test_the_very_uncertainty_that_is_stated_is_within():
         assert answer_one(coverage, t, None, Conditions(stated)).value > 0.0
         assert not answer_many(coverage, AT([t]), Conditions(stated)).refused[0]
         assert answer_many(coverage, AT([t]), Conditions(np.nextafter(stated, 0.0))).refused[0]
+
+
+def test_a_tolerance_looks_at_no_digits(scenario, monkeypatch):
+    """What --within compares is the budget's sum, found without the curves of every digit, which cost a hundredfold."""
+    answer = scenario.lookup("brindovane", parse_reading("300+/-0.1K (k=1)"))
+    assert answer.expanded_percent == answer.budget.expanded_percent
+    monkeypatch.setattr("registry.budget.make_budget", None)
+    with pytest.raises(Refused):
+        scenario.lookup("brindovane", parse_reading("301+/-0.1K (k=1)"), within=0.1)
+    assert scenario.lookup("brindovane", 301.0, within=5.0).value > 0.0

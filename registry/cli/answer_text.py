@@ -82,9 +82,8 @@ def _word_uncertainty(found: Value, spread: bool) -> list[str]:
     factor = f" (k={piece.factor:g})" if piece and piece.factor else ""
     words = [f"{stated:.3g} %{factor}" if stated is not None else "none"]
     if spread:
-        budget = found.budget
-        total = budget.expanded_percent
-        words += [format_percent(budget.temperature_percent), "none" if total is None else format_percent(total)]
+        total = found.expanded_percent
+        words += [format_percent(found.temperature_percent), "none" if total is None else format_percent(total)]
     return words
 
 
