@@ -16,18 +16,22 @@ if TYPE_CHECKING:
     from registry.library import Library
     from registry.opening import open_library, start_library
     from registry.readings import Reading, parse_reading
-    from registry.refusals import Refusal
+    from registry.refusals import InverseRefusal, Refusal
     from registry.saturation import Saturation
+    from registry.tabulation import Table
+    from registry.temperatures import Temperatures
 
 __version__ = "0.1.0"
 
 __all__ = [
-    "Answer", "Batch", "Library", "RangebookError", "Reading", "Refusal", "Refused", "Saturation", "SaturationBatch",
+    "Answer", "Batch", "InverseRefusal", "Library", "RangebookError", "Reading", "Refusal", "Refused", "Saturation",
+    "SaturationBatch", "Table", "Temperatures",
     "open_library", "parse_reading", "start_library",
 ]  # fmt: skip
 
 _HOMES = {
-    "Answer": "answers", "Batch": "batches", "Refusal": "refusals",
+    "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "InverseRefusal": "refusals",
+    "Table": "tabulation", "Temperatures": "temperatures",
     "Reading": "readings", "parse_reading": "readings",
     "Saturation": "saturation", "SaturationBatch": "boundary",
     "RangebookError": "errors", "Refused": "errors",

@@ -9,9 +9,9 @@ from typing import TYPE_CHECKING, Any
 
 from registry.dossier import Entry
 from registry.entries import rest_on, restore
-from registry.reader import Reader
 from registry.records import Edition, Record, Source, Withdrawal
 from registry.store.history import Change
+from registry.tabulator import Tabulator
 
 # a lookup needs none of these: they are imported where they are used
 if TYPE_CHECKING:
@@ -24,8 +24,8 @@ if TYPE_CHECKING:
 __all__ = ["Archive"]
 
 
-class Archive(Reader):
-    """Reading a library as `Reader` does, and its past.
+class Archive(Tabulator):
+    """Reading a library as `Tabulator` does, and its past.
 
     Parameters
     ----------

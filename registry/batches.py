@@ -9,10 +9,10 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from registry.coverage import Coverage, Seam
+from registry.choices import Choices
+from registry.coverage import Coverage
 from registry.errors import BadInput
 from registry.properties import PROPERTIES
-from registry.records import Correlation
 from registry.refusals import Refusal
 from registry.verdicts import refuse
 
@@ -22,7 +22,7 @@ ACCEPTED, BEYOND, ESTIMATE = 0, 1, 2
 """Where a value comes from: a window, beyond one, a corresponding-states method."""
 
 
-class Batch:
+class Batch(Choices):
     """Values for an array of temperatures, with the choice behind each.
 
     Attributes
@@ -41,41 +41,21 @@ class Batch:
         owners: NDArray[np.signedinteger[Any]] | None = None, origins: NDArray[np.int8] | None = None,
         explain: Callable[[float], Refusal] | None = None,
     ) -> None:  # fmt: skip
-        values.flags.writeable = False
+        super().__init__(coverage, values, places)
         self.temperatures = temperatures
         self.values = values
-        self.coverage = coverage
-        self._places = places
         self._owners = owners
         self._origins = origins
         self._explain = explain
 
-    def __repr__(self) -> str:
-        answered = self.values.size - int(self.refused.sum())
-        return f"<Batch of {self.values.size} for {self.coverage.dossier.compound.key}, {answered} answered>"
-
     @cached_property
     def chosen(self) -> NDArray[np.int16]:
         """Index into `correlations` for each temperature, -1 where refused or estimated."""
-        chosen = np.empty(self.values.shape, dtype=np.int16)
-        if self._owners is not None:
-            chosen[...] = self._owners
-        else:
-            np.take(self.coverage.owners, self._places, out=chosen, mode="wrap")
-        refused = self.refused
-        if refused.any():
-            chosen[refused] = -1
+        if self._owners is None:
+            return super().chosen
+        chosen = self._owners.astype(np.int16)
+        chosen[self.refused] = -1
         return chosen
-
-    @property
-    def correlations(self) -> tuple[Correlation, ...]:
-        """The correlations that answer somewhere, in the order of temperature."""
-        return tuple(candidate.record for candidate in self.coverage.answering)
-
-    @cached_property
-    def refused(self) -> NDArray[np.bool_]:
-        """True where nothing may answer."""
-        return np.isnan(self.values)
 
     @cached_property
     def marks(self) -> NDArray[np.str_]:
@@ -87,11 +67,6 @@ class Batch:
             marks[(self._origins == BEYOND) & ~self.refused] = "beyond"
             marks[(self._origins == ESTIMATE) & ~self.refused] = "estimate"
         return marks
-
-    @property
-    def seams(self) -> tuple[Seam, ...]:
-        """Where the answering correlation changes, with the jump."""
-        return self.coverage.seams
 
     @property
     def unit(self) -> str:

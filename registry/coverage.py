@@ -144,6 +144,13 @@ class Coverage:
             return ()
         return tuple(s for s in self.stretches[covered[0] : covered[-1]] if s.candidate is None)
 
+    def alone(self, candidate: Candidate) -> Coverage:
+        """The same, with one candidate that answers wherever it may, whoever ranks before it."""
+        return Coverage(
+            self.dossier, self.property, self.phase, self.metastable, self.limits, self.candidates,
+            _tile([candidate], frozenset()),
+        )  # fmt: skip
+
     def value_at(self, kelvin: float) -> tuple[float, Candidate | None]:
         """The value in SI at one temperature, K, and who gives it; NaN and None where nothing answers."""
         candidate = self.stretch_at(kelvin).candidate
@@ -156,6 +163,11 @@ class Coverage:
     def stretch_at(self, kelvin: float) -> Stretch:
         """The stretch that holds a temperature, K."""
         return self.stretches[bisect.bisect_right(self._edges, kelvin)]
+
+    def between(self, low: float, high: float) -> tuple[Stretch, ...]:
+        """The stretches that hold some temperature from `low` to `high`, K."""
+        first, last = (bisect.bisect_right(self._edges, kelvin) for kelvin in (low, high))
+        return self.stretches[first : last + 1]
 
     def covering(self, kelvin: float) -> tuple[Candidate, ...]:
         """The accepted candidates that cover a temperature, K."""

@@ -21,6 +21,7 @@ __all__ = [
     "gauge_unit",
     "parse_pressure",
     "parse_temperature",
+    "read_quantity",
     "unit_names",
 ]
 
@@ -199,7 +200,10 @@ def gauge_unit(text: str, atmosphere_pa: Fraction) -> Unit:
     return replace(base, name=f"{base.name}(g)", shift=atmosphere_pa / base.factor)
 
 
-def _split_quantity(text: str, dimension: str, example: str) -> tuple[Fraction, Unit]:
+def read_quantity(
+    text: str, dimension: str, example: str, atmosphere_pa: Fraction | None = None
+) -> tuple[Fraction, Unit]:
+    """The exact number in a text and its unit, not converted; a gauge unit where the atmosphere, Pa, is stated."""
     plain = text.replace("\u2212", "-").strip()
     match = _QUANTITY.fullmatch(plain) if len(plain) <= 100 else None
     if match is None:
@@ -208,7 +212,7 @@ def _split_quantity(text: str, dimension: str, example: str) -> tuple[Fraction, 
         listed = ", ".join(unit_names(dimension))
         raise BadQuantity(text, f"a {dimension} needs its unit ({listed}), such as {example}.")
     try:
-        unit = find_unit(match[2], dimension)
+        unit = find_unit(match[2], dimension) if atmosphere_pa is None else gauge_unit(match[2], atmosphere_pa)
     except GaugePressure:
         raise
     except BadQuantity as error:
@@ -248,25 +252,48 @@ def parse_temperature(text: str) -> float:
     >>> parse_temperature("-40C")
     233.15
     """
-    number, unit = _split_quantity(text, "temperature", "298.15K or 25C")
+    number, unit = read_quantity(text, "temperature", "298.15K or 25C")
     kelvin = unit.to_si(number)
     if kelvin <= 0:
         raise BadQuantity(text, "a temperature lies above absolute zero, 0 K.")
     return float(kelvin)
 
 
-def parse_pressure(text: str) -> Fraction:
-    """An absolute pressure with its unit, in pascal, exact.
+def parse_pressure(text: str, atmosphere_pa: Fraction | None = None) -> Fraction:
+    """A pressure with its unit, in pascal, exact and absolute.
+
+    Parameters
+    ----------
+    text : str
+        Such as ``101.325kPa``, ``1 atm`` or, with an atmosphere, ``2 barg``.
+    atmosphere_pa : fractions.Fraction, optional
+        The local atmospheric pressure, Pa, to which gauge units are added.
+
+    Returns
+    -------
+    fractions.Fraction
+        The absolute pressure, Pa.
+
+    Raises
+    ------
+    BadQuantity
+        If the unit is missing or unknown, the number is none, or the
+        pressure is not above zero.
+    GaugePressure
+        If it is in a gauge unit and the atmosphere is not given.
 
     Examples
     --------
     >>> parse_pressure("1 atm")
     Fraction(101325, 1)
+    >>> parse_pressure("-0.2 barg", Fraction(101325))
+    Fraction(81325, 1)
     """
-    number, unit = _split_quantity(text, "pressure", "101.325kPa")
-    if number <= 0:
+    number, unit = read_quantity(text, "pressure", "101.325kPa", atmosphere_pa)
+    pascal = unit.to_si(number)
+    if pascal <= 0:
         raise BadQuantity(text, "an absolute pressure is greater than zero.")
-    return unit.to_si(number)
+    return pascal
 
 
 def convert(value: float, source: Unit, target: Unit, molar_mass: float | None = None) -> float:

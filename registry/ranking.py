@@ -6,7 +6,7 @@ Among the accepted correlations that cover a temperature for a phase:
 2. the better evidence wins: standard, evaluated, measured, compiled,
    estimated; a record from memory counts as compiled at most until
    independent values confirm it;
-3. then the smaller stated uncertainty, not stated last (the scatter of a fit
+3. then the smaller stated uncertainty at coverage factor 2, not stated last (the scatter of a fit
    is not an uncertainty);
 4. then the wider reach, which makes fewer seams;
 5. then the newer source;
@@ -16,12 +16,12 @@ Among the accepted correlations that cover a temperature for a phase:
 from __future__ import annotations
 
 import math
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 
 from registry.candidate import Candidate
 from registry.records import EVIDENCE
 
-__all__ = ["choose_best", "deciding_rule", "explain_order", "rank_of"]
+__all__ = ["choose_best", "choose_throughout", "deciding_rule", "explain_order", "rank_of", "worst_rank"]
 
 Pairs = frozenset[tuple[str, str]]
 
@@ -54,10 +54,43 @@ def choose_best(covering: Sequence[Candidate], kelvin: float, preferred: Pairs) 
     Candidate
         The best one.
     """
+    return min(_drop_over(covering, preferred), key=lambda candidate: rank_of(candidate, kelvin))
+
+
+def _drop_over(covering: Sequence[Candidate], preferred: Pairs) -> list[Candidate]:
+    """Those over which no other of them is preferred."""
     keys = {candidate.key for candidate in covering}
     dropped = {over for key, over in preferred if key in keys}
-    left = [candidate for candidate in covering if candidate.key not in dropped]
-    return min(left, key=lambda candidate: rank_of(candidate, kelvin))
+    return [candidate for candidate in covering if candidate.key not in dropped]
+
+
+def worst_rank(candidate: Candidate, low: float, high: float) -> tuple[int, float, float, int, str]:
+    """The rank of a candidate where it ranks last between two temperatures, K."""
+    # a piece of a stated uncertainty holds up to its upper end
+    ends = (piece.upper for piece, _ in candidate.pieces)
+    return max(rank_of(candidate, kelvin) for kelvin in (low, high, *(end for end in ends if low < end < high)))
+
+
+def choose_throughout(
+    covering: Sequence[Candidate], spans: Mapping[str, tuple[float, float]], preferred: Pairs
+) -> Candidate:
+    """The candidate that ranks first over a whole span, each by its worst rank in it.
+
+    Parameters
+    ----------
+    covering : sequence of Candidate
+        The accepted candidates that cover the whole span; at least one.
+    spans : mapping of str to (float, float)
+        The ends of the span for each candidate, K, by its key.
+    preferred : frozenset of (str, str)
+        Pairs (key, key it is preferred over), without a cycle.
+
+    Returns
+    -------
+    Candidate
+        The best one.
+    """
+    return min(_drop_over(covering, preferred), key=lambda candidate: worst_rank(candidate, *spans[candidate.key]))
 
 
 def deciding_rule(best: Candidate, other: Candidate, kelvin: float) -> int:

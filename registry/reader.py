@@ -15,7 +15,7 @@ from registry.conditions import make_conditions
 from registry.coverage import Coverage, build_coverage
 from registry.errors import BadInput, NotALibrary, quote
 from registry.naming import join_names
-from registry.properties import find_property
+from registry.properties import PROPERTIES, find_property
 from registry.readings import Reading
 from registry.store.library_file import LibraryFile
 from registry.values import Value
@@ -24,7 +24,9 @@ from registry.values import Value
 if TYPE_CHECKING:
     from registry.batches import Batch
     from registry.boundary import PhaseBoundary, SaturationBatch
+    from registry.inversion import Inversion
     from registry.saturation import Saturation
+    from registry.temperatures import Temperatures
 
 __all__ = ["Reader"]
 
@@ -47,11 +49,13 @@ class Reader(Collection):
         super().__init__(file, position, lock)
         self._coverages: dict[tuple[str, str, str, bool, bool], Coverage] = {}
         self._boundaries: dict[Coverage, PhaseBoundary] = {}
+        self._inversions: dict[Coverage, Inversion] = {}
 
     def _forget(self) -> None:
         super()._forget()
         self._coverages = {}
         self._boundaries = {}
+        self._inversions = {}
 
     @overload
     def lookup(
@@ -140,10 +144,78 @@ class Reader(Collection):
             return answer_one(coverage, temperature, None, conditions)
         if isinstance(temperature, Reading):
             return answer_one(coverage, temperature.kelvin, temperature, conditions)
-        kelvin = _as_kelvin(temperature)
+        kelvin = _as_numbers(temperature, "temperature", "kelvin")
         if kelvin.ndim == 0:
             return answer_one(coverage, float(kelvin), None, conditions)
         return answer_many(coverage, kelvin, conditions)
+
+    @overload
+    def temperature_at(
+        self, compound: str, pressure: float, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> Answer: ...  # fmt: skip
+
+    @overload
+    def temperature_at(
+        self, compound: str, pressure: ArrayLike, *, property: str = ..., phase: str | None = ...,
+        metastable: bool = ..., drafts: bool = ...,
+    ) -> Temperatures: ...  # fmt: skip
+
+    def temperature_at(
+        self, compound: str, pressure: Any, *, property: str = "vapor-pressure", phase: str | None = None,
+        metastable: bool = False, drafts: bool = False,
+    ) -> Answer | Temperatures:  # fmt: skip
+        """The temperature at one pressure, or at many: where a liquid boils, a solid sublimes or melts.
+
+        Parameters
+        ----------
+        compound : str
+            As for `lookup`.
+        pressure : float or array_like of float
+            Absolute pressure, Pa.
+        property : str
+            The pressure it is: ``vapor-pressure``, ``sublimation-pressure`` or
+            ``melting-pressure``.
+        phase, metastable, drafts
+            As for `lookup`.
+
+        Returns
+        -------
+        Answer or Temperatures
+            An answer for one pressure: its `temperature` is what was found,
+            its `value` the pressure asked. For an array its temperatures, NaN
+            where none has the pressure or several have.
+
+        Raises
+        ------
+        Refused
+            For one pressure that no temperature has, or several have; carries
+            an `InverseRefusal` with both sides.
+        UnknownKey
+            If the compound is unknown or ambiguous.
+        BadInput
+            If the property is no pressure, or a pressure not above 0 Pa (a
+            melting pressure may be).
+
+        Examples
+        --------
+        >>> import registry
+        >>> with registry.open_library("shelf.db") as library:
+        ...     answer = library.temperature_at("water", 101325.0)
+        >>> round(answer.temperature, 4), answer.correlation.key
+        (373.1243, 'water-if97')
+        >>> with registry.open_library("shelf.db") as library:
+        ...     library.temperature_at("water", [1e5, 1e6, 1e8]).temperatures.round(4)
+        array([372.7559, 453.0356,      nan])
+        """
+        coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
+        from registry.inversion import Inversion
+        from registry.temperatures import demand_pressure, solve_many, solve_one
+
+        demand_pressure(PROPERTIES[coverage.property])
+        pascal = _as_numbers(pressure, "pressure", "pascal")
+        inversion = self._inversions.get(coverage) or self._inversions.setdefault(coverage, Inversion(coverage))
+        return solve_one(inversion, float(pascal)) if pascal.ndim == 0 else solve_many(inversion, pascal)
 
     @overload
     def slope(
@@ -205,7 +277,7 @@ class Reader(Collection):
         boundary = self._boundaries.get(coverage) or self._boundaries.setdefault(coverage, PhaseBoundary(coverage))
         if isinstance(temperature, Reading):
             return find_saturation(boundary, temperature.kelvin, temperature)
-        kelvin = _as_kelvin(temperature)
+        kelvin = _as_numbers(temperature, "temperature", "kelvin")
         return find_saturation(boundary, float(kelvin)) if kelvin.ndim == 0 else boundary.evaluate(kelvin)
 
     def coverage(
@@ -255,12 +327,12 @@ class Reader(Collection):
             raise NotALibrary(self.place, f"a record of {dossier.compound.key} is damaged ({error})") from error
 
 
-def _as_kelvin(temperature: Any) -> NDArray[np.float64]:
-    """Numbers as an array of float; a masked element is no temperature."""
-    given = np.ma.filled(temperature, np.nan) if isinstance(temperature, np.ma.MaskedArray) else np.asarray(temperature)
-    if given.dtype.kind not in "fiu" and given.size:
-        raise BadInput(f"{quote(temperature)} is no temperature; numbers in kelvin are allowed.")
-    return given.astype(float, copy=False)
+def _as_numbers(given: Any, word: str, unit: str) -> NDArray[np.float64]:
+    """Numbers as an array of float; a masked element is no number."""
+    found = np.ma.filled(given, np.nan) if isinstance(given, np.ma.MaskedArray) else np.asarray(given)
+    if found.dtype.kind not in "fiu" and found.size:
+        raise BadInput(f"{quote(given)} is no {word}; numbers in {unit} are allowed.")
+    return found.astype(float, copy=False)
 
 
 def _plain(phase: str) -> str:

@@ -14,7 +14,7 @@ from registry.properties import PROPERTIES
 from registry.ranking import deciding_rule, explain_order, rank_of
 from registry.refusals import Nearest, Refusal
 
-__all__ = ["Verdict", "explain_choice", "judge_candidates", "refuse"]
+__all__ = ["Verdict", "describe_unaccepted", "explain_choice", "judge_candidates", "refuse", "show_map"]
 
 
 @dataclass(frozen=True)
@@ -208,13 +208,14 @@ def _find_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
         )
     unaccepted = [c for c in coverage.candidates if not c.entry.accepted and c.covers(kelvin)]
     if unaccepted:
-        listed = "; ".join(_describe_unaccepted(c) for c in unaccepted)
+        listed = "; ".join(describe_unaccepted(c) for c in unaccepted)
         advice = "It answers again once a reviewed record covers it."
         return "not-accepted", f"At {at} only correlations that are not accepted cover {name}: {listed}.", advice
     return _find_phase_reason(coverage, kelvin) or _find_window_reason(coverage, kelvin)
 
 
-def _describe_unaccepted(candidate: Candidate) -> str:
+def describe_unaccepted(candidate: Candidate) -> str:
+    """A correlation that is not accepted, with what was noted about that."""
     note = candidate.entry.standing_note.rstrip(".")
     return f"{candidate.key} is {_standing(candidate)}" + (f" ({note})" if note else "")
 
@@ -227,7 +228,7 @@ def _find_phase_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str
         source = f"{limits.upper:.9g} K ({point.record.source})"
         if prop.upper == "critical-temperature":
             text = f"{_kelvin(kelvin)} lies above the critical temperature of {name}, {source}: there is no liquid."
-            return "above-critical", text, _show_map(coverage)
+            return "above-critical", text, show_map(coverage)
         text = f"{_kelvin(kelvin)} lies above the triple temperature of {name}, {source}: the solid has melted."
         return "above-triple", text, "Ask for the vapour pressure: --property vapor-pressure."
     if kelvin < limits.lower:
@@ -249,16 +250,17 @@ def _below_triple(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
     ]  # fmt: skip
     if metastable and not coverage.metastable:
         advice.append(f"The metastable liquid is covered by {join_names(metastable)}: ask with --metastable.")
-    return "below-triple", text, " ".join(advice) or _show_map(coverage)
+    return "below-triple", text, " ".join(advice) or show_map(coverage)
 
 
-def _show_map(coverage: Coverage) -> str:
+def show_map(coverage: Coverage) -> str:
+    """The command that shows who answers where, in a sentence."""
     return f"`rangebook coverage {coverage.dossier.compound.key} --property {coverage.property}` shows the map."
 
 
 def _find_window_reason(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
     name, prop = coverage.dossier.compound.key, coverage.property
-    advice = _show_map(coverage)
+    advice = show_map(coverage)
     if any(gap.low <= kelvin < gap.high for gap in coverage.gaps):
         text = f"{_kelvin(kelvin)} falls into a gap between two windows for {prop} of {name}."
         return "gap", text, advice

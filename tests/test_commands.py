@@ -140,6 +140,7 @@ READING = [
     ("show", "water-vapor-pressure-crc-73"), ("show", "ammonia-triple-point-temperature-gao-2023"),
     ("show", "water-hardy-1998-at-0-degc"), ("coverage", "water"), ("coverage", "water", "-p", "melting-pressure"),
     ("coverage", "neon"), ("forms",), ("forms", "antoine-ln"), ("lookup", "water", "25C", "--why"),
+    ("table", "ethanol", "--from", "0C", "--to", "60C", "--step", "10C"),
     ("restate", "water-goff-gratch-1946", "--pressure", "kPa", "--temperature", "degR"),
 ]  # fmt: skip
 
@@ -235,7 +236,8 @@ def test_an_explicit_library_must_exist(tmp_path):
 def test_commands_are_the_ones_of_the_job():
     """No command is missing, and none is there that nobody asked for."""
     assert set(COMMANDS) == {
-        "lookup", "slope", "coverage", "list", "show", "restate", "forms", "start", "load", "dump", "upgrade",
+        "lookup", "boil", "table", "slope", "coverage", "list", "show", "restate", "forms", "start", "load", "dump",
+        "upgrade",
         "record", "revise", "review", "withdraw", "prefer", "queue", "history", "diff", "freeze", "editions", "verify",
     }  # fmt: skip
 

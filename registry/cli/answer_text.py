@@ -3,7 +3,8 @@
 from __future__ import annotations
 
 import math
-from typing import TYPE_CHECKING
+from collections.abc import Sequence
+from typing import TYPE_CHECKING, Protocol
 
 from registry.answers import Answer
 from registry.cli.documents import value_in
@@ -21,7 +22,16 @@ from registry.values import Value
 if TYPE_CHECKING:
     from registry.scale_effects import ScaleEffect
 
-__all__ = ["print_answers"]
+__all__ = ["print_answers", "print_story", "print_verdicts"]
+
+
+class Typed(Protocol):
+    """What was asked, as it was typed."""
+
+    @property
+    def text(self) -> str:
+        """As typed."""
+
 
 _BASIS = {"printed": "as printed", "assumed": "assumed, not printed", "memory": "from memory"}
 _OBTAINED = {"seen": "seen in the source", "memory": "from memory"}
@@ -46,14 +56,14 @@ def print_answers(
         stories.setdefault(f"{answer.correlation.key} {answer.mark}", []).append((asked, answer))
     for told in stories.values():
         say()
-        _print_story(told, why)
+        print_story(told, why)
     if estimates:
         from registry.cli.estimate_text import print_estimates
 
         say()
         print_estimates(estimates)
     if why:
-        _print_verdicts(answers)
+        print_verdicts(answers)
     say()
     say(wrap(CAUTION, 0))
 
@@ -97,8 +107,8 @@ def _mark(found: Value) -> str:
     return f" ({found.mark.upper()})" if found.mark else ""
 
 
-def _print_story(told: list[tuple[Asked, Answer]], why: bool) -> None:
-    """One correlation, with why it was chosen at the first of its temperatures."""
+def print_story(told: Sequence[tuple[Typed, Answer]], why: bool) -> None:
+    """One correlation, with why it was chosen for the first of what was asked."""
     first, answer = told[0]
     record = answer.correlation
     low, high = answer.window
@@ -163,7 +173,8 @@ def _word_evidence(answer: Answer) -> str:
     return f"{answer.counts_as} (recorded as {record.evidence}, but from memory and unconfirmed)"
 
 
-def _print_verdicts(answers: list[tuple[Asked, Answer]]) -> None:
+def print_verdicts(answers: Sequence[tuple[Typed, Answer]]) -> None:
+    """Every candidate with its verdict, for each answer."""
     for asked, answer in answers:
         say()
         say(f"  {emphasize('Candidates')} at {asked.text}")

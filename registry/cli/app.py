@@ -41,7 +41,7 @@ EXIT_CODES = (
     (Refused, 3), (LibraryBusy, 4), (RevisedMeanwhile, 4), (Conflict, 4), (LibraryUnreadable, 5), (RangebookError, 2),
 )  # fmt: skip
 FAULT = 70
-TAKES_TEMPERATURES = ("lookup", "slope")
+TAKES_NUMBERS = ("lookup", "slope", "boil")
 
 app = typer.Typer(
     name="rangebook",
@@ -79,14 +79,14 @@ def rangebook(
 
 
 def protect_minus(arguments: list[str]) -> list[str]:
-    """Negative temperatures unquoted where a command takes some: -40C is no option.
+    """Negative numbers unquoted where a command takes some: -40C is no option.
 
     Examples
     --------
     >>> protect_minus(["lookup", "ammonia", "-40C", "-u", "bar"])
     ['lookup', 'ammonia', '−40C', '-u', 'bar']
     """
-    if next((word for word in arguments if not word.startswith("-")), "") not in TAKES_TEMPERATURES:
+    if next((word for word in arguments if not word.startswith("-")), "") not in TAKES_NUMBERS:
         return arguments
     return [f"\u2212{word[1:]}" if re.match(r"-[0-9.]", word) else word for word in arguments]
 

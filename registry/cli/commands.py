@@ -32,6 +32,8 @@ class Home(NamedTuple):
 
 COMMANDS: dict[str, Home] = {
     "lookup": Home("looking", "lookup"),
+    "boil": Home("boiling", "boil"),
+    "table": Home("tabling", "table"),
     "slope": Home("sloping", "slope"),
     "coverage": Home("browsing", "coverage"),
     "list": Home("browsing", "list_records"),

@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import (
+    REFUSED,
     AsOfOption,
     DraftsOption,
     EditionOption,
@@ -19,7 +20,7 @@ from registry.cli.options import (
     open_chosen,
 )
 from registry.cli.screen import complain, print_json
-from registry.errors import BadQuantity, GaugePressure, Refused
+from registry.errors import Refused
 
 if TYPE_CHECKING:
     from registry.cli.temperatures import Asked
@@ -27,9 +28,6 @@ if TYPE_CHECKING:
     from registry.coverage import Coverage
     from registry.refusals import Refusal
     from registry.values import Value
-
-REFUSED = 3
-"""Exit code when a temperature was refused."""
 
 
 def lookup(
@@ -137,18 +135,12 @@ def _choose_unit(unit: str, atmosphere: str, prop: str) -> Any:
 
     if prop not in PROPERTIES:
         return None  # the library says what there is
-    local = float(_read_atmosphere(atmosphere)) if atmosphere else None
+    local = None
+    if atmosphere:
+        from registry.cli.pressures import read_atmosphere
+
+        local = float(read_atmosphere(atmosphere))
     return find_target_unit(unit, PROPERTIES[prop].dimension, local) if unit else None
-
-
-def _read_atmosphere(text: str) -> Any:
-    from registry.quantities import parse_pressure
-
-    text = text.replace("\u2212", "-")
-    try:
-        return parse_pressure(text)
-    except GaugePressure:
-        raise BadQuantity(text, "the local atmosphere is an absolute pressure, such as 101.325kPa.") from None
 
 
 def _describe(coverage: Coverage, label: str, found: list[tuple[Asked, Value | Refusal]], to: Any) -> dict[str, Any]:

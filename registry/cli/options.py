@@ -13,6 +13,9 @@ if TYPE_CHECKING:
     from registry.archive import Archive
     from registry.library import Library
 
+REFUSED = 3
+"""Exit code when something asked for was refused."""
+
 LibraryOption = Annotated[
     str | None,
     typer.Option(

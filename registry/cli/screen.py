@@ -13,13 +13,14 @@ import os
 import shutil
 import sys
 import textwrap
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from typing import Any
 
 __all__ = [
     "CAUTION",
     "complain",
     "emphasize",
+    "format_facts",
     "name_past",
     "print_facts",
     "print_json",
@@ -55,12 +56,12 @@ def emphasize(text: str, code: str = "1") -> str:
     return text if plain else f"\x1b[{code}m{text}\x1b[0m"
 
 
-def say(text: str = "") -> None:
-    """A line of a result."""
+def say(text: str = "", end: str = "\n") -> None:
+    """A line of a result, or several lines with their own end."""
     try:
-        print(text, flush=True)
+        print(text, end=end, flush=True)
     except UnicodeEncodeError:  # a terminal that knows only ASCII
-        print(text.encode("ascii", "replace").decode())
+        print(text.encode("ascii", "replace").decode(), end=end)
     except BrokenPipeError:
         # the reader has gone: nothing more to say, and nothing to flush at exit
         os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
@@ -106,10 +107,16 @@ def wrap(text: str, indent: int, total: int | None = None) -> str:
 
 def print_facts(facts: Iterable[tuple[str, str]], indent: int = 2) -> None:
     """Labels and texts in two columns; empty texts are left out."""
+    for line in format_facts(facts, indent):
+        say(line)
+
+
+def format_facts(facts: Iterable[tuple[str, str]], indent: int = 2) -> Iterator[str]:
+    """The lines of `print_facts`."""
     rows = [(label, text) for label, text in facts if text]
     margin = indent + max((len(label) for label, _ in rows), default=0) + 2
     for label, text in rows:
-        say(f"{' ' * indent}{label.ljust(margin - indent)}{wrap(text, margin)}")
+        yield f"{' ' * indent}{label.ljust(margin - indent)}{wrap(text, margin)}"
 
 
 def print_table(

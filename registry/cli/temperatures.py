@@ -3,14 +3,16 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Iterator, Sequence
-from typing import NamedTuple
+from collections.abc import Callable, Iterator, Sequence
+from typing import NamedTuple, TypeVar
 
 from registry.errors import BadInput, BadQuantity
 from registry.quantities import find_unit
 from registry.readings import Reading, parse_reading
 
-__all__ = ["Asked", "read_temperatures"]
+__all__ = ["Asked", "read_lines", "read_temperatures"]
+
+_Read = TypeVar("_Read")
 
 
 class Asked(NamedTuple):
@@ -30,7 +32,7 @@ def read_temperatures(words: Sequence[str]) -> list[Asked]:
     asked: list[Asked] = []
     for word in _join_units(words):
         if word == "-":
-            asked += _read_stdin()
+            asked += [Asked(*line) for line in read_lines(parse_reading)]
         else:
             plain = word.replace("\u2212", "-")
             asked.append(Asked(plain, parse_reading(plain)))
@@ -66,7 +68,8 @@ def _is_unit(word: str) -> bool:
     return True
 
 
-def _read_stdin() -> Iterator[Asked]:
+def read_lines(parse: Callable[[str], _Read]) -> Iterator[tuple[str, _Read]]:
+    """Each line of stdin that is no remark, as typed and as parsed."""
     if sys.stdin is None:
         return
     try:
@@ -77,6 +80,6 @@ def _read_stdin() -> Iterator[Asked]:
         text = line.strip()
         if text and not text.startswith("#"):
             try:
-                yield Asked(text, parse_reading(text))
+                yield text, parse(text)
             except BadQuantity as error:
                 raise BadInput(f"stdin, line {number}: {error}") from None

@@ -26,13 +26,16 @@ sys.path.append(str(ROOT))  # last: an installed package is measured rather than
 from arrays import measure_five_windows, measure_keeping_memory, measure_three_forms  # noqa: E402
 from growth import measure_growth  # noqa: E402
 from history import measure_verifying  # noqa: E402
+from inverse import measure_inverse  # noqa: E402
 from processes import measure_process  # noqa: E402
 from scalars import measure_scalars  # noqa: E402
+from tables import measure_tables  # noqa: E402
 from timing import TIMED, WARM  # noqa: E402
 
 METHOD = (
     f"A round is {WARM} unmeasured and {TIMED} timed calls of ours, then as many of the reference; the ratio is the "
     "median over rounds of the medians' ratio. Whole processes are run in turn; the ratio is that of the medians. "
+    "Memory is the peak of one call, by tracemalloc. "
     "Verifying is timed once a round, and the reference once after it. "
     "The entries with memory kept are measured after all others, with an allocator that gives nothing back."
 )
@@ -56,10 +59,12 @@ def measure_all(quick: bool) -> list[dict[str, Any]]:
         entries = [
             *measure_three_forms(folder, size, rounds),
             *measure_five_windows(folder, size, rounds),
+            *measure_inverse(folder, size, rounds),
             *measure_process(folder, runs),
             *measure_scalars(folder, calls, rounds),
             *measure_growth(folder, changes, rounds),
             *measure_verifying(folder, changes, rounds),
+            *measure_tables(folder, size // 10, rounds),
             *measure_keeping_memory(folder / "kept", size, rounds),
         ]
     return [{**entry, "holds": None if entry["bar"] is None else entry["ratio"] <= entry["bar"]} for entry in entries]

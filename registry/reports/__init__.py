@@ -1,0 +1,1 @@
+"""Files made of answers, for other programs and other people."""
