@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -55,6 +56,7 @@ def answer_one(
     BadInput
         If it is no temperature, or a constant for an estimate is missing.
     """
+    _require_sense(coverage, conditions)
     value, candidate = coverage.value_at(kelvin)
     if candidate is None:
         found = None if conditions is PLAIN else _answer_otherwise(coverage, kelvin, reading, conditions)
@@ -67,6 +69,14 @@ def answer_one(
     return found
 
 
+def _require_sense(coverage: Coverage, conditions: Conditions) -> None:
+    """An estimate of another property is refused also where a window covers: the same words mean the same."""
+    if conditions.estimate:
+        from registry.estimates import require_vapour_pressure
+
+        require_vapour_pressure(conditions.estimate, coverage.property)
+
+
 def _answer_otherwise(
     coverage: Coverage, kelvin: float, reading: Reading | None, conditions: Conditions
 ) -> Value | None:
@@ -77,7 +87,10 @@ def _answer_otherwise(
     found: Value | None = None
     if conditions.beyond:
         found = Extrapolator(coverage, conditions.beyond).answer(kelvin, reading)
-    if found is None and conditions.estimate and coverage.stretch_at(kelvin).candidate is None:
+    limits = coverage.limits
+    # across a phase limit no constant is missed: there is nothing to estimate
+    inside = limits.lower <= kelvin <= limits.upper and 0.0 < kelvin < math.inf
+    if found is None and conditions.estimate and inside and coverage.stretch_at(kelvin).candidate is None:
         found = Estimator.of(conditions.estimate, coverage).answer(kelvin, reading)
     return found
 
@@ -124,6 +137,7 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
     values, places = coverage.evaluate(kelvin)
     if conditions is PLAIN:
         return Batch(kelvin, values, places, coverage)
+    _require_sense(coverage, conditions)
     flat, found = np.ascontiguousarray(kelvin).reshape(-1), values.reshape(-1)
     owners = coverage.owners[places.reshape(-1)]
     uncovered = owners < 0
@@ -140,6 +154,8 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
             answer_one(coverage, one, None, conditions)
         except Refused as error:
             return error.refusal
+        except BadInput:
+            pass  # what is no temperature is a refusal among many
         return refuse(coverage, one)
 
     shape = values.shape
@@ -163,7 +179,8 @@ def _fill_estimates(
     from registry.batches import ESTIMATE
     from registry.estimates import Estimator
 
-    here = np.flatnonzero(uncovered & np.isnan(found))
+    inside = (flat >= coverage.limits.lower) & (flat <= coverage.limits.upper) & (flat > 0.0) & np.isfinite(flat)
+    here = np.flatnonzero(uncovered & np.isnan(found) & inside)
     if here.size:
         values = Estimator.of(method, coverage).values(flat[here])
         usable = here[np.isfinite(values)]

@@ -88,6 +88,15 @@ class Answer(Value):
         return piece.percent_of(self.value) if piece else None
 
     @property
+    def expanded_percent(self) -> float | None:
+        """The stated uncertainty and that of the temperature together, percent at coverage factor 2; None if none."""
+        from registry.budget import combine_percents
+
+        piece = self.piece
+        stated, factor = (piece.percent_of(self.value), piece.factor) if piece else (None, None)
+        return combine_percents(stated, factor, self.temperature_percent)
+
+    @property
     def budget(self) -> Budget:
         """The parts of its uncertainty: what is stated, what the temperature adds, what the digits leave open.
 
@@ -101,7 +110,7 @@ class Answer(Value):
         """
         from registry.budget import make_budget
 
-        return make_budget(self._candidate, self.piece, self.reading, self.value, self.grams_per_mole)
+        return make_budget(self._candidate, self.piece, self.reading, self.value)
 
     @property
     def scale_effects(self) -> tuple[ScaleEffect, ...]:
@@ -139,7 +148,7 @@ class Answer(Value):
     @property
     def cautions(self) -> tuple[str, ...]:
         """What to know before relying on the value."""
-        return tuple(find_cautions(self._coverage, self._candidate, self.temperature))
+        return (*find_cautions(self._coverage, self._candidate, self.temperature), *self.caution_spread())
 
 
 def find_cautions(coverage: Coverage, candidate: Candidate, kelvin: float) -> list[str]:

@@ -233,6 +233,16 @@ class SaturationBatch:
         """True where nothing may answer."""
         return np.isnan(self.slopes)
 
+    @property
+    def marks(self) -> NDArray[np.str_]:
+        """``draft`` for each temperature at which one answers; empty for an accepted correlation or a refusal."""
+        coverage = self.boundary.coverage
+        standings = [candidate.entry.standing for candidate in coverage.answering]
+        names = np.array(["" if standing == "accepted" else standing for standing in standings] + [""], dtype="<U9")
+        chosen = np.take(coverage.owners, coverage.evaluate(self.temperatures)[1])
+        marks: NDArray[np.str_] = names[np.where(self.refused, -1, chosen)]
+        return marks
+
     def refusal(self, index: int | tuple[int, ...]) -> Refusal:
         """Why the temperature at an index was refused.
 

@@ -16,10 +16,9 @@ import numpy as np
 
 from registry.candidate import Candidate
 from registry.readings import Reading
-from registry.rounding import Rounding
 from registry.uncertainty import COVERAGE_FACTOR, Piece
 
-__all__ = ["Budget", "make_budget"]
+__all__ = ["Budget", "combine_percents", "make_budget"]
 
 
 @dataclass(frozen=True)
@@ -39,7 +38,9 @@ class Budget:
         the temperature is exact.
     rounding_percent : float
         What the rounding of the printed coefficients leaves open: a part of
-        its own, in no sum.
+        its own, in no sum. Where one coefficient makes nearly all of it,
+        twice its standard uncertainty lies beyond the most it can be: then
+        that.
     rounding_bound_percent : float
         The most that rounding can make: every coefficient at its worst.
     """
@@ -53,13 +54,37 @@ class Budget:
     @property
     def expanded_percent(self) -> float | None:
         """The stated uncertainty and that of the temperature together [1]_; None if none is stated."""
-        if self.stated_percent is None:
-            return None
-        expansion = COVERAGE_FACTOR / (self.stated_factor or COVERAGE_FACTOR)
-        return math.hypot(expansion * self.stated_percent, self.temperature_percent)
+        return combine_percents(self.stated_percent, self.stated_factor, self.temperature_percent)
 
 
-def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float, molar_mass: float) -> Budget:
+def combine_percents(stated: float | None, factor: float | None, temperature: float) -> float | None:
+    """A stated uncertainty and that of the temperature together, percent at coverage factor 2 [1]_.
+
+    Parameters
+    ----------
+    stated : float or None
+        Percent, as stated; None if it is not.
+    factor : float or None
+        The coverage factor stated; None counts as 2.
+    temperature : float
+        What the temperature adds, percent at coverage factor 2.
+
+    Returns
+    -------
+    float or None
+        None if none is stated.
+
+    Examples
+    --------
+    >>> combine_percents(1.5, 1.0, 4.0)
+    5.0
+    """
+    if stated is None:
+        return None
+    return math.hypot(COVERAGE_FACTOR / (factor or COVERAGE_FACTOR) * stated, temperature)
+
+
+def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float) -> Budget:
     """The uncertainty budget of a value.
 
     Parameters
@@ -72,8 +97,6 @@ def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, val
         The temperature asked.
     value : float
         The value there, SI.
-    molar_mass : float
-        Molar mass of the compound, g/mol.
 
     Returns
     -------
@@ -81,12 +104,13 @@ def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, val
         Its parts.
     """
     at = np.array([reading.kelvin])
-    rounding = Rounding.of(candidate.record, molar_mass)
-    spread = reading.uncertainty * COVERAGE_FACTOR / (reading.factor or COVERAGE_FACTOR)
+    rounding = candidate.rounding
+    bound = float(rounding.bounds(at)[0])
+    spread = reading.expanded_uncertainty
     return Budget(
         piece.percent_of(value) if piece else None,
         piece.factor if piece else None,
         100.0 * abs(candidate.curve.log_rate(reading.kelvin)) * spread if spread else 0.0,
-        COVERAGE_FACTOR * float(rounding.standards(at)[0]),
-        float(rounding.bounds(at)[0]),
+        min(COVERAGE_FACTOR * float(rounding.standards(at)[0]), bound),
+        bound,
     )

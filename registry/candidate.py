@@ -5,6 +5,8 @@ from __future__ import annotations
 import math
 from collections.abc import Sequence
 from dataclasses import dataclass
+from functools import cached_property
+from typing import TYPE_CHECKING
 
 import numpy as np
 from numpy.typing import NDArray
@@ -18,6 +20,10 @@ from registry.properties import PROPERTIES
 from registry.quantities import parse_temperature
 from registry.records import Correlation
 from registry.uncertainty import Piece, parse_uncertainty
+
+# a lookup of a value alone needs none
+if TYPE_CHECKING:
+    from registry.rounding import Rounding
 
 __all__ = ["Candidate", "build_candidate"]
 
@@ -43,6 +49,8 @@ class Candidate:
         Year of its source, 0 if not stated.
     width : float
         The width of its reach, K, without a metastable range.
+    molar_mass : float
+        Molar mass of its compound, g/mol.
     """
 
     entry: Entry[Correlation]
@@ -52,6 +60,7 @@ class Candidate:
     pieces: tuple[tuple[Piece, float], ...]
     year: int
     width: float
+    molar_mass: float
 
     @property
     def key(self) -> str:
@@ -87,6 +96,13 @@ class Candidate:
         found = self._piece_at(kelvin)
         return found[0] if found else None
 
+    @cached_property
+    def rounding(self) -> Rounding:
+        """What the digits of its coefficients leave open: curves that are made once, for they cost a hundred values."""
+        from registry.rounding import Rounding
+
+        return Rounding.of(self.record, self.molar_mass)
+
     def expanded_percents(self, kelvin: NDArray[np.float64], values: NDArray[np.float64]) -> NDArray[np.float64]:
         """The stated uncertainty at coverage factor 2, percent of the values.
 
@@ -106,7 +122,7 @@ class Candidate:
             here = (kelvin > low) & (kelvin <= piece.upper)
             if piece.absolute is not None:
                 with np.errstate(divide="ignore"):
-                    percents[here] = 100.0 * piece.expansion * piece.absolute / np.abs(values[here])
+                    percents[here] = piece.expansion * (100.0 * piece.absolute / np.abs(values[here]))
             elif piece.percent is not None:
                 percents[here] = piece.expansion * piece.percent
             low = piece.upper
@@ -140,14 +156,15 @@ def build_candidate(
         With its reach and what it ranks by.
     """
     record = entry.record
-    curve = Curve.of(record, dossier.compound.record.grams_per_mole())
+    molar_mass = dossier.compound.record.grams_per_mole()
+    curve = Curve.of(record, molar_mass)
     reach = _find_reach(record, curve, limits, metastable)
     counted = count_correlation(record, curve, values)
     pieces = parse_uncertainty(record.uncertainty, PROPERTIES[record.property].dimension)
     ranked = tuple((piece, _rank_piece(pieces, i, curve, reach)) for i, piece in enumerate(pieces))
     stable = _find_reach(record, curve, limits, metastable=False)
     width = max(stable[1] - stable[0], 0.0)
-    return Candidate(entry, curve, reach, counted, ranked, dossier.year(record.source), width)
+    return Candidate(entry, curve, reach, counted, ranked, dossier.year(record.source), width, molar_mass)
 
 
 def _find_reach(record: Correlation, curve: Curve, limits: Limits, metastable: bool) -> tuple[float, float]:

@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 import math
+from numbers import Real
 from typing import TYPE_CHECKING, NamedTuple
 
-from registry.errors import BadInput
+from registry.errors import BadInput, quote
 
 # a lookup that asks for no estimate needs no method
 if TYPE_CHECKING:
@@ -57,7 +58,7 @@ def make_conditions(within: float | None, beyond: float, estimate: str) -> Condi
     Raises
     ------
     BadInput
-        If a number is none that can be meant, or there is no such method.
+        If a number is none, or none that can be meant, or there is no such method.
 
     Examples
     --------
@@ -66,10 +67,17 @@ def make_conditions(within: float | None, beyond: float, estimate: str) -> Condi
     """
     if within is None and not beyond and not estimate:
         return PLAIN
+    _require_number("within", within or 0.0, "percent")
+    _require_number("beyond", beyond or 0.0, "kelvin")
     if within is not None and not 0.0 < within < math.inf:
         raise BadInput(f"Nothing answers within {within:g} %; a percentage above 0 is allowed.")
     if not 0.0 <= beyond < math.inf:
         raise BadInput(f"Nothing lies {beyond:g} K beyond a window; a number of kelvin above 0 is allowed.")
     from registry.estimates import find_method
 
-    return Conditions(within, beyond, find_method(estimate) if estimate else None)
+    return Conditions(within, beyond or 0.0, find_method(estimate) if estimate else None)
+
+
+def _require_number(name: str, given: object, unit: str) -> None:
+    if not isinstance(given, Real):
+        raise BadInput(f"{name} {quote(given)} is no number; a number of {unit} is allowed.")

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import math
+
 from registry.quantities import UNITS, Unit
 
-__all__ = ["format_number", "format_plain", "suit_unit"]
+__all__ = ["format_number", "format_percent", "format_plain", "suit_unit"]
 
 
 def format_number(value: float, digits: int = 6) -> str:
@@ -29,6 +31,19 @@ def format_plain(value: float) -> str:
     ('273.16', '500')
     """
     return f"{value:.9g}"
+
+
+def format_percent(value: float, sign: str = "") -> str:
+    """A percentage to three digits; in a word where it is no number, as of a value that is zero.
+
+    Examples
+    --------
+    >>> format_percent(5.9612, "+"), format_percent(0.0256), format_percent(float("-inf"))
+    ('+5.96 %', '0.0256 %', 'infinite')
+    """
+    if math.isnan(value):
+        return "none"
+    return "infinite" if math.isinf(value) else f"{value:{sign}.3g} %"
 
 
 def suit_unit(value: float, si: Unit) -> Unit:

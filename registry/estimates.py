@@ -26,7 +26,7 @@ from registry.readings import Reading
 from registry.records import FixedPoint
 from registry.values import Value
 
-__all__ = ["METHODS", "Estimate", "Estimator", "Method", "acentric_factor", "find_method"]
+__all__ = ["METHODS", "Estimate", "Estimator", "Method", "acentric_factor", "find_method", "require_vapour_pressure"]
 
 Array = NDArray[np.float64]
 
@@ -93,6 +93,10 @@ METHODS: dict[str, Method] = {row.name: row for row in _ROWS}
 """The methods by name."""
 
 
+LOWEST_REDUCED = 0.5
+"""T/Tc below which no published comparison says how far off an estimate is (from memory)."""
+
+
 def find_method(name: str) -> Method:
     """The method of a name, case aside.
 
@@ -101,10 +105,16 @@ def find_method(name: str) -> Method:
     >>> find_method("Lee-Kesler").reference
     'B. I. Lee, M. G. Kesler, AIChE J. 21, 510 (1975)'
     """
-    method = METHODS.get(name.strip().casefold())
+    method = METHODS.get(name.strip().casefold()) if isinstance(name, str) else None
     if method is None:
         raise BadInput(f"There is no estimation method {quote(name)}; the methods are {join_names(METHODS, 'and')}.")
     return method
+
+
+def require_vapour_pressure(method: Method, prop: str) -> None:
+    """Raise `BadInput` unless a property is the one that a method estimates."""
+    if prop != "vapor-pressure":
+        raise BadInput(f"{method.title} estimates vapour pressures, not {prop}. Leave --estimate out.")
 
 
 def acentric_factor(reduced_pressure: float) -> float:
@@ -170,8 +180,7 @@ class Estimator:
         BadInput
             If it is about another property, or a constant is not recorded.
         """
-        if coverage.property != "vapor-pressure":
-            raise BadInput(f"{method.title} estimates vapour pressures, not {coverage.property}. Leave --estimate out.")
+        require_vapour_pressure(method, coverage.property)
         return cls(method, _find_points(method, coverage.dossier), coverage)
 
     def values(self, kelvin: Array) -> Array:
@@ -256,8 +265,18 @@ class Estimate(Value):
         memory = [e.record.quantity.replace("-", " ") for e in self.points if e.record.obtained == "memory"]
         return (
             f"It is an estimate, not a measured or evaluated value. Typical error: {self.method.typical_error}.",
+            *self._caution_range(),
+            *self.caution_spread(),
             *((f"From memory: {join_names(memory, 'and')}.",) if memory else ()),
             *(() if self._coverage.limits.lower else ("No triple point is recorded, so the phase was not checked.",)),
+        )
+
+    def _caution_range(self) -> tuple[str, ...]:
+        if self.reduced_temperature >= LOWEST_REDUCED:
+            return ()
+        return (
+            f"It lies at {self.reduced_temperature:.3g} of the critical temperature: below {LOWEST_REDUCED:g} "
+            "the typical error says nothing.",
         )
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
 
@@ -9,7 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry import rules
-from registry.answers import Answer, find_cautions
+from registry.answers import Answer
 from registry.candidate import Candidate
 from registry.coverage import Coverage, Stretch
 from registry.properties import PROPERTIES
@@ -61,6 +62,8 @@ class Extrapolator:
     def __init__(self, coverage: Coverage, beyond: float) -> None:
         self.coverage = coverage
         self.beyond = beyond
+        # a distance is a difference of doubles: 216.15 less 210 is a little more than 6.15
+        self._most = beyond + rules.BOUND_TOLERANCE
         self._places = {candidate.key: i for i, candidate in enumerate(coverage.answering)}
 
     @property
@@ -117,7 +120,7 @@ class Extrapolator:
     ) -> None:
         at = kelvin[here]
         low, high = candidate.reach
-        near = np.maximum(low - at, at - high) <= self.beyond
+        near = np.maximum(low - at, at - high) <= self._most
         here, at = here[near], at[near]
         found = self._evaluate(candidate, at)
         usable = np.isfinite(found)
@@ -145,8 +148,9 @@ class Extrapolator:
         others = [c for c in self.coverage.accepted if c is not candidate and not c.empty]
         for other in sorted(others, key=lambda c: (c.distance(kelvin), c.key)):
             found = float(self._evaluate(other, np.array([kelvin]))[0])
-            if other.distance(kelvin) <= self.beyond and np.isfinite(found):
-                yield Neighbour(other.key, other.distance(kelvin), found, 100.0 * (found / value - 1.0))
+            if other.distance(kelvin) <= self._most and np.isfinite(found):
+                percent = 100.0 * (found / value - 1.0) if value else math.inf
+                yield Neighbour(other.key, other.distance(kelvin), found, percent)
 
 
 class Extrapolation(Answer):
@@ -202,7 +206,7 @@ class Extrapolation(Answer):
     def cautions(self) -> tuple[str, ...]:
         """What to know before relying on the value."""
         first = f"It is extrapolated {self.distance:.6g} K beyond the window."
-        return (first, self._word_neighbours(), *find_cautions(self._coverage, self._candidate, self.temperature))
+        return (first, self._word_neighbours(), *super().cautions)
 
     def _word_neighbours(self) -> str:
         neighbours = self.neighbours
@@ -240,8 +244,8 @@ def explain_stop(refusal: Refusal, coverage: Coverage, beyond: float) -> Refusal
         return refusal
     elif not Extrapolator(coverage, beyond).single_phase:
         why = "--beyond needs the phase: name it with --phase."
-    elif refusal.nearest and refusal.nearest[0].distance <= beyond:
+    elif refusal.nearest and refusal.nearest[0].distance <= beyond + rules.BOUND_TOLERANCE:
         why = "Extrapolated there, its form gives no usable value."
     else:
-        why = f"--beyond {beyond:g}K does not reach it."
+        why = f"--beyond {beyond:.12g}K does not reach it."
     return replace(refusal, explanation=f"{refusal.explanation} {why}")

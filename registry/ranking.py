@@ -6,7 +6,7 @@ Among the accepted correlations that cover a temperature for a phase:
 2. the better evidence wins: standard, evaluated, measured, compiled,
    estimated; a record from memory counts as compiled at most until
    independent values confirm it;
-3. then the smaller stated uncertainty, not stated last (the scatter of a fit
+3. then the smaller stated uncertainty at coverage factor 2, not stated last (the scatter of a fit
    is not an uncertainty);
 4. then the wider reach, which makes fewer seams;
 5. then the newer source;

@@ -15,9 +15,9 @@ from typing import NamedTuple
 from registry.errors import BadQuantity
 from registry.naming import join_names
 from registry.numerals import parse_number
-from registry.quantities import find_unit, parse_temperature
+from registry.quantities import Unit, find_unit, parse_temperature
 from registry.scales import SCALES, Scale
-from registry.uncertainty import parse_factor
+from registry.uncertainty import COVERAGE_FACTOR, parse_factor
 
 __all__ = ["Reading", "parse_reading"]
 
@@ -25,6 +25,8 @@ __all__ = ["Reading", "parse_reading"]
 _BRACKETS = r"\s*\(([^()]*)\)$"
 _SPREAD = r"\s*(?:\+/[-\u2212]|\+[-\u2212]|±)\s*"
 _NUMBER = r"(?s)([0-9.]+(?:[eE][+-]?[0-9]+)?)\s*(.*)"
+_LONGEST = 200
+"""Letters of a temperature with all that may stand beside it; looking for brackets in a longer text takes long."""
 _EXAMPLE = "such as 298.15+/-0.05K"
 
 
@@ -50,6 +52,11 @@ class Reading(NamedTuple):
     factor: float | None = None
     scale: str = "ITS-90"
     shift: float = 0.0
+
+    @property
+    def expanded_uncertainty(self) -> float:
+        """The uncertainty at coverage factor 2, K; a factor that is not stated counts as 2."""
+        return self.uncertainty * COVERAGE_FACTOR / (self.factor or COVERAGE_FACTOR)
 
 
 def parse_reading(text: str) -> Reading:
@@ -79,7 +86,7 @@ def parse_reading(text: str) -> Reading:
     >>> round(parse_reading("100 degC (IPTS-68)").kelvin, 4)
     373.1244
     """
-    if "(" not in text and "±" not in text and "+" not in text:
+    if len(text) > _LONGEST or ("(" not in text and "±" not in text and "+" not in text):
         return Reading(parse_temperature(text))
     plain, factor, scale = _take_brackets(text)
     parts = re.split(_SPREAD, plain)
@@ -93,6 +100,9 @@ def parse_reading(text: str) -> Reading:
         raise BadQuantity(text, f"a coverage factor belongs to an uncertainty, {_EXAMPLE} (k=2).")
     if scale is None:
         return Reading(number, spread, factor)
+    if scale.name == "ice-point-273.16" and _find_last_unit(plain).shift:
+        why = f"{scale.name} is about kelvin; degC and degF count from the ice point itself: leave the scale out."
+        raise BadQuantity(text, why)
     kelvin = scale.to_its90(number)
     if not scale.reaches(kelvin):
         raise BadQuantity(text, f"no published conversion from {scale.name} to ITS-90 reaches this temperature.")
@@ -106,19 +116,28 @@ def _blame(plain: str, text: str) -> str:
 
 def _take_brackets(text: str) -> tuple[str, float | None, Scale | None]:
     """The text without what stands in brackets at its end; the coverage factor and the scale found there."""
-    plain, factor, scale = text.strip(), None, None
+    plain, factors, scales = text.strip(), list[float](), list[Scale]()
     while match := re.search(_BRACKETS, plain):
         plain, inside = plain[: match.start()], match[1].strip()
-        if inside.startswith("k"):
-            factor = _read_factor(inside, text)
+        if re.match(r"k\s*=", inside):
+            factors.append(_read_factor(inside, text))
         else:
-            scale = _find_scale(inside, text)
-    return plain, factor, scale
+            scales.append(_find_scale(inside, text))
+    if len(factors) > 1:
+        raise BadQuantity(text, "an uncertainty has one coverage factor, such as (k=2).")
+    if len(scales) > 1:
+        raise BadQuantity(text, "a temperature is read on one scale, such as 100 degC (IPTS-68).")
+    return plain, next(iter(factors), None), next(iter(scales), None)
+
+
+def _find_last_unit(plain: str) -> Unit:
+    """The unit at the end of a temperature that was understood."""
+    return find_unit(re.split(r"[\d.]", plain)[-1].strip(), "temperature")
 
 
 def _read_factor(inside: str, text: str) -> float:
     try:
-        return parse_factor(inside.removeprefix("k").strip().removeprefix("=").strip())
+        return parse_factor(inside.partition("=")[2].strip())
     except ValueError as error:
         raise BadQuantity(text, str(error)) from None
 
@@ -142,6 +161,8 @@ def _read_spread(left: str, right: str, text: str) -> tuple[float, float]:
     match = re.fullmatch(_NUMBER, right)
     if match is None:
         raise BadQuantity(text, f"an uncertainty is a number above zero, {_EXAMPLE}.")
+    if not match[2]:
+        raise BadQuantity(text, f"the unit stands behind the uncertainty, {_EXAMPLE}.")
     try:
         spread, unit = parse_number(match[1]), find_unit(match[2], "temperature")
         number = parse_temperature(left if re.search(r"[^\d.]$", left) else f"{left} {unit.name}")

@@ -29,11 +29,14 @@ class Correlated:
         J/mol.
     difference_percent : float
         By how much the enthalpy from the slope differs, percent of `value`.
+    standing : str
+        Its standing: a draft answers too where drafts were asked for.
     """
 
     key: str
     value: float
     difference_percent: float
+    standing: str = "accepted"
 
 
 @dataclass(frozen=True)
@@ -178,13 +181,13 @@ class Saturation:
 
     @cached_property
     def correlated(self) -> Correlated | None:
-        """What an accepted correlation of the enthalpy itself gives there; None where none covers it."""
+        """What a correlation of the enthalpy itself gives there; None where none covers it."""
         if self.answer.property != "vapor-pressure" or self.enthalpy is None:
             return None
         value, candidate = self.boundary.correlated.value_at(self.temperature)
         if candidate is None or not value > 0.0:
             return None
-        return Correlated(candidate.key, value, 100.0 * (self.enthalpy / value - 1.0))
+        return Correlated(candidate.key, value, 100.0 * (self.enthalpy / value - 1.0), candidate.entry.standing)
 
     @property
     def cautions(self) -> tuple[str, ...]:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import dataclasses
+import math
 from dataclasses import dataclass
 
 import numpy as np
@@ -29,15 +30,17 @@ class ScaleEffect:
         were this one.
     shift : float
         The number on the scale less the ITS-90 temperature, K.
-    percent : float
+    percent : float or None
         What that does to the value, percent: taken into account where the
-        scale is stated, how far the value might be off where it is not.
+        scale is stated, how far the value might be off where it is not. None
+        where no percent says it: the value is zero, or there is none on one
+        of the two scales.
     """
 
     scale: str
     supposed: bool
     shift: float
-    percent: float
+    percent: float | None
 
 
 def find_scale_effects(curve: Curve, kelvin: float) -> tuple[ScaleEffect, ...]:
@@ -69,4 +72,5 @@ def _measure(curve: Curve, scale: Scale, kelvin: float, *, supposed: bool) -> tu
     on_it = dataclasses.replace(curve, scale=scale).value(kelvin)
     as_its90 = dataclasses.replace(curve, scale=SCALES["ITS-90"]).value(kelvin)
     shift = float(scale.shift(np.array([kelvin]))[0][0])
-    return (ScaleEffect(scale.name, supposed, shift, 100.0 * (on_it / as_its90 - 1.0)),)
+    percent = 100.0 * (on_it / as_its90 - 1.0) if as_its90 else math.nan
+    return (ScaleEffect(scale.name, supposed, shift, percent if math.isfinite(percent) else None),)

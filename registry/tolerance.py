@@ -7,9 +7,9 @@ import math
 import numpy as np
 
 from registry.answers import Answer
-from registry.budget import Budget
 from registry.candidate import Candidate
 from registry.coverage import Coverage
+from registry.display import format_percent
 from registry.naming import join_names
 from registry.refusals import Refusal
 from registry.values import Value
@@ -41,13 +41,14 @@ def refuse_uncertain(coverage: Coverage, found: Value, within: float) -> Refusal
             f"The value at {found.temperature:.9g} K is {what}: no source states its uncertainty, and {_asked(within)}."
         )
         return Refusal(found.temperature, "uncertainty-not-stated", text)
-    budget = found.budget
-    total, key = budget.expanded_percent, found.correlation.key
+    # not by the budget, which looks at every digit too
+    total, key = found.expanded_percent, found.correlation.key
     if total is None:
         text = f"{key} answers at {found.temperature:.9g} K, but states no uncertainty there, and {_asked(within)}."
         return _refuse(coverage, found, within, "uncertainty-not-stated", text)
     if total > within:
-        text = f"{key} answers at {found.temperature:.9g} K with {_word(budget, total)}, and {_asked(within)}."
+        how = _word(found.temperature_percent, total)
+        text = f"{key} answers at {found.temperature:.9g} K with {how}, and {_asked(within)}."
         return _refuse(coverage, found, within, "too-uncertain", text)
     return None
 
@@ -56,14 +57,15 @@ def _asked(within: float) -> str:
     return f"--within {within:g}% was asked for"
 
 
-def _word(budget: Budget, total: float) -> str:
-    if not budget.temperature_percent:
+def _word(temperature: float, total: float) -> str:
+    if not temperature:
         return f"a stated uncertainty of {total:.3g} % (k=2)"
-    return f"an uncertainty of {total:.3g} % (k=2), {budget.temperature_percent:.3g} % of it from the temperature"
+    parts = format_percent(total), format_percent(temperature)
+    return f"an uncertainty of {parts[0]} (k=2), {parts[1]} of it from the temperature"
 
 
 def _refuse(coverage: Coverage, found: Answer, within: float, reason: str, text: str) -> Refusal:
-    temperature = found.budget.temperature_percent
+    temperature = found.temperature_percent
     if temperature > within:
         return Refusal(found.temperature, reason, f"{text} The temperature alone makes more: state it more closely.")
     others = [c for c in coverage.covering(found.temperature) if c.key != found.correlation.key]

@@ -14,6 +14,10 @@ from registry.readings import Reading
 __all__ = ["Value", "find_target_unit"]
 
 
+COARSE_PERCENT = 20.0
+"""Percent from which a line and an exponential part by a tenth of it."""
+
+
 class Value:
     """A value at a temperature: an answer of a correlation, or an estimate.
 
@@ -91,6 +95,24 @@ class Value:
     def percent_per_kelvin(self) -> float:
         """How steep the curve is there, percent of the value per kelvin."""
         return 100.0 * self.log_rate
+
+    @property
+    def temperature_percent(self) -> float:
+        """What the uncertainty of the temperature asked does to the value, by the slope.
+
+        Percent at coverage factor 2; 0 if the temperature is exact.
+        """
+        spread = self.reading.expanded_uncertainty
+        return 100.0 * abs(self.log_rate) * spread if spread else 0.0
+
+    def caution_spread(self) -> tuple[str, ...]:
+        """A sentence where the slope alone is too coarse to carry the uncertainty of the temperature."""
+        if not COARSE_PERCENT < self.temperature_percent < math.inf:
+            return ()
+        return (
+            f"The uncertainty of the temperature makes {self.temperature_percent:.3g} % by the slope alone; "
+            "over so wide a range the curve bends, and up and down are not alike.",
+        )
 
     @property
     def factor_per_10_kelvin(self) -> float:

@@ -108,7 +108,8 @@ def explain_choice(coverage: Coverage, kelvin: float) -> str:
     covering = coverage.covering(kelvin)
     others = [c for c in covering if c is not best]
     if not others:
-        return "It is the only accepted correlation that covers this temperature."
+        kind = "accepted correlation" if best.entry.standing == "accepted" else "correlation, drafts among them,"
+        return f"It is the only {kind} that covers this temperature."
     dropped = [c for c in others if _preference_over(coverage, c, covering)]
     left = [c for c in others if c not in dropped]
     set_aside = join_names((c.key for c in dropped), "and") if dropped else ""

@@ -172,7 +172,9 @@ class Volumes:
             return Choice(NEGLECTED, "it is a solid")
         value, candidate = self.density.value_at(kelvin)
         if candidate is not None and value > 0.0:
-            return Choice(f"recorded: {candidate.key}")
+            # on trial where drafts were asked for
+            mark = "" if candidate.entry.standing == "accepted" else f" ({candidate.entry.standing})"
+            return Choice(f"recorded: {candidate.key}{mark}")
         recorded = "covers this temperature" if self.density.answering else "is recorded"
         reason = f"no saturated liquid density {recorded}"
         if self.missing:

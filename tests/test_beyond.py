@@ -118,6 +118,40 @@ def test_where_its_form_has_no_value_nothing_is_extrapolated():
     assert np.isnan(answer_many(coverage, np.array([10.0, 39.0, 41.0]), conditions).values).all()
 
 
+def test_the_distance_that_a_refusal_tells_is_enough(published):
+    """216.15 less 210 is a little more than 6.15 in doubles, and still `--beyond 6.15K` reaches it, as told."""
+    with pytest.raises(Refused) as caught:
+        published.lookup("ethanol", 210.0, beyond=5.0)
+    assert "is 6.15 K away" in caught.value.refusal.explanation
+    assert published.lookup("ethanol", 210.0, beyond=6.15).mark == "beyond"
+    assert published.lookup("ethanol", [210.0], beyond=6.15).marks.tolist() == ["beyond"]
+    with pytest.raises(Refused, match=r"--beyond 6\.14999K does not reach it"):
+        published.lookup("ethanol", 210.0, beyond=6.14999)
+
+
+def test_what_is_no_temperature_is_a_refusal_among_many(published):
+    """A batch tells of a missing number in words, whatever was asked for by name."""
+    for asked in ({}, {"beyond": 5.0}, {"within": 1.0, "estimate": "lee-kesler"}):
+        batch = published.lookup("water", [float("nan"), 300.0], **asked)
+        assert batch.refused.tolist() == [True, False]
+        assert batch.refusal(0).reason == "not-a-temperature"
+
+
+@pytest.mark.parametrize(
+    ("asked", "why"),
+    [
+        ({"beyond": "5K"}, "beyond '5K' is no number; a number of kelvin is allowed."),
+        ({"within": "2%"}, "within '2%' is no number; a number of percent is allowed."),
+        ({"estimate": 3}, "There is no estimation method '3'"),
+    ],
+)
+def test_what_is_asked_for_by_name_has_its_kind(asked, why, published):
+    """A text for a number is refused in words, not by Python."""
+    with pytest.raises(BadInput) as caught:
+        published.lookup("ethanol", 300.0, **asked)
+    assert str(caught.value).startswith(why)
+
+
 @pytest.mark.parametrize("beyond", [-1.0, float("nan"), float("inf")])
 def test_no_odd_distance(beyond, published):
     """A distance is a number of kelvin above zero."""

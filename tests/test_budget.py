@@ -10,13 +10,15 @@ import pytest
 from inventane import COMPOUND, invent_correlation
 from shelf import CORRELATIONS, MASSES
 
-from registry.answering import answer_one
+from registry.answering import answer_many, answer_one
+from registry.conditions import Conditions
 from registry.coverage import build_coverage
 from registry.curve import Curve
 from registry.dossier import Dossier
+from registry.errors import Refused
 from registry.forms.catalogue import FORMS
 from registry.numerals import last_digit_unit, to_float
-from registry.readings import Reading
+from registry.readings import Reading, parse_reading
 from registry.rounding import Rounding
 from registry.uncertainty import parse_uncertainty
 
@@ -150,3 +152,51 @@ def test_nothing_stated_gives_no_sum(published):
     # 5.71 % a kelvin: test_readme's tour shows the same slope
     assert budget.temperature_percent == pytest.approx(0.571, abs=5e-4)
     assert budget.stated_percent is budget.expanded_percent is None
+
+
+def test_rounding_makes_no_more_than_it_can(published):
+    """Twice the standard uncertainty of one evenly spread digit is 1.15 of the most it can be: told is the most."""
+    for compound, prop, kelvin in (("water", "melting-pressure", 270.0), ("benzene", "vapor-pressure", 300.0)):
+        budget = published.lookup(
+            compound, kelvin, property=prop, phase="ice Ih" if compound == "water" else None
+        ).budget
+        assert 0.0 < budget.rounding_percent <= budget.rounding_bound_percent
+    ice = next(
+        c for c in published.coverage("water", property="melting-pressure").accepted if c.record.phase == "ice Ih"
+    )
+    # here one coefficient makes nearly all of it
+    assert 2.0 * ice.rounding.standards(AT([270.0]))[0] > ice.rounding.bounds(AT([270.0]))[0]
+    assert ice.rounding is ice.rounding
+
+
+def test_a_wide_temperature_is_told_to_be_carried_coarsely(published):
+    """5 K of water at 25 degC are 30 % by the slope, 34 % up by IAPWS tables (3.170 and 4.247 kPa); 0.1 K are fine."""
+    wide = published.lookup("water", parse_reading("25+/-5C"))
+    assert wide.temperature_percent == pytest.approx(29.8, abs=0.1)
+    assert published.lookup("water", 303.15).value / wide.value == pytest.approx(4.247 / 3.170, abs=1e-3)
+    assert any("makes 29.8 % by the slope alone" in caution for caution in wide.cautions)
+    assert not any("slope alone" in c for c in published.lookup("water", parse_reading("25+/-0.1C")).cautions)
+    for asked in ({"beyond": 10.0}, {"estimate": "lee-kesler"}):
+        found = published.lookup("ethanol", parse_reading("210+/-5K"), **asked)
+        assert any("slope alone" in caution for caution in found.cautions)
+
+
+def test_the_very_uncertainty_that_is_stated_is_within():
+    """Scalar and array draw the line at the same bit, for an absolute uncertainty with a coverage factor."""
+    entry = invent_correlation(0, 280, 120, "measured", "40 Pa (k=3)", "seen", "accepted")
+    coverage = build_coverage(Dossier(COMPOUND, (entry,)), "vapor-pressure")
+    for t in np.linspace(281.0, 399.0, 200).tolist():
+        stated = answer_one(coverage, t).budget.expanded_percent
+        assert answer_one(coverage, t, None, Conditions(stated)).value > 0.0
+        assert not answer_many(coverage, AT([t]), Conditions(stated)).refused[0]
+        assert answer_many(coverage, AT([t]), Conditions(np.nextafter(stated, 0.0))).refused[0]
+
+
+def test_a_tolerance_looks_at_no_digits(scenario, monkeypatch):
+    """What --within compares is the budget's sum, found without the curves of every digit, which cost a hundredfold."""
+    answer = scenario.lookup("brindovane", parse_reading("300+/-0.1K (k=1)"))
+    assert answer.expanded_percent == answer.budget.expanded_percent
+    monkeypatch.setattr("registry.budget.make_budget", None)
+    with pytest.raises(Refused):
+        scenario.lookup("brindovane", parse_reading("301+/-0.1K (k=1)"), within=0.1)
+    assert scenario.lookup("brindovane", 301.0, within=5.0).value > 0.0

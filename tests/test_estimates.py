@@ -132,3 +132,26 @@ def test_missing_constants_are_named(published):
         published.lookup("neon", 30.0, estimate="lee-kesler")
     with pytest.raises(BadInput, match="There is no estimation method 'riedel'"):
         published.lookup("water", 300.0, estimate="riedel")
+
+
+def test_far_below_the_critical_temperature_the_typical_error_says_nothing(published):
+    """Helium-4 has no triple point to stop at; below half the critical temperature (5.1953 K) the estimate says so."""
+    far = published.lookup("helium-4", 0.5, estimate="lee-kesler")
+    assert far.mark == "estimate"
+    assert "It lies at 0.0962 of the critical temperature: below 0.5 the typical error says nothing." in far.cautions
+    near = published.lookup("acetylene", 250.0, estimate="lee-kesler")
+    assert not any("says nothing" in caution for caution in near.cautions)
+
+
+def test_across_a_phase_limit_no_constant_is_missed(scenario):
+    """Corvexane (invented) has no acentric factor: where there is no liquid the refusal says that, and only that."""
+    for kelvin, reason in ((100.0, "below-triple"), (400.0, "above-critical")):
+        with pytest.raises(Refused) as caught:
+            scenario.lookup("corvexane", kelvin, estimate="lee-kesler")
+        assert caught.value.refusal.reason == reason
+        batch = scenario.lookup("corvexane", [kelvin, 300.0], estimate="lee-kesler")
+        assert batch.refused.tolist() == [True, False]
+        assert batch.refusal(0) == caught.value.refusal
+    # not a number of kelvin: told as such
+    with pytest.raises(BadInput, match="is no temperature"):
+        scenario.lookup("corvexane", float("inf"), estimate="lee-kesler")

@@ -58,3 +58,51 @@ def test_json_says_how_a_temperature_was_read(published_path, capsys):
     assert parts["temperature_percent"] == pytest.approx(0.357, abs=5e-4)
     assert parts["expanded_percent"] == pytest.approx((0.025**2 + parts["temperature_percent"] ** 2) ** 0.5, rel=1e-12)
     assert 0.0 < parts["rounding_percent"] < parts["rounding_bound_percent"] < 1e-9
+
+
+def test_a_value_of_zero_is_told_with_all_that_stands_behind_it(published_path, capsys):
+    """Where a percent of the value says nothing, words say so, and JSON has null."""
+    asked = ("lookup", "hydrogen-normal", "14.025+/-1K", "-p", "melting-pressure", "--library", str(published_path))
+    found, out = _run(capsys, *asked, "--why")
+    plain = " ".join(out.split())
+    assert found == 0
+    assert "14.025+/-1K 14.025 K 0 Pa none infinite none infinite seen" in plain
+    assert "leaves open what no percent can say here" in plain
+    assert "by what +0.0056 K make (no percent: one of both values is zero or missing) were it IPTS-68" in plain
+    assert "nan" not in plain
+    assert "inf " not in plain
+    found, out = _run(capsys, *asked, "--json")
+    (answer,) = json.loads(out)["answers"]
+    assert found == 0
+    assert answer["scale_effects"][0]["percent"] is None
+    found, out = _run(capsys, "lookup", "hydrogen-normal", "14.025K", *asked[3:])
+    assert "0 Pa none infinite none seen" in " ".join(out.split())
+
+
+def test_the_uncertainty_of_a_temperature_reaches_an_estimate(published_path, capsys):
+    """An estimate states none of its own, but the slope carries that of the temperature: 3.12 % per kelvin."""
+    asked = ("lookup", "acetylene", "250+/-0.1K", "--estimate", "ambrose-walton", "--library", str(published_path))
+    _, out = _run(capsys, *asked)
+    assert "kPa (ESTIMATE) none 0.312 % none +3.12 %" in " ".join(out.split())
+    _, out = _run(capsys, *asked, "--json")
+    (answer,) = json.loads(out)["answers"]
+    assert answer["uncertainty"]["temperature_percent"] == pytest.approx(0.1 * answer["percent_per_kelvin"], rel=1e-12)
+
+
+def test_a_scale_is_told_where_its_shift_is_nothing(published_path, capsys):
+    """IPTS-68 and ITS-90 agree at 0 degC; what was asked for is still told."""
+    place = str(published_path)
+    _, out = _run(capsys, "lookup", "water", "0C (IPTS-68)", "--json", "--library", place)
+    (answer,) = json.loads(out)["answers"]
+    assert (answer["temperature_scale"], answer["scale_shift_K"]) == ("IPTS-68", 0.0)
+
+
+def test_a_draft_is_not_called_accepted(scenario_path, capsys):
+    """The sentence of the choice says that drafts were let in; a slope carries the mark in JSON too."""
+    place = str(scenario_path)
+    _, out = _run(capsys, "lookup", "brindovane", "330K", "--drafts", "--json", "--library", place)
+    (answer,) = json.loads(out)["answers"]
+    told = "It is the only correlation, drafts among them, that covers this temperature."
+    assert answer["chosen_because"] == told
+    _, out = _run(capsys, "slope", "brindovane", "330K", "--drafts", "--json", "--library", place)
+    assert json.loads(out)["slopes"][0]["mark"] == "draft"

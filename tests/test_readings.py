@@ -18,10 +18,18 @@ UNDERSTOOD = (
     ("\u221240+/\u22121 °C", Reading(233.15, 1.0)),
     ("77+/-0.9F", Reading(298.15, 0.5)),
     ("373.15K (ITS-90)", Reading(373.15)),
+    ("273.16+/-1K (ice-point-273.16)", Reading(273.16 - 0.01, 1.0, None, "ice-point-273.16", 273.16 - 0.01 - 273.16)),
 )
 
 REFUSED = (
-    ("25+/-0.1", "a temperature unit is one of K, degC, degF, degR."),
+    ("25+/-0.1", f"the unit stands behind the uncertainty, {EXAMPLE}."),
+    ("25 degC +/- 0.1", f"the unit stands behind the uncertainty, {EXAMPLE}."),
+    ("25+/-1C (k=2)(k=3)", "an uncertainty has one coverage factor, such as (k=2)."),
+    ("25C (IPTS-68) (IPTS-48)", "a temperature is read on one scale, such as 100 degC (IPTS-68)."),
+    ("25C (kelvin)", "what stands in brackets is a temperature scale (ITS-90, IPTS-68, IPTS-48 or ice-point-273.16) "
+     "or a coverage factor (k=2)."),
+    ("100 degC (ice-point-273.16)", "ice-point-273.16 is about kelvin; degC and degF count from the ice point itself: "
+     "leave the scale out."),
     ("25+/-xK", f"an uncertainty is a number above zero, {EXAMPLE}."),
     ("25+/-0K", f"an uncertainty is a number above zero, {EXAMPLE}."),
     ("25+/--1K", f"an uncertainty is a number above zero, {EXAMPLE}."),
@@ -66,3 +74,17 @@ def test_a_number_on_an_older_scale_becomes_the_its90_temperature(celsius, scale
     assert reading.shift == pytest.approx(difference, abs=digits + 1e-4)
     assert reading.kelvin == pytest.approx(celsius + 273.15 + reading.shift, abs=1e-12)
     assert parse_reading(f"{celsius}C ({scale.lower().replace('-', ' ')})") == reading
+
+
+def test_a_long_text_is_not_searched_for_brackets():
+    """Blanks before a bracket cost their square: a text longer than any temperature is refused first."""
+    assert parse_reading("25+/-1C" + " " * 150 + "(k=2)") == Reading(298.15, 1.0, 2.0)
+    with pytest.raises(BadQuantity, match="a temperature is a number with a unit"):
+        parse_reading("25+/-1C" + " " * 200 + "(k=2)")
+
+
+def test_an_uncertainty_is_brought_to_one_coverage_factor():
+    """One standard deviation of 0.1 K is 0.2 K at coverage factor 2; without a factor the number counts as it is."""
+    assert parse_reading("25+/-0.1C (k=1)").expanded_uncertainty == pytest.approx(0.2, rel=1e-15)
+    assert parse_reading("25+/-0.1C").expanded_uncertainty == 0.1
+    assert parse_reading("25C").expanded_uncertainty == 0.0

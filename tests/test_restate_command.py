@@ -82,7 +82,7 @@ def test_json_has_the_promised_shape(run):
         "correlation", "revision", "standing", "compound", "property", "phase", "form", "equation", "coefficients",
         "temperature_unit", "value_unit", "window_min", "window_max", "window_unit", "temperature_scale", "remark",
         "molar_mass_g_per_mol", "check", "largest_difference_by_digits", "largest_difference_in_doubles", "recorded",
-        "source", "position", "as_of",
+        "obtained", "source", "cautions", "position", "as_of",
     ]  # fmt: skip
     assert document["form"] == "antoine-log10"
     # 1.8 x 1730.63, and 1.8 x 233.426 less 32
@@ -92,6 +92,20 @@ def test_json_has_the_promised_shape(run):
     assert document["recorded"]["coefficients"] == {"A": "8.07131", "B": "1730.63", "C": "233.426"}
     assert document["largest_difference_by_digits"] <= 1e-12
     assert document["largest_difference_in_doubles"] <= 1e-12
+
+
+def test_what_is_not_accepted_or_from_memory_is_told(run, scenario_path):
+    """Coefficients leave for another tool: what the record says of them goes along, as text and in JSON."""
+    words = ("dunmarane-august-slip", "--log", "ln", "--library", str(scenario_path))
+    _, out, _ = run(*words)
+    assert out.rstrip().endswith("caution    The correlation is declined, not accepted.")
+    _, out, _ = run(*words, "--json")
+    assert json.loads(out)["cautions"] == ["The correlation is declined, not accepted."]
+    _, out, _ = run("argon-density-tegeler-1999", "--value", "mol/dm3", "--json")
+    found = json.loads(out)
+    assert (found["obtained"], found["cautions"]) == ("memory", ["The coefficients are from memory."])
+    _, out, _ = run("water-antoine-1-100", "--log", "ln")
+    assert "caution" not in out
 
 
 def test_no_line_is_wider_than_the_screen(run):

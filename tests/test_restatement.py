@@ -537,3 +537,17 @@ def test_from_fahrenheit_and_rankine_to_kelvin():
     moved = restate(fahrenheit, temperature_unit="K").restated
     assert (moved.window_min, moved.window_max) == ("273.15", "55967/180")
     assert_same(restate(record, log="log10", temperature_unit="degF"), points, true, 1.0)
+
+
+def test_a_scale_about_the_zero_of_kelvin_keeps_its_zero():
+    """373.16 K on an ice point of 273.16 K are 100 degC: 273.15 less would be 0.01 K off, so degC is refused."""
+    numbers = {"A": "10.2", "B": "1700", "C": "-40"}
+    record = dataclasses.replace(
+        CORRELATIONS["ethanol-antoine-low"], coefficients=numbers, temperature_unit="K", window_min="280",
+        window_max="350", window_unit="K", temperature_scale="ice-point-273.16",
+    )  # fmt: skip
+    for unit in ("degC", "degF"):
+        with pytest.raises(BadInput, match=f"in {unit}: it stands on ice-point-273.16, .* the zero of K is allowed"):
+            restate(record, temperature_unit=unit)
+    assert restate(record, temperature_unit="degR").restated.coefficients["C"] == "-72"
+    assert restate(dataclasses.replace(record, temperature_scale="IPTS-68"), temperature_unit="degC").standing == ""

@@ -451,3 +451,31 @@ def test_a_slope_follows_its_library(published):
         published.slope("water", -1.0)
     with pytest.raises(Refused):
         published.slope("water", 700.0)
+
+
+def test_a_draft_behind_a_slope_is_told(made):
+    """Invented: where drafts are asked for, a volume or an enthalpy that rests on one says so."""
+    density = {"Tc": "500", "c0": "300", "n1": "800", "t1": "0.35"}
+    heat = {"H1": "38", "T1": "350", "Tc": "500", "n": "0.38"}
+    line = curve("tin-vapor", "vapor-pressure", "august-log10", INVENTED, "Pa", "250", "400")
+    with made(line) as library:
+        for record in (
+            curve("tin-density", "saturated-liquid-density", "density-power", density, "kg/m3", "250", "450"),
+            curve("tin-heat", "enthalpy-of-vaporization", "watson", heat, "kJ/mol", "250", "450"),
+        ):
+            library.record(record, author="ann", reason="for a test")
+        plain, drafts = library.slope("tin", 300.0), library.slope("tin", 300.0, drafts=True)
+        assert (plain.condensed.method, plain.correlated) == ("neglected", None)
+        assert drafts.answer.mark == ""
+        assert drafts.condensed.method == "recorded: tin-density (draft)"
+        assert drafts.correlated.standing == "draft"
+
+
+def test_slopes_of_drafts_are_marked(scenario):
+    """A batch marks what a scalar marks, and nothing else."""
+    kelvin = np.array([[280.0, 330.0], [415.0, 2000.0]])
+    batch = scenario.slope("brindovane", kelvin, drafts=True)
+    assert batch.marks.tolist() == [["", "draft"], ["", ""]]
+    assert batch.refused.tolist() == [[False, False], [False, True]]
+    assert scenario.slope("brindovane", 330.0, drafts=True).answer.mark == "draft"
+    assert set(scenario.slope("brindovane", kelvin).marks.ravel().tolist()) == {""}

@@ -56,3 +56,10 @@ def test_the_shift_is_in_the_value(key):
     (effect,) = effects
     assert curve.value(kelvin) == pytest.approx(own.value(kelvin) * (1.0 + effect.percent / 100.0), rel=1e-12)
     assert own.value(kelvin + effect.shift) == pytest.approx(curve.value(kelvin), rel=1e-12)
+
+
+def test_where_the_value_is_zero_no_percent_tells_the_effect():
+    """Kechin's melting line of hydrogen starts at zero pressure, 14.025 K (F. Datchi et al. 2000)."""
+    (effect,) = _effects("hydrogen-normal-melting-datchi-2000", 14.025)
+    assert (effect.scale, effect.percent) == ("IPTS-68", None)
+    assert effect.shift == pytest.approx(0.0056, abs=1e-3)

@@ -15,7 +15,7 @@ KEYS = {
     "temperature_K", "pressure", "slope_per_K", "unit", "pressure_Pa", "slope_Pa_per_K", "percent_per_kelvin",
     "enthalpy", "ideal_enthalpy", "energy_unit", "enthalpy_J_per_mol", "ideal_enthalpy_J_per_mol",
     "enthalpy_per_volume_J_per_m3", "method", "carried_from_K", "vapour", "condensed", "compressibility_change",
-    "fixed_points", "correlated", "correlation", "revision", "standing", "cautions",
+    "fixed_points", "correlated", "correlation", "revision", "standing", "mark", "cautions",
 }  # fmt: skip
 
 WATER = """\
@@ -156,6 +156,17 @@ def test_json_has_the_promised_shape(ask):
     assert high["method"] == "Watson from 530.9 K"
     assert high["carried_from_K"] == pytest.approx(530.94, abs=0.005)
     assert [refusal["reason"] for refusal in document["refusals"]] == ["above-critical"]
+
+
+def test_json_says_how_a_temperature_was_read(ask):
+    """Scale, shift and uncertainty stand beside a slope as beside a value."""
+    _, out, _ = ask("water", "100+/-0.1C (k=2) (IPTS-68)", "--json")
+    found = json.loads(out)["slopes"][0]
+    assert set(found) - KEYS == {
+        "temperature_scale", "scale_shift_K", "temperature_uncertainty_K", "temperature_coverage_factor",
+    }  # fmt: skip
+    assert found["temperature_scale"] == "IPTS-68"
+    assert found["scale_shift_K"] == pytest.approx(-0.0256, abs=1e-4)
 
 
 def test_json_of_a_melting_line_has_nulls(ask):

@@ -20,6 +20,7 @@ def read_percent(option: str, text: str) -> float:
     2.0
     """
     allowed = f"{option} takes a percentage above zero, such as 2%."
+    text = text.replace("\u2212", "-")  # as negative temperatures are let through
     number, found, rest = text.strip().partition("%")
     try:
         percent = float(parse_number(number.strip()))
@@ -43,6 +44,7 @@ def read_difference(option: str, text: str) -> float:
     """
     allowed = f"{option} takes a difference of temperature above zero, such as 5K; its units are "
     allowed += f"{', '.join(unit_names('temperature'))}."
+    text = text.replace("\u2212", "-")
     match = _DIFFERENCE.fullmatch(text.strip())
     try:
         if match is None:

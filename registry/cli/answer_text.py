@@ -2,21 +2,25 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
-from typing import Protocol
+from typing import TYPE_CHECKING, Protocol
 
 from registry.answers import Answer
 from registry.cli.documents import value_in
 from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
-from registry.display import format_number, format_plain
+from registry.display import format_number, format_percent, format_plain
 from registry.grounds import list_grounds
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import Unit
 from registry.refusals import Refusal
 from registry.values import Value
+
+if TYPE_CHECKING:
+    from registry.scale_effects import ScaleEffect
 
 __all__ = ["print_answers", "print_story", "print_verdicts"]
 
@@ -67,8 +71,8 @@ def _print_values(values: list[tuple[Asked, Value]], to: Unit | None) -> None:
         value, unit = value_in(found, to)
         rows.append([
             asked.text, f"{format_plain(found.temperature)} K", format_number(value), unit.name + _mark(found),
-            *_word_uncertainty(found, spread), f"{found.percent_per_kelvin:+.3g} %",
-            *([] if spread else [f"x {found.factor_per_10_kelvin:.4g}"]),
+            *_word_uncertainty(found, spread), format_percent(found.percent_per_kelvin, "+"),
+            *([] if spread else [_word_factor(found)]),
             found.correlation.obtained if isinstance(found, Answer) else "none", found.origin,
         ])  # fmt: skip
     parts = ["stated", "by T", "in all", "per K"] if spread else ["stated", "per K", "per 10 K"]
@@ -79,15 +83,19 @@ def _print_values(values: list[tuple[Asked, Value]], to: Unit | None) -> None:
 def _word_uncertainty(found: Value, spread: bool) -> list[str]:
     """What is stated; with `spread` also what the temperature adds, and both together."""
     if not isinstance(found, Answer):
-        return ["none", "", ""] if spread else ["none"]
+        return ["none", format_percent(found.temperature_percent), "none"] if spread else ["none"]
     stated, piece = found.uncertainty_percent, found.piece
     factor = f" (k={piece.factor:g})" if piece and piece.factor else ""
     words = [f"{stated:.3g} %{factor}" if stated is not None else "none"]
     if spread:
-        budget = found.budget
-        total = budget.expanded_percent
-        words += [f"{budget.temperature_percent:.3g} %", "none" if total is None else f"{total:.3g} %"]
+        total = found.expanded_percent
+        words += [format_percent(found.temperature_percent), "none" if total is None else format_percent(total)]
     return words
+
+
+def _word_factor(found: Value) -> str:
+    factor = found.factor_per_10_kelvin
+    return f"x {factor:.4g}" if math.isfinite(factor) and math.isfinite(found.log_rate) else "none"
 
 
 def _mark(found: Value) -> str:
@@ -117,8 +125,11 @@ def print_story(told: Sequence[tuple[Typed, Answer]], why: bool) -> None:
 def _word_ground(answer: Answer) -> list[tuple[str, str]]:
     """What the printed digits leave open, and what the temperature scale does."""
     budget = answer.budget
-    rounding = f"{budget.rounding_percent:.2g} % (k=2), {budget.rounding_bound_percent:.2g} % at most"
-    digits = rounding if budget.rounding_bound_percent else "nothing: every coefficient is exact"
+    digits = f"{budget.rounding_percent:.2g} % (k=2), {budget.rounding_bound_percent:.2g} % at most"
+    if not budget.rounding_bound_percent:
+        digits = "nothing: every coefficient is exact"
+    elif not math.isfinite(budget.rounding_bound_percent):
+        digits = "what no percent can say here"
     return [
         ("digits", f"The rounding of the printed coefficients leaves open {digits}."),
         ("scale", _word_scale(answer)),
@@ -130,13 +141,19 @@ def _word_scale(answer: Answer) -> str:
     if not effects:
         return f"{name}." if name == "ITS-90" else f"{name}; no published conversion reaches this temperature."
     if effects[0].supposed:
-        listed = join_names([f"by {e.percent:+.2g} % were it {e.scale}" for e in effects], "or")
+        listed = join_names([f"{_word_change(e)} were it {e.scale}" for e in effects], "or")
         return f"Not stated; the value would change {listed}."
     effect = effects[0]
     return (
-        f"{name}, whose number there is {effect.shift:+.2g} K from ITS-90: that changes the value by "
-        f"{effect.percent:+.2g} %, and is taken into account."
+        f"{name}, whose number there is {effect.shift:+.2g} K from ITS-90: that changes the value "
+        f"{_word_change(effect)}, and is taken into account."
     )
+
+
+def _word_change(effect: ScaleEffect) -> str:
+    if effect.percent is None:
+        return f"by what {effect.shift:+.2g} K make (no percent: one of both values is zero or missing)"
+    return f"by {effect.percent:+.2g} %"
 
 
 def print_verdicts(answers: Sequence[tuple[Typed, Answer]]) -> None:

@@ -13,6 +13,7 @@ from registry.display import suit_unit
 from registry.dossier import Entry
 from registry.limits import Limits
 from registry.quantities import UNITS, Unit, convert
+from registry.readings import Reading
 from registry.records import Record
 from registry.refusals import Refusal
 from registry.store.history import Change
@@ -36,6 +37,7 @@ __all__ = [
     "describe_fields",
     "describe_number",
     "describe_preview",
+    "describe_reading",
     "describe_refusal",
     "describe_value",
     "value_in",
@@ -62,14 +64,23 @@ def describe_value(found: Value, to: Unit | None) -> dict[str, Any]:
 def _describe_head(found: Value, to: Unit | None) -> dict[str, Any]:
     """What every value has, and how its temperature was read."""
     value, unit = value_in(found, to)
-    reading = found.reading
-    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if reading.shift else {}
+    return {
+        "temperature_K": found.temperature,
+        **describe_reading(found.reading),
+        "value": value,
+        "unit": unit.name,
+        "value_SI": found.value,
+        "mark": found.mark or None,
+    }
+
+
+def describe_reading(reading: Reading) -> dict[str, Any]:
+    """How a temperature was read, where there is more to it than its number."""
+    scaled = reading.scale != "ITS-90"
+    asked = {"temperature_scale": reading.scale, "scale_shift_K": reading.shift} if scaled else {}
     if reading.uncertainty:
         asked |= {"temperature_uncertainty_K": reading.uncertainty, "temperature_coverage_factor": reading.factor}
-    return {
-        "temperature_K": found.temperature, **asked, "value": value, "unit": unit.name, "value_SI": found.value,
-        "mark": found.mark or None,
-    }  # fmt: skip
+    return asked
 
 
 def describe_answer(answer: Answer, to: Unit | None) -> dict[str, Any]:
@@ -146,6 +157,11 @@ def _describe_estimate(estimate: Estimate) -> dict[str, Any]:
         ],
         "reduced_temperature": estimate.reduced_temperature,
         "uncertainty_percent": None,
+        "uncertainty": {
+            "stated_percent": None, "stated_coverage_factor": None,
+            "temperature_percent": estimate.temperature_percent, "expanded_percent": None, "rounding_percent": None,
+            "rounding_bound_percent": None, "coverage_factor": COVERAGE_FACTOR,
+        },
         "percent_per_kelvin": estimate.percent_per_kelvin,
         "factor_per_10_K": estimate.factor_per_10_kelvin,
         "cautions": list(estimate.cautions),

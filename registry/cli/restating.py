@@ -87,8 +87,19 @@ def _print_restatement(found: Restatement, citation: str, label: str) -> None:
                 f"from {found.key}, revision {found.revision}, {found.standing}, which has {record.form}, "
                 f"T in {record.temperature_unit}, value in {record.value_unit}; nothing was recorded",
             ),
+            *(("caution", caution) for caution in _find_cautions(found)),
         ]
     )
+
+
+def _find_cautions(found: Restatement) -> list[str]:
+    """What to know before the numbers go into another tool."""
+    cautions = []
+    if found.standing != "accepted":
+        cautions.append(f"The correlation is {found.standing}, not accepted.")
+    if found.recorded.obtained == "memory":
+        cautions.append("The coefficients are from memory.")
+    return cautions
 
 
 def _print_coefficients(found: Restatement) -> None:
@@ -156,5 +167,7 @@ def _describe(found: Restatement, citation: str) -> dict[str, Any]:
             "temperature_unit": record.temperature_unit,
             "value_unit": record.value_unit,
         },
+        "obtained": record.obtained,
         "source": {"key": record.source, "citation": citation, "locator": record.locator},
+        "cautions": _find_cautions(found),
     }

@@ -6,9 +6,10 @@ from collections.abc import Sequence
 from typing import Any
 
 from registry.boundary import PhaseBoundary
+from registry.cli.documents import describe_reading
 from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
-from registry.display import format_number, format_plain, suit_unit
+from registry.display import format_number, format_percent, format_plain, suit_unit
 from registry.quantities import UNITS, Unit, convert
 from registry.saturation import Saturation
 from registry.volumes import Choice
@@ -86,7 +87,7 @@ def _start(asked: Asked, one: Saturation, unit: Unit) -> list[str]:
     pressure, slope = (convert(value, _SI_PRESSURE, unit) for value in (one.pressure, one.slope))
     return [
         asked.text, f"{format_plain(one.temperature)} K", format_number(pressure), format_number(slope),
-        f"{one.percent_per_kelvin:+.3g} %",
+        format_percent(one.percent_per_kelvin, "+"),
     ]  # fmt: skip
 
 
@@ -163,7 +164,8 @@ def _word_correlated(one: Saturation, energy: Unit, where: str) -> str:
         return ""
     value, percent = _energy(one, other.value, energy), other.difference_percent
     side = "above" if percent > 0 else "below"
-    return f"{other.key} gives {value} {energy.name}{where}; dH lies {abs(percent):.2g} % {side}"
+    mark = "" if other.standing == "accepted" else f" ({other.standing.upper()})"
+    return f"{other.key}{mark} gives {value} {energy.name}{where}; dH lies {abs(percent):.2g} % {side}"
 
 
 def describe_saturation(one: Saturation, to: Unit | None, energy: Unit) -> dict[str, Any]:
@@ -176,6 +178,7 @@ def describe_saturation(one: Saturation, to: Unit | None, energy: Unit) -> dict[
 
     return {
         "temperature_K": one.temperature,
+        **describe_reading(one.answer.reading),
         "pressure": convert(one.pressure, _SI_PRESSURE, unit),
         "slope_per_K": convert(one.slope, _SI_PRESSURE, unit),
         "unit": unit.name,
@@ -207,11 +210,13 @@ def describe_saturation(one: Saturation, to: Unit | None, energy: Unit) -> dict[
         if other is None
         else {
             "correlation": other.key,
+            "standing": other.standing,
             "enthalpy_J_per_mol": other.value,
             "difference_percent": other.difference_percent,
         },
         "correlation": record.key,
         "revision": one.answer.revision,
         "standing": one.answer.standing,
+        "mark": one.answer.mark or None,
         "cautions": list(one.cautions),
     }

@@ -164,6 +164,7 @@ def restate(
     mass = _find_mass(correlation, units[0], molar_mass)
     change = _build_change(correlation, units, log or "", mass)
     statement = _apply(correlation, change, units)
+    _require_zero(correlation, change, units[1])
     return _word(correlation, statement, change, units, mass, temperature_unit is not None)
 
 
@@ -197,6 +198,15 @@ def _build_change(record: Correlation, units: tuple[Unit, Unit], log: str, mass:
     if mass:
         factor = factor * parse_number(mass) if old.per_molar_mass else factor / parse_number(mass)
     return Change(factor, old_t.factor, new_t.factor, old_t.shift, new_t.shift, log)
+
+
+def _require_zero(record: Correlation, change: Change, unit: Unit) -> None:
+    """A scale that only moves the zero of kelvin is no scale of degC: 0.01 K would be lost between them."""
+    if change.moves_zero and record.temperature_scale == "ice-point-273.16":
+        raise BadInput(
+            f"{record.key} cannot be restated in {unit.name}: it stands on {record.temperature_scale}, which is about "
+            f"the zero of kelvin; a unit with the zero of {record.temperature_unit} is allowed."
+        )
 
 
 def _apply(record: Correlation, change: Change, units: tuple[Unit, Unit]) -> Statement:
