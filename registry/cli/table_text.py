@@ -70,9 +70,7 @@ class _Form:
 
     def _between(self, line: Line) -> str:
         show, note = self._columns.show_temperature, line.note
-        seams = (
-            f"  -- seam at {show(s.temperature)}: {s.jump_percent:+.3g} %, {s.below} -> {s.above}\n" for s in note.seams
-        )
+        seams = (f"  -- seam {self._columns.word_seam(s)}, {s.below} -> {s.above}\n" for s in note.seams)
         gaps = (f"  -- gap from {show(g.low)} to {show(g.high)}: nothing may answer there\n" for g in note.gaps)
         return "".join([*gaps, *seams])
 

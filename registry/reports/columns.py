@@ -7,7 +7,8 @@ from collections.abc import Iterator
 from typing import NamedTuple
 
 from registry.conversion import Conversion
-from registry.display import format_plain, suit_unit
+from registry.coverage import Seam
+from registry.display import format_percent, format_plain, suit_unit
 from registry.notes import PLAIN, Note
 from registry.quantities import UNITS, Unit
 from registry.tabulation import Block, Table
@@ -107,6 +108,10 @@ class Columns:
         """A temperature, K, in the unit of the column and with it."""
         return f"{format_plain(round(self._to_temperature.many([kelvin])[0], 6))} {self.temperature.name}"
 
+    def word_seam(self, seam: Seam) -> str:
+        """Where a seam lies, and how far the value jumps there."""
+        return f"at {self.show_temperature(seam.temperature)}: {format_percent(seam.jump_percent, '+')}"
+
     def word_marks(self, note: Note) -> str:
         """The marks of a row in words."""
         if note is PLAIN:
@@ -114,7 +119,7 @@ class Columns:
         if note.reason:
             return f"refused: {note.reason}"
         plain = [mark for mark in note.marks if mark not in ("seam", "across-gap")]
-        seams = [f"seam at {self.show_temperature(s.temperature)}: {s.jump_percent:+.3g} %" for s in note.seams]
+        seams = [f"seam {self.word_seam(seam)}" for seam in note.seams]
         gaps = [f"across a gap, {self.show_temperature(g.low)} to {self.show_temperature(g.high)}" for g in note.gaps]
         return "; ".join([*plain, *seams, *gaps])
 

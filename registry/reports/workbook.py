@@ -136,8 +136,7 @@ def _tell_sources(columns: Columns, tally: Tally, caution: str) -> Iterator[tupl
     for used in tally.used:
         yield from _tell_used(used)
     for _, seam in tally.seams:
-        at = columns.show_temperature(seam.temperature)
-        yield "seam", f"at {at}: {seam.jump_percent:+.3g} %, {seam.below} -> {seam.above}"
+        yield "seam", f"{columns.word_seam(seam)}, {seam.below} -> {seam.above}"
     for refusal in tally.refusals:
         yield "refused", f"{tally.refused[refusal.reason]} rows, {refusal.reason}: {refusal.explanation}"
     yield "caution", caution
