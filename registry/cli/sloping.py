@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import (
+    REFUSED,
     AsOfOption,
     DraftsOption,
     EditionOption,
@@ -28,9 +29,6 @@ if TYPE_CHECKING:
     from registry.quantities import Unit
     from registry.refusals import Refusal
     from registry.saturation import Saturation
-
-REFUSED = 3
-"""Exit code when a temperature was refused."""
 
 
 def slope(

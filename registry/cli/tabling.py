@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Annotated, Any
 import typer
 
 from registry.cli.options import (
+    REFUSED,
     AsOfOption,
     DraftsOption,
     EditionOption,
@@ -28,9 +29,6 @@ if TYPE_CHECKING:
     from registry.reports.columns import Columns
     from registry.tabulation import Table
     from registry.tally import Tally
-
-REFUSED = 3
-"""Exit code when a row was refused."""
 
 FORMATS = ("text", "csv", "markdown", "json", "xlsx")
 SUFFIXES = {".txt": "text", ".csv": "csv", ".md": "markdown", ".markdown": "markdown", ".json": "json",
@@ -128,6 +126,8 @@ def _choose_format(given: str, output: Path | None, as_json: bool) -> str:
         if given == "xlsx":
             raise BadInput("A workbook is not for the screen. Say where to write it: --output table.xlsx.")
         return "json" if as_json else given or "text"
+    if str(output) == "-":
+        raise BadInput("--output - names no file. Leave --output out: the table goes to the screen or into a pipe.")
     found = given or SUFFIXES.get(output.suffix.lower(), "")
     if not found:
         raise BadInput(f"{output} ends in none of {', '.join(SUFFIXES)}. Name the format with --format.")

@@ -99,6 +99,8 @@ REQUESTS = (
      f"{{folder}}/table.dat ends in none of {ENDS}. Name the format with --format."),
     ("a file that is there", "published", (*STEPS, "--output", "{folder}/taken.csv"), 2,
      "{folder}/taken.csv is there already. Give another name, or --force to replace it."),
+    ("a dash for a file", "published", (*STEPS, "--output", "-", "--format", "csv"), 2,
+     "--output - names no file. Leave --output out: the table goes to the screen or into a pipe."),
     ("a folder for a file", "published", (*STEPS, "--output", "{folder}", "--format", "csv", "--force"), 2,
      "{folder} is no plain file. Give the name of a file."),
     ("a folder that is missing", "published", (*STEPS, "--output", "{folder}/none/table.csv"), 2,
