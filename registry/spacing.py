@@ -89,8 +89,9 @@ class Geometric:
     def numbers(self, start: int, stop: int, unit: Unit) -> list[float]:
         """As for `Even`; between the ends to double precision."""
         ends = {0: self.low, self.count - 1: self.high}
-        low, ratio, last = float(self.low), float(self.high / self.low), self.count - 1
-        places = [float(ends[i]) if i in ends else low * ratio ** (i / last) for i in range(start, stop)]
+        low, high, last = float(self.low), float(self.high), self.count - 1
+        # not by their ratio, which may be beyond every double
+        places = [low ** ((last - i) / last) * high ** (i / last) for i in range(start, stop)]
         found = Conversion(self.si, unit).many(places)
         for i in ends:
             if start <= i < stop:
