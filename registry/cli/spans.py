@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
 from fractions import Fraction
 
@@ -17,6 +18,8 @@ from registry.spacing import Spacing, space_pressures, space_temperatures
 from registry.tabulation import Table, build_table
 
 __all__ = ["Span", "read_span"]
+
+_NUMBER = re.compile(r"\s*[-+\u2212]?[\d.]+(?:[eE][-+\u2212]?\d+)?")
 
 _EXAMPLES = {"temperature": "298.15K or 25C", "pressure": "101.325kPa"}
 
@@ -107,14 +110,14 @@ def read_span(low: str, high: str, step: str, points: int | None, atmosphere: st
 
 
 def _find_dimension(low: str) -> str:
-    """What the lower end is; a temperature where it cannot be read."""
+    """What the lower end is by its unit; a temperature where it cannot be read."""
     return "pressure" if _is_of(low, "pressure") else "temperature"
 
 
 def _is_of(text: str, dimension: str) -> bool:
-    """True if a text can be read as a quantity of a dimension; a gauge pressure is a pressure."""
+    """True if the unit of a text is of a dimension, whatever its number; a gauge pressure is a pressure."""
     try:
-        read_quantity(text, dimension, _EXAMPLES[dimension])
+        find_unit(_NUMBER.sub("", text, count=1).strip(), dimension)
     except GaugePressure:
         return dimension == "pressure"
     except BadQuantity:

@@ -58,6 +58,8 @@ REQUESTS = (
      "'-5C' cannot be read: a step is greater than zero."),
     ("a step of pressure for temperatures", "published", (*WATER, "--step", "1bar"), 2,
      f"--step '1bar' is a pressure, and --from a temperature. {KINDS}"),
+    ("a pressure beyond every number", "published", ("water", "--from", "1e-400Pa", "--to", "1bar"), 2,
+     "'1e-400Pa' cannot be read: '1e-400' is beyond what a double can hold; a pressure looks like 101.325kPa."),
     ("a step of temperature for pressures", "published", ("water", "--from", "1bar", "--to", "9bar", "--step", "5K"), 2,
      f"--step '5K' is a temperature, and --from a pressure. {KINDS}"),
     ("a gauge step", "published", ("water", "--from", "1bar", "--to", "2bar", "--step", "1barg"), 2,
