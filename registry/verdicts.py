@@ -242,7 +242,9 @@ def _below_triple(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
     source = f"{limits.lower:.9g} K" + (f" ({point.record.source})" if point else "")
     text = f"{_kelvin(kelvin)} lies below the triple temperature of {name}, {source}: the stable phase is solid."
     advice = []
-    if any(entry.accepted for entry in coverage.dossier.for_property("sublimation-pressure")):
+    # a vapour pressure goes on as a sublimation pressure; a density or an enthalpy of vaporization as nothing
+    solid = coverage.dossier.for_property("sublimation-pressure") if coverage.property == "vapor-pressure" else ()
+    if any(entry.accepted for entry in solid):
         advice.append("Ask for --property sublimation-pressure.")
     metastable = [
         c.key for c in coverage.accepted

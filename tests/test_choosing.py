@@ -52,6 +52,16 @@ def test_the_end_of_the_margin_is_no_metastable_liquid(published):
     assert not any("metastable" in caution for caution in cautions)
 
 
+def test_a_density_below_the_triple_temperature_is_sent_nowhere(published):
+    """Ice has a sublimation pressure, but that is no density: nothing is advised in its place."""
+    with pytest.raises(Refused) as caught:
+        published.lookup("water", 240.0, property="saturated-liquid-density")
+    refusal = caught.value.refusal
+    assert refusal.reason == "below-triple"
+    assert "--property sublimation-pressure" not in refusal.explanation
+    assert refusal.explanation.endswith("`rangebook coverage water --property saturated-liquid-density` shows the map.")
+
+
 def test_only_a_stated_metastable_range_answers_below(published):
     """With metastable=True the records that state a range answer, marked; the others still do not."""
     answer = published.lookup("water", 250.0, metastable=True)

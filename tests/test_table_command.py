@@ -239,6 +239,16 @@ def test_one_correlation_says_so_in_every_format(run, tmp_path):
     assert told["note"].startswith(said)
 
 
+@pytest.mark.parametrize("minus", ["-", "\u2212"])
+def test_negative_ends_need_no_quotes(minus, run):
+    """-40C after --from is a temperature and no option; with the sign of a word processor too."""
+    code, out, err = run("ammonia", "--from", f"{minus}40C", "--to", f"{minus}4F", "--step", "9F", "--json")
+    rows = json.loads(out)["rows"]
+    assert (code, err) == (0, "")
+    # -40 degC is -40 degF; -4 degF is -20 degC
+    assert [row["temperature"] for row in rows] == [-40.0, -35.0, -30.0, -25.0, -20.0]
+
+
 def test_a_refused_table_names_its_reason_to_programs(run):
     """With --json the reason stands beside the message, as in a refusal of one temperature."""
     words = ("ethanol", "--from", "250K", "--to", "500K", "--step", "5K", "--one")
