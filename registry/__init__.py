@@ -11,15 +11,15 @@ from typing import TYPE_CHECKING, Any
 if TYPE_CHECKING:
     from registry.answers import Answer
     from registry.batches import Batch
-    from registry.boundary import SaturationBatch
+    from registry.equilibrium.boundary import SaturationBatch
+    from registry.equilibrium.saturation import Saturation
     from registry.errors import RangebookError, Refused
+    from registry.inverse.temperatures import Temperatures
     from registry.library import Library
     from registry.opening import open_library, start_library
     from registry.readings import Reading, parse_reading
     from registry.refusals import InverseRefusal, Refusal
-    from registry.saturation import Saturation
-    from registry.tabulation import Table
-    from registry.temperatures import Temperatures
+    from registry.tables.tabulation import Table
 
 __version__ = "0.1.0"
 
@@ -31,9 +31,9 @@ __all__ = [
 
 _HOMES = {
     "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "InverseRefusal": "refusals",
-    "Table": "tabulation", "Temperatures": "temperatures",
+    "Table": "tables.tabulation", "Temperatures": "inverse.temperatures",
     "Reading": "readings", "parse_reading": "readings",
-    "Saturation": "saturation", "SaturationBatch": "boundary",
+    "Saturation": "equilibrium.saturation", "SaturationBatch": "equilibrium.boundary",
     "RangebookError": "errors", "Refused": "errors",
     "Library": "library", "open_library": "opening", "start_library": "opening",
 }  # fmt: skip

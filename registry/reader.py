@@ -23,10 +23,10 @@ from registry.values import Value
 # a lookup of one temperature needs none
 if TYPE_CHECKING:
     from registry.batches import Batch
-    from registry.boundary import PhaseBoundary, SaturationBatch
-    from registry.inversion import Inversion
-    from registry.saturation import Saturation
-    from registry.temperatures import Temperatures
+    from registry.equilibrium.boundary import PhaseBoundary, SaturationBatch
+    from registry.equilibrium.saturation import Saturation
+    from registry.inverse.inversion import Inversion
+    from registry.inverse.temperatures import Temperatures
 
 __all__ = ["Reader"]
 
@@ -209,7 +209,7 @@ class Reader(Collection):
         array([372.7559, 453.0356,      nan])
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
-        from registry.temperatures import demand_pressure, solve_many, solve_one
+        from registry.inverse.temperatures import demand_pressure, solve_many, solve_one
 
         demand_pressure(PROPERTIES[coverage.property])
         pascal = _as_numbers(pressure, "pressure", "pascal")
@@ -268,8 +268,8 @@ class Reader(Collection):
         ...     library.slope("ammonia", [200.0, 300.0, 400.0]).enthalpies.round(-2)
         array([25200., 20200.,  6600.])
         """
-        from registry.boundary import PhaseBoundary, require_boundary
-        from registry.saturation import find_saturation
+        from registry.equilibrium.boundary import PhaseBoundary, require_boundary
+        from registry.equilibrium.saturation import find_saturation
 
         require_boundary(find_property(property).name)
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
@@ -313,7 +313,7 @@ class Reader(Collection):
 
     def _invert(self, coverage: Coverage) -> Inversion:
         """The inverse of a coverage, kept as long as it."""
-        from registry.inversion import Inversion
+        from registry.inverse.inversion import Inversion
 
         return self._inversions.get(coverage) or self._inversions.setdefault(coverage, Inversion(coverage))
 

@@ -7,8 +7,8 @@ makes a new one. Besides these numbers the version covers the ranking
 (`registry.confirmation`), the phase limits (`registry.limits`), the
 temperature scales (`registry.scales`), the atomic weights
 (`registry.atomic_weights`) and what makes an enthalpy of a slope: the methods
-and constants of `registry.virial`, `registry.volumes` and
-`registry.clapeyron`.
+and constants of `registry.equilibrium.virial`, `registry.equilibrium.volumes` and
+`registry.equilibrium.clapeyron`.
 """
 
 from __future__ import annotations

@@ -13,7 +13,7 @@ from registry.reader import Reader
 
 # a lookup makes no table
 if TYPE_CHECKING:
-    from registry.tabulation import Table
+    from registry.tables.tabulation import Table
 
 __all__ = ["Tabulator"]
 
@@ -78,8 +78,8 @@ class Tabulator(Reader):
         >>> len(table)
         3739
         """
-        from registry.spacing import space_temperatures
-        from registry.tabulation import build_table
+        from registry.tables.spacing import space_temperatures
+        from registry.tables.tabulation import build_table
 
         ends = _read_exact(low, "temperature"), _read_exact(high, "temperature")
         by = None if step is None else _read_exact(step, "step")
@@ -138,10 +138,10 @@ class Tabulator(Reader):
         500000.0 424.986
         1000000.0 453.036
         """
-        from registry.pressure_table import build_pressure_table
+        from registry.inverse.temperatures import demand_pressure
         from registry.quantities import UNITS
-        from registry.spacing import space_pressures
-        from registry.temperatures import demand_pressure
+        from registry.tables.pressure_table import build_pressure_table
+        from registry.tables.spacing import space_pressures
 
         pascal = UNITS["Pa"]
         ends = _read_exact(low, "pressure"), _read_exact(high, "pressure")

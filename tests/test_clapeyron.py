@@ -8,7 +8,8 @@ import numpy as np
 import pytest
 from test_forms import make_record
 
-from registry.clapeyron import (
+from registry.curve import Curve
+from registry.equilibrium.clapeyron import (
     clapeyron_slope,
     ideal_enthalpy,
     melting_temperature,
@@ -18,7 +19,6 @@ from registry.clapeyron import (
     two_point_enthalpy,
     watson_enthalpy,
 )
-from registry.curve import Curve
 from registry.forms.reciprocal import GAS_CONSTANT
 from tests.shelf import own_curve
 

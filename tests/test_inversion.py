@@ -18,10 +18,10 @@ from test_laws import dossiers
 from registry.coverage import Coverage, build_coverage
 from registry.dossier import Dossier, Entry
 from registry.evaluation import BLOCK
-from registry.inversion import NONE, SEVERAL, Inversion
+from registry.inverse.inversion import NONE, SEVERAL, Inversion
+from registry.inverse.temperatures import solve_many
 from registry.properties import PROPERTIES
 from registry.records import Correlation
-from registry.temperatures import solve_many
 from tests.reference_forms import DIGITS, helium_temperature, reference_of
 from tests.shelf import CORRELATIONS, MASSES, PUBLISHED, read_rows
 
@@ -279,7 +279,7 @@ def test_searching_and_counting_place_alike(compound, published, monkeypatch):
     inversion = Inversion(published.coverage(compound))
     pascal = np.concatenate([np.geomspace(1e-3, 1e9, 999), inversion._ends, [np.nan, np.inf, -np.inf, 0.0, -1.0]])
     kelvin, places = inversion.solve(pascal)
-    monkeypatch.setattr("registry.inversion._FEW_ENDS", 0)
+    monkeypatch.setattr("registry.inverse.inversion._FEW_ENDS", 0)
     again, placed = inversion.solve(pascal)
     assert np.array_equal(kelvin, again, equal_nan=True)
     assert np.array_equal(places, placed)

@@ -18,11 +18,11 @@ from registry.cli.app import main
 from registry.coverage import build_coverage
 from registry.dossier import Dossier
 from registry.errors import BadInput, Refused
-from registry.inversion import Inversion
-from registry.pressure_table import build_pressure_table
+from registry.inverse.inversion import Inversion
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.spacing import space_pressures
+from registry.tables.pressure_table import build_pressure_table
+from registry.tables.spacing import space_pressures
 
 PRESSURES = [name for name, row in PROPERTIES.items() if row.dimension == "pressure"]
 
@@ -148,11 +148,11 @@ def test_one_ratio_lies_between_neighbours_however_far_the_ends(low, high, count
 
 def test_an_inverse_serves_every_table(published_path, monkeypatch):
     """The curves are cut into branches once, for a temperature and for all tables after it."""
-    import registry.inversion
+    import registry.inverse.inversion
     from registry import open_library
 
-    cut, plain = [], registry.inversion.cut_branches
-    monkeypatch.setattr(registry.inversion, "cut_branches", lambda *a, **k: cut.append(a) or plain(*a, **k))
+    cut, plain = [], registry.inverse.inversion.cut_branches
+    monkeypatch.setattr(registry.inverse.inversion, "cut_branches", lambda *a, **k: cut.append(a) or plain(*a, **k))
     with open_library(published_path) as library:
         first = library.temperature_at("water", 1e5).temperature
         done = len(cut)

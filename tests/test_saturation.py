@@ -8,7 +8,8 @@ import numpy as np
 import pytest
 from test_virial import FLUIDS, reference_volume
 
-from registry.boundary import PhaseBoundary
+from registry.equilibrium.boundary import PhaseBoundary
+from registry.equilibrium.volumes import IDEAL_GAS, NEGLECTED, TSONOPOULOS
 from registry.errors import BadInput, Refused
 from registry.forms.reciprocal import GAS_CONSTANT
 from registry.library import Library
@@ -18,7 +19,6 @@ from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.readings import parse_reading
 from registry.records import Compound, Correlation, FixedPoint, Source
-from registry.volumes import IDEAL_GAS, NEGLECTED, TSONOPOULOS
 from tests.shelf import FACTS, read_rows
 
 PUBLISHED = read_rows(FACTS / "published_enthalpies.csv")

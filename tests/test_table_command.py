@@ -479,7 +479,7 @@ def test_markdown_shows_a_text_as_it_is(text):
 
 def test_hostile_citations_stay_text_in_every_format(own_path, tmp_path, capsys, monkeypatch):
     """A source that is called like a formula, with pipes and tags: text in the sheet, escaped in Markdown."""
-    import registry.tally as tallying
+    import registry.tables.tally as tallying
 
     hostile = '=HYPERLINK("http://x","y")|<script>'
     plain = tallying.Tally._describe

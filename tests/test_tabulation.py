@@ -11,16 +11,16 @@ import numpy as np
 import pytest
 from inventane import COMPOUND, invent_correlation
 
-from registry.conversion import Conversion
 from registry.coverage import build_coverage
 from registry.dossier import Dossier
 from registry.errors import BadInput, Refused, UnknownKey
 from registry.numerals import last_digit_unit, parse_number
 from registry.quantities import UNITS, convert
 from registry.scales import SCALES
-from registry.spacing import space_pressures, space_temperatures
-from registry.tabulation import BLOCK, build_table
-from registry.tally import Tally
+from registry.tables.conversion import Conversion
+from registry.tables.spacing import space_pressures, space_temperatures
+from registry.tables.tabulation import BLOCK, build_table
+from registry.tables.tally import Tally
 from tests.shelf import FACTS, PUBLISHED, read_rows
 
 SHELVES = ("published", "scenario")
@@ -319,7 +319,7 @@ def test_cautions_are_those_of_the_first_and_the_last_row_of_a_correlation(publi
 @pytest.mark.parametrize("compound", ["ethanol", "helium-4", "nitrogen"])
 def test_seams_are_marked_the_other_way_too(compound, published):
     """Temperatures that fall, as those of a melting line may at rising pressures, cross the same seams."""
-    from registry.notes import Marker
+    from registry.tables.notes import Marker
 
     coverage = published.coverage(compound)
     (low, high) = coverage.seams[0].temperature - 0.02, coverage.seams[-1].temperature + 0.02

@@ -8,9 +8,9 @@ from typing import NamedTuple
 import numpy as np
 import pytest
 
+from registry.equilibrium.virial import second_virial, vapour_volume
+from registry.equilibrium.volumes import rackett_volume
 from registry.forms.reciprocal import GAS_CONSTANT
-from registry.virial import second_virial, vapour_volume
-from registry.volumes import rackett_volume
 
 # CRC Handbook of Chemistry and Physics, second virial coefficients, cm3/mol (seen); critical constants of the shelf.
 # The nonpolar form knows no dipole and no hydrogen bond: its value is too small in size for the last two.

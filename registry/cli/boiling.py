@@ -23,7 +23,7 @@ from registry.errors import Refused
 
 if TYPE_CHECKING:
     from registry.answers import Answer
-    from registry.inversion import Inversion
+    from registry.inverse.inversion import Inversion
     from registry.refusals import InverseRefusal
 
 
@@ -60,11 +60,11 @@ def boil(
     """
     from registry.cli.boiling_text import describe_boiling, print_boiling
     from registry.cli.pressures import read_atmosphere, read_pressures
-    from registry.inversion import Inversion
+    from registry.inverse.inversion import Inversion
+    from registry.inverse.temperatures import demand_pressure
     from registry.properties import PROPERTIES
     from registry.quantities import find_unit
     from registry.refusals import InverseRefusal
-    from registry.temperatures import demand_pressure
 
     asked = read_pressures(pressures, read_atmosphere(atmosphere) if atmosphere else None)
     to = find_unit(unit, "temperature")
@@ -87,8 +87,8 @@ def boil(
 
 
 def _solve(inversion: Inversion, pascal: float) -> Answer | InverseRefusal:
+    from registry.inverse.temperatures import solve_one
     from registry.refusals import InverseRefusal
-    from registry.temperatures import solve_one
 
     try:
         return solve_one(inversion, pascal)

@@ -5,14 +5,14 @@ from __future__ import annotations
 from collections.abc import Sequence
 from typing import Any
 
-from registry.boundary import PhaseBoundary
 from registry.cli.documents import describe_reading
 from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.display import format_number, format_percent, format_plain, suit_unit
+from registry.equilibrium.boundary import PhaseBoundary
+from registry.equilibrium.saturation import Saturation
+from registry.equilibrium.volumes import Choice
 from registry.quantities import UNITS, Unit, convert
-from registry.saturation import Saturation
-from registry.volumes import Choice
 
 __all__ = ["describe_saturation", "print_saturations"]
 

@@ -23,12 +23,12 @@ from registry.cli.screen import complain, print_json
 from registry.errors import BadQuantity, GaugePressure, Refused
 
 if TYPE_CHECKING:
-    from registry.boundary import PhaseBoundary
     from registry.cli.temperatures import Asked
     from registry.coverage import Coverage
+    from registry.equilibrium.boundary import PhaseBoundary
+    from registry.equilibrium.saturation import Saturation
     from registry.quantities import Unit
     from registry.refusals import Refusal
-    from registry.saturation import Saturation
 
 
 def slope(
@@ -54,12 +54,12 @@ def slope(
 
     Example: rangebook slope water 100C
     """
-    from registry.boundary import PhaseBoundary
     from registry.cli.slope_text import print_saturations
     from registry.cli.temperatures import read_temperatures
+    from registry.equilibrium.boundary import PhaseBoundary
+    from registry.equilibrium.saturation import Saturation
     from registry.quantities import find_unit
     from registry.refusals import Refusal
-    from registry.saturation import Saturation
 
     asked = read_temperatures(temperatures)
     to, energy = _choose_pressure(unit), find_unit(energy_unit, "molar-energy")
@@ -92,7 +92,7 @@ def _choose_pressure(unit: str) -> Unit | None:
 
 
 def _find(boundary: PhaseBoundary, asked: Asked) -> Saturation | Refusal:
-    from registry.saturation import find_saturation
+    from registry.equilibrium.saturation import find_saturation
 
     try:
         return find_saturation(boundary, asked.kelvin, asked.reading)

@@ -9,13 +9,13 @@ from fractions import Fraction
 from registry.cli.pressures import read_atmosphere
 from registry.coverage import Coverage
 from registry.errors import BadInput, BadQuantity, GaugePressure, quote
-from registry.inversion import Inversion
-from registry.pressure_table import build_pressure_table
+from registry.inverse.inversion import Inversion
 from registry.properties import find_property
 from registry.quantities import UNITS, Unit, find_unit, gauge_unit, parse_temperature, read_quantity
 from registry.reports.columns import suit_value_unit
-from registry.spacing import Spacing, space_pressures, space_temperatures
-from registry.tabulation import Table, build_table
+from registry.tables.pressure_table import build_pressure_table
+from registry.tables.spacing import Spacing, space_pressures, space_temperatures
+from registry.tables.tabulation import Table, build_table
 
 __all__ = ["Span", "read_span"]
 

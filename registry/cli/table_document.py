@@ -11,8 +11,8 @@ from registry.cli.boiling_text import describe_inverse_refusal
 from registry.cli.documents import describe_refusal
 from registry.refusals import InverseRefusal, Refusal
 from registry.reports.columns import Columns, Line
-from registry.tabulation import Block
-from registry.tally import Tally, Used
+from registry.tables.tabulation import Block
+from registry.tables.tally import Tally, Used
 from registry.uncertainty import COVERAGE_FACTOR
 
 __all__ = ["write_document"]

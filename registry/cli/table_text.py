@@ -8,8 +8,8 @@ from registry.cli.screen import CAUTION, format_facts, name_past, wrap
 from registry.properties import PROPERTIES
 from registry.reports.columns import Columns, Line
 from registry.reports.digits import Digits
-from registry.tabulation import Block
-from registry.tally import Tally, Used
+from registry.tables.tabulation import Block
+from registry.tables.tally import Tally, Used
 
 __all__ = ["write_text"]
 

@@ -27,8 +27,8 @@ if TYPE_CHECKING:
     from collections.abc import Iterator
 
     from registry.reports.columns import Columns
-    from registry.tabulation import Table
-    from registry.tally import Tally
+    from registry.tables.tabulation import Table
+    from registry.tables.tally import Tally
 
 FORMATS = ("text", "csv", "markdown", "json", "xlsx")
 SUFFIXES = {".txt": "text", ".csv": "csv", ".md": "markdown", ".markdown": "markdown", ".json": "json",
@@ -141,7 +141,7 @@ def _spare_library(output: Path, place: str) -> None:
 
 
 def _read_through(made: Table) -> Tally:
-    from registry.tally import Tally
+    from registry.tables.tally import Tally
 
     tally = Tally(made)
     for _ in tally.blocks():
@@ -152,7 +152,7 @@ def _read_through(made: Table) -> Tally:
 def _write(columns: Columns, form: str, label: str, output: Path | None, force: bool) -> Tally:
     from registry.reports.placement import place_whole
     from registry.reports.workbook import check_workbook, write_workbook
-    from registry.tally import Tally
+    from registry.tables.tally import Tally
 
     tally = Tally(columns.table)
     if output is None:

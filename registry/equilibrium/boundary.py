@@ -1,7 +1,7 @@
 """The line of equilibrium between two phases: Clapeyron's equation on a coverage.
 
 The enthalpy of vaporization or sublimation follows from the slope of the
-pressure and the volumes of both phases (`registry.volumes`). Where the
+pressure and the volumes of both phases (`registry.equilibrium.volumes`). Where the
 truncated virial series no longer holds, Watson's relation carries the
 enthalpy from the highest temperature at which it does, down to zero at the
 critical temperature.
@@ -17,14 +17,14 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry.candidate import Candidate
-from registry.clapeyron import ideal_enthalpy, transition_enthalpy, watson_enthalpy
 from registry.coverage import Coverage, build_coverage
+from registry.equilibrium.clapeyron import ideal_enthalpy, transition_enthalpy, watson_enthalpy
+from registry.equilibrium.volumes import Volumes
 from registry.errors import BadInput
 from registry.forms.form import Array
 from registry.numerals import to_float
 from registry.refusals import Refusal
 from registry.verdicts import refuse
-from registry.volumes import Volumes
 
 __all__ = ["Anchor", "PhaseBoundary", "SaturationBatch", "require_boundary"]
 

@@ -9,10 +9,10 @@ import numpy as np
 
 from registry.answering import answer_one
 from registry.answers import Answer
-from registry.boundary import PhaseBoundary, SaturationBatch
+from registry.equilibrium.boundary import PhaseBoundary, SaturationBatch
+from registry.equilibrium.volumes import IDEAL_GAS, Choice
 from registry.forms.reciprocal import GAS_CONSTANT
 from registry.readings import Reading
-from registry.volumes import IDEAL_GAS, Choice
 
 __all__ = ["Correlated", "Saturation", "find_saturation"]
 

@@ -14,9 +14,9 @@ from functools import cached_property
 import numpy as np
 from numpy.typing import NDArray
 
-from registry import virial
 from registry.coverage import Coverage, build_coverage
 from registry.dossier import Entry
+from registry.equilibrium import virial
 from registry.forms.corresponding import RACKETT
 from registry.forms.form import Array
 from registry.forms.reciprocal import GAS_CONSTANT

@@ -12,7 +12,7 @@ from numpy.typing import NDArray
 from registry.candidate import Candidate
 from registry.curve import Curve
 from registry.forms.form import Scratch
-from registry.roots import find_roots
+from registry.inverse.roots import find_roots
 
 __all__ = ["Branch"]
 

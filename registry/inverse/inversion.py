@@ -16,13 +16,13 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry import rules
-from registry.branches import Branch
 from registry.candidate import Candidate
 from registry.coverage import Coverage, Stretch
 from registry.evaluation import BLOCK
 from registry.forms.form import Scratch
+from registry.inverse.branches import Branch
+from registry.inverse.turns import cut_branches
 from registry.properties import PROPERTIES
-from registry.turns import cut_branches
 
 __all__ = ["END_TOLERANCE", "NONE", "SAME_TEMPERATURE", "SEVERAL", "Inversion", "span_candidate"]
 

@@ -12,8 +12,8 @@ from registry.answers import Answer
 from registry.choices import Choices
 from registry.coverage import Coverage
 from registry.errors import BadInput, Refused
-from registry.inverse_verdicts import refuse_pressure
-from registry.inversion import Inversion
+from registry.inverse.inversion import Inversion
+from registry.inverse.verdicts import refuse_pressure
 from registry.naming import join_names
 from registry.properties import PROPERTIES, Property
 from registry.refusals import InverseRefusal

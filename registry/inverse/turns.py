@@ -8,10 +8,10 @@ from collections.abc import Callable, Iterator
 import numpy as np
 from numpy.typing import NDArray
 
-from registry.branches import Branch
 from registry.candidate import Candidate
 from registry.coverage import Stretch
 from registry.curve import Curve
+from registry.inverse.branches import Branch
 
 __all__ = ["cut_branches"]
 

@@ -6,12 +6,12 @@ import math
 from collections.abc import Iterator
 from typing import NamedTuple
 
-from registry.conversion import Conversion
 from registry.coverage import Seam
 from registry.display import format_percent, format_plain, suit_unit
-from registry.notes import PLAIN, Note
 from registry.quantities import UNITS, Unit
-from registry.tabulation import Block, Table
+from registry.tables.conversion import Conversion
+from registry.tables.notes import PLAIN, Note
+from registry.tables.tabulation import Block, Table
 
 __all__ = ["Columns", "Line", "suit_value_unit"]
 

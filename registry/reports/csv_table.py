@@ -7,7 +7,7 @@ import io
 from collections.abc import Iterator
 
 from registry.reports.columns import Columns, Line
-from registry.tally import Tally
+from registry.tables.tally import Tally
 
 __all__ = ["guard_text", "write_csv"]
 

@@ -7,7 +7,7 @@ from collections.abc import Iterator, Sequence
 
 from registry.reports.columns import Columns, Line
 from registry.reports.digits import Digits
-from registry.tally import Tally, Used
+from registry.tables.tally import Tally, Used
 
 __all__ = ["escape", "write_markdown"]
 

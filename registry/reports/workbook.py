@@ -13,7 +13,7 @@ from typing import Any, BinaryIO
 from registry.errors import BadInput
 from registry.properties import PROPERTIES
 from registry.reports.columns import Columns, Line
-from registry.tally import Tally, Used
+from registry.tables.tally import Tally, Used
 
 __all__ = ["check_workbook", "write_workbook"]
 

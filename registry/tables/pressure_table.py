@@ -9,17 +9,17 @@ from typing import Any
 import numpy as np
 from numpy.typing import NDArray
 
-from registry.branches import Branch
-from registry.inverse_verdicts import refuse_pressure
-from registry.inversion import END_TOLERANCE, Inversion, span_candidate
+from registry.inverse.branches import Branch
+from registry.inverse.inversion import END_TOLERANCE, Inversion, span_candidate
+from registry.inverse.turns import cut_branches
+from registry.inverse.verdicts import refuse_pressure
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.reasons import Reasons
 from registry.refusals import InverseRefusal
-from registry.spacing import Spacing
-from registry.span import demand_one_at_values
-from registry.tabulation import Row, Table
-from registry.turns import cut_branches
+from registry.tables.reasons import Reasons
+from registry.tables.spacing import Spacing
+from registry.tables.span import demand_one_at_values
+from registry.tables.tabulation import Row, Table
 
 __all__ = ["PressureTable", "build_pressure_table"]
 

@@ -11,9 +11,9 @@ from collections.abc import Iterator
 from dataclasses import dataclass
 from fractions import Fraction
 
-from registry.conversion import Conversion
 from registry.errors import BadInput
 from registry.quantities import Unit
+from registry.tables.conversion import Conversion
 
 __all__ = ["MOST_ROWS", "Even", "Geometric", "Listed", "Spacing", "space_pressures", "space_temperatures"]
 

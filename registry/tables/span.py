@@ -10,7 +10,7 @@ import numpy as np
 from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.errors import Refused
-from registry.inversion import Inversion
+from registry.inverse.inversion import Inversion
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.ranking import choose_throughout

@@ -12,13 +12,13 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry.coverage import Coverage
-from registry.notes import PLAIN, Marker, Note, note_refused
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.reasons import Reasons, cut_temperatures
 from registry.refusals import Refusal
-from registry.spacing import Spacing
-from registry.span import demand_one
+from registry.tables.notes import PLAIN, Marker, Note, note_refused
+from registry.tables.reasons import Reasons, cut_temperatures
+from registry.tables.spacing import Spacing
+from registry.tables.span import demand_one
 from registry.verdicts import refuse
 
 __all__ = ["BLOCK", "Block", "Row", "Table", "build_table"]

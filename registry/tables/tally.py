@@ -12,7 +12,7 @@ from registry.candidate import Candidate
 from registry.coverage import Seam, Stretch
 from registry.grounds import list_grounds
 from registry.refusals import Refusal
-from registry.tabulation import Block, Row, Table
+from registry.tables.tabulation import Block, Row, Table
 
 __all__ = ["Tally", "Used"]
 

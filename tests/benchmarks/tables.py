@@ -15,7 +15,7 @@ from registry.opening import open_library, start_library
 from registry.quantities import UNITS
 from registry.reports.columns import Columns
 from registry.reports.csv_table import write_csv
-from registry.tally import Tally
+from registry.tables.tally import Tally
 
 SHORT = 1_000
 """Rows of the table that the memory of the long one is compared with."""

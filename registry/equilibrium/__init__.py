@@ -1,0 +1,1 @@
+"""Lines of equilibrium between two phases: slope, volumes, enthalpy."""

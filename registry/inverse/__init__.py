@@ -1,0 +1,1 @@
+"""From a value back to the temperature that has it."""

@@ -1,0 +1,1 @@
+"""Tables of a property over a span of temperatures or pressures."""
