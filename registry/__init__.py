@@ -14,11 +14,12 @@ if TYPE_CHECKING:
     from registry.equilibrium.boundary import SaturationBatch
     from registry.equilibrium.saturation import Saturation
     from registry.errors import RangebookError, Refused
+    from registry.inverse.refusals import InverseRefusal
     from registry.inverse.temperatures import Temperatures
     from registry.library import Library
     from registry.opening import open_library, start_library
     from registry.readings import Reading, parse_reading
-    from registry.refusals import InverseRefusal, Refusal
+    from registry.refusals import Refusal
     from registry.tables.tabulation import Table
 
 __version__ = "0.1.0"
@@ -30,7 +31,7 @@ __all__ = [
 ]  # fmt: skip
 
 _HOMES = {
-    "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "InverseRefusal": "refusals",
+    "Answer": "answers", "Batch": "batches", "Refusal": "refusals", "InverseRefusal": "inverse.refusals",
     "Table": "tables.tabulation", "Temperatures": "inverse.temperatures",
     "Reading": "readings", "parse_reading": "readings",
     "Saturation": "equilibrium.saturation", "SaturationBatch": "equilibrium.boundary",

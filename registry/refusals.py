@@ -2,10 +2,9 @@
 
 from __future__ import annotations
 
-import math
 from dataclasses import dataclass
 
-__all__ = ["InverseRefusal", "Nearest", "Refusal", "Side"]
+__all__ = ["Nearest", "Refusal"]
 
 
 @dataclass(frozen=True)
@@ -38,8 +37,10 @@ class Refusal:
     reason : str
         ``no-correlation``, ``several-phases``, ``outside-windows``, ``gap``,
         ``above-critical``, ``below-triple``, ``above-triple``,
-        ``not-accepted``, ``no-value`` or ``not-a-temperature``; of a table
-        by one correlation ``no-single-correlation``.
+        ``not-accepted``, ``no-value`` or ``not-a-temperature``; where an
+        uncertainty was asked for ``too-uncertain`` or
+        ``uncertainty-not-stated``; of a table by one correlation
+        ``no-single-correlation``.
     explanation : str
         The reason, and what can be done.
     nearest : tuple of Nearest
@@ -55,47 +56,3 @@ class Refusal:
     def headline(self) -> str:
         """The reason by its name, and the explanation: what a message says."""
         return f"Refused ({self.reason}): {self.explanation}"
-
-
-@dataclass(frozen=True)
-class Side:
-    """A temperature beside a value that is not answered.
-
-    Attributes
-    ----------
-    correlation : str
-        The key of the correlation.
-    temperature : float
-        K.
-    value : float
-        The value it has there, SI.
-    """
-
-    correlation: str
-    temperature: float
-    value: float
-
-
-@dataclass(frozen=True)
-class InverseRefusal(Refusal):
-    """Why no one temperature has a value.
-
-    Attributes
-    ----------
-    temperature : float
-        NaN: there is none.
-    reason : str
-        ``below-all``, ``above-all``, ``gap``, ``seam``,
-        ``several-temperatures``, ``several-phases``, ``not-accepted``,
-        ``no-correlation`` or ``not-a-pressure``.
-    explanation : str
-        The reason, and what can be done.
-    value : float
-        As asked, SI.
-    sides : tuple of Side
-        The temperatures that have the value where several have, else the
-        nearest ends, in the order of temperature.
-    """
-
-    value: float = math.nan
-    sides: tuple[Side, ...] = ()

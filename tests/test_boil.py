@@ -13,9 +13,9 @@ from facts.bad_inversions import BAD, REFUSED
 from registry import Refused, open_library
 from registry.cli.app import main
 from registry.errors import BadInput
+from registry.inverse.refusals import InverseRefusal
 from registry.opening import start_library
 from registry.records import Correlation
-from registry.refusals import InverseRefusal
 from tests.benchmarks.invented import MARK, SOURCE, write_package
 
 

@@ -24,7 +24,7 @@ from registry.errors import Refused
 if TYPE_CHECKING:
     from registry.answers import Answer
     from registry.inverse.inversion import Inversion
-    from registry.refusals import InverseRefusal
+    from registry.inverse.refusals import InverseRefusal
 
 
 def boil(
@@ -61,10 +61,10 @@ def boil(
     from registry.cli.boiling_text import describe_boiling, print_boiling
     from registry.cli.pressures import read_atmosphere, read_pressures
     from registry.inverse.inversion import Inversion
+    from registry.inverse.refusals import InverseRefusal
     from registry.inverse.temperatures import demand_pressure
     from registry.properties import PROPERTIES
     from registry.quantities import find_unit
-    from registry.refusals import InverseRefusal
 
     asked = read_pressures(pressures, read_atmosphere(atmosphere) if atmosphere else None)
     to = find_unit(unit, "temperature")
@@ -87,8 +87,8 @@ def boil(
 
 
 def _solve(inversion: Inversion, pascal: float) -> Answer | InverseRefusal:
+    from registry.inverse.refusals import InverseRefusal
     from registry.inverse.temperatures import solve_one
-    from registry.refusals import InverseRefusal
 
     try:
         return solve_one(inversion, pascal)

@@ -12,9 +12,9 @@ from registry.cli.pressures import AskedPressure
 from registry.cli.screen import CAUTION, emphasize, name_past, print_table, say, wrap
 from registry.coverage import Coverage
 from registry.display import format_plain
+from registry.inverse.refusals import InverseRefusal
 from registry.properties import PROPERTIES
 from registry.quantities import Unit
-from registry.refusals import InverseRefusal
 
 __all__ = ["describe_boiling", "describe_inverse_refusal", "print_boiling"]
 

@@ -9,7 +9,8 @@ from typing import Any
 
 from registry.cli.boiling_text import describe_inverse_refusal
 from registry.cli.documents import describe_refusal
-from registry.refusals import InverseRefusal, Refusal
+from registry.inverse.refusals import InverseRefusal
+from registry.refusals import Refusal
 from registry.reports.columns import Columns, Line
 from registry.tables.tabulation import Block
 from registry.tables.tally import Tally, Used

@@ -13,10 +13,10 @@ from registry.choices import Choices
 from registry.coverage import Coverage
 from registry.errors import BadInput, Refused
 from registry.inverse.inversion import Inversion
+from registry.inverse.refusals import InverseRefusal
 from registry.inverse.verdicts import refuse_pressure
 from registry.naming import join_names
 from registry.properties import PROPERTIES, Property
-from registry.refusals import InverseRefusal
 
 __all__ = ["Temperatures", "demand_pressure", "solve_many", "solve_one"]
 

@@ -9,11 +9,11 @@ from registry.coverage import Coverage
 from registry.display import format_plain, suit_unit
 from registry.inverse.branches import Branch
 from registry.inverse.inversion import END_TOLERANCE, SAME_TEMPERATURE, Inversion, span_candidate
+from registry.inverse.refusals import InverseRefusal, Side
 from registry.inverse.turns import cut_branches
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.refusals import InverseRefusal, Side
 from registry.verdicts import describe_unaccepted, refuse, show_map
 
 __all__ = ["refuse_pressure"]

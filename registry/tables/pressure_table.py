@@ -11,11 +11,11 @@ from numpy.typing import NDArray
 
 from registry.inverse.branches import Branch
 from registry.inverse.inversion import END_TOLERANCE, Inversion, span_candidate
+from registry.inverse.refusals import InverseRefusal
 from registry.inverse.turns import cut_branches
 from registry.inverse.verdicts import refuse_pressure
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.refusals import InverseRefusal
 from registry.tables.reasons import Reasons
 from registry.tables.spacing import Spacing
 from registry.tables.span import demand_one_at_values
