@@ -44,7 +44,7 @@ class Reading(NamedTuple):
     scale : str
         The temperature scale it was read on.
     shift : float
-        The ITS-90 temperature less the number that was read, K.
+        The number on the scale less the ITS-90 temperature, K.
     """
 
     kelvin: float
@@ -106,7 +106,7 @@ def parse_reading(text: str) -> Reading:
     kelvin = scale.to_its90(number)
     if not scale.reaches(kelvin):
         raise BadQuantity(text, f"no published conversion from {scale.name} to ITS-90 reaches this temperature.")
-    return Reading(kelvin, spread, factor, scale.name, kelvin - number)
+    return Reading(kelvin, spread, factor, scale.name, number - kelvin)
 
 
 def _blame(plain: str, text: str) -> str:

@@ -52,12 +52,25 @@ def test_json_says_how_a_temperature_was_read(published_path, capsys):
     _, out = _run(capsys, "lookup", "water", "100+/-0.1C (k=2) (IPTS-68)", "--json", "--library", place)
     (answer,) = json.loads(out)["answers"]
     assert answer["temperature_scale"] == "IPTS-68"
-    assert answer["scale_shift_K"] == pytest.approx(-0.0256, abs=1e-4)
+    assert answer["scale_shift_K"] == pytest.approx(0.0256, abs=1e-4)
     assert (answer["temperature_uncertainty_K"], answer["temperature_coverage_factor"]) == (0.1, 2.0)
     parts = answer["uncertainty"]
     assert parts["temperature_percent"] == pytest.approx(0.357, abs=5e-4)
     assert parts["expanded_percent"] == pytest.approx((0.025**2 + parts["temperature_percent"] ** 2) ** 0.5, rel=1e-12)
     assert 0.0 < parts["rounding_percent"] < parts["rounding_bound_percent"] < 1e-9
+
+
+def test_a_shift_is_the_number_on_the_scale_less_its90_wherever_it_stands(published_path, capsys):
+    """Of a temperature read on IPTS-68 it is what it is of a correlation that stands there: t68 - t90 = 0.013 K at 50 C.
+
+    CRC Handbook, table of the differences between the scales.
+    """
+    asked = ("lookup", "ethanol", "50 degC (IPTS-68)", "--json", "--library", str(published_path))
+    _, out = _run(capsys, *asked)
+    (answer,) = json.loads(out)["answers"]
+    shifts = {effect["scale"]: effect["shift_K"] for effect in answer["scale_effects"]}
+    assert answer["scale_shift_K"] == pytest.approx(0.013, abs=5e-4)
+    assert answer["scale_shift_K"] == pytest.approx(shifts["IPTS-68"], rel=1e-9)
 
 
 def test_a_value_of_zero_is_told_with_all_that_stands_behind_it(published_path, capsys):

@@ -18,7 +18,7 @@ UNDERSTOOD = (
     ("\u221240+/\u22121 °C", Reading(233.15, 1.0)),
     ("77+/-0.9F", Reading(298.15, 0.5)),
     ("373.15K (ITS-90)", Reading(373.15)),
-    ("273.16+/-1K (ice-point-273.16)", Reading(273.16 - 0.01, 1.0, None, "ice-point-273.16", 273.16 - 0.01 - 273.16)),
+    ("273.16+/-1K (ice-point-273.16)", Reading(273.16 - 0.01, 1.0, None, "ice-point-273.16", 273.16 - (273.16 - 0.01))),
 )
 
 REFUSED = (
@@ -61,18 +61,18 @@ def test_a_bad_reading_says_what_is_allowed(text, why):
 @pytest.mark.parametrize(
     ("celsius", "scale", "difference", "digits"),
     [
-        # t90 - t68, CRC Handbook table of the differences between the scales
-        (-100, "IPTS-68", 0.013, 1e-3), (50, "IPTS-68", -0.013, 5e-4), (100, "IPTS-68", -0.026, 5e-4),
-        (200, "IPTS-68", -0.040, 5e-4),
-        # t90 - t48, the same table
-        (50, "IPTS-48", -0.023, 1e-3), (100, "IPTS-48", -0.026, 5e-4), (200, "IPTS-48", 0.003, 5e-4),
+        # t68 - t90: CRC Handbook table of the differences between the scales, which has t90 - t68
+        (-100, "IPTS-68", -0.013, 1e-3), (50, "IPTS-68", 0.013, 5e-4), (100, "IPTS-68", 0.026, 5e-4),
+        (200, "IPTS-68", 0.040, 5e-4),
+        # t48 - t90, the same table
+        (50, "IPTS-48", 0.023, 1e-3), (100, "IPTS-48", 0.026, 5e-4), (200, "IPTS-48", -0.003, 5e-4),
     ],
 )  # fmt: skip
 def test_a_number_on_an_older_scale_becomes_the_its90_temperature(celsius, scale, difference, digits):
     """A temperature named on IPTS-68 or IPTS-48 shifts by the published difference."""
     reading = parse_reading(f"{celsius} degC ({scale})")
     assert reading.shift == pytest.approx(difference, abs=digits + 1e-4)
-    assert reading.kelvin == pytest.approx(celsius + 273.15 + reading.shift, abs=1e-12)
+    assert reading.kelvin == pytest.approx(celsius + 273.15 - reading.shift, abs=1e-12)
     assert parse_reading(f"{celsius}C ({scale.lower().replace('-', ' ')})") == reading
 
 

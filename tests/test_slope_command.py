@@ -166,7 +166,7 @@ def test_json_says_how_a_temperature_was_read(ask):
         "temperature_scale", "scale_shift_K", "temperature_uncertainty_K", "temperature_coverage_factor",
     }  # fmt: skip
     assert found["temperature_scale"] == "IPTS-68"
-    assert found["scale_shift_K"] == pytest.approx(-0.0256, abs=1e-4)
+    assert found["scale_shift_K"] == pytest.approx(0.0256, abs=1e-4)
 
 
 def test_json_of_a_melting_line_has_nulls(ask):
