@@ -100,7 +100,7 @@ def parse_reading(text: str) -> Reading:
         raise BadQuantity(text, f"a coverage factor belongs to an uncertainty, {_EXAMPLE} (k=2).")
     if scale is None:
         return Reading(number, spread, factor)
-    if scale.name == "ice-point-273.16" and _find_last_unit(plain).shift:
+    if scale.absolute and _find_last_unit(plain).shift:
         why = f"{scale.name} is about kelvin; degC and degF count from the ice point itself: leave the scale out."
         raise BadQuantity(text, why)
     kelvin = scale.to_its90(number)

@@ -109,11 +109,15 @@ class Scale:
     branches : tuple
         ``(lower, upper, branch)`` in kelvin; a branch gives the number on the
         scale less the ITS-90 number, and its rate, for temperatures in K.
+    absolute : bool
+        True if it is about the zero of kelvin: degC and degF count from the
+        ice point itself.
     """
 
     name: str
     title: str
     branches: tuple[tuple[float, float, Branch], ...] = ()
+    absolute: bool = False
 
     @property
     def shifts(self) -> bool:
@@ -207,6 +211,7 @@ _ROWS = (
         "ice-point-273.16",
         "kelvin counted from an ice point of 273.16 K, as before 1954",
         ((0.0, 1e4, _constant(0.01)),),
+        absolute=True,
     ),
     Scale("not-stated", "the source does not state its scale; the number is taken as it is"),
 )

@@ -61,9 +61,9 @@ def test_json_says_how_a_temperature_was_read(published_path, capsys):
 
 
 def test_a_shift_is_the_number_on_the_scale_less_its90_wherever_it_stands(published_path, capsys):
-    """Of a temperature read on IPTS-68 it is what it is of a correlation that stands there: t68 - t90 = 0.013 K at 50 C.
+    """Of a temperature read on IPTS-68 it is that of a correlation on IPTS-68: 0.013 K at 50 degC.
 
-    CRC Handbook, table of the differences between the scales.
+    CRC Handbook, table of the differences between the scales: t90 - t68 = -0.013.
     """
     asked = ("lookup", "ethanol", "50 degC (IPTS-68)", "--json", "--library", str(published_path))
     _, out = _run(capsys, *asked)

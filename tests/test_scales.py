@@ -15,6 +15,7 @@ import pytest
 from mpmath import mp, mpf
 
 from registry.curve import Curve
+from registry.errors import InvalidRecord
 from registry.scales import SCALES
 from tests.reference_forms import DIGITS, reference_of
 from tests.shelf import CORRELATIONS, own_curve
@@ -178,6 +179,19 @@ def test_old_ice_point_adds_a_hundredth_of_a_kelvin():
     for kelvin in (1.0, 273.15, 373.15, 5000.0):
         assert shift("ice-point-273.16", kelvin) == 0.01
         assert rate("ice-point-273.16", kelvin) == 0.0
+
+
+@pytest.mark.parametrize("unit", ["K", "degC", "degF", "degR"])
+def test_old_ice_point_belongs_to_units_that_count_from_absolute_zero(unit):
+    """A correlation on it is in K or degR; on another scale any unit of temperature will do."""
+    record = CORRELATIONS["water-antoine-1-100"]
+    dataclasses.replace(record, temperature_unit=unit, temperature_scale="IPTS-68")
+    if unit in ("K", "degR"):
+        dataclasses.replace(record, temperature_unit=unit, temperature_scale="ice-point-273.16")
+        return
+    with pytest.raises(InvalidRecord, match=r"ice-point-273.16 is about kelvin: K or degR\.") as caught:
+        dataclasses.replace(record, temperature_unit=unit, temperature_scale="ice-point-273.16")
+    assert [(problem.field, problem.given) for problem in caught.value.problems] == [("temperature_unit", unit)]
 
 
 @pytest.mark.parametrize("name", ["ITS-90", "not-stated"])

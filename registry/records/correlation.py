@@ -23,6 +23,7 @@ from registry.records.record import (
     Record,
     entry,
     phase_problems,
+    scale_problems,
     uncertainty_problems,
     value_unit_problems,
 )
@@ -61,6 +62,7 @@ class Correlation(Record):
             self._unit_problems,
             lambda: phase_problems(self.property, self.phase),
             lambda: value_unit_problems(self.value_unit, PROPERTIES[self.property].dimension),
+            lambda: scale_problems(self.temperature_scale, "temperature_unit", self.temperature_unit),
             self._window_problems,
             lambda: uncertainty_problems(self.uncertainty, PROPERTIES[self.property].dimension),
             self._metastable_problems,

@@ -24,6 +24,7 @@ from registry.records.record import (
     cell_problems,
     entry,
     phase_problems,
+    scale_problems,
     temperature_problems,
     uncertainty_problems,
     value_unit_problems,
@@ -59,7 +60,11 @@ class FixedPoint(Record):
     note: str = entry(cells.LONG, required=False)
 
     def _checks(self) -> tuple[Callable[[], Iterable[Problem]], ...]:
-        return (self._value_problems, lambda: uncertainty_problems(self.uncertainty, QUANTITIES[self.quantity]))
+        return (
+            self._value_problems,
+            lambda: scale_problems(self.temperature_scale, "unit", self.unit),
+            lambda: uncertainty_problems(self.uncertainty, QUANTITIES[self.quantity]),
+        )
 
     def _value_problems(self) -> Iterator[Problem]:
         dimension = QUANTITIES[self.quantity]
@@ -131,6 +136,7 @@ class Dataset(Record):
         return (
             lambda: phase_problems(self.property, self.phase),
             lambda: value_unit_problems(self.value_unit, PROPERTIES[self.property].dimension),
+            lambda: scale_problems(self.temperature_scale, "temperature_unit", self.temperature_unit),
             lambda: uncertainty_problems(self.uncertainty, PROPERTIES[self.property].dimension),
             self._emptiness_problems,
             *of_points,

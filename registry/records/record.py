@@ -125,6 +125,12 @@ def temperature_problems(field: str, text: str, unit: str) -> Iterator[Problem]:
         yield Problem(field, text, "a temperature lies above absolute zero, 0 K.")
 
 
+def scale_problems(scale: str, field: str, unit: str) -> Iterator[Problem]:
+    """A scale that is about the zero of kelvin has no numbers in degC or degF."""
+    if scale and SCALES[scale].absolute and UNITS[unit].shift:
+        yield Problem(field, unit, f"{scale} is about kelvin: K or degR.")
+
+
 def uncertainty_problems(text: str, dimension: str) -> Iterator[Problem]:
     """A stated uncertainty can be read."""
     try:

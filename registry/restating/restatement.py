@@ -22,6 +22,7 @@ from registry.restating.agreement import find_scale, find_steepness, measure_dif
 from registry.restating.catalogue import RULES
 from registry.restating.change import Change, Impossible, Statement
 from registry.restating.digits import print_exact, print_fully, print_rounded
+from registry.scales import SCALES
 
 __all__ = ["BASES", "Check", "Restatement", "restate"]
 
@@ -202,7 +203,7 @@ def _build_change(record: Correlation, units: tuple[Unit, Unit], log: str, mass:
 
 def _require_zero(record: Correlation, change: Change, unit: Unit) -> None:
     """A scale that only moves the zero of kelvin is no scale of degC: 0.01 K would be lost between them."""
-    if change.moves_zero and record.temperature_scale == "ice-point-273.16":
+    if change.moves_zero and SCALES[record.temperature_scale].absolute:
         raise BadInput(
             f"{record.key} cannot be restated in {unit.name}: it stands on {record.temperature_scale}, which is about "
             f"the zero of kelvin; a unit with the zero of {record.temperature_unit} is allowed."

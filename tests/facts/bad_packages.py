@@ -14,6 +14,7 @@ CONTROL = "it holds a control character or an unpaired surrogate; plain text is 
 COEFFICIENTS = "coefficients such as A=8.07131; B=1730.63; C=233.426 are allowed, each once."
 UNCERTAINTY = "pieces such as '0.025 % up to 373 K; 0.1 % (k=2)' are allowed."
 WINDOW = "the lower bound must lie above 0 K and below the upper bound."
+ABOUT_KELVIN = "ice-point-273.16 is about kelvin: K or degR."
 NEITHER = "with this key, neither in the package nor in the library."
 FILES = (
     "compounds.csv, names.csv, sources.csv, correlations.csv, fixed_points.csv, printed_values.csv, datasets.csv, "
@@ -262,6 +263,15 @@ PACKAGES = (
     ("an unknown temperature scale", *_in_cell(
         _C, 2, "temperature_scale", "ITS90",
         "one of ITS-90, IPTS-68, IPTS-48, ice-point-273.16, not-stated is allowed.")),
+    ("degrees Celsius on a scale about the zero of kelvin",
+     (("cell", _C, 2, "temperature_scale", "ice-point-273.16"), ("cell", _C, 2, "temperature_unit", "degC")),
+     (f"correlations.csv, line 2, column temperature_unit: 'degC' given; {ABOUT_KELVIN}",)),
+    ("a critical temperature in degrees Fahrenheit on a scale about the zero of kelvin",
+     (("cell", _F, 2, "temperature_scale", "ice-point-273.16"), ("cell", _F, 2, "unit", "degF")),
+     (f"fixed_points.csv, line 2, column unit: 'degF' given; {ABOUT_KELVIN}",)),
+    ("a dataset in degrees Celsius on a scale about the zero of kelvin",
+     (("cell", _D, 2, "temperature_scale", "ice-point-273.16"), ("cell", _D, 2, "temperature_unit", "degC")),
+     (f"datasets.csv, line 2, column temperature_unit: 'degC' given; {ABOUT_KELVIN}",)),
     ("an unknown evidence", *_in_cell(
         _C, 2, "evidence", "good", "one of standard, evaluated, measured, compiled, estimated is allowed.")),
     ("an unknown standing", *_in_cell(
