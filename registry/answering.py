@@ -193,8 +193,4 @@ def _is_within(
     """Where a source states an uncertainty that is small enough."""
     from registry.batches import ACCEPTED
 
-    percents = np.full(found.shape, np.nan)
-    for place, candidate in enumerate(coverage.answering):
-        mine = (owners == place) & (marks == ACCEPTED)
-        percents[mine] = candidate.expanded_percents(flat[mine], found[mine])
-    return percents <= within
+    return coverage.expanded_percents(flat, found, np.where(marks == ACCEPTED, owners, -1)) <= within

@@ -49,7 +49,7 @@ class Answer(Value):
     @property
     def mark(self) -> str:
         """``draft`` where a draft answers; empty for an accepted correlation."""
-        return "" if self.standing == "accepted" else self.standing
+        return self._candidate.entry.mark
 
     @property
     def correlation(self) -> Correlation:
@@ -132,8 +132,7 @@ class Answer(Value):
     @property
     def citation(self) -> str:
         """The source as a line of text."""
-        source = self._coverage.dossier.sources.get(self.correlation.source)
-        return source.citation if source else self.correlation.source
+        return self._coverage.dossier.cite(self.correlation.source)
 
     @property
     def chosen_because(self) -> str:

@@ -60,9 +60,7 @@ class Batch(Choices):
     @cached_property
     def marks(self) -> NDArray[np.str_]:
         """``beyond``, ``estimate`` or ``draft`` for each temperature; empty for an accepted answer or a refusal."""
-        standings = [candidate.entry.standing for candidate in self.coverage.answering]
-        names = np.array(["" if standing == "accepted" else standing for standing in standings] + [""], dtype="<U9")
-        marks = names[self.chosen]
+        marks = self.coverage.mark_owners(self.chosen)
         if self._origins is not None:
             marks[(self._origins == BEYOND) & ~self.refused] = "beyond"
             marks[(self._origins == ESTIMATE) & ~self.refused] = "estimate"

@@ -203,6 +203,46 @@ class Coverage:
         values, places = self._evaluator.evaluate(flat)
         return values.reshape(np.shape(kelvin)), places.reshape(np.shape(kelvin))
 
+    def mark_owners(self, owners: NDArray[np.signedinteger[Any]]) -> NDArray[np.str_]:
+        """``draft`` where one answers, else an empty text.
+
+        Parameters
+        ----------
+        owners : array of int, any shape
+            Index into `answering`; -1 for none.
+
+        Returns
+        -------
+        array of str, same shape
+            With room for nine letters, the longest mark.
+        """
+        marks: NDArray[np.str_] = np.array([*(c.entry.mark for c in self.answering), ""], dtype="<U9")[owners]
+        return marks
+
+    def expanded_percents(
+        self, kelvin: NDArray[np.float64], values: NDArray[np.float64], owners: NDArray[np.signedinteger[Any]]
+    ) -> NDArray[np.float64]:
+        """The stated uncertainties at coverage factor 2, percent of the values.
+
+        Parameters
+        ----------
+        kelvin, values : array of float, one-dimensional
+            Temperatures, K, and the values there in SI units.
+        owners : array of int, same shape
+            Index into `answering`; -1 for none.
+
+        Returns
+        -------
+        array of float, same shape
+            NaN where none is stated, and where nobody answers.
+        """
+        percents = np.full(kelvin.shape, np.nan)
+        for number, candidate in enumerate(self.answering):
+            mine = np.flatnonzero(owners == number)
+            if mine.size:
+                percents[mine] = candidate.expanded_percents(kelvin[mine], values[mine])
+        return percents
+
 
 def build_coverage(dossier: Dossier, prop: str, phase: str = "", *, metastable: bool = False) -> Coverage:
     """The coverage of one property of a compound.

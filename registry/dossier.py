@@ -57,6 +57,11 @@ class Entry(Generic[R]):
         """True if it may take part in an answer."""
         return self.standing == "accepted" or self.trial
 
+    @property
+    def mark(self) -> str:
+        """Its standing where it is not accepted, as of a draft on trial; else empty."""
+        return "" if self.standing == "accepted" else self.standing
+
 
 @dataclass(frozen=True)
 class Dossier:
@@ -97,6 +102,11 @@ class Dossier:
     def preference_reasons(self) -> dict[tuple[str, str], str]:
         """The reason of each accepted preference, by its pair of keys."""
         return {e.record.pair: e.record.reason for e in self.preferences if e.accepted}
+
+    def cite(self, source: str) -> str:
+        """The citation of a source; its key if none is recorded."""
+        record = self.sources.get(source)
+        return record.citation if record is not None else source
 
     def year(self, source: str) -> int:
         """The year of a source, 0 if it states none."""

@@ -20,7 +20,7 @@ from numpy.typing import NDArray
 from registry.coverage import Coverage
 from registry.dossier import Dossier, Entry
 from registry.errors import BadInput, quote
-from registry.limits import best_fixed_point
+from registry.limits import CRITICAL_CONSTANTS, best_fixed_point
 from registry.naming import join_names
 from registry.readings import Reading
 from registry.records import FixedPoint
@@ -126,9 +126,6 @@ def acentric_factor(reduced_pressure: float) -> float:
     0.638272
     """
     return -math.log10(reduced_pressure) - 1.0
-
-
-_NEEDED = ("critical-temperature", "critical-pressure", "acentric-factor")
 
 
 class Estimator:
@@ -281,7 +278,7 @@ class Estimate(Value):
 
 
 def _find_points(method: Method, dossier: Dossier) -> tuple[Entry[FixedPoint], ...]:
-    found = {quantity: best_fixed_point(dossier, quantity) for quantity in _NEEDED}
+    found = {quantity: best_fixed_point(dossier, quantity) for quantity in CRITICAL_CONSTANTS}
     missing = [quantity.replace("-", " ") for quantity, point in found.items() if point is None]
     if missing:
         raise BadInput(

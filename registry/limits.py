@@ -10,7 +10,10 @@ from registry.dossier import Dossier, Entry
 from registry.properties import PROPERTIES
 from registry.records import EVIDENCE, FixedPoint
 
-__all__ = ["Limits", "best_fixed_point", "find_limits"]
+__all__ = ["CRITICAL_CONSTANTS", "Limits", "best_fixed_point", "find_limits"]
+
+CRITICAL_CONSTANTS = ("critical-temperature", "critical-pressure", "acentric-factor")
+"""The fixed points that corresponding states take."""
 
 
 def best_fixed_point(dossier: Dossier, quantity: str) -> Entry[FixedPoint] | None:

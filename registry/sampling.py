@@ -14,7 +14,7 @@ from functools import lru_cache
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["find_steps", "grade_points", "weigh_points"]
+__all__ = ["find_change", "find_steps", "grade_points", "weigh_points"]
 
 Array = NDArray[np.float64]
 Codes = NDArray[np.generic]
@@ -70,4 +70,18 @@ def _close_step(code: Callable[[Array], Codes], low: float, high: float) -> tupl
         if at[first - 1] == low and at[first] == high:
             break
         low, high = float(at[first - 1]), float(at[first])
+    return low, high
+
+
+def find_change(test: Callable[[float], bool], low: float, high: float) -> tuple[float, float]:
+    """The neighbouring doubles between which a test changes; it differs at the two ends.
+
+    Examples
+    --------
+    >>> find_change(lambda kelvin: kelvin < 300.0, 200.0, 400.0)
+    (299.99999999999994, 300.0)
+    """
+    first = test(low)
+    while low < (middle := 0.5 * (low + high)) < high:
+        low, high = (middle, high) if test(middle) == first else (low, middle)
     return low, high

@@ -14,7 +14,7 @@ from registry.properties import PROPERTIES
 from registry.ranking import deciding_rule, explain_order, rank_of
 from registry.refusals import Nearest, Refusal
 
-__all__ = ["Verdict", "describe_unaccepted", "explain_choice", "judge_candidates", "refuse", "show_map"]
+__all__ = ["Verdict", "advise_below", "describe_unaccepted", "explain_choice", "judge_candidates", "refuse", "show_map"]
 
 
 @dataclass(frozen=True)
@@ -241,18 +241,36 @@ def _below_triple(coverage: Coverage, kelvin: float) -> tuple[str, str, str]:
     point = limits.lower_point
     source = f"{limits.lower:.9g} K" + (f" ({point.record.source})" if point else "")
     text = f"{_kelvin(kelvin)} lies below the triple temperature of {name}, {source}: the stable phase is solid."
+    metastable = [
+        c.key for c in coverage.accepted
+        if c.record.metastable_below and c.curve.window[0] <= kelvin <= c.curve.window[1]
+    ]  # fmt: skip
+    return "below-triple", text, advise_below(coverage, metastable)
+
+
+def advise_below(coverage: Coverage, metastable: Sequence[str]) -> str:
+    """What to ask for below the triple temperature, in sentences; the map where there is nothing.
+
+    Parameters
+    ----------
+    coverage : Coverage
+        What was asked.
+    metastable : sequence of str
+        The keys of the correlations that cover the metastable liquid there.
+
+    Returns
+    -------
+    str
+        At least one sentence.
+    """
     advice = []
     # a vapour pressure goes on as a sublimation pressure; a density or an enthalpy of vaporization as nothing
     solid = coverage.dossier.for_property("sublimation-pressure") if coverage.property == "vapor-pressure" else ()
     if any(entry.accepted for entry in solid):
         advice.append("Ask for --property sublimation-pressure.")
-    metastable = [
-        c.key for c in coverage.accepted
-        if c.record.metastable_below and c.curve.window[0] <= kelvin <= c.curve.window[1]
-    ]  # fmt: skip
     if metastable and not coverage.metastable:
         advice.append(f"The metastable liquid is covered by {join_names(metastable)}: ask with --metastable.")
-    return "below-triple", text, " ".join(advice) or show_map(coverage)
+    return " ".join(advice) or show_map(coverage)
 
 
 def show_map(coverage: Coverage) -> str:

@@ -11,7 +11,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
-from functools import cached_property
+from functools import cached_property, partial
 
 import numpy as np
 from numpy.typing import NDArray
@@ -24,6 +24,7 @@ from registry.errors import BadInput
 from registry.forms.form import Array
 from registry.numerals import to_float
 from registry.refusals import Refusal
+from registry.sampling import find_change
 from registry.verdicts import refuse
 
 __all__ = ["Anchor", "PhaseBoundary", "SaturationBatch", "require_boundary"]
@@ -101,7 +102,8 @@ class PhaseBoundary:
             if self._holds(stretch.candidate, top):
                 return self._anchor_at(top, critical) if number else None
             if self._holds(stretch.candidate, stretch.low):
-                return self._anchor_at(self._bisect(stretch.candidate, stretch.low, top), critical)
+                last, _ = find_change(partial(self._holds, stretch.candidate), stretch.low, top)
+                return self._anchor_at(last, critical)
         return Anchor(-math.inf, math.nan, critical)
 
     def _anchor_at(self, kelvin: float, critical: float) -> Anchor:
@@ -113,15 +115,6 @@ class PhaseBoundary:
 
     def _holds(self, candidate: Candidate, kelvin: float) -> bool:
         return bool(self.volumes.holds(np.array([kelvin]), np.array([candidate.curve.value(kelvin)]))[0])
-
-    def _bisect(self, candidate: Candidate, low: float, high: float) -> float:
-        """The highest temperature at which the series holds; it does at `low`, not at `high`."""
-        while low < (middle := 0.5 * (low + high)) < high:
-            if self._holds(candidate, middle):
-                low = middle
-            else:
-                high = middle
-        return low
 
     def _pressures(self, flat: Array) -> tuple[Array, Array]:
         """Pressures and slopes, Pa and Pa/K, NaN where nothing answers."""
@@ -237,11 +230,8 @@ class SaturationBatch:
     def marks(self) -> NDArray[np.str_]:
         """``draft`` for each temperature at which one answers; empty for an accepted correlation or a refusal."""
         coverage = self.boundary.coverage
-        standings = [candidate.entry.standing for candidate in coverage.answering]
-        names = np.array(["" if standing == "accepted" else standing for standing in standings] + [""], dtype="<U9")
         chosen = np.take(coverage.owners, coverage.evaluate(self.temperatures)[1])
-        marks: NDArray[np.str_] = names[np.where(self.refused, -1, chosen)]
-        return marks
+        return coverage.mark_owners(np.where(self.refused, -1, chosen))
 
     def refusal(self, index: int | tuple[int, ...]) -> Refusal:
         """Why the temperature at an index was refused.

@@ -20,7 +20,7 @@ from registry.equilibrium import virial
 from registry.forms.corresponding import RACKETT
 from registry.forms.form import Array
 from registry.forms.reciprocal import GAS_CONSTANT
-from registry.limits import best_fixed_point
+from registry.limits import CRITICAL_CONSTANTS, best_fixed_point
 from registry.naming import join_names
 from registry.records import FixedPoint
 
@@ -30,8 +30,6 @@ TSONOPOULOS = "second virial coefficient, Tsonopoulos"
 IDEAL_GAS = "ideal gas"
 RACKETT_NAME = "Rackett"
 NEGLECTED = "neglected"
-
-CRITICAL_CONSTANTS = ("critical-temperature", "critical-pressure", "acentric-factor")
 
 
 def rackett_volume(
@@ -173,8 +171,8 @@ class Volumes:
         value, candidate = self.density.value_at(kelvin)
         if candidate is not None and value > 0.0:
             # on trial where drafts were asked for
-            mark = "" if candidate.entry.standing == "accepted" else f" ({candidate.entry.standing})"
-            return Choice(f"recorded: {candidate.key}{mark}")
+            mark = candidate.entry.mark
+            return Choice(f"recorded: {candidate.key}" + (f" ({mark})" if mark else ""))
         recorded = "covers this temperature" if self.density.answering else "is recorded"
         reason = f"no saturated liquid density {recorded}"
         if self.missing:

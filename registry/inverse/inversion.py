@@ -24,7 +24,7 @@ from registry.inverse.branches import Branch
 from registry.inverse.turns import cut_branches
 from registry.properties import PROPERTIES
 
-__all__ = ["END_TOLERANCE", "NONE", "SAME_TEMPERATURE", "SEVERAL", "Inversion", "span_candidate"]
+__all__ = ["END_TOLERANCE", "NONE", "SAME_TEMPERATURE", "SEVERAL", "Inversion"]
 
 Array = NDArray[np.float64]
 Places = NDArray[np.signedinteger[Any]]
@@ -69,10 +69,17 @@ class Inversion:
                 found += cut_branches(place, part, positive=positive)
         return tuple(found)
 
+    @cached_property
+    def unaccepted(self) -> tuple[Branch, ...]:
+        """The monotone parts of the curves that may not answer, by candidate; they belong to no stretch."""
+        positive = PROPERTIES[self.coverage.property].positive
+        waiting = (c for c in self.coverage.candidates if not c.entry.accepted and not c.empty)
+        return tuple(branch for c in waiting for branch in cut_branches(NONE, _span_candidate(c), positive=positive))
+
     def _open_phases(self, stretch: Stretch) -> Iterator[Stretch]:
         """Each candidate of a stretch in which no phase was named, as far as it reaches."""
         for candidate in self.coverage.accepted:
-            part = span_candidate(candidate)
+            part = _span_candidate(candidate)
             if (
                 not candidate.empty
                 and candidate.record.phase in stretch.phases
@@ -217,7 +224,7 @@ class Inversion:
         return intervals
 
 
-def span_candidate(candidate: Candidate) -> Stretch:
+def _span_candidate(candidate: Candidate) -> Stretch:
     """Where a candidate may answer, whoever else may: its reach with the tolerance at its bounds."""
     low, high = candidate.reach
     return Stretch(low - rules.BOUND_TOLERANCE, math.nextafter(high + rules.BOUND_TOLERANCE, math.inf), candidate)

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from typing import Any
 
 import numpy as np
@@ -10,11 +9,10 @@ from numpy.typing import NDArray
 
 from registry.answers import Answer
 from registry.choices import Choices
-from registry.coverage import Coverage
 from registry.errors import BadInput, Refused
 from registry.inverse.inversion import Inversion
 from registry.inverse.refusals import InverseRefusal
-from registry.inverse.verdicts import refuse_pressure
+from registry.inverse.verdicts import is_pressure, refuse_pressure
 from registry.naming import join_names
 from registry.properties import PROPERTIES, Property
 
@@ -52,7 +50,7 @@ def solve_one(inversion: Inversion, pressure: float) -> Answer:
     """
     kelvin, places = inversion.solve(np.array([pressure]))
     place = int(places[0])
-    if place < 0 or not _is_pressure(inversion.coverage, pressure):
+    if place < 0 or not is_pressure(inversion.coverage, pressure):
         refusal = refuse_pressure(inversion, pressure)
         raise BadInput(refusal.explanation) if refusal.reason == "not-a-pressure" else Refused(refusal)
     candidate = inversion.coverage.stretches[place].candidate
@@ -63,10 +61,6 @@ def solve_one(inversion: Inversion, pressure: float) -> Answer:
 def solve_many(inversion: Inversion, pressures: NDArray[np.float64]) -> Temperatures:
     """The temperatures at many pressures, Pa, any shape."""
     return Temperatures(pressures, *inversion.solve(pressures), inversion)
-
-
-def _is_pressure(coverage: Coverage, value: float) -> bool:
-    return math.isfinite(value) and (value > 0.0 or PROPERTIES[coverage.property].signed)
 
 
 class Temperatures(Choices):

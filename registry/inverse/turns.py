@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterator
+from collections.abc import Iterator
 
 import numpy as np
 from numpy.typing import NDArray
@@ -12,6 +12,7 @@ from registry.candidate import Candidate
 from registry.coverage import Stretch
 from registry.curve import Curve
 from registry.inverse.branches import Branch
+from registry.sampling import find_change
 
 __all__ = ["cut_branches"]
 
@@ -81,7 +82,7 @@ def _find_usable(curve: Curve, low: float, high: float, positive: bool) -> Itera
 
     start = low if usable[0] else None
     for i in np.flatnonzero(usable[1:] != usable[:-1]).tolist():
-        left, right = _find_change(test, float(at[i]), float(at[i + 1]))
+        left, right = find_change(test, float(at[i]), float(at[i + 1]))
         if start is None:
             start = right
         else:
@@ -102,18 +103,10 @@ def _find_turns(curve: Curve, low: float, high: float) -> Iterator[tuple[float, 
     for left, right in zip(known[:-1].tolist(), known[1:].tolist(), strict=True):
         if signs[left] != signs[right]:
             rising = signs[left] > 0.0
-            before, after = _find_change(
+            before, after = find_change(
                 lambda kelvin, rising=rising: (curve.rates(np.array([kelvin]))[0] > 0.0) == rising,  # type: ignore[misc]
                 float(at[left]), float(at[right]),
             )  # fmt: skip
             yield start, before
             start = after
     yield start, high
-
-
-def _find_change(test: Callable[[float], bool], low: float, high: float) -> tuple[float, float]:
-    """The neighbouring floats between which a test changes; it differs at the two ends."""
-    first = test(low)
-    while low < (middle := 0.5 * (low + high)) < high:
-        low, high = (middle, high) if test(middle) == first else (low, middle)
-    return low, high

@@ -4,19 +4,17 @@ from __future__ import annotations
 
 import math
 
-from registry.candidate import Candidate
 from registry.coverage import Coverage
 from registry.display import format_plain, suit_unit
 from registry.inverse.branches import Branch
-from registry.inverse.inversion import END_TOLERANCE, SAME_TEMPERATURE, Inversion, span_candidate
+from registry.inverse.inversion import END_TOLERANCE, SAME_TEMPERATURE, Inversion
 from registry.inverse.refusals import InverseRefusal, Side
-from registry.inverse.turns import cut_branches
 from registry.naming import join_names
 from registry.properties import PROPERTIES
 from registry.quantities import UNITS
-from registry.verdicts import describe_unaccepted, refuse, show_map
+from registry.verdicts import advise_below, describe_unaccepted, refuse, show_map
 
-__all__ = ["refuse_pressure"]
+__all__ = ["is_pressure", "refuse_pressure"]
 
 
 def refuse_pressure(inversion: Inversion, value: float) -> InverseRefusal:
@@ -35,7 +33,7 @@ def refuse_pressure(inversion: Inversion, value: float) -> InverseRefusal:
         With the reason, both sides and what can be done.
     """
     coverage = inversion.coverage
-    if not math.isfinite(value) or (value <= 0.0 and not PROPERTIES[coverage.property].signed):
+    if not is_pressure(coverage, value):
         above = "" if PROPERTIES[coverage.property].signed else " above 0"
         return _make(
             value, "not-a-pressure", f"{value} Pa is no pressure; a finite number of pascal{above} is allowed."
@@ -46,7 +44,12 @@ def refuse_pressure(inversion: Inversion, value: float) -> InverseRefusal:
     several = inversion.find_all(value)
     if several:
         return _refuse_several(inversion, value, several)
-    return _refuse_unaccepted(coverage, value) or _refuse_none(inversion, value)
+    return _refuse_unaccepted(inversion, value) or _refuse_none(inversion, value)
+
+
+def is_pressure(coverage: Coverage, value: float) -> bool:
+    """True for a finite number of pascal above zero; of a property that may lie below zero, for any finite one."""
+    return math.isfinite(value) and (value > 0.0 or PROPERTIES[coverage.property].signed)
 
 
 def _make(value: float, reason: str, *parts: str, sides: tuple[Side, ...] = ()) -> InverseRefusal:
@@ -124,22 +127,15 @@ def _meet(lower: Branch, upper: Branch) -> bool:
     return abs(upper.low - lower.high) <= SAME_TEMPERATURE
 
 
-def _refuse_unaccepted(coverage: Coverage, value: float) -> InverseRefusal | None:
+def _refuse_unaccepted(inversion: Inversion, value: float) -> InverseRefusal | None:
     """The refusal where only correlations have a value that may not answer."""
-    found = [c for c in coverage.candidates if not c.entry.accepted and not c.empty and _has(c, value)]
+    found = {b.candidate.key: b.candidate for b in inversion.unaccepted if b.least <= value <= b.greatest}
     if not found:
         return None
-    listed = "; ".join(describe_unaccepted(candidate) for candidate in found)
-    text = (
-        f"Only correlations that are not accepted have {_pascal(value)} for {coverage.dossier.compound.key}: {listed}."
-    )
+    name = inversion.coverage.dossier.compound.key
+    listed = "; ".join(describe_unaccepted(candidate) for candidate in found.values())
+    text = f"Only correlations that are not accepted have {_pascal(value)} for {name}: {listed}."
     return _make(value, "not-accepted", text, "It answers again once a reviewed record covers it.")
-
-
-def _has(candidate: Candidate, value: float) -> bool:
-    positive = PROPERTIES[candidate.record.property].positive
-    branches = cut_branches(0, span_candidate(candidate), positive=positive)
-    return any(branch.least <= value <= branch.greatest for branch in branches)
 
 
 def _refuse_none(inversion: Inversion, value: float) -> InverseRefusal:
@@ -193,17 +189,12 @@ def _name_limit(coverage: Coverage, kelvin: float) -> str:
 
 def _advise(coverage: Coverage, side: Side, value: float) -> str:
     """Another property, or the metastable liquid, where that has the value; else the map."""
-    limits, dossier = coverage.limits, coverage.dossier
     if coverage.property == "sublimation-pressure" and value > side.value and _name_limit(coverage, side.temperature):
         return "Ask for the vapour pressure: --property vapor-pressure."
-    advice = []
-    if coverage.property == "vapor-pressure" and value < side.value and side.temperature <= limits.lower:
-        if any(entry.accepted for entry in dossier.for_property("sublimation-pressure")):
-            advice.append("Ask for --property sublimation-pressure.")
-        metastable = [
-            c.key for c in coverage.accepted
-            if c.record.metastable_below and c.curve.value(c.curve.window[0]) <= value
-        ]  # fmt: skip
-        if metastable and not coverage.metastable:
-            advice.append(f"The metastable liquid is covered by {join_names(metastable)}: ask with --metastable.")
-    return " ".join(advice) or show_map(coverage)
+    if coverage.property != "vapor-pressure" or value >= side.value or side.temperature > coverage.limits.lower:
+        return show_map(coverage)
+    metastable = [
+        c.key for c in coverage.accepted
+        if c.record.metastable_below and c.curve.value(c.curve.window[0]) <= value
+    ]  # fmt: skip
+    return advise_below(coverage, metastable)

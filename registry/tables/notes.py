@@ -10,7 +10,6 @@ import numpy as np
 from numpy.typing import NDArray
 
 from registry import rules
-from registry.candidate import Candidate
 from registry.coverage import Coverage, Seam, Stretch
 
 __all__ = ["PLAIN", "Marker", "Note", "note_refused"]
@@ -59,7 +58,7 @@ class Marker:
     def __init__(self, coverage: Coverage) -> None:
         self._stretches = coverage.stretches
         self._seams = dict(zip(_find_changes(coverage.stretches), coverage.seams, strict=True))
-        self._standing = [_word_standing(candidate) for candidate in coverage.answering]
+        self._standing = [candidate.entry.mark for candidate in coverage.answering]
         self._stable_from = coverage.limits.lower - rules.BOUND_TOLERANCE if coverage.metastable else 0.0
         self._place = -1
         self._refused = False
@@ -103,11 +102,6 @@ def _find_changes(stretches: Sequence[Stretch]) -> Iterator[int]:
     """The numbers of the stretches at whose upper end one correlation takes over from another."""
     pairs = zip(stretches, stretches[1:], strict=False)
     return (i for i, (left, right) in enumerate(pairs) if left.candidate and right.candidate)
-
-
-def _word_standing(candidate: Candidate) -> str:
-    standing = candidate.entry.standing
-    return "" if standing == "accepted" else standing
 
 
 @lru_cache

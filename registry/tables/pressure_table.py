@@ -2,19 +2,16 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Sequence
 from functools import cached_property, partial
 from typing import Any
 
 import numpy as np
 from numpy.typing import NDArray
 
-from registry.inverse.branches import Branch
-from registry.inverse.inversion import END_TOLERANCE, Inversion, span_candidate
+from registry.inverse.inversion import END_TOLERANCE, Inversion
 from registry.inverse.refusals import InverseRefusal
-from registry.inverse.turns import cut_branches
 from registry.inverse.verdicts import refuse_pressure
-from registry.properties import PROPERTIES
 from registry.quantities import UNITS
 from registry.tables.reasons import Reasons
 from registry.tables.spacing import Spacing
@@ -75,16 +72,9 @@ class PressureTable(Table):
 
     @cached_property
     def _reasons(self) -> Reasons:
-        ends = {end for branch in (*self._inversion.branches, *self._waiting()) for end in branch.ends}
+        ends = {end for branch in (*self._inversion.branches, *self._inversion.unaccepted) for end in branch.ends}
         near = (end + side * END_TOLERANCE * abs(end) for end in ends for side in (-1.0, 0.0, 1.0))
         return Reasons(near, partial(refuse_pressure, self._inversion))
-
-    def _waiting(self) -> Iterator[Branch]:
-        """The branches of correlations that may not answer."""
-        positive = PROPERTIES[self.coverage.property].positive
-        for candidate in self.coverage.candidates:
-            if not candidate.entry.accepted and not candidate.empty:
-                yield from cut_branches(0, span_candidate(candidate), positive=positive)
 
     def refusal(self, row: Row) -> InverseRefusal:
         """Why a row was refused.

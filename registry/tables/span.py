@@ -88,6 +88,7 @@ def demand_one_at_values(coverage: Coverage, low: float, high: float) -> tuple[C
         If none has all of them; says which come closest.
     """
     if not coverage.candidates:
+        # the same at every temperature
         raise Refused(refuse(coverage, 1.0))
     over = f"{_range(low, high)} {PROPERTIES[coverage.property].unit}"
     found = ((c.key, _solve_ends(coverage, c, low, high)) for c in coverage.accepted)

@@ -197,12 +197,7 @@ class Table:
 
     def _expand(self, kelvin: Array, values: Array, owners: Sequence[int]) -> Array:
         """The stated uncertainties of a block, percent at coverage factor 2."""
-        percents = np.full(kelvin.shape, np.nan)
-        owned = np.array(owners)
-        for number in set(owners) - {-1}:
-            mine = owned == number
-            percents[mine] = self.coverage.answering[number].expanded_percents(kelvin[mine], values[mine])
-        return percents
+        return self.coverage.expanded_percents(kelvin, values, np.array(owners))
 
 
 def build_table(coverage: Coverage, spacing: Spacing, low: float, high: float, *, one: bool = False) -> Table:

@@ -108,7 +108,6 @@ class Tally:
     def _describe(self, owner: int, first: float, last: float) -> Used:
         coverage = self.table.coverage
         candidate = coverage.answering[owner]
-        source = coverage.dossier.sources.get(candidate.record.source)
         ends = (kelvin for kelvin in (first, last) if math.isfinite(kelvin))
         cautions = dict.fromkeys(caution for t in ends for caution in find_cautions(coverage, candidate, t))
-        return Used(candidate, source.citation if source else candidate.record.source, tuple(cautions))
+        return Used(candidate, coverage.dossier.cite(candidate.record.source), tuple(cautions))
