@@ -19,6 +19,7 @@ __all__ = [
     "convert",
     "find_unit",
     "gauge_unit",
+    "is_unit",
     "parse_pressure",
     "parse_temperature",
     "read_quantity",
@@ -156,6 +157,23 @@ def find_unit(text: str, dimension: str) -> Unit:
     if unit is None and (near := _nearest_spelling(text, dimension)):
         allowed += f" Did you mean {near}?"
     raise BadQuantity(text, allowed)
+
+
+def is_unit(text: str, dimension: str) -> bool:
+    """True if a text is a unit of a dimension; a gauge unit is one of pressure.
+
+    Examples
+    --------
+    >>> is_unit("barg", "pressure"), is_unit("barg", "temperature")
+    (True, False)
+    """
+    try:
+        find_unit(text, dimension)
+    except GaugePressure:
+        return True
+    except BadQuantity:
+        return False
+    return True
 
 
 def _nearest_spelling(text: str, dimension: str) -> str:

@@ -143,11 +143,10 @@ class Tabulator(Reader):
         from registry.tables.pressure_table import build_pressure_table
         from registry.tables.spacing import space_pressures
 
-        pascal = UNITS["Pa"]
         ends = _read_exact(low, "pressure"), _read_exact(high, "pressure")
         by = None if step is None else _read_exact(step, "step")
         many = None if points is None else _read_whole(points)
-        spacing = space_pressures(*ends, pascal, by, many, pascal)
+        spacing = space_pressures(*ends, UNITS["Pa"], by, many)
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
         demand_pressure(PROPERTIES[coverage.property])
         return build_pressure_table(self._invert(coverage), spacing, float(ends[0]), float(ends[1]), one=one)

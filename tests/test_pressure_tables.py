@@ -116,7 +116,7 @@ def test_reasons_differ_within_a_gap_where_a_draft_has_some_of_the_pressures():
                   for i, e in enumerate(entries))  # fmt: skip
     coverage = build_coverage(Dossier(COMPOUND, keyed), "vapor-pressure")
     low, high = (coverage.candidates[0].curve.value(t) for t in (338.0, 372.0))
-    spacing = space_pressures(Fraction(low), Fraction(high), UNITS["Pa"], None, 60, UNITS["Pa"])
+    spacing = space_pressures(Fraction(low), Fraction(high), UNITS["Pa"], None, 60)
     table = build_pressure_table(Inversion(coverage), spacing, low, high)
     reasons = [row.note.reason for row in table]
     assert [reason for reason, _ in itertools.groupby(reasons)] == ["", "gap", "not-accepted", "gap", ""]

@@ -83,7 +83,7 @@ def test_bounds_and_their_neighbours_are_what_a_lookup_gives(shelf, request):
         edges |= {coverage.limits.lower, coverage.limits.upper}
         near = {k for e in edges for k in (math.nextafter(e, 0.0), e, math.nextafter(e, math.inf), e - 1e-9, e + 1e-9)}
         usable = sorted(k for k in near if 0.5 < k < 1e5)
-        listed = dataclasses.replace(space_pressures(Fraction(1), Fraction(2), UNITS["K"], None, None, UNITS["K"]),
+        listed = dataclasses.replace(space_pressures(Fraction(1), Fraction(2), UNITS["K"], None, None),
                                      places=tuple(map(Fraction, usable)))  # fmt: skip
         for row in build_table(coverage, listed, usable[0], usable[-1]):
             assert _row_as_looked_up(row, _look(library, compound, row.temperature, property=prop)), (compound, row)
@@ -190,7 +190,7 @@ def test_fahrenheit_steps_are_exact_in_both_units():
 )
 def test_round_pressures_are_1_2_5_in_the_unit_asked_for(low, high, unit, shown):
     """Both ends count where they are round; each number is the decimal itself."""
-    spacing = space_pressures(Fraction(low), Fraction(high), UNITS[unit], None, None, UNITS["Pa"])
+    spacing = space_pressures(Fraction(low), Fraction(high), UNITS[unit], None, None)
     assert spacing.numbers(0, spacing.count, UNITS[unit]) == shown
 
 
@@ -200,14 +200,14 @@ def test_points_of_pressure_end_exactly(unit):
     for number in range(1, 200):
         low, high = Fraction(number, 7), Fraction(number * 13, 3)
         ends = low * UNITS[unit].factor, high * UNITS[unit].factor
-        spacing = space_pressures(*ends, UNITS[unit], None, 5, UNITS["Pa"])
+        spacing = space_pressures(*ends, UNITS[unit], None, 5)
         found = spacing.numbers(0, 5, UNITS[unit])
         assert (found[0], found[-1]) == (float(low), float(high))
 
 
 def test_points_of_pressure_keep_one_ratio():
     """Four points over three decades are the decades, the ends exact."""
-    spacing = space_pressures(Fraction(1000), Fraction(10**6), UNITS["kPa"], None, 4, UNITS["Pa"])
+    spacing = space_pressures(Fraction(1000), Fraction(10**6), UNITS["kPa"], None, 4)
     found = spacing.numbers(0, 4, UNITS["kPa"])
     assert (found[0], found[3]) == (1.0, 1000.0)
     assert found == pytest.approx([1.0, 10.0, 100.0, 1000.0], rel=1e-14)

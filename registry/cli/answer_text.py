@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Protocol
 
 from registry.answers import Answer
 from registry.cli.documents import value_in
-from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
+from registry.cli.screen import CAUTION, emphasize, name_mark, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
 from registry.display import format_number, format_percent, format_plain
@@ -22,7 +22,7 @@ from registry.values import Value
 if TYPE_CHECKING:
     from registry.scale_effects import ScaleEffect
 
-__all__ = ["print_answers", "print_story", "print_verdicts"]
+__all__ = ["print_answers", "print_story", "print_verdicts", "word_coverage"]
 
 
 class Typed(Protocol):
@@ -70,7 +70,7 @@ def _print_values(values: list[tuple[Asked, Value]], to: Unit | None) -> None:
     for asked, found in values:
         value, unit = value_in(found, to)
         rows.append([
-            asked.text, f"{format_plain(found.temperature)} K", format_number(value), unit.name + _mark(found),
+            asked.text, f"{format_plain(found.temperature)} K", format_number(value), unit.name + name_mark(found.mark),
             *_word_uncertainty(found, spread), format_percent(found.percent_per_kelvin, "+"),
             *([] if spread else [_word_factor(found)]),
             found.correlation.obtained if isinstance(found, Answer) else "none", found.origin,
@@ -84,23 +84,23 @@ def _word_uncertainty(found: Value, spread: bool) -> list[str]:
     """What is stated; with `spread` also what the temperature adds, and both together."""
     if not isinstance(found, Answer):
         return ["none", format_percent(found.temperature_percent), "none"] if spread else ["none"]
-    stated, piece = found.uncertainty_percent, found.piece
-    factor = f" (k={piece.factor:g})" if piece and piece.factor else ""
-    words = [f"{stated:.3g} %{factor}" if stated is not None else "none"]
+    stated = found.uncertainty_percent
+    words = [f"{stated:.3g} %{word_coverage(found)}" if stated is not None else "none"]
     if spread:
         total = found.expanded_percent
         words += [format_percent(found.temperature_percent), "none" if total is None else format_percent(total)]
     return words
 
 
+def word_coverage(answer: Answer) -> str:
+    """The coverage factor of the stated uncertainty; nothing where none is stated."""
+    piece = answer.piece
+    return f" (k={piece.factor:g})" if piece and piece.factor else ""
+
+
 def _word_factor(found: Value) -> str:
     factor = found.factor_per_10_kelvin
     return f"x {factor:.4g}" if math.isfinite(factor) and math.isfinite(found.log_rate) else "none"
-
-
-def _mark(found: Value) -> str:
-    """Beside the unit of a value that no accepted window gives."""
-    return f" ({found.mark.upper()})" if found.mark else ""
 
 
 def print_story(told: Sequence[tuple[Typed, Answer]], why: bool) -> None:

@@ -9,6 +9,7 @@ import typer
 from registry.cli.options import (
     REFUSED,
     AsOfOption,
+    AtmosphereOption,
     DraftsOption,
     EditionOption,
     JsonOption,
@@ -40,9 +41,7 @@ def boil(
     ] = "vapor-pressure",
     phase: PhaseOption = "",
     unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the temperature.")] = "K",
-    atmosphere: Annotated[
-        str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
-    ] = "",
+    atmosphere: AtmosphereOption = "",
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,
     edition: EditionOption = None,

@@ -6,10 +6,10 @@ from collections.abc import Sequence
 from typing import Any
 
 from registry.answers import Answer
-from registry.cli.answer_text import print_story, print_verdicts
+from registry.cli.answer_text import print_story, print_verdicts, word_coverage
 from registry.cli.documents import describe_answer, value_in
 from registry.cli.pressures import AskedPressure
-from registry.cli.screen import CAUTION, emphasize, name_past, print_table, say, wrap
+from registry.cli.screen import CAUTION, emphasize, name_mark, name_past, print_table, say, wrap
 from registry.coverage import Coverage
 from registry.display import format_plain
 from registry.inverse.refusals import InverseRefusal
@@ -46,14 +46,12 @@ def print_boiling(coverage: Coverage, label: str, found: Found, to: Unit, why: b
 
 def _word_answer(asked: AskedPressure, answer: Answer, to: Unit) -> list[str]:
     value, unit = value_in(answer, None)
-    mark = f" ({answer.mark.upper()})" if answer.mark else ""
-    stated, piece = _stated_kelvin(answer), answer.piece
-    factor = f" (k={piece.factor:g})" if piece and piece.factor else ""
-    per = _kelvin_per_percent(answer)
+    stated, per = _stated_kelvin(answer), _kelvin_per_percent(answer)
     return [
         asked.text, f"{format_plain(value)} {unit.name}",
-        f"{format_plain(to.from_si(answer.temperature))} {to.name}{mark}",
-        f"{stated:.3g} K{factor}" if stated is not None else "none", f"{per:+.3g} K" if per is not None else "none",
+        f"{format_plain(to.from_si(answer.temperature))} {to.name}{name_mark(answer.mark)}",
+        f"{stated:.3g} K{word_coverage(answer)}" if stated is not None else "none",
+        f"{per:+.3g} K" if per is not None else "none",
         answer.correlation.obtained, answer.correlation.key,
     ]  # fmt: skip
 

@@ -9,6 +9,7 @@ import typer
 from registry.cli.options import (
     REFUSED,
     AsOfOption,
+    AtmosphereOption,
     DraftsOption,
     EditionOption,
     JsonOption,
@@ -41,9 +42,7 @@ def lookup(
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
     unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the value.", show_default=False)] = "",
-    atmosphere: Annotated[
-        str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
-    ] = "",
+    atmosphere: AtmosphereOption = "",
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,
     edition: EditionOption = None,

@@ -39,6 +39,9 @@ MetastableOption = Annotated[
 DraftsOption = Annotated[
     bool, typer.Option("--drafts", help="Let drafts of correlations answer; every such value is marked.")
 ]
+AtmosphereOption = Annotated[
+    str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
+]
 EditionOption = Annotated[
     str | None,
     typer.Option("--edition", metavar="NAME", help="As the library was in this edition.", show_default=False),

@@ -6,9 +6,9 @@ from collections.abc import Iterator, Sequence
 from fractions import Fraction
 from typing import NamedTuple
 
-from registry.cli.temperatures import read_lines
+from registry.cli.temperatures import read_each
 from registry.errors import BadInput, BadQuantity, GaugePressure
-from registry.quantities import find_unit, parse_pressure
+from registry.quantities import is_unit, parse_pressure
 
 __all__ = ["AskedPressure", "read_atmosphere", "read_pressures"]
 
@@ -44,13 +44,7 @@ def read_pressures(words: Sequence[str], atmosphere: Fraction | None) -> list[As
     def parse(text: str) -> float:
         return float(parse_pressure(text, atmosphere))
 
-    asked: list[AskedPressure] = []
-    for word in _join_units(words):
-        if word == "-":
-            asked += [AskedPressure(*line) for line in read_lines(parse)]
-        else:
-            plain = word.replace("\u2212", "-")
-            asked.append(AskedPressure(plain, parse(plain)))
+    asked = [AskedPressure(*one) for one in read_each(_join_units(words), parse)]
     if not asked:
         raise BadInput("No pressure was given. Give one or more, such as 101.325kPa, 1atm or 760mmHg, or - for stdin.")
     return asked
@@ -70,16 +64,6 @@ def _join_units(words: Sequence[str]) -> Iterator[str]:
     left = list(words)
     while left:
         word = left.pop(0)
-        if left and word[-1:].isdigit() and _is_unit(left[0]):
+        if left and word[-1:].isdigit() and is_unit(left[0], "pressure"):
             word = f"{word} {left.pop(0)}"
         yield word
-
-
-def _is_unit(word: str) -> bool:
-    try:
-        find_unit(word, "pressure")
-    except GaugePressure:
-        return True
-    except BadQuantity:
-        return False
-    return True

@@ -21,6 +21,7 @@ __all__ = [
     "complain",
     "emphasize",
     "format_facts",
+    "name_mark",
     "name_past",
     "print_facts",
     "print_json",
@@ -71,6 +72,11 @@ def say(text: str = "", end: str = "\n") -> None:
 def name_past(label: str) -> str:
     """What a heading says of the position that is looked at; nothing for the newest."""
     return f", as of {label}" if label else ""
+
+
+def name_mark(mark: str) -> str:
+    """What stands beside a value that no accepted window gives; nothing where one does."""
+    return f" ({mark.upper()})" if mark else ""
 
 
 def complain(text: str) -> None:

@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from typing import Any
 
 from registry.cli.documents import describe_reading
-from registry.cli.screen import CAUTION, emphasize, name_past, print_facts, print_table, say, wrap
+from registry.cli.screen import CAUTION, emphasize, name_mark, name_past, print_facts, print_table, say, wrap
 from registry.cli.temperatures import Asked
 from registry.display import format_number, format_percent, format_plain, suit_unit
 from registry.equilibrium.boundary import PhaseBoundary
@@ -101,8 +101,7 @@ def _round(value: float | None, digits: int) -> str:
 
 def _name_method(one: Saturation) -> str:
     """What gave the enthalpy, in a word; with the mark of a draft."""
-    mark = f" ({one.answer.mark.upper()})" if one.answer.mark else ""
-    return (one.method.split(" from ")[0].split(":")[0] or "none") + mark
+    return (one.method.split(" from ")[0].split(":")[0] or "none") + name_mark(one.answer.mark)
 
 
 def _print_grounds(group: Told, energy: Unit) -> None:
@@ -164,7 +163,7 @@ def _word_correlated(one: Saturation, energy: Unit, where: str) -> str:
         return ""
     value, percent = _energy(one, other.value, energy), other.difference_percent
     side = "above" if percent > 0 else "below"
-    mark = "" if other.standing == "accepted" else f" ({other.standing.upper()})"
+    mark = name_mark("" if other.standing == "accepted" else other.standing)
     return f"{other.key}{mark} gives {value} {energy.name}{where}; dH lies {abs(percent):.2g} % {side}"
 
 

@@ -11,7 +11,7 @@ from registry.coverage import Coverage
 from registry.errors import BadInput, BadQuantity, GaugePressure, quote
 from registry.inverse.inversion import Inversion
 from registry.properties import find_property
-from registry.quantities import UNITS, Unit, find_unit, gauge_unit, parse_temperature, read_quantity
+from registry.quantities import UNITS, Unit, find_unit, gauge_unit, is_unit, parse_temperature, read_quantity
 from registry.reports.columns import suit_value_unit
 from registry.tables.pressure_table import build_pressure_table
 from registry.tables.spacing import Spacing, space_pressures, space_temperatures
@@ -106,7 +106,7 @@ def read_span(low: str, high: str, step: str, points: int | None, atmosphere: st
         return Span(start, end, unit, space_temperatures(start, end, by, points), local)
     if UNITS[find_property(prop).unit].dimension != "pressure":
         raise BadInput(f"{prop} is no pressure, so --from {quote(low)} does not fit. Give two temperatures.")
-    return Span(start, end, unit, space_pressures(start, end, unit, by, points, UNITS["Pa"]), local)
+    return Span(start, end, unit, space_pressures(start, end, unit, by, points), local)
 
 
 def _find_dimension(low: str) -> str:
@@ -115,14 +115,8 @@ def _find_dimension(low: str) -> str:
 
 
 def _is_of(text: str, dimension: str) -> bool:
-    """True if the unit of a text is of a dimension, whatever its number; a gauge pressure is a pressure."""
-    try:
-        find_unit(_NUMBER.sub("", text, count=1).strip(), dimension)
-    except GaugePressure:
-        return dimension == "pressure"
-    except BadQuantity:
-        return False
-    return True
+    """True if the unit of a text is of a dimension, whatever its number."""
+    return is_unit(_NUMBER.sub("", text, count=1).strip(), dimension)
 
 
 def _check_kind(option: str, text: str, dimension: str) -> None:

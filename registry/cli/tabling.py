@@ -10,6 +10,7 @@ import typer
 from registry.cli.options import (
     REFUSED,
     AsOfOption,
+    AtmosphereOption,
     DraftsOption,
     EditionOption,
     JsonOption,
@@ -66,9 +67,7 @@ def table(
         str,
         typer.Option("--temperature-unit", "-t", help="Unit of temperatures; else that of --from.", show_default=False),
     ] = "",
-    atmosphere: Annotated[
-        str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
-    ] = "",
+    atmosphere: AtmosphereOption = "",
     one: Annotated[bool, typer.Option("--one", help="One correlation over the whole span, or a refusal.")] = False,
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,

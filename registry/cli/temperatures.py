@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 import sys
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from typing import NamedTuple, TypeVar
 
 from registry.errors import BadInput, BadQuantity
-from registry.quantities import find_unit
+from registry.quantities import is_unit
 from registry.readings import Reading, parse_reading
 
-__all__ = ["Asked", "read_lines", "read_temperatures"]
+__all__ = ["Asked", "read_each", "read_temperatures"]
 
 _Read = TypeVar("_Read")
 
@@ -29,13 +29,7 @@ class Asked(NamedTuple):
 
 def read_temperatures(words: Sequence[str]) -> list[Asked]:
     """The temperatures on a command line; `-` stands for stdin, one a line; `#` starts a remark."""
-    asked: list[Asked] = []
-    for word in _join_units(words):
-        if word == "-":
-            asked += [Asked(*line) for line in read_lines(parse_reading)]
-        else:
-            plain = word.replace("\u2212", "-")
-            asked.append(Asked(plain, parse_reading(plain)))
+    asked = [Asked(*one) for one in read_each(_join_units(words), parse_reading)]
     if not asked:
         raise BadInput("No temperature was given. Give one or more, such as 298.15K, 25C or 77F, or - for stdin.")
     return asked
@@ -57,18 +51,20 @@ _SPREAD = ("+/-", "+-", "±")
 def _goes_on(word: str, following: str) -> bool:
     if following.startswith((*_SPREAD, "(")) or word.endswith(_SPREAD):
         return True
-    return word[-1:].isdigit() and _is_unit(following)
+    return word[-1:].isdigit() and is_unit(following, "temperature")
 
 
-def _is_unit(word: str) -> bool:
-    try:
-        find_unit(word, "temperature")
-    except BadQuantity:
-        return False
-    return True
+def read_each(words: Iterable[str], parse: Callable[[str], _Read]) -> Iterator[tuple[str, _Read]]:
+    """Each word as typed and as parsed; `-` stands for the lines of stdin."""
+    for word in words:
+        if word == "-":
+            yield from _read_lines(parse)
+        else:
+            plain = word.replace("\u2212", "-")
+            yield plain, parse(plain)
 
 
-def read_lines(parse: Callable[[str], _Read]) -> Iterator[tuple[str, _Read]]:
+def _read_lines(parse: Callable[[str], _Read]) -> Iterator[tuple[str, _Read]]:
     """Each line of stdin that is no remark, as typed and as parsed."""
     if sys.stdin is None:
         return

@@ -12,7 +12,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 
 from registry.errors import BadInput
-from registry.quantities import Unit
+from registry.quantities import UNITS, Unit
 from registry.tables.conversion import Conversion
 
 __all__ = ["MOST_ROWS", "Even", "Geometric", "Listed", "Spacing", "space_pressures", "space_temperatures"]
@@ -79,12 +79,11 @@ class Listed:
 
 @dataclass(frozen=True)
 class Geometric:
-    """Places with one ratio between neighbours, both ends among them, in SI units."""
+    """Places with one ratio between neighbours, both ends among them, Pa."""
 
     low: Fraction
     high: Fraction
     count: int
-    si: Unit
 
     def numbers(self, start: int, stop: int, unit: Unit) -> list[float]:
         """As for `Even`; between the ends to double precision."""
@@ -92,7 +91,7 @@ class Geometric:
         low, high, last = float(self.low), float(self.high), self.count - 1
         # not by their ratio, which may be beyond every double
         places = [low ** ((last - i) / last) * high ** (i / last) for i in range(start, stop)]
-        found = Conversion(self.si, unit).many(places)
+        found = Conversion(UNITS["Pa"], unit).many(places)
         for i in ends:
             if start <= i < stop:
                 found[i - start] = float(_in_unit(ends[i], unit))
@@ -160,9 +159,7 @@ def space_temperatures(low: Fraction, high: Fraction, step: Fraction | None, poi
     raise BadInput("A table needs a step or a number of points. Give one of them.")
 
 
-def space_pressures(
-    low: Fraction, high: Fraction, unit: Unit, step: Fraction | None, points: int | None, si: Unit
-) -> Spacing:
+def space_pressures(low: Fraction, high: Fraction, unit: Unit, step: Fraction | None, points: int | None) -> Spacing:
     """The pressures of a table of temperatures.
 
     Parameters
@@ -177,8 +174,6 @@ def space_pressures(
         How many, with one ratio between neighbours, both ends among them.
         With neither the round numbers between the ends: 1, 2 and 5 times a
         power of ten; of gauge pressures also those below zero, and zero.
-    si : Unit
-        The pascal.
 
     Returns
     -------
@@ -194,7 +189,7 @@ def space_pressures(
     --------
     >>> from registry.quantities import UNITS
     >>> kpa = UNITS["kPa"]
-    >>> space_pressures(Fraction(1000), Fraction(50000), kpa, None, None, UNITS["Pa"]).numbers(0, 9, kpa)
+    >>> space_pressures(Fraction(1000), Fraction(50000), kpa, None, None).numbers(0, 9, kpa)
     [1.0, 2.0, 5.0, 10.0, 20.0, 50.0]
     """
     _check_ends(low, high, "Pa")
@@ -202,7 +197,7 @@ def space_pressures(
     if step is not None:
         return _space_steps(low, high, step)
     if points is not None:
-        return Geometric(low, high, _check_points(points), si)
+        return Geometric(low, high, _check_points(points))
     return _list_round(low, high, unit)
 
 
