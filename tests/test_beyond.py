@@ -9,9 +9,10 @@ from inventane import COMPOUND, invent_correlation
 from registry.answering import answer_many, answer_one
 from registry.conditions import Conditions
 from registry.coverage import build_coverage
-from registry.dossier import Dossier
+from registry.dossier import Dossier, Entry
 from registry.errors import BadInput, Refused
 from registry.extrapolation import Extrapolation
+from registry.records import FixedPoint
 
 
 def test_nothing_is_extrapolated_unasked(published):
@@ -116,6 +117,32 @@ def test_where_its_form_has_no_value_nothing_is_extrapolated():
             answer_one(coverage, kelvin, None, conditions)
         assert caught.value.refusal.explanation.endswith("Extrapolated there, its form gives no usable value.")
     assert np.isnan(answer_many(coverage, np.array([10.0, 39.0, 41.0]), conditions).values).all()
+
+
+def test_half_way_between_two_windows_the_lower_one_answers():
+    """Invented: at 320 K both windows end 10 K away."""
+    entries = (
+        invent_correlation(0, 280, 30, "measured", "", "seen", "accepted"),
+        invent_correlation(1, 330, 70, "measured", "", "seen", "accepted"),
+    )
+    coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+    found = answer_one(coverage, 320.0, None, Conditions(beyond=10.0))
+    assert (found.correlation.key, [n.distance for n in found.neighbours]) == ("inventane-0", [10.0])
+
+
+def test_an_extrapolation_ends_where_a_window_would():
+    """Invented: as inside a window it goes 0.05 K below the triple temperature, 200 K, and no further."""
+    entry = invent_correlation(0, 280, 120, "measured", "", "seen", "accepted")
+    point = FixedPoint(
+        key="inventane-triple", compound="inventane", quantity="triple-point-temperature", value="200", unit="K",
+        evidence="measured", source="invented", locator="invented", obtained="seen",
+    )  # fmt: skip
+    dossier = Dossier(COMPOUND, (entry,), (Entry(point, 1, 1, "accepted"),))
+    coverage, conditions = build_coverage(dossier, "vapor-pressure"), Conditions(beyond=100.0)
+    assert answer_one(coverage, 199.96, None, conditions).mark == "beyond"
+    with pytest.raises(Refused) as caught:
+        answer_one(coverage, 199.94, None, conditions)
+    assert caught.value.refusal.reason == "below-triple"
 
 
 def test_the_distance_that_a_refusal_tells_is_enough(published):

@@ -176,6 +176,10 @@ def test_a_wide_temperature_is_told_to_be_carried_coarsely(published):
     assert published.lookup("water", 303.15).value / wide.value == pytest.approx(4.247 / 3.170, abs=1e-3)
     assert any("makes 29.8 % by the slope alone" in caution for caution in wide.cautions)
     assert not any("slope alone" in c for c in published.lookup("water", parse_reading("25+/-0.1C")).cautions)
+    # from 20 % on: 3.36 K at 5.96 % a kelvin
+    for spread, coarse in (("3.3", False), ("3.4", True)):
+        cautions = published.lookup("water", parse_reading(f"25+/-{spread}C")).cautions
+        assert any("slope alone" in caution for caution in cautions) == coarse
     for asked in ({"beyond": 10.0}, {"estimate": "lee-kesler"}):
         found = published.lookup("ethanol", parse_reading("210+/-5K"), **asked)
         assert any("slope alone" in caution for caution in found.cautions)

@@ -126,6 +126,14 @@ def test_no_estimate_beyond_a_phase_limit(kelvin, published):
     assert caught.value.refusal.reason in ("below-triple", "above-critical")
 
 
+def test_the_triple_temperature_itself_is_estimated_for(published):
+    """There the liquid begins; one double below there is none."""
+    coverage = published.coverage("acetylene")
+    lowest = coverage.limits.lower
+    values = Estimator.of(find_method("lee-kesler"), coverage).values(np.array([math.nextafter(lowest, 0.0), lowest]))
+    assert np.isnan(values).tolist() == [True, False]
+
+
 def test_missing_constants_are_named(published):
     """A compound without critical constants cannot be estimated, and the message says what is missing."""
     with pytest.raises(BadInput, match="acentric factor of neon; no accepted fixed point says it"):

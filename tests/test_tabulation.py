@@ -273,6 +273,30 @@ def test_no_seam_stands_at_the_first_row(published):
     assert [row.note.marks for row in published.tabulate("ethanol", 294.0, 300.0, step=1.0)] == [()] * 7
 
 
+def test_a_reason_changes_where_a_draft_begins_to_cover():
+    """Invented: half a nanokelvin below its bound a draft covers already, though the row before has another reason."""
+    entries = (
+        invent_correlation(0, 350, 50, "measured", "", "seen", "accepted"),
+        invent_correlation(1, 300, 30, "measured", "", "seen", "draft"),
+    )
+    coverage = build_coverage(Dossier(COMPOUND, entries), "vapor-pressure")
+    edge = Fraction("299.9999999995")
+    rows = list(build_table(coverage, space_temperatures(edge - 1, edge, Fraction(1), None), 0.0, 0.0))
+    assert [row.note.reason for row in rows] == ["outside-windows", "not-accepted"]
+
+
+def test_a_narrow_gap_between_rows_is_told_and_bounds_that_meet_are_none():
+    """Invented: windows 0.1 mK apart leave a gap; what lies within the tolerance of two bounds is none."""
+    low = invent_correlation(0, 300, 40, "measured", "", "seen", "accepted")
+    for start, marks in (("340.0001", ("across-gap",)), ("340.000000001", ("seam",))):
+        high = invent_correlation(1, 340, 40, "measured", "", "seen", "accepted")
+        high = dataclasses.replace(high, record=dataclasses.replace(high.record, window_min=start))
+        coverage = build_coverage(Dossier(COMPOUND, (low, high)), "vapor-pressure")
+        spacing = space_temperatures(Fraction(335), Fraction(345), Fraction(10), None)
+        rows = list(build_table(coverage, spacing, 335.0, 345.0))
+        assert rows[1].note.marks == marks
+
+
 def test_rows_in_a_gap_are_refused_and_a_gap_between_rows_is_told():
     """Two invented windows, 300 to 340 K and 370 to 400 K: a row between is refused, a step over it is marked."""
     entries = (invent_correlation(0, 300, 40, "measured", "1 %", "seen", "accepted"),
