@@ -110,7 +110,7 @@ class Answer(Value):
         """
         from registry.budget import make_budget
 
-        return make_budget(self._candidate, self.piece, self.reading, self.value)
+        return make_budget(self._candidate, self.piece, self.temperature, self.value, self.temperature_percent)
 
     @property
     def scale_effects(self) -> tuple[ScaleEffect, ...]:

@@ -15,7 +15,6 @@ from dataclasses import dataclass
 import numpy as np
 
 from registry.candidate import Candidate
-from registry.readings import Reading
 from registry.uncertainty import COVERAGE_FACTOR, Piece
 
 __all__ = ["Budget", "combine_percents", "make_budget"]
@@ -84,7 +83,9 @@ def combine_percents(stated: float | None, factor: float | None, temperature: fl
     return math.hypot(COVERAGE_FACTOR / (factor or COVERAGE_FACTOR) * stated, temperature)
 
 
-def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, value: float) -> Budget:
+def make_budget(
+    candidate: Candidate, piece: Piece | None, kelvin: float, value: float, temperature_percent: float
+) -> Budget:
     """The uncertainty budget of a value.
 
     Parameters
@@ -93,24 +94,26 @@ def make_budget(candidate: Candidate, piece: Piece | None, reading: Reading, val
         What gave it.
     piece : Piece or None
         What its source states of the uncertainty there.
-    reading : Reading
-        The temperature asked.
+    kelvin : float
+        The temperature, K.
     value : float
         The value there, SI.
+    temperature_percent : float
+        What the uncertainty of the temperature adds, percent at coverage
+        factor 2.
 
     Returns
     -------
     Budget
         Its parts.
     """
-    at = np.array([reading.kelvin])
+    at = np.array([kelvin])
     rounding = candidate.rounding
     bound = float(rounding.bounds(at)[0])
-    spread = reading.expanded_uncertainty
     return Budget(
         piece.percent_of(value) if piece else None,
         piece.factor if piece else None,
-        100.0 * abs(candidate.curve.log_rate(reading.kelvin)) * spread if spread else 0.0,
+        temperature_percent,
         min(COVERAGE_FACTOR * float(rounding.standards(at)[0]), bound),
         bound,
     )

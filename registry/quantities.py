@@ -167,13 +167,8 @@ def is_unit(text: str, dimension: str) -> bool:
     >>> is_unit("barg", "pressure"), is_unit("barg", "temperature")
     (True, False)
     """
-    try:
-        find_unit(text, dimension)
-    except GaugePressure:
-        return True
-    except BadQuantity:
-        return False
-    return True
+    unit = _SPELLINGS.get(text.strip()) or (_gauge_base(text) if dimension == "pressure" else None)
+    return unit is not None and unit.dimension == dimension
 
 
 def _nearest_spelling(text: str, dimension: str) -> str:

@@ -209,9 +209,9 @@ class Reader(Collection):
         array([372.7559, 453.0356,      nan])
         """
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
-        from registry.inverse.temperatures import demand_pressure, solve_many, solve_one
+        from registry.inverse.temperatures import require_pressure, solve_many, solve_one
 
-        demand_pressure(PROPERTIES[coverage.property])
+        require_pressure(PROPERTIES[coverage.property])
         pascal = _as_numbers(pressure, "pressure", "pascal")
         inversion = self._invert(coverage)
         return solve_one(inversion, float(pascal)) if pascal.ndim == 0 else solve_many(inversion, pascal)

@@ -138,7 +138,7 @@ class Tabulator(Reader):
         500000.0 424.986
         1000000.0 453.036
         """
-        from registry.inverse.temperatures import demand_pressure
+        from registry.inverse.temperatures import require_pressure
         from registry.quantities import UNITS
         from registry.tables.pressure_table import build_pressure_table
         from registry.tables.spacing import space_pressures
@@ -148,7 +148,7 @@ class Tabulator(Reader):
         many = None if points is None else _read_whole(points)
         spacing = space_pressures(*ends, UNITS["Pa"], by, many)
         coverage = self.coverage(compound, property=property, phase=phase, metastable=metastable, drafts=drafts)
-        demand_pressure(PROPERTIES[coverage.property])
+        require_pressure(PROPERTIES[coverage.property])
         return build_pressure_table(self._invert(coverage), spacing, float(ends[0]), float(ends[1]), one=one)
 
 

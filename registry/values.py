@@ -118,6 +118,7 @@ class Value:
     def factor_per_10_kelvin(self) -> float:
         """exp(10 K times d ln value / dT): the local factor for 10 K more."""
         exponent = 10.0 * self.log_rate
+        # beyond 709.7 no double holds it
         return math.exp(exponent) if exponent < 700.0 else math.inf
 
     def to(self, unit: str, atmosphere: float | None = None) -> float:

@@ -70,7 +70,8 @@ NUMERIC = {
     "curve", "dossier", "confirmation", "limits", "candidate", "ranking", "evaluation", "coverage", "comparison",
     "deviation", "sampling", "verdicts", "answers", "forms", "scales", "quantities", "records", "uncertainty",
     "readings", "rounding", "budget", "values", "scale_effects", "estimates", "conditions", "extrapolation",
-    "tolerance", "batches", "choices", "answering", "restating", "inverse", "equilibrium", "tables",
+    "tolerance", "batches", "choices", "answering", "restating", "inverse", "equilibrium", "tables", "grounds",
+    "reports",
 }  # fmt: skip
 OWNERS = {
     "sqlalchemy": {"store"},

@@ -61,7 +61,7 @@ def boil(
     from registry.cli.pressures import read_atmosphere, read_pressures
     from registry.inverse.inversion import Inversion
     from registry.inverse.refusals import InverseRefusal
-    from registry.inverse.temperatures import demand_pressure
+    from registry.inverse.temperatures import require_pressure
     from registry.properties import PROPERTIES
     from registry.quantities import find_unit
 
@@ -70,7 +70,7 @@ def boil(
     with open_chosen(library) as book:
         past, label = look_at(book, edition, as_of)
         coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
-        demand_pressure(PROPERTIES[coverage.property])
+        require_pressure(PROPERTIES[coverage.property])
         inversion = Inversion(coverage)
         # all at the one position that this coverage was read at
         found = [(one, _solve(inversion, one.pascal)) for one in asked]

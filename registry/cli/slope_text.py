@@ -10,6 +10,7 @@ from registry.cli.screen import CAUTION, emphasize, name_mark, name_past, print_
 from registry.cli.temperatures import Asked
 from registry.display import format_number, format_percent, format_plain, suit_unit
 from registry.equilibrium.boundary import PhaseBoundary
+from registry.equilibrium.clapeyron import WATSON_EXPONENT
 from registry.equilibrium.saturation import Saturation
 from registry.equilibrium.volumes import Choice
 from registry.quantities import UNITS, Unit, convert
@@ -131,7 +132,9 @@ def _word_method(one: Saturation) -> str:
     if one.carried_from is None:
         return "Clapeyron: dH = T dV dp/dT" if one.method else ""
     start = f"{one.carried_from:.1f} K"
-    return f"above {start}, up to where the truncated virial series holds: Watson's relation, exponent 0.38"
+    return (
+        f"above {start}, up to where the truncated virial series holds: Watson's relation, exponent {WATSON_EXPONENT}"
+    )
 
 
 def _name_condensed(one: Saturation) -> str:

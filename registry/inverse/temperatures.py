@@ -16,10 +16,10 @@ from registry.inverse.verdicts import is_pressure, refuse_pressure
 from registry.naming import join_names
 from registry.properties import PROPERTIES, Property
 
-__all__ = ["Temperatures", "demand_pressure", "solve_many", "solve_one"]
+__all__ = ["Temperatures", "require_pressure", "solve_many", "solve_one"]
 
 
-def demand_pressure(prop: Property) -> None:
+def require_pressure(prop: Property) -> None:
     """Raise BadInput for a property that is no pressure."""
     if prop.dimension != "pressure":
         names = join_names([row.name for row in PROPERTIES.values() if row.dimension == "pressure"])

@@ -52,6 +52,7 @@ def find_steepness(record: Correlation, name: str, kelvin: Array, molar_mass: fl
         Without sign; zero where the value is zero or has none.
     """
     at = to_float(record.coefficients[name])
+    # far above the rounding of the value, far below what bends its curve
     step = abs(at) * 1e-7 or 1e-7
     low, high = (take_curve(record, molar_mass, {name: at + side}).values(kelvin) for side in (-step, step))
     middle = take_curve(record, molar_mass).values(kelvin)

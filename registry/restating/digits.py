@@ -14,6 +14,7 @@ __all__ = ["print_exact", "print_fully", "print_rounded"]
 SHORT = 17
 """Digits up to which a number that ends is printed whole; no double tells more."""
 MOST = 34
+"""Digits of the longest number printed: twice those of a double."""
 
 
 def print_exact(exact: Fraction, source: str = "", *, ratio: bool = False) -> str:

@@ -30,6 +30,7 @@ BASES = {"ln": "base e", "log10": "base 10"}
 BUDGET = 5e-13
 """What all rounded coefficients together may do to the value, relative: half of what is promised."""
 POINTS = 201
+"""Temperatures over the window at which both are compared; they are smooth, and differ most at an end or a pole."""
 
 
 @dataclass(frozen=True)
