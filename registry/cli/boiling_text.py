@@ -52,7 +52,7 @@ def _word_answer(asked: AskedPressure, answer: Answer, to: Unit) -> list[str]:
     per = _kelvin_per_percent(answer)
     return [
         asked.text, f"{format_plain(value)} {unit.name}",
-        f"{format_plain(to.from_si(answer.temperature))} {to.name}{mark}",
+        f"{to.from_si(answer.temperature):.4f} {to.name}{mark}",
         f"{stated:.3g} K{factor}" if stated is not None else "none", f"{per:+.3g} K" if per is not None else "none",
         answer.correlation.obtained, answer.correlation.key,
     ]  # fmt: skip
