@@ -13,6 +13,7 @@ from test_exchange import _edit
 from registry.cli.app import main
 from registry.cli.commands import COMMANDS, Home
 from registry.opening import open_library
+from registry.properties import PROPERTIES
 
 ANSWER_KEYS = {
     "temperature_K", "value", "unit", "value_SI", "correlation", "revision", "phase", "window_K", "evidence",
@@ -389,3 +390,19 @@ def test_a_closed_pipe_is_no_error(published_path):
     process.stdout.close()
     assert (process.stderr.read(), process.wait(60)) == ("", 0)
     process.stderr.close()
+
+
+@pytest.mark.parametrize("command", COMMANDS)
+def test_help_names_what_each_place_takes(run, command):
+    """A place is called by what goes there, not by a type or by the name that the code has for it."""
+    text = run(command, "--help")[1]
+    usage = text.split("\n\n")[0]
+    assert "<str>" not in text
+    assert usage.removeprefix(f"Usage: rangebook {command}").upper().strip() == usage.split(command, 1)[1].strip()
+
+
+def test_help_lists_every_property(run):
+    """The commands that take any property name all of them."""
+    for command in ("lookup", "table", "coverage"):
+        text = run(command, "--help")[1].replace("-\n", "-")
+        assert [name for name in PROPERTIES if name not in "".join(text.split())] == []

@@ -312,7 +312,7 @@ STDIN = (
 # what the option parser says: its last line, for the lines above it belong to the parser
 USAGE = (
     ("no temperature", ("lookup", "water"), "Error: Missing argument 'TEMPERATURE...'."),
-    ("no compound", ("lookup",), "Error: Missing argument 'compound'."),
+    ("no compound", ("lookup",), "Error: Missing argument 'COMPOUND'."),
     ("an unknown option", ("lookup", "water", "25C", "--nonsense"), "Error: No such option: --nonsense"),
     ("an unknown command", ("nonsense",), "Error: No such command 'nonsense'."),
     ("an option without its value", ("lookup", "water", "25C", "--unit"),
