@@ -406,3 +406,13 @@ def test_help_lists_every_property(run):
     for command in ("lookup", "table", "coverage"):
         text = run(command, "--help")[1].replace("-\n", "-")
         assert [name for name in PROPERTIES if name not in "".join(text.split())] == []
+
+
+@pytest.mark.parametrize(("columns", "beneath"), [("60", "obtained  answered by"), ("80", "obtained  answered by")])
+def test_numbers_stay_on_a_narrow_screen(run, monkeypatch, columns, beneath):
+    """Columns of text stand beneath their row as far as the numbers need the room."""
+    monkeypatch.setenv("COLUMNS", columns)
+    words = ("25C", "100C") if columns == "60" else ("25+/-0.05C", "100C")
+    lines = run("lookup", "water", *words)[1].splitlines()
+    assert max(map(len, lines)) <= int(columns)
+    assert [line.strip() for line in lines[3:8:2]] == [beneath, "memory    water-if97", "memory    water-if97"]

@@ -31,7 +31,7 @@ def print_boiling(coverage: Coverage, label: str, found: Found, to: Unit, why: b
     say()
     headers = ("asked", "is", "temperature", "stated", "per 1 %", "obtained", "answered by")
     rows = [_word_answer(asked, answer, to) for asked, answer in answers]
-    print_table(headers, rows, right=(True, True, True, True, True, True))
+    print_table(headers, rows, right=(True, True, True, True, True, False))
     stories: dict[str, list[tuple[AskedPressure, Answer]]] = {}
     for asked, answer in answers:
         stories.setdefault(answer.correlation.key, []).append((asked, answer))

@@ -19,7 +19,7 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
-from registry.cli.screen import emphasize, name_past, print_json, print_table, say
+from registry.cli.screen import emphasize, name_past, print_json, print_table, say, wrap
 from registry.errors import BadInput
 
 if TYPE_CHECKING:
@@ -186,4 +186,5 @@ def queue(
         ],
     )  # fmt: skip
     say()
-    say("`rangebook history KEY` tells what is proposed; `rangebook review KEY --accept` or `--decline` decides it.")
+    how = "`rangebook history KEY` tells what is proposed; `rangebook review KEY --accept` or `--decline` decides it."
+    say(wrap(how, 0))
