@@ -416,3 +416,12 @@ def test_numbers_stay_on_a_narrow_screen(run, monkeypatch, columns, beneath):
     lines = run("lookup", "water", *words)[1].splitlines()
     assert max(map(len, lines)) <= int(columns)
     assert [line.strip() for line in lines[3:8:2]] == [beneath, "memory    water-if97", "memory    water-if97"]
+
+
+@pytest.mark.parametrize("command", [("lookup", "water", "100C"), ("table", "water", "--from", "99C", "--to", "101C",
+                                                                   "--points", "3")])  # fmt: skip
+def test_percentages_beside_gauge_pressures_are_of_the_absolute_one(run, command):
+    """0.025 % of 101 kPa is a quarter of the 0.1 kPa that stand there as a gauge pressure: the screen says of what."""
+    told = "Percentages and factors are of the absolute pressure, not of the gauge pressure."
+    assert told in run(*command, "--unit", "kPag", "--atmosphere", "101.325kPa")[1]
+    assert told not in run(*command, "--unit", "kPa")[1]

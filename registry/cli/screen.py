@@ -18,6 +18,7 @@ from typing import Any
 
 __all__ = [
     "CAUTION",
+    "OF_ABSOLUTE",
     "complain",
     "emphasize",
     "format_facts",
@@ -34,6 +35,9 @@ CAUTION = (
     "Check the source and measured data before decisions on relief, storage, transport or exposure; "
     "local codes and licensed practice come first."
 )
+
+OF_ABSOLUTE = "Percentages and factors are of the absolute pressure, not of the gauge pressure."
+"""What stands by values in a gauge unit."""
 
 LEAST = 24
 """Columns that broken text takes at least."""

@@ -22,7 +22,7 @@ from registry.cli.options import (
     look_at,
     open_chosen,
 )
-from registry.cli.screen import CAUTION, complain, print_json, say
+from registry.cli.screen import CAUTION, OF_ABSOLUTE, complain, print_json, say
 from registry.errors import BadInput, quote
 
 if TYPE_CHECKING:
@@ -119,6 +119,8 @@ def table(
         coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         made = span.build(coverage, one)
         columns = Columns(made, *span.choose_units(made, unit, temperature_unit))
+        if columns.value.is_gauge and columns.by_temperature:
+            made.note = f"{made.note} {OF_ABSOLUTE}".lstrip()
         if output is not None:
             _spare_library(output, book.place)
         # where nothing answers there is no table, but an object that says so
