@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+import contextlib
+import dataclasses
 import math
 from typing import TYPE_CHECKING, Any
 
@@ -54,7 +56,7 @@ def answer_one(
     Refused
         Where there is none; carries the refusal.
     BadInput
-        If it is no temperature, or a constant for an estimate is missing.
+        If it is no temperature, or an estimate of another property.
     """
     _require_sense(coverage, conditions)
     value, candidate = coverage.value_at(kelvin)
@@ -81,18 +83,23 @@ def _answer_otherwise(
     coverage: Coverage, kelvin: float, reading: Reading | None, conditions: Conditions
 ) -> Value | None:
     """What answers beyond the windows, if it was asked for."""
-    from registry.estimates import Estimator
+    from registry.estimates import Estimator, MissingConstant
     from registry.extrapolation import Extrapolator
 
     found: Value | None = None
     if conditions.beyond:
         found = Extrapolator(coverage, conditions.beyond).answer(kelvin, reading)
-    limits = coverage.limits
-    # across a phase limit no constant is missed: there is nothing to estimate
-    inside = limits.lower <= kelvin <= limits.upper and 0.0 < kelvin < math.inf
-    if found is None and conditions.estimate and inside and coverage.stretch_at(kelvin).candidate is None:
-        found = Estimator.of(conditions.estimate, coverage).answer(kelvin, reading)
+    if found is None and conditions.estimate and _may_estimate(coverage, kelvin):
+        with contextlib.suppress(MissingConstant):  # the refusal names it
+            found = Estimator.of(conditions.estimate, coverage).answer(kelvin, reading)
     return found
+
+
+def _may_estimate(coverage: Coverage, kelvin: float) -> bool:
+    """False across a phase limit: there is nothing to estimate, and no constant is missed."""
+    limits = coverage.limits
+    inside = limits.lower <= kelvin <= limits.upper and 0.0 < kelvin < math.inf
+    return inside and coverage.stretch_at(kelvin).candidate is None
 
 
 def _refuse_one(coverage: Coverage, kelvin: float, conditions: Conditions) -> Refusal:
@@ -103,7 +110,14 @@ def _refuse_one(coverage: Coverage, kelvin: float, conditions: Conditions) -> Re
     if conditions.beyond:
         from registry.extrapolation import explain_stop
 
-        return explain_stop(refusal, coverage, conditions.beyond)
+        refusal = explain_stop(refusal, coverage, conditions.beyond)
+    if conditions.estimate and _may_estimate(coverage, kelvin):
+        from registry.estimates import Estimator, MissingConstant
+
+        try:
+            Estimator.of(conditions.estimate, coverage)
+        except MissingConstant as error:
+            refusal = dataclasses.replace(refusal, explanation=f"{refusal.explanation} {error}")
     return refusal
 
 
@@ -177,12 +191,15 @@ def _fill_estimates(
     coverage: Coverage, method: Method, flat: Array, uncovered: NDArray[np.bool_], found: Array, marks: NDArray[np.int8]
 ) -> None:
     from registry.batches import ESTIMATE
-    from registry.estimates import Estimator
+    from registry.estimates import Estimator, MissingConstant
 
     inside = (flat >= coverage.limits.lower) & (flat <= coverage.limits.upper) & (flat > 0.0) & np.isfinite(flat)
     here = np.flatnonzero(uncovered & np.isnan(found) & inside)
     if here.size:
-        values = Estimator.of(method, coverage).values(flat[here])
+        try:
+            values = Estimator.of(method, coverage).values(flat[here])
+        except MissingConstant:  # each refusal names it
+            return
         usable = here[np.isfinite(values)]
         found[usable], marks[usable] = values[np.isfinite(values)], ESTIMATE
 

@@ -26,7 +26,16 @@ from registry.readings import Reading
 from registry.records import FixedPoint
 from registry.values import Value
 
-__all__ = ["METHODS", "Estimate", "Estimator", "Method", "acentric_factor", "find_method", "require_vapour_pressure"]
+__all__ = [
+    "METHODS",
+    "Estimate",
+    "Estimator",
+    "Method",
+    "MissingConstant",
+    "acentric_factor",
+    "find_method",
+    "require_vapour_pressure",
+]
 
 Array = NDArray[np.float64]
 
@@ -50,6 +59,10 @@ def _ambrose_walton(reduced: Array, acentric: float) -> Array:
     powers = (tau, tau**1.5, tau**2.5, tau**5)
     f0, f1, f2 = (sum(c * power for c, power in zip(row, powers, strict=True)) / reduced for row in _AMBROSE_WALTON)
     return f0 + acentric * (f1 + acentric * f2)
+
+
+class MissingConstant(BadInput):
+    """A constant that an estimate needs is not recorded."""
 
 
 @dataclass(frozen=True)
@@ -175,7 +188,8 @@ class Estimator:
         Raises
         ------
         BadInput
-            If it is about another property, or a constant is not recorded.
+            If it is about another property; a `MissingConstant` if one is not
+            recorded.
         """
         require_vapour_pressure(method, coverage.property)
         return cls(method, _find_points(method, coverage.dossier), coverage)
@@ -281,8 +295,8 @@ def _find_points(method: Method, dossier: Dossier) -> tuple[Entry[FixedPoint], .
     found = {quantity: best_fixed_point(dossier, quantity) for quantity in CRITICAL_CONSTANTS}
     missing = [quantity.replace("-", " ") for quantity, point in found.items() if point is None]
     if missing:
-        raise BadInput(
-            f"{method.title} needs the {join_names(missing, 'and')} of {dossier.compound.key}; no accepted fixed point "
-            "says it. Record one, or leave --estimate out."
+        raise MissingConstant(
+            f"--estimate {method.name} needs the {join_names(missing, 'and')} of {dossier.compound.key}, which no "
+            "accepted fixed point says."
         )
     return tuple(point for point in found.values() if point is not None)

@@ -56,6 +56,11 @@ class Unit:
     shift: Fraction = Fraction(0)
     per_molar_mass: bool = False
 
+    @property
+    def is_gauge(self) -> bool:
+        """True for a pressure that is counted from a local atmosphere."""
+        return self.dimension == "pressure" and self.shift != 0
+
     def to_si(self, value: Fraction) -> Fraction:
         """The exact SI value of an exact value in this unit."""
         return (value + self.shift) * self.factor

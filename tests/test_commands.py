@@ -13,6 +13,7 @@ from test_exchange import _edit
 from registry.cli.app import main
 from registry.cli.commands import COMMANDS, Home
 from registry.opening import open_library
+from registry.properties import PROPERTIES
 
 ANSWER_KEYS = {
     "temperature_K", "value", "unit", "value_SI", "correlation", "revision", "phase", "window_K", "evidence",
@@ -389,3 +390,38 @@ def test_a_closed_pipe_is_no_error(published_path):
     process.stdout.close()
     assert (process.stderr.read(), process.wait(60)) == ("", 0)
     process.stderr.close()
+
+
+@pytest.mark.parametrize("command", COMMANDS)
+def test_help_names_what_each_place_takes(run, command):
+    """A place is called by what goes there, not by a type or by the name that the code has for it."""
+    text = run(command, "--help")[1]
+    usage = text.split("\n\n")[0]
+    assert "<str>" not in text
+    assert usage.removeprefix(f"Usage: rangebook {command}").upper().strip() == usage.split(command, 1)[1].strip()
+
+
+def test_help_lists_every_property(run):
+    """The commands that take any property name all of them."""
+    for command in ("lookup", "table", "coverage"):
+        text = run(command, "--help")[1].replace("-\n", "-")
+        assert [name for name in PROPERTIES if name not in "".join(text.split())] == []
+
+
+@pytest.mark.parametrize(("columns", "beneath"), [("60", "obtained  answered by"), ("80", "obtained  answered by")])
+def test_numbers_stay_on_a_narrow_screen(run, monkeypatch, columns, beneath):
+    """Columns of text stand beneath their row as far as the numbers need the room."""
+    monkeypatch.setenv("COLUMNS", columns)
+    words = ("25C", "100C") if columns == "60" else ("25+/-0.05C", "100C")
+    lines = run("lookup", "water", *words)[1].splitlines()
+    assert max(map(len, lines)) <= int(columns)
+    assert [line.strip() for line in lines[3:8:2]] == [beneath, "memory    water-if97", "memory    water-if97"]
+
+
+@pytest.mark.parametrize("command", [("lookup", "water", "100C"), ("table", "water", "--from", "99C", "--to", "101C",
+                                                                   "--points", "3")])  # fmt: skip
+def test_percentages_beside_gauge_pressures_are_of_the_absolute_one(run, command):
+    """0.025 % of 101 kPa is a quarter of the 0.1 kPa that stand there as a gauge pressure: the screen says of what."""
+    told = "Percentages and factors are of the absolute pressure, not of the gauge pressure."
+    assert told in run(*command, "--unit", "kPag", "--atmosphere", "101.325kPa")[1]
+    assert told not in run(*command, "--unit", "kPa")[1]

@@ -135,11 +135,24 @@ def test_the_triple_temperature_itself_is_estimated_for(published):
 
 
 def test_missing_constants_are_named(published):
-    """A compound without critical constants cannot be estimated, and the message says what is missing."""
-    with pytest.raises(BadInput, match="acentric factor of neon; no accepted fixed point says it"):
+    """A compound without critical constants cannot be estimated, and the refusal says what is missing."""
+    with pytest.raises(Refused, match="and acentric factor of neon, which no accepted fixed point says"):
         published.lookup("neon", 30.0, estimate="lee-kesler")
     with pytest.raises(BadInput, match="There is no estimation method 'riedel'"):
         published.lookup("water", 300.0, estimate="riedel")
+
+
+def test_what_is_covered_is_answered_also_where_a_constant_is_missing(scenario):
+    """Brindovane (invented) has no acentric factor: in its gap that is said, beside it its correlations answer."""
+    batch = scenario.lookup("brindovane", [300.0, 335.0, 340.0], estimate="lee-kesler", beyond=27.0)
+    plain = scenario.lookup("brindovane", [300.0, 335.0, 340.0], beyond=27.0)
+    assert batch.marks.tolist() == plain.marks.tolist() == ["", "beyond", "beyond"]
+    batch = scenario.lookup("brindovane", [300.0, 335.0], estimate="lee-kesler")
+    assert batch.refused.tolist() == [False, True]
+    lack = " --estimate lee-kesler needs the acentric factor of brindovane, which no accepted fixed point says."
+    plain = scenario.lookup("brindovane", [335.0]).refusal(0)
+    assert batch.refusal(1).reason == plain.reason == "not-accepted"
+    assert batch.refusal(1).explanation == plain.explanation + lack
 
 
 def test_far_below_the_critical_temperature_the_typical_error_says_nothing(published):

@@ -180,7 +180,9 @@ def test_a_record_comes_from_answers_alone():
     assert person.asked[5] == (
         "coefficients (A, B, C of log10 p = A - B/(T + C); coefficients such as A=8.07131; B=1730.63; C=233.426): "
     )
-    assert person.asked[14] == "uncertainty (optional; as stated, such as 0.5 %; empty if not stated): "
+    assert person.asked[14] == (
+        "uncertainty (optional; as stated, such as 0.5 %, 0.5 % (k=2) or 1 % up to 260 K; 0.6 %; empty if not stated): "
+    )
 
 
 def test_what_is_given_is_not_asked():

@@ -479,3 +479,12 @@ def test_slopes_of_drafts_are_marked(scenario):
     assert batch.refused.tolist() == [[False, False], [False, True]]
     assert scenario.slope("brindovane", 330.0, drafts=True).answer.mark == "draft"
     assert set(scenario.slope("brindovane", kelvin).marks.ravel().tolist()) == {""}
+
+
+def test_what_is_found_names_itself(published):
+    """At a prompt a saturation and a table say what they are; a table is not worked out for it."""
+    found = published.slope("water", 300.0)
+    assert repr(found) == f"<Saturation {found.pressure!r} Pa, {found.slope!r} Pa/K at 300.0 K by water-if97>"
+    assert repr(published.tabulate("water", 300.0, 310.0, step=1.0)) == "<Table of 11 rows, vapor-pressure of water>"
+    table = published.tabulate_at_pressures("water", 1e5, 1e6)
+    assert repr(table) == "<PressureTable of 4 rows, vapor-pressure of water>"

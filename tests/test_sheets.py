@@ -135,6 +135,17 @@ def test_a_template_tells_what_each_field_takes():
         assert needed <= set(_problems(text)) <= needed | {"coefficients", "points.1.temperature", "points.1.value"}
 
 
+def test_a_template_holds_what_is_given_already():
+    """Fields stand in their places, and a known form names its coefficients; with the rest filled in it is a record."""
+    given = {"form": "clapeyron-melting", "compound": "tin", "coefficients": {"T0": "505"}}
+    text = write_template("correlation", given)
+    found = tomllib.loads(text)
+    assert (found["form"], found["compound"], found["key"]) == ("clapeyron-melting", "tin", "")
+    assert found["coefficients"] == {"T0": "505", "p0": "", "H": "", "dV": ""}
+    assert "\n# As printed: T0, p0, H, dV of p = p0 + (H/dV) ln(T/T0), H in J/mol, dV in cm3/mol\n[coef" in text
+    assert tomllib.loads(write_template("correlation", {"form": "none such"}))["coefficients"] == {}
+
+
 @given(st.dictionaries(st.from_regex(r"[A-Za-z]\w{0,3}", fullmatch=True), st.from_regex(r"-?\d+\.\d+", fullmatch=True),
                        min_size=1))  # fmt: skip
 def test_coefficients_survive_as_one_text(pairs):

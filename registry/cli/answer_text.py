@@ -8,7 +8,17 @@ from typing import TYPE_CHECKING, Protocol
 
 from registry.answers import Answer
 from registry.cli.documents import value_in
-from registry.cli.screen import CAUTION, emphasize, name_mark, name_past, print_facts, print_table, say, wrap
+from registry.cli.screen import (
+    CAUTION,
+    OF_ABSOLUTE,
+    emphasize,
+    name_mark,
+    name_past,
+    print_facts,
+    print_table,
+    say,
+    wrap,
+)
 from registry.cli.temperatures import Asked
 from registry.coverage import Coverage
 from registry.display import format_number, format_percent, format_plain
@@ -60,6 +70,9 @@ def print_answers(
         print_estimates(estimates)
     if why:
         print_verdicts(answers)
+    if to is not None and to.is_gauge:
+        say()
+        say(wrap(OF_ABSOLUTE, 0))
     say()
     say(wrap(CAUTION, 0))
 

@@ -10,12 +10,15 @@ from registry.cli.options import (
     REFUSED,
     AsOfOption,
     AtmosphereOption,
+    CompoundArgument,
     DraftsOption,
     EditionOption,
     JsonOption,
     LibraryOption,
     MetastableOption,
     PhaseOption,
+    PressureOption,
+    WhyOption,
     look_at,
     open_chosen,
 )
@@ -29,24 +32,21 @@ if TYPE_CHECKING:
 
 
 def boil(
-    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    compound: CompoundArgument,
     pressures: Annotated[
         list[str], typer.Argument(metavar="PRESSURE...", help="101.325kPa, 1atm, 760mmHg, 14.7psi; - reads stdin.")
     ],
-    prop: Annotated[
-        str,
-        typer.Option(
-            "--property", "-p", metavar="PROPERTY", help="vapor-pressure, sublimation-pressure or melting-pressure."
-        ),
-    ] = "vapor-pressure",
+    prop: PressureOption = "vapor-pressure",
     phase: PhaseOption = "",
-    unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the temperature.")] = "K",
+    unit: Annotated[
+        str, typer.Option("--unit", "-u", metavar="UNIT", help="Unit of the temperature: K, degC, degF, degR.")
+    ] = "K",
     atmosphere: AtmosphereOption = "",
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,
     edition: EditionOption = None,
     as_of: AsOfOption = None,
-    why: Annotated[bool, typer.Option("--why", help="Every candidate with its verdict.")] = False,
+    why: WhyOption = False,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

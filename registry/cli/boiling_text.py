@@ -31,7 +31,7 @@ def print_boiling(coverage: Coverage, label: str, found: Found, to: Unit, why: b
     say()
     headers = ("asked", "is", "temperature", "stated", "per 1 %", "obtained", "answered by")
     rows = [_word_answer(asked, answer, to) for asked, answer in answers]
-    print_table(headers, rows, right=(True, True, True, True, True, True))
+    print_table(headers, rows, right=(True, True, True, True, True, False))
     stories: dict[str, list[tuple[AskedPressure, Answer]]] = {}
     for asked, answer in answers:
         stories.setdefault(answer.correlation.key, []).append((asked, answer))
@@ -49,7 +49,7 @@ def _word_answer(asked: AskedPressure, answer: Answer, to: Unit) -> list[str]:
     stated, per = _stated_kelvin(answer), _kelvin_per_percent(answer)
     return [
         asked.text, f"{format_plain(value)} {unit.name}",
-        f"{format_plain(to.from_si(answer.temperature))} {to.name}{name_mark(answer.mark)}",
+        f"{to.from_si(answer.temperature):.4f} {to.name}{name_mark(answer.mark)}",
         f"{stated:.3g} K{word_coverage(answer)}" if stated is not None else "none",
         f"{per:+.3g} K" if per is not None else "none",
         answer.correlation.obtained, answer.correlation.key,

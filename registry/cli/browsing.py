@@ -9,6 +9,7 @@ import typer
 
 from registry.cli.options import (
     AsOfOption,
+    CompoundArgument,
     DraftsOption,
     EditionOption,
     JsonOption,
@@ -72,7 +73,9 @@ def list_records(
 
 
 def show(
-    key: Annotated[str, typer.Argument(help="Key of a compound, source, correlation, dataset or fixed point.")],
+    key: Annotated[
+        str, typer.Argument(metavar="KEY", help="Key of a compound, source, correlation, dataset or fixed point.")
+    ],
     edition: EditionOption = None,
     as_of: AsOfOption = None,
     library: LibraryOption = None,
@@ -102,7 +105,7 @@ def show(
 
 
 def coverage(
-    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    compound: CompoundArgument,
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
     metastable: MetastableOption = False,

@@ -13,7 +13,11 @@ def main() -> None:
     gc.set_threshold(200_000, 20, 100)
     from registry.cli.app import main as run
 
-    run()
+    try:
+        run()
+    finally:
+        # what lives now dies with the process: searching it for cycles at exit costs a tenth of a lookup, too
+        gc.freeze()
 
 
 if __name__ == "__main__":

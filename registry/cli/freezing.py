@@ -22,7 +22,9 @@ from registry.moments import show_time
 
 
 def freeze(
-    name: Annotated[str, typer.Argument(help="Letters, digits, '-', '_' and '.'; no number and no date.")],
+    name: Annotated[
+        str, typer.Argument(metavar="NAME", help="Letters, digits, '-', '_' and '.'; no number and no date.")
+    ],
     note: Annotated[str, typer.Option("--note", metavar="TEXT", help="What it is for.", show_default=False)] = "",
     author: AuthorOption = None,
     library: LibraryOption = None,

@@ -19,7 +19,7 @@ from registry.cli.options import (
     name_author,
     open_chosen,
 )
-from registry.cli.screen import emphasize, name_past, print_json, print_table, say
+from registry.cli.screen import emphasize, name_past, print_json, print_table, say, wrap
 from registry.errors import BadInput
 
 if TYPE_CHECKING:
@@ -29,7 +29,7 @@ if TYPE_CHECKING:
 
 
 def review(
-    key: Annotated[str, typer.Argument(help="What waits: a record, or one whose withdrawal waits.")],
+    key: Annotated[str, typer.Argument(metavar="KEY", help="What waits: a record, or one whose withdrawal waits.")],
     accept: Annotated[bool | None, typer.Option("--accept/--decline", help="The verdict.", show_default=False)] = None,
     note: Annotated[str, typer.Option("--note", metavar="TEXT", help="What was looked at.", show_default=False)] = "",
     expect: Annotated[
@@ -79,7 +79,9 @@ def _word_verdict(book: Library, done: Recorded, accept: bool) -> str:
 
 
 def withdraw(
-    key: Annotated[str, typer.Argument(help="A correlation, source, fixed point, dataset or preference.")],
+    key: Annotated[
+        str, typer.Argument(metavar="KEY", help="A correlation, source, fixed point, dataset or preference.")
+    ],
     reason: ReasonOption = "",
     cause: Annotated[
         str, typer.Option("--cause", metavar="erratum|retraction|superseded|other", help="The kind of reason.")
@@ -105,7 +107,7 @@ def withdraw(
 
 
 def prefer(
-    key: Annotated[str, typer.Argument(help="The correlation that shall answer.")],
+    key: Annotated[str, typer.Argument(metavar="KEY", help="The correlation that shall answer.")],
     over: Annotated[str, typer.Option("--over", metavar="KEY", help="The one it goes before, wherever both cover.")],
     reason: ReasonOption = "",
     accept: AcceptOption = False,
@@ -184,4 +186,5 @@ def queue(
         ],
     )  # fmt: skip
     say()
-    say("`rangebook history KEY` tells what is proposed; `rangebook review KEY --accept` or `--decline` decides it.")
+    how = "`rangebook history KEY` tells what is proposed; `rangebook review KEY --accept` or `--decline` decides it."
+    say(wrap(how, 0))

@@ -83,12 +83,14 @@ SHOWN = 20
 
 
 def load(
-    package: Annotated[str, typer.Argument(help="A folder or .zip with datapackage.json.")],
+    package: Annotated[str, typer.Argument(metavar="PACKAGE", help="A folder or .zip with datapackage.json.")],
     dry_run: Annotated[bool, typer.Option("--dry-run", "-n", help="Check everything, record nothing.")] = False,
     accept: Annotated[
         bool, typer.Option("--accept", help="Review the whole load at once; needs --note. Else it arrives as drafts.")
     ] = False,
-    note: Annotated[str, typer.Option("--note", help="Why it is loaded; what was looked at.", show_default=False)] = "",
+    note: Annotated[
+        str, typer.Option("--note", metavar="TEXT", help="Why it is loaded; what was looked at.", show_default=False)
+    ] = "",
     ours: Annotated[
         list[str] | None,
         typer.Option("--ours", metavar="KEY", help="Revised on both sides: keep what is here (all for the rest)."),
@@ -130,7 +132,7 @@ def load(
 
 
 def dump(
-    package: Annotated[str, typer.Argument(help="A new folder, or a new name ending in .zip.")],
+    package: Annotated[str, typer.Argument(metavar="PACKAGE", help="A new folder, or a new name ending in .zip.")],
     since: Annotated[
         str | None,
         typer.Option("--since", metavar="EDITION|CHANGE|DATE", help="Only what is new since then.", show_default=False),

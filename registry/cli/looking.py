@@ -10,6 +10,7 @@ from registry.cli.options import (
     REFUSED,
     AsOfOption,
     AtmosphereOption,
+    CompoundArgument,
     DraftsOption,
     EditionOption,
     JsonOption,
@@ -17,6 +18,7 @@ from registry.cli.options import (
     MetastableOption,
     PhaseOption,
     PropertyOption,
+    WhyOption,
     look_at,
     open_chosen,
 )
@@ -32,7 +34,7 @@ if TYPE_CHECKING:
 
 
 def lookup(
-    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    compound: CompoundArgument,
     temperatures: Annotated[
         list[str],
         typer.Argument(
@@ -41,7 +43,9 @@ def lookup(
     ],
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
-    unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the value.", show_default=False)] = "",
+    unit: Annotated[
+        str, typer.Option("--unit", "-u", metavar="UNIT", help="Unit of the value.", show_default=False)
+    ] = "",
     atmosphere: AtmosphereOption = "",
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,
@@ -49,14 +53,19 @@ def lookup(
     as_of: AsOfOption = None,
     within: Annotated[
         str | None,
-        typer.Option("--within", metavar="PERCENT", help="Refuse a larger uncertainty, or none.", show_default=False),
+        typer.Option(
+            "--within",
+            metavar="PERCENT",
+            help="Refuse what is less certain than so much (2%), or states no uncertainty.",
+            show_default=False,
+        ),
     ] = None,
     beyond: Annotated[
         str | None,
         typer.Option(
             "--beyond",
             metavar="KELVIN",
-            help="Extrapolate so far (5K) where nothing covers; marked.",
+            help="Where nothing covers, extrapolate at most so far (5K) beyond a window; marked.",
             show_default=False,
         ),
     ] = None,
@@ -65,11 +74,11 @@ def lookup(
         typer.Option(
             "--estimate",
             metavar="METHOD",
-            help="Estimate where nothing answers: lee-kesler, ambrose-walton; marked.",
+            help="Where nothing answers, estimate by lee-kesler or ambrose-walton; marked.",
             show_default=False,
         ),
     ] = None,
-    why: Annotated[bool, typer.Option("--why", help="Every candidate with its verdict.")] = False,
+    why: WhyOption = False,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:

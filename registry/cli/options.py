@@ -25,22 +25,45 @@ LibraryOption = Annotated[
         show_default=False,
     ),
 ]
+CompoundArgument = Annotated[str, typer.Argument(metavar="COMPOUND", help="Key, name, synonym, CAS number or formula.")]
 JsonOption = Annotated[bool, typer.Option("--json", help="Print one JSON object and nothing else.")]
 PropertyOption = Annotated[
-    str, typer.Option("--property", "-p", metavar="PROPERTY", help="What is asked for, such as sublimation-pressure.")
+    str,
+    typer.Option(
+        "--property",
+        "-p",
+        metavar="PROPERTY",
+        help="vapor-pressure, sublimation-pressure, melting-pressure, enthalpy-of-vaporization or "
+        "saturated-liquid-density.",
+    ),
+]
+PressureOption = Annotated[
+    str,
+    typer.Option(
+        "--property", "-p", metavar="PROPERTY", help="vapor-pressure, sublimation-pressure or melting-pressure."
+    ),
+]
+AtmosphereOption = Annotated[
+    str,
+    typer.Option(
+        "--atmosphere",
+        metavar="PRESSURE",
+        help="The local atmosphere, for gauge units: 101.325kPa.",
+        show_default=False,
+    ),
+]
+WhyOption = Annotated[
+    bool, typer.Option("--why", help="Every candidate with its verdict; rounding and scale of the one that answers.")
 ]
 PhaseOption = Annotated[
     str,
     typer.Option("--phase", metavar="PHASE", help="The phase, where several cover a temperature.", show_default=False),
 ]
 MetastableOption = Annotated[
-    bool, typer.Option("--metastable", help="Let metastable ranges answer that records state.")
+    bool, typer.Option("--metastable", help="Let a correlation answer where its record states a metastable range.")
 ]
 DraftsOption = Annotated[
     bool, typer.Option("--drafts", help="Let drafts of correlations answer; every such value is marked.")
-]
-AtmosphereOption = Annotated[
-    str, typer.Option("--atmosphere", help="Local atmosphere, for gauge units.", show_default=False)
 ]
 EditionOption = Annotated[
     str | None,

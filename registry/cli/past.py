@@ -15,7 +15,7 @@ if TYPE_CHECKING:
 
 
 def history(
-    key: Annotated[str, typer.Argument(help="Key of a record.")],
+    key: Annotated[str, typer.Argument(metavar="KEY", help="Key of a record.")],
     kind: KindOption = "",
     edition: EditionOption = None,
     as_of: AsOfOption = None,

@@ -25,7 +25,9 @@ __all__ = ["build_record_group", "read_text_file"]
 FileOption = Annotated[
     str, typer.Option("--file", metavar="PATH", help="A record sheet; - reads stdin.", show_default=False)
 ]
-TemplateOption = Annotated[bool, typer.Option("--template", help="Print an empty record sheet, and record nothing.")]
+TemplateOption = Annotated[
+    bool, typer.Option("--template", help="Print a record sheet with what is given, and record nothing.")
+]
 
 _ADDED: dict[str, tuple[Any, Any]] = {
     "sheet": (FileOption, ""),
@@ -74,7 +76,7 @@ def _build(kind: str) -> Callable[..., None]:
 
 def _run(cls: type[Record], values: dict[str, Any], shared: dict[str, Any]) -> None:
     if shared["template"]:
-        _print_template(cls.kind, shared["as_json"])
+        _print_template(cls.kind, values, shared["as_json"])
         return
     record, typed = _make(cls, values, shared["sheet"])
     kept = keep_typed(record, 0, f"record {cls.kind}") if typed else contextlib.nullcontext()
@@ -85,8 +87,8 @@ def _run(cls: type[Record], values: dict[str, Any], shared: dict[str, Any]) -> N
     print_recorded(what, done, shared["as_json"], waits=waits)
 
 
-def _print_template(kind: str, as_json: bool) -> None:
-    text = write_template(kind)
+def _print_template(kind: str, values: dict[str, Any], as_json: bool) -> None:
+    text = write_template(kind, values)
     if as_json:
         print_json({"kind": kind, "sheet": text})
     else:

@@ -17,24 +17,36 @@ if TYPE_CHECKING:
 
 
 def restate(
-    key: Annotated[str, typer.Argument(help="Key of a correlation.")],
+    key: Annotated[str, typer.Argument(metavar="KEY", help="Key of a correlation.")],
     pressure: Annotated[
-        str | None, typer.Option("--pressure", metavar="UNIT", help="Unit of the pressure.", show_default=False)
+        str | None,
+        typer.Option("--pressure", metavar="UNIT", help="Unit of the pressure, such as kPa.", show_default=False),
     ] = None,
     value: Annotated[
         str | None,
-        typer.Option("--value", metavar="UNIT", help="Unit of the value, whatever it is.", show_default=False),
+        typer.Option(
+            "--value", metavar="UNIT", help="The same for what is no pressure: kg/m3, kJ/mol.", show_default=False
+        ),
     ] = None,
     temperature: Annotated[
-        str | None, typer.Option("--temperature", metavar="UNIT", help="K, degC, degF or degR.", show_default=False)
+        str | None,
+        typer.Option(
+            "--temperature", metavar="UNIT", help="Unit of the temperature: K, degC, degF or degR.", show_default=False
+        ),
     ] = None,
-    log: Annotated[str | None, typer.Option("--log", metavar="BASE", help="ln or log10.", show_default=False)] = None,
+    log: Annotated[
+        str | None,
+        typer.Option("--log", metavar="BASE", help="Base of the logarithm: ln or log10.", show_default=False),
+    ] = None,
     edition: EditionOption = None,
     as_of: AsOfOption = None,
     library: LibraryOption = None,
     as_json: JsonOption = False,
 ) -> None:
     """Write a correlation in the units and log base that another tool wants.
+
+    It is the same equation, with digits enough for 1e-12 of its values. What its form cannot express is refused with
+    the reason (exit code 2). Nothing is recorded.
 
     Example: rangebook restate water-antoine-1-100 --pressure kPa --temperature K --log ln
     """

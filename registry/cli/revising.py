@@ -26,7 +26,7 @@ if TYPE_CHECKING:
 
 
 def revise(
-    key: Annotated[str, typer.Argument(help="Key of a record.")],
+    key: Annotated[str, typer.Argument(metavar="KEY", help="Key of a record.")],
     sheet: Annotated[
         str,
         typer.Option("--file", metavar="PATH", help="An edited record sheet; - reads stdin.", show_default=False),

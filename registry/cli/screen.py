@@ -18,6 +18,7 @@ from typing import Any
 
 __all__ = [
     "CAUTION",
+    "OF_ABSOLUTE",
     "complain",
     "emphasize",
     "format_facts",
@@ -35,6 +36,9 @@ CAUTION = (
     "Check the source and measured data before decisions on relief, storage, transport or exposure; "
     "local codes and licensed practice come first."
 )
+
+OF_ABSOLUTE = "Percentages and factors are of the absolute pressure, not of the gauge pressure."
+"""What stands by values in a gauge unit."""
 
 LEAST = 24
 """Columns that broken text takes at least."""
@@ -128,19 +132,33 @@ def format_facts(facts: Iterable[tuple[str, str]], indent: int = 2) -> Iterator[
 def print_table(
     headers: Sequence[str], rows: Sequence[Sequence[str]], right: Sequence[bool] = (), indent: int = 2
 ) -> None:
-    """A table with columns as wide as they need; the last one wraps, or stands beneath where there is no room."""
+    """A table with columns as wide as they need; the last ones wrap, or stand beneath where there is no room."""
     sides = [*right, *([False] * len(headers))][: len(headers)]
     widths = [max(len(str(row[i])) for row in (headers, *rows)) for i in range(len(headers))]
     margin = indent + sum(widths[:-1]) + 2 * (len(headers) - 1)
-    beneath = len(headers) > 1 and not sides[-1] and margin + min(LEAST, widths[-1]) > width()
+    beneath = 0
+    if len(headers) > 1 and not sides[-1] and margin + min(LEAST, widths[-1]) > width():
+        beneath = _count_beneath(widths, sides, indent)
     for number, row in enumerate((headers, *rows)):
-        *cells, last = [
+        cells = [
             cell.rjust(size) if side else cell.ljust(size) for cell, size, side in zip(row, widths, sides, strict=True)
         ]
-        line = (" " * indent + "  ".join(cells)).rstrip()
         if beneath:
-            line += f"\n{' ' * (indent + 4)}{wrap(row[-1], indent + 4)}".rstrip()
+            line = (" " * indent + "  ".join(cells[:-beneath])).rstrip()
+            below = " " * (indent + 4) + "".join(f"{cell}  " for cell in cells[-beneath:-1])
+            line += f"\n{below}{wrap(row[-1], len(below))}".rstrip()
         else:
+            *cells, last = cells
             last = wrap(row[-1], margin) if margin + len(row[-1]) > width() and not sides[-1] else last
             line = (" " * indent + "  ".join([*cells, last])).rstrip()
         say(emphasize(line, "2") if number == 0 else line)
+
+
+def _count_beneath(widths: Sequence[int], sides: Sequence[bool], indent: int) -> int:
+    """How many of the last columns stand beneath: the last, and columns of text before it until the rest has room."""
+    count = 1
+    while count < len(widths) - 1 and not sides[-count - 1]:
+        if indent + sum(widths[:-count]) + 2 * (len(widths) - count - 1) <= width():
+            break
+        count += 1
+    return count

@@ -9,13 +9,14 @@ import typer
 from registry.cli.options import (
     REFUSED,
     AsOfOption,
+    CompoundArgument,
     DraftsOption,
     EditionOption,
     JsonOption,
     LibraryOption,
     MetastableOption,
     PhaseOption,
-    PropertyOption,
+    PressureOption,
     look_at,
     open_chosen,
 )
@@ -32,14 +33,17 @@ if TYPE_CHECKING:
 
 
 def slope(
-    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    compound: CompoundArgument,
     temperatures: Annotated[
-        list[str], typer.Argument(metavar="TEMPERATURE...", help="298.15K, 25C, 77F, 536.67R; - reads stdin.")
+        list[str],
+        typer.Argument(metavar="TEMPERATURE...", help="298.15K, 25C, 77F, '100 degC (IPTS-68)'; - reads stdin."),
     ],
-    prop: PropertyOption = "vapor-pressure",
+    prop: PressureOption = "vapor-pressure",
     phase: PhaseOption = "",
-    unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the pressure.", show_default=False)] = "",
-    energy_unit: Annotated[str, typer.Option("--energy-unit", help="Unit of the enthalpy.")] = "kJ/mol",
+    unit: Annotated[
+        str, typer.Option("--unit", "-u", metavar="UNIT", help="Unit of the pressure.", show_default=False)
+    ] = "",
+    energy_unit: Annotated[str, typer.Option("--energy-unit", metavar="UNIT", help="Unit of the enthalpy.")] = "kJ/mol",
     metastable: MetastableOption = False,
     drafts: DraftsOption = False,
     edition: EditionOption = None,

@@ -11,6 +11,7 @@ from registry.cli.options import (
     REFUSED,
     AsOfOption,
     AtmosphereOption,
+    CompoundArgument,
     DraftsOption,
     EditionOption,
     JsonOption,
@@ -21,7 +22,7 @@ from registry.cli.options import (
     look_at,
     open_chosen,
 )
-from registry.cli.screen import CAUTION, complain, print_json, say
+from registry.cli.screen import CAUTION, OF_ABSOLUTE, complain, print_json, say
 from registry.errors import BadInput, quote
 
 if TYPE_CHECKING:
@@ -37,9 +38,12 @@ SUFFIXES = {".txt": "text", ".csv": "csv", ".md": "markdown", ".markdown": "mark
 
 
 def table(
-    compound: Annotated[str, typer.Argument(help="Key, name, CAS number or formula.")],
+    compound: CompoundArgument,
     low: Annotated[
-        str, typer.Option("--from", metavar="T|P", help="Lower end: 0C, 273.15K; a pressure tabulates temperatures.")
+        str,
+        typer.Option(
+            "--from", metavar="T|P", help="Lower end: 0C, 273.15K; a pressure (1bar) makes a table of temperatures."
+        ),
     ],
     high: Annotated[str, typer.Option("--to", metavar="T|P", help="Upper end; the last row if the steps meet it.")],
     step: Annotated[
@@ -47,7 +51,7 @@ def table(
         typer.Option(
             "--step",
             metavar="dT|dP",
-            help="A difference: 5K, 9F, 10kPa. Pressures without it are round.",
+            help="A difference: 5K, 9F, 10kPa. Without it pressures are 1, 2 and 5 times powers of ten.",
             show_default=False,
         ),
     ] = "",
@@ -62,10 +66,18 @@ def table(
     ] = None,
     prop: PropertyOption = "vapor-pressure",
     phase: PhaseOption = "",
-    unit: Annotated[str, typer.Option("--unit", "-u", help="Unit of the values.", show_default=False)] = "",
+    unit: Annotated[
+        str, typer.Option("--unit", "-u", metavar="UNIT", help="Unit of the values.", show_default=False)
+    ] = "",
     temperature_unit: Annotated[
         str,
-        typer.Option("--temperature-unit", "-t", help="Unit of temperatures; else that of --from.", show_default=False),
+        typer.Option(
+            "--temperature-unit",
+            "-t",
+            metavar="UNIT",
+            help="Unit of the temperatures; else that of --from, or K.",
+            show_default=False,
+        ),
     ] = "",
     atmosphere: AtmosphereOption = "",
     one: Annotated[bool, typer.Option("--one", help="One correlation over the whole span, or a refusal.")] = False,
@@ -75,7 +87,13 @@ def table(
     as_of: AsOfOption = None,
     form: Annotated[
         str,
-        typer.Option("--format", "-f", metavar="|".join(FORMATS), help="Else as --output ends.", show_default=False),
+        typer.Option(
+            "--format",
+            "-f",
+            metavar="|".join(FORMATS),
+            help="Else as the name of --output ends, else text.",
+            show_default=False,
+        ),
     ] = "",
     output: Annotated[
         Path | None, typer.Option("--output", "-o", metavar="FILE", help="Where to write; else to the screen.")
@@ -101,6 +119,8 @@ def table(
         coverage = past.coverage(compound, property=prop, phase=phase or None, metastable=metastable, drafts=drafts)
         made = span.build(coverage, one)
         columns = Columns(made, *span.choose_units(made, unit, temperature_unit))
+        if columns.value.is_gauge and columns.by_temperature:
+            made.note = f"{made.note} {OF_ABSOLUTE}".lstrip()
         if output is not None:
             _spare_library(output, book.place)
         # where nothing answers there is no table, but an object that says so

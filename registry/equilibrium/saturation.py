@@ -64,6 +64,10 @@ class Saturation:
     answer: Answer
     boundary: PhaseBoundary
 
+    def __repr__(self) -> str:
+        where = f"at {self.temperature!r} K by {self.answer.correlation.key}"
+        return f"<{type(self).__name__} {self.pressure!r} Pa, {self.slope!r} Pa/K {where}>"
+
     @cached_property
     def _row(self) -> SaturationBatch:
         return self.boundary.evaluate(np.array(self.temperature))

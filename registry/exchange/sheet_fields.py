@@ -25,7 +25,7 @@ _MEANT = {
     "source": "the key of a source, such as handbook-a",
     "locator": "where in the source: page, table or equation",
     "citation": "the source as a reader would cite it",
-    "uncertainty": "as stated, such as 0.5 %; empty if not stated",
+    "uncertainty": "as stated, such as 0.5 %, 0.5 % (k=2) or 1 % up to 260 K; 0.6 %; empty if not stated",
     "window_min": _PRINTED,
     "window_max": _PRINTED,
     "temperature": _PRINTED,

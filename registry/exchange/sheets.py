@@ -9,6 +9,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
+from types import MappingProxyType
 from typing import Any
 
 from registry.errors import InvalidSheet, Problem
@@ -21,11 +22,13 @@ from registry.exchange.sheet_fields import (
     text_fields,
 )
 from registry.exchange.toml_text import parse_toml, quote_toml, read_text
+from registry.forms.catalogue import FORMS
 from registry.naming import join_names, word_kind
 from registry.records import KINDS, RECORDED, Correlation, Dataset, Point, Record
 
 __all__ = ["Sheet", "gives_up", "read_sheet", "write_sheet", "write_template"]
 
+NOTHING: Mapping[str, Any] = MappingProxyType({})
 HOW_TO_END = "save and close; delete everything to give up."
 HOW_TO_WRITE = "Text stands in quotes; numbers as printed, with or without."
 
@@ -93,13 +96,16 @@ def write_sheet(record: Record, revision: int = 0, remark: Sequence[str] = ()) -
     return "\n".join(lines) + "\n"
 
 
-def write_template(kind: str) -> str:
-    """An empty sheet that says of every field what is allowed.
+def write_template(kind: str, given: Mapping[str, Any] = NOTHING) -> str:
+    """A sheet to be filled in, that says of every field what is allowed.
 
     Parameters
     ----------
     kind : str
         One of `RECORDED`.
+    given : mapping of str to str
+        What is known already; coefficients as a mapping of texts. A known form
+        makes the sheet name its coefficients.
 
     Returns
     -------
@@ -108,10 +114,9 @@ def write_template(kind: str) -> str:
     """
     cls = KINDS[kind]
     top = (f"A new {word_kind(kind)}.", f"Fill it in, {HOW_TO_END}", HOW_TO_WRITE, 'What is optional may stay "".')
-    lines = [*_comments(top), "", *_head(kind, 0), *_empty_lines(cls)]
+    lines = [*_comments(top), "", *_head(kind, 0), *_empty_lines(cls, given)]
     if cls is Correlation:
-        how = 'As printed, such as A = "8.07131"; `rangebook forms NAME` tells what a form takes.'
-        lines += ["", *_comments([how]), "[coefficients]"]
+        lines += ["", *_coefficient_lines(given)]
     if cls is Dataset:
         lines += ["", *_comments(["One such table for each point."]), "[[points]]", *_empty_lines(Point)]
     return "\n".join(lines) + "\n"
@@ -130,11 +135,24 @@ def _comments(lines: Iterable[str]) -> list[str]:
     return ["# " + "".join(c if c.isprintable() else " " for c in part) for line in lines for part in line.splitlines()]
 
 
-def _empty_lines(cls: Any) -> Iterator[str]:
+def _coefficient_lines(given: Mapping[str, Any]) -> Iterator[str]:
+    """What a form takes, with what is given of it."""
+    known: Mapping[str, str] = given.get("coefficients", {})
+    form = FORMS.get(given.get("form", ""))
+    if form is None:
+        yield from _comments(['As printed, such as A = "8.07131"; `rangebook forms NAME` tells what a form takes.'])
+    else:
+        yield from _comments([f"As printed: {form.coefficients} of {form.equation}"])
+    yield "[coefficients]"
+    for name in dict.fromkeys((*(form.coefficients.required if form else ()), *known)):
+        yield _line(name, known.get(name, ""))
+
+
+def _empty_lines(cls: Any, given: Mapping[str, Any] = NOTHING) -> Iterator[str]:
     for field in text_fields(cls):
         optional = "" if field.metadata["required"] else "optional: "
         yield from _comments([optional + tell_allowed(field.name, field.metadata["cell"].allowed)])
-        yield _line(field.name, "")
+        yield _line(field.name, given.get(field.name, ""))
 
 
 def _tell_points() -> str:

@@ -30,7 +30,7 @@ def check_workbook(rows: int) -> None:
     except ImportError:
         raise BadInput(
             "An .xlsx file needs the package XlsxWriter, which is not installed. "
-            '`pip install "rangebook[xlsx]"` installs it; csv needs nothing.'
+            "`pip install XlsxWriter`, where rangebook is installed, adds it; csv needs nothing."
         ) from None
     if rows > MOST_ROWS:
         raise BadInput(f"A sheet holds {MOST_ROWS:,} rows; the table has {rows:,}. Take a larger step, or csv.")

@@ -140,6 +140,10 @@ class Table:
     def __len__(self) -> int:
         return self.spacing.count
 
+    def __repr__(self) -> str:
+        what = f"{self.coverage.property} of {self.coverage.dossier.compound.key}"
+        return f"<{type(self).__name__} of {len(self)} rows, {what}>"
+
     def __iter__(self) -> Iterator[Row]:
         keys = [candidate.key for candidate in self.coverage.answering]
         for block in self.blocks():

@@ -246,9 +246,10 @@ REQUESTS = (
      "Refused (above-critical): 310 K lies above the critical temperature of acetylene, 308.3 K (perry-8): there is no "
      "liquid. Nearest: acetylene-antoine-appendix-e (192.35 to 201.15 K) is 108.85 K away. "
      "`rangebook coverage acetylene --property vapor-pressure` shows the map."),
-    ("an estimate without constants", "published", ("lookup", "neon", "30K", "--estimate", "lee-kesler"), 2,
-     "Lee-Kesler needs the critical temperature, critical pressure and acentric factor of neon; no accepted fixed "
-     "point says it. Record one, or leave --estimate out."),
+    ("an estimate without constants", "published", ("lookup", "neon", "30K", "--estimate", "lee-kesler"), 3,
+     "Refused (no-correlation): neon has no correlation for vapor-pressure. It has none at all. --estimate lee-kesler "
+     "needs the critical temperature, critical pressure and acentric factor of neon, which no accepted fixed point "
+     "says."),
     ("an estimate of another property", "published",
      ("lookup", "r-134a", "160K", "-p", "saturated-liquid-density", "--estimate", "lee-kesler"), 2,
      "Lee-Kesler estimates vapour pressures, not saturated-liquid-density. Leave --estimate out."),
@@ -312,7 +313,7 @@ STDIN = (
 # what the option parser says: its last line, for the lines above it belong to the parser
 USAGE = (
     ("no temperature", ("lookup", "water"), "Error: Missing argument 'TEMPERATURE...'."),
-    ("no compound", ("lookup",), "Error: Missing argument 'compound'."),
+    ("no compound", ("lookup",), "Error: Missing argument 'COMPOUND'."),
     ("an unknown option", ("lookup", "water", "25C", "--nonsense"), "Error: No such option: --nonsense"),
     ("an unknown command", ("nonsense",), "Error: No such command 'nonsense'."),
     ("an option without its value", ("lookup", "water", "25C", "--unit"),

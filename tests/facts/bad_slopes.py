@@ -82,7 +82,7 @@ REQUESTS = (
 # words, the last line on stderr
 USAGE = (
     ("no temperature at all", ("slope", "water"), "Error: Missing argument 'TEMPERATURE...'."),
-    ("no compound", ("slope",), "Error: Missing argument 'compound'."),
+    ("no compound", ("slope",), "Error: Missing argument 'COMPOUND'."),
     ("an unknown option", ("slope", "water", "100C", "--why"), "Error: No such option: --why"),
     ("a unit without its word", ("slope", "water", "100C", "--unit"), "Error: Option '--unit' requires an argument."),
 )
