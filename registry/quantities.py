@@ -165,13 +165,7 @@ def find_unit(text: str, dimension: str) -> Unit:
 
 
 def is_unit(text: str, dimension: str) -> bool:
-    """True if a text is a unit of a dimension; a gauge unit is one of pressure.
-
-    Examples
-    --------
-    >>> is_unit("barg", "pressure"), is_unit("barg", "temperature")
-    (True, False)
-    """
+    """True if a text is a unit of a dimension; a gauge unit such as barg is one of pressure."""
     unit = _SPELLINGS.get(text.strip()) or (_gauge_base(text) if dimension == "pressure" else None)
     return unit is not None and unit.dimension == dimension
 
