@@ -140,6 +140,8 @@ def _word_agreement(found: Restatement) -> str:
     digits = f"the digits kept change the value by {found.rounding:.1e} of itself at most"
     if not found.rounding:
         digits = "every coefficient is exact"
+    if not found.measured:
+        return f"{digits}; both in double precision agree to the last bit, over the window"
     return f"{digits}; both in double precision differ by {found.measured:.1e} at most, over the window"
 
 
