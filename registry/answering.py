@@ -2,9 +2,7 @@
 
 from __future__ import annotations
 
-import contextlib
 import dataclasses
-import math
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -27,6 +25,7 @@ __all__ = ["answer_many", "answer_one"]
 
 Array = NDArray[np.float64]
 Places = NDArray[np.signedinteger[Any]]
+Origins = NDArray[np.int8]
 
 
 def answer_one(
@@ -61,9 +60,9 @@ def answer_one(
     _require_sense(coverage, conditions)
     value, candidate = coverage.value_at(kelvin)
     if candidate is None:
-        found = None if conditions is PLAIN else _answer_otherwise(coverage, kelvin, reading, conditions)
+        found, missing = _answer_otherwise(coverage, kelvin, reading, conditions)
         if found is None:
-            raise Refused(_refuse_one(coverage, kelvin, conditions))
+            raise Refused(_refuse_one(coverage, kelvin, conditions, missing))
     else:
         found = Answer(kelvin, value, candidate, coverage, reading)
     if conditions.within is not None:
@@ -81,44 +80,38 @@ def _require_sense(coverage: Coverage, conditions: Conditions) -> None:
 
 def _answer_otherwise(
     coverage: Coverage, kelvin: float, reading: Reading | None, conditions: Conditions
-) -> Value | None:
-    """What answers beyond the windows, if it was asked for."""
-    from registry.estimates import Estimator, MissingConstant
-    from registry.extrapolation import Extrapolator
-
+) -> tuple[Value | None, str]:
+    """What answers beyond the windows, if it was asked for; else a sentence on the constant that an estimate misses."""
     found: Value | None = None
     if conditions.beyond:
+        from registry.extrapolation import Extrapolator
+
         found = Extrapolator(coverage, conditions.beyond).answer(kelvin, reading)
     if found is None and conditions.estimate and _may_estimate(coverage, kelvin):
-        with contextlib.suppress(MissingConstant):  # the refusal names it
+        from registry.estimates import Estimator, MissingConstant
+
+        try:
             found = Estimator.of(conditions.estimate, coverage).answer(kelvin, reading)
-    return found
+        except MissingConstant as error:
+            return None, str(error)
+    return found, ""
 
 
 def _may_estimate(coverage: Coverage, kelvin: float) -> bool:
     """False across a phase limit: there is nothing to estimate, and no constant is missed."""
-    limits = coverage.limits
-    inside = limits.lower <= kelvin <= limits.upper and 0.0 < kelvin < math.inf
-    return inside and coverage.stretch_at(kelvin).candidate is None
+    return bool(coverage.limits.hold(kelvin)) and coverage.stretch_at(kelvin).candidate is None
 
 
-def _refuse_one(coverage: Coverage, kelvin: float, conditions: Conditions) -> Refusal:
+def _refuse_one(coverage: Coverage, kelvin: float, conditions: Conditions, missing: str) -> Refusal:
     """The refusal at one temperature, which must be a temperature."""
     refusal = refuse(coverage, kelvin)
     if refusal.reason == "not-a-temperature":
         raise BadInput(refusal.explanation)
     if conditions.beyond:
-        from registry.extrapolation import explain_stop
+        from registry.extrapolation import Extrapolator
 
-        refusal = explain_stop(refusal, coverage, conditions.beyond)
-    if conditions.estimate and _may_estimate(coverage, kelvin):
-        from registry.estimates import Estimator, MissingConstant
-
-        try:
-            Estimator.of(conditions.estimate, coverage)
-        except MissingConstant as error:
-            refusal = dataclasses.replace(refusal, explanation=f"{refusal.explanation} {error}")
-    return refusal
+        refusal = Extrapolator(coverage, conditions.beyond).explain(refusal)
+    return dataclasses.replace(refusal, explanation=f"{refusal.explanation} {missing}") if missing else refusal
 
 
 def _demand_within(coverage: Coverage, found: Value, within: float) -> None:
@@ -155,13 +148,13 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
     flat, found = np.ascontiguousarray(kelvin).reshape(-1), values.reshape(-1)
     owners = coverage.owners[places.reshape(-1)]
     uncovered = owners < 0
-    marks = np.full(found.shape, ACCEPTED, dtype=np.int8)
+    origins = np.full(found.shape, ACCEPTED, dtype=np.int8)
     if conditions.beyond:
-        _fill_beyond(coverage, conditions.beyond, flat, found, owners, marks)
+        _fill_beyond(coverage, conditions.beyond, flat, found, owners, origins)
     if conditions.estimate:
-        _fill_estimates(coverage, conditions.estimate, flat, uncovered, found, marks)
+        _fill_estimates(coverage, conditions.estimate, flat, uncovered, found, origins)
     if conditions.within is not None:
-        found[~_is_within(coverage, conditions.within, flat, found, owners, marks)] = np.nan
+        found[~_is_within(coverage, conditions.within, flat, found, owners, origins)] = np.nan
 
     def explain(one: float) -> Refusal:
         try:
@@ -173,41 +166,45 @@ def answer_many(coverage: Coverage, kelvin: NDArray[np.float64], conditions: Con
         return refuse(coverage, one)
 
     shape = values.shape
-    return Batch(kelvin, values, places, coverage, owners.reshape(shape), marks.reshape(shape), explain)
+    return Batch(kelvin, values, places, coverage, owners.reshape(shape), origins.reshape(shape), explain)
 
 
 def _fill_beyond(
-    coverage: Coverage, beyond: float, flat: Array, found: Array, owners: Places, marks: NDArray[np.int8]
+    coverage: Coverage, beyond: float, flat: Array, found: Array, owners: Places, origins: Origins
 ) -> None:
     from registry.batches import BEYOND
     from registry.extrapolation import Extrapolator
 
     values, nearest = Extrapolator(coverage, beyond).extend(flat)
     here = nearest >= 0
-    found[here], owners[here], marks[here] = values[here], nearest[here], BEYOND
+    found[here], owners[here], origins[here] = values[here], nearest[here], BEYOND
 
 
 def _fill_estimates(
-    coverage: Coverage, method: Method, flat: Array, uncovered: NDArray[np.bool_], found: Array, marks: NDArray[np.int8]
+    coverage: Coverage,
+    method: Method,
+    flat: Array,
+    uncovered: NDArray[np.bool_],
+    found: Array,
+    origins: Origins,
 ) -> None:
     from registry.batches import ESTIMATE
     from registry.estimates import Estimator, MissingConstant
 
-    inside = (flat >= coverage.limits.lower) & (flat <= coverage.limits.upper) & (flat > 0.0) & np.isfinite(flat)
-    here = np.flatnonzero(uncovered & np.isnan(found) & inside)
+    here = np.flatnonzero(uncovered & np.isnan(found) & coverage.limits.hold(flat))
     if here.size:
         try:
             values = Estimator.of(method, coverage).values(flat[here])
         except MissingConstant:  # each refusal names it
             return
         usable = here[np.isfinite(values)]
-        found[usable], marks[usable] = values[np.isfinite(values)], ESTIMATE
+        found[usable], origins[usable] = values[np.isfinite(values)], ESTIMATE
 
 
 def _is_within(
-    coverage: Coverage, within: float, flat: Array, found: Array, owners: Places, marks: NDArray[np.int8]
+    coverage: Coverage, within: float, flat: Array, found: Array, owners: Places, origins: Origins
 ) -> NDArray[np.bool_]:
     """Where a source states an uncertainty that is small enough."""
     from registry.batches import ACCEPTED
 
-    return coverage.expanded_percents(flat, found, np.where(marks == ACCEPTED, owners, -1)) <= within
+    return coverage.expanded_percents(flat, found, np.where(origins == ACCEPTED, owners, -1)) <= within

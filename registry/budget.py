@@ -15,7 +15,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from registry.candidate import Candidate
-from registry.uncertainty import COVERAGE_FACTOR, Piece
+from registry.uncertainty import COVERAGE_FACTOR, Piece, expansion
 
 __all__ = ["Budget", "combine_percents", "make_budget"]
 
@@ -80,7 +80,7 @@ def combine_percents(stated: float | None, factor: float | None, temperature: fl
     """
     if stated is None:
         return None
-    return math.hypot(COVERAGE_FACTOR / (factor or COVERAGE_FACTOR) * stated, temperature)
+    return math.hypot(expansion(factor) * stated, temperature)
 
 
 def make_budget(

@@ -209,7 +209,7 @@ class Estimator:
             there is no liquid.
         """
         kelvin = np.asarray(kelvin, dtype=float)
-        inside = (kelvin <= self.critical_temperature) & (kelvin >= self.coverage.limits.lower) & (kelvin > 0.0)
+        inside = self.coverage.limits.hold(kelvin)
         values = np.full(kelvin.shape, np.nan)
         reduced = kelvin[inside] / self.critical_temperature
         with np.errstate(all="ignore"):

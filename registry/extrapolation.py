@@ -18,7 +18,7 @@ from registry.readings import Reading
 from registry.refusals import Refusal
 from registry.uncertainty import Piece
 
-__all__ = ["Extrapolation", "Extrapolator", "Neighbour", "explain_stop"]
+__all__ = ["Extrapolation", "Extrapolator", "Neighbour"]
 
 Array = NDArray[np.float64]
 
@@ -43,6 +43,9 @@ class Neighbour:
     distance: float
     value: float
     percent: float
+
+
+_PHASE_LIMITS = ("above-critical", "above-triple", "below-triple")
 
 
 class Extrapolator:
@@ -143,6 +146,20 @@ class Extrapolator:
             return None
         return Extrapolation(float(values[0]), self.coverage.answering[owners[0]], self, kelvin, reading)
 
+    def explain(self, refusal: Refusal) -> Refusal:
+        """A refusal of this coverage with why going beyond its windows did not help, in a sentence more."""
+        if refusal.reason in _PHASE_LIMITS:
+            why = "--beyond does not cross a phase limit."
+        elif refusal.reason in ("no-correlation", "several-phases", "no-value"):
+            return refusal
+        elif not self.single_phase:
+            why = "--beyond needs the phase: name it with --phase."
+        elif refusal.nearest and refusal.nearest[0].distance <= self._most:
+            why = "Extrapolated there, its form gives no usable value."
+        else:
+            why = f"--beyond {self.beyond:.12g}K does not reach it."
+        return replace(refusal, explanation=f"{refusal.explanation} {why}")
+
     def neighbours(self, candidate: Candidate, kelvin: float, value: float) -> Iterator[Neighbour]:
         """The other accepted correlations that end within reach of a temperature, nearest first."""
         others = [c for c in self.coverage.accepted if c is not candidate and not c.empty]
@@ -216,36 +233,3 @@ class Extrapolation(Answer):
             f"{n.correlation}, {n.distance:.6g} K beyond its window, gives {n.percent:+.3g} %" for n in neighbours
         )
         return f"Beside it {listed}."
-
-
-_PHASE_LIMITS = ("above-critical", "above-triple", "below-triple")
-
-
-def explain_stop(refusal: Refusal, coverage: Coverage, beyond: float) -> Refusal:
-    """A refusal with why going beyond the windows did not help.
-
-    Parameters
-    ----------
-    refusal : Refusal
-        Why no window answers.
-    coverage : Coverage
-        Who answers where.
-    beyond : float
-        How far an extrapolation may go, K.
-
-    Returns
-    -------
-    Refusal
-        With a sentence more.
-    """
-    if refusal.reason in _PHASE_LIMITS:
-        why = "--beyond does not cross a phase limit."
-    elif refusal.reason in ("no-correlation", "several-phases", "no-value"):
-        return refusal
-    elif not Extrapolator(coverage, beyond).single_phase:
-        why = "--beyond needs the phase: name it with --phase."
-    elif refusal.nearest and refusal.nearest[0].distance <= beyond + rules.BOUND_TOLERANCE:
-        why = "Extrapolated there, its form gives no usable value."
-    else:
-        why = f"--beyond {beyond:.12g}K does not reach it."
-    return replace(refusal, explanation=f"{refusal.explanation} {why}")

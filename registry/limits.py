@@ -5,6 +5,9 @@ from __future__ import annotations
 import math
 from dataclasses import dataclass
 
+import numpy as np
+from numpy.typing import ArrayLike, NDArray
+
 from registry.confirmation import count_fixed_point
 from registry.dossier import Dossier, Entry
 from registry.properties import PROPERTIES
@@ -50,6 +53,12 @@ class Limits:
     lower_point: Entry[FixedPoint] | None = None
     upper_point: Entry[FixedPoint] | None = None
     unchecked: tuple[str, ...] = ()
+
+    def hold(self, kelvin: ArrayLike) -> NDArray[np.bool_]:
+        """True where a temperature, K, lies between them, both included; never for what is no temperature."""
+        at = np.asarray(kelvin, dtype=float)
+        held: NDArray[np.bool_] = (at >= self.lower) & (at <= self.upper) & (at > 0.0) & np.isfinite(at)
+        return held
 
 
 def find_limits(dossier: Dossier, prop: str) -> Limits:

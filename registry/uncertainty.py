@@ -21,13 +21,24 @@ from registry.errors import BadQuantity
 from registry.numerals import parse_number
 from registry.quantities import find_unit, parse_temperature
 
-__all__ = ["COVERAGE_FACTOR", "Piece", "parse_factor", "parse_uncertainty"]
+__all__ = ["COVERAGE_FACTOR", "Piece", "expansion", "parse_factor", "parse_uncertainty"]
 
 COVERAGE_FACTOR = 2.0
 """The coverage factor to which uncertainties are brought; one that is not stated counts as this (JCGM 100, 6.3.3)."""
 
 _ALLOWED = "pieces such as '0.025 % up to 373 K; 0.1 % (k=2)' are allowed."
 _PIECE = re.compile(r"(not stated|(\S+) (%|\S+)(?: \(k=([0-9.]+)\))?)(?: up to (.+))?", re.ASCII)
+
+
+def expansion(factor: float | None) -> float:
+    """What brings an uncertainty of a coverage factor to the one that all are brought to.
+
+    Examples
+    --------
+    >>> expansion(1.0), expansion(None)
+    (2.0, 1.0)
+    """
+    return COVERAGE_FACTOR / factor if factor else 1.0
 
 
 @dataclass(frozen=True)
@@ -60,7 +71,7 @@ class Piece:
     @property
     def expansion(self) -> float:
         """What brings it to the coverage factor that all are brought to."""
-        return COVERAGE_FACTOR / self.factor if self.factor else 1.0
+        return expansion(self.factor)
 
 
 def parse_uncertainty(text: str, dimension: str) -> tuple[Piece, ...]:
